@@ -1,0 +1,2 @@
+//! Cost of the vertical arrest.
+fn main() {}

@@ -1,0 +1,2 @@
+//! Picks the command line or the screen.
+fn main() {}

@@ -1,0 +1,67 @@
+//! The checks of one run.
+use super::Verdict;
+use crate::estimate::Estimate;
+use crate::quantity::Dimension;
+use crate::scenario::Scenario;
+
+/// Which side of the limit is good.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Sense {
+    /// The demand must not exceed the limit.
+    AtMost,
+    /// The demand must reach the limit.
+    AtLeast,
+}
+
+/// Where a limit comes from.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Basis {
+    /// `eu-363: EN 363 as applied in DGUV Regel 112-198 s.5.1 (published)`, `the file (reserve wanted)`;
+    /// for an override both the file's value with its reason and the published one.
+    pub words: String,
+    /// True when a value used is from memory, unverified.
+    pub from_memory: bool,
+}
+
+/// One check.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Margin {
+    /// Stable id: `clearance.plant-room_roof`, `arrest_force`, `anchor_load`.
+    pub id: String,
+    /// Label for screens: `arrest force`, `anchor load x 2`.
+    pub label: String,
+    /// What the run asks for, SI; none when it cannot be had.
+    pub demand: Option<f64>,
+    /// What is allowed, SI; none when it is missing.
+    pub limit: Option<f64>,
+    /// What both measure.
+    pub dimension: Dimension,
+    /// Which side is good.
+    pub sense: Sense,
+    /// Room left, SI: positive holds. None when open for a missing number.
+    pub margin: Option<f64>,
+    /// The word.
+    pub verdict: Verdict,
+    /// Source of the limit.
+    pub basis: Basis,
+    /// Why it is open, or what else must be read beside it.
+    pub note: Option<String>,
+}
+
+/// `limits.basis` names no built-in set.
+#[derive(Clone, Debug, PartialEq, thiserror::Error)]
+#[error("no built-in set of limits is named `{name}`")]
+pub struct UnknownBasis {
+    /// The name in the file.
+    pub name: String,
+    /// The nearest built-in name.
+    pub nearest: Option<&'static str>,
+}
+
+/// Every check that applies to a scenario and its estimate, the governing one first.
+///
+/// # Errors
+/// When the scenario names an unknown set.
+pub fn margins(_scenario: &Scenario, _estimate: &Estimate) -> Result<Vec<Margin>, UnknownBasis> {
+    todo!()
+}

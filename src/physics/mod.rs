@@ -1,0 +1,6 @@
+//! What exerts force: elastic laws, the absorber, the series path. SI throughout, unit in the name.
+mod elastic;
+mod path;
+
+pub use elastic::{Elastic, Table, TableError};
+pub use path::{Absorber, Group, SeriesPath};

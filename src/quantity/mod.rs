@@ -1,0 +1,14 @@
+//! Numbers with units, and bands (low..typical..high): parse, print, convert.
+//!
+//! Everything inside the program is SI; a unit exists only where a number is read or shown.
+mod band;
+mod dimension;
+mod display;
+mod parse;
+mod unit;
+
+pub use band::{Band, Measure, Shape};
+pub use dimension::Dimension;
+pub use display::{display_unit, format_si, format_unit};
+pub use parse::{QuantityError, parse_measure, parse_quantity};
+pub use unit::{Unit, UnitSystem};
