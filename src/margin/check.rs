@@ -1,5 +1,6 @@
 //! The checks of one run.
-use super::Verdict;
+use super::numeric::{Check, checks};
+use super::{Rules, Verdict, margin_of};
 use crate::estimate::Estimate;
 use crate::quantity::Dimension;
 use crate::scenario::Scenario;
@@ -58,10 +59,22 @@ pub struct UnknownBasis {
     pub nearest: Option<&'static str>,
 }
 
-/// Every check that applies to a scenario and its estimate, the governing one first.
+/// Every check that applies to a scenario and its estimate, the governing one first: worst verdict first, then the
+/// least room as a share of the limit. Notes are in metric units.
 ///
 /// # Errors
 /// When the scenario names an unknown set.
-pub fn margins(_scenario: &Scenario, _estimate: &Estimate) -> Result<Vec<Margin>, UnknownBasis> {
-    todo!()
+pub fn margins(scenario: &Scenario, estimate: &Estimate) -> Result<Vec<Margin>, UnknownBasis> {
+    let rules = Rules::of(scenario)?;
+    let mut list = checks(&rules, scenario, estimate);
+    list.sort_by(governing_first);
+    let system = crate::quantity::UnitSystem::Metric;
+    Ok(list.iter().map(|check| margin_of(&rules, scenario, estimate, check, system)).collect())
+}
+
+fn governing_first(a: &Check, b: &Check) -> std::cmp::Ordering {
+    b.verdict
+        .cmp(&a.verdict)
+        .then_with(|| a.relative().total_cmp(&b.relative()))
+        .then_with(|| a.kind.cmp(&b.kind))
 }
