@@ -8,7 +8,7 @@ mod sets;
 mod verdict;
 mod words;
 
-pub use check::{Basis, Margin, Sense, UnknownBasis, margins};
+pub use check::{Basis, Margin, Sense, UnknownBasis, governing_first, margins, margins_from};
 pub use disagreement::{Disagreement, disagreements};
 pub use limit::{Applies, Bound, LimitKind, LimitSet, Mark, PublishedLimit, WrittenFor, limit_set, limit_sets};
 pub use numeric::{Cause, Check, CheckKind, checks, judge};

@@ -3,7 +3,7 @@ use super::check::Sense;
 use super::limit::{LimitKind, WrittenFor};
 use super::rules::{Rules, Ruling};
 use super::verdict::Verdict;
-use crate::estimate::{Estimate, Numbers};
+use crate::estimate::{Numbers, Validity};
 use crate::quantity::Dimension;
 use crate::scenario::{LineKind, Scenario, StretchLaw};
 
@@ -176,17 +176,19 @@ fn compare(check: Check, demand: f64, limit: f64) -> Check {
     Check { margin: Some(room), verdict, ..check }
 }
 
-/// Every check that applies, in the order of [`CheckKind`], unsorted by verdict.
+/// Every check that applies to the numbers of one run, not yet sorted by verdict.
+///
+/// `rules` are those of the same scenario; where only values of the scenario changed they stay the same.
 #[must_use]
-pub fn checks(rules: &Rules, scenario: &Scenario, estimate: &Estimate) -> Vec<Check> {
-    let run = Run { rules, scenario, numbers: &estimate.numbers };
+pub fn checks(rules: &Rules, scenario: &Scenario, numbers: &Numbers, validity: &[Validity]) -> Vec<Check> {
+    let run = Run { rules, scenario, numbers };
     let mut list = Vec::with_capacity(rules.clearance_ids.len() + 12);
     run.clearances(&mut list);
     run.fall(&mut list);
     run.anchor(&mut list);
     run.line(&mut list);
     run.ratings(&mut list);
-    if !estimate.validity.is_empty() {
+    if !validity.is_empty() {
         list.iter_mut().filter(|c| c.kind.needs_model()).for_each(|c| *c = c.open(Cause::NotValid));
     }
     list

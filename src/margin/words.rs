@@ -3,14 +3,20 @@ use super::check::{Basis, Margin};
 use super::limit::{LimitKind, Mark, PublishedLimit};
 use super::numeric::{Cause, Check, CheckKind};
 use super::rules::{Rules, Ruling};
-use crate::estimate::Estimate;
+use crate::estimate::Validity;
 use crate::quantity::{UnitSystem, format_si, format_unit};
 use crate::scenario::Scenario;
 
 /// A check with its words; notes in the given units.
 #[must_use]
-pub fn margin_of(rules: &Rules, scenario: &Scenario, estimate: &Estimate, check: &Check, system: UnitSystem) -> Margin {
-    let words = Words { rules, scenario, estimate, system };
+pub fn margin_of(
+    rules: &Rules,
+    scenario: &Scenario,
+    validity: &[Validity],
+    check: &Check,
+    system: UnitSystem,
+) -> Margin {
+    let words = Words { rules, scenario, validity, system };
     Margin {
         id: words.id(check.kind),
         label: words.label(check.kind),
@@ -44,7 +50,7 @@ pub fn remarks(rules: &Rules, scenario: &Scenario) -> Vec<String> {
 struct Words<'a> {
     rules: &'a Rules,
     scenario: &'a Scenario,
-    estimate: &'a Estimate,
+    validity: &'a [Validity],
     system: UnitSystem,
 }
 
@@ -153,7 +159,7 @@ impl Words<'_> {
             Cause::NotStated => missing_key(check.kind).to_owned(),
             Cause::NotANumber => "the numbers of this run are out of range".to_owned(),
             Cause::NotValid => {
-                self.estimate.validity.iter().map(|v| v.words(self.system)).collect::<Vec<_>>().join("; ")
+                self.validity.iter().map(|v| v.words(self.system)).collect::<Vec<_>>().join("; ")
             }
             Cause::OutsideSet => self.outside(),
             Cause::OtherRule => self.other_rule(check.kind),
