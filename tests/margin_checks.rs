@@ -1,8 +1,6 @@
 //! Every check: its verdict, its open cases, and where its limit is said to come from.
 use underfoot::estimate::{Number, Numbers, Validity, Value};
-use underfoot::margin::{
-    CheckKind, Margin, Rules, UnknownBasis, Verdict, checks, judge, margins_from, remarks, worst,
-};
+use underfoot::margin::{CheckKind, Margin, Rules, UnknownBasis, Verdict, checks, judge, margins_from, remarks, worst};
 use underfoot::quantity::{Dimension, Measure, Unit};
 use underfoot::scenario::{
     Absorber, Anchor, AnchorKind, DampingLaw, Fall, Limits, Line, LineKind, Obstacle, OwnLimit, Place, Scenario,
@@ -366,7 +364,10 @@ fn a_low_stretch_rope_is_judged_up_to_its_fall_factor() {
     let at = |file: &Scenario, factor| one(file, &[("fall_factor", factor)], "arrest_force").verdict;
     assert_eq!(at(&file, 0.1 + 0.2), Verdict::Holds);
     assert_eq!(at(&file, 0.31), Verdict::Open);
-    assert_eq!(one(&file, &[("fall_factor", 0.3), ("arrest_force_peak", 6000.0)], "arrest_force").verdict, Verdict::Short);
+    assert_eq!(
+        one(&file, &[("fall_factor", 0.3), ("arrest_force_peak", 6000.0)], "arrest_force").verdict,
+        Verdict::Short
+    );
     file.line.stretch = StretchLaw::StaticElongation {
         percent: Measure::exact(0.04, Unit::Percent),
         from: kilograms(50.0),
@@ -408,7 +409,8 @@ fn rules_for_persons_are_not_applied_to_loads() {
     let mut file = scenario(Some("us-1926"));
     file.subject.kind = SubjectKind::Load;
     file.subject.mass = kilograms(400.0);
-    for id in ["arrest_force", "free_fall", "deceleration_distance", "subject_mass", "anchor_strength", "line_strength"] {
+    for id in ["arrest_force", "free_fall", "deceleration_distance", "subject_mass", "anchor_strength", "line_strength"]
+    {
         assert!(!has(&file, id), "{id}");
     }
     let anchor = one(&file, &[], "anchor_load");
@@ -464,7 +466,10 @@ fn without_limits_only_clearance_stroke_ratings_and_stated_capacities_are_checke
     let file = scenario(None);
     let mut ids: Vec<_> = all(&file, &[]).into_iter().map(|m| m.id).collect();
     ids.sort();
-    assert_eq!(ids, ["anchor_load", "clearance.plant-room_roof", "line_load", "rated_free_fall", "rated_mass", "stroke"]);
+    assert_eq!(
+        ids,
+        ["anchor_load", "clearance.plant-room_roof", "line_load", "rated_free_fall", "rated_mass", "stroke"]
+    );
     assert!(remarks(&Rules::of(&file).unwrap(), &file)[0].contains("no limits are stated"));
 }
 

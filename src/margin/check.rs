@@ -86,8 +86,5 @@ pub fn margins_from(
 /// The order of checks: worst verdict first, then the least room as a share of the limit, then by kind.
 #[must_use]
 pub fn governing_first(a: &Check, b: &Check) -> std::cmp::Ordering {
-    b.verdict
-        .cmp(&a.verdict)
-        .then_with(|| a.relative().total_cmp(&b.relative()))
-        .then_with(|| a.kind.cmp(&b.kind))
+    b.verdict.cmp(&a.verdict).then_with(|| a.relative().total_cmp(&b.relative())).then_with(|| a.kind.cmp(&b.kind))
 }

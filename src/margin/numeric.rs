@@ -215,8 +215,8 @@ impl Run<'_> {
         self.rule(list, CheckKind::FreeFall, rules.free_fall.as_ref(), self.free_fall());
         self.rule(list, CheckKind::DecelerationDistance, rules.deceleration.as_ref(), self.absorber_travel());
         self.total_fall(list);
-        self.accept_either(list, CheckKind::ArrestForce, rules.arrest_force.as_ref(), CheckKind::FreeFall);
-        self.accept_either(list, CheckKind::FreeFall, rules.free_fall.as_ref(), CheckKind::ArrestForce);
+        accept_either(list, CheckKind::ArrestForce, rules.arrest_force.as_ref(), CheckKind::FreeFall);
+        accept_either(list, CheckKind::FreeFall, rules.free_fall.as_ref(), CheckKind::ArrestForce);
     }
 
     fn rule(&self, list: &mut Vec<Check>, kind: CheckKind, ruling: Option<&Ruling>, demand: Option<f64>) {
@@ -250,22 +250,6 @@ impl Run<'_> {
             && below(Some(self.scenario.subject.mass.si()), set.mass_kg)
     }
 
-    /// A rule that accepts one of two: the one that is short is open while the other holds.
-    fn accept_either(&self, list: &mut [Check], kind: CheckKind, ruling: Option<&Ruling>, other: CheckKind) {
-        let wanted = match other {
-            CheckKind::FreeFall => LimitKind::FreeFall,
-            CheckKind::ArrestForce => LimitKind::ArrestForce,
-            _ => LimitKind::AnchorFactor,
-        };
-        let either = ruling.and_then(Ruling::judged_by_set).is_some_and(|p| p.or == Some(wanted));
-        let other_holds = list.iter().any(|c| c.kind == other && c.verdict == Verdict::Holds);
-        if either && other_holds {
-            list.iter_mut()
-                .filter(|c| c.kind == kind && c.verdict == Verdict::Short)
-                .for_each(|c| *c = c.open(Cause::OtherRule));
-        }
-    }
-
     fn body_force(&self) -> Option<f64> {
         let factor = self.scenario.subject.body_factor.map_or(1.0, |f| f.si());
         self.numbers.get("arrest_force_peak").map(|f| f / factor)
@@ -289,11 +273,8 @@ impl Run<'_> {
     fn total_fall(&self, list: &mut Vec<Check>) {
         let Some(ruling) = &self.rules.total_fall else { return };
         let twice_length = self.scenario.line.length.map(|l| 2.0 * l.si());
-        let limit = if ruling.is_past_twice_length() {
-            twice_length.map(|l| l + ruling.si())
-        } else {
-            Some(ruling.si())
-        };
+        let limit =
+            if ruling.is_past_twice_length() { twice_length.map(|l| l + ruling.si()) } else { Some(ruling.si()) };
         list.push(judge(CheckKind::TotalFall, self.numbers.get("total_fall_distance"), limit));
     }
 
@@ -309,7 +290,7 @@ impl Run<'_> {
         list.push(judge(CheckKind::AnchorLoad, demand, capacity));
         if let (Some(capacity), Some(ruling)) = (capacity, &rules.anchor_strength) {
             list.push(judge(CheckKind::AnchorStrength, Some(capacity), Some(ruling.si())));
-            self.accept_either(list, CheckKind::AnchorStrength, Some(ruling), CheckKind::AnchorLoad);
+            accept_either(list, CheckKind::AnchorStrength, Some(ruling), CheckKind::AnchorLoad);
             self.accept_conditional(list, ruling, LimitKind::AnchorStrengthConditional, capacity);
         }
     }
@@ -336,7 +317,7 @@ impl Run<'_> {
                 list.push(judge(CheckKind::LineLoad, demand, Some(strength)));
                 if let Some(ruling) = ruling {
                     list.push(judge(CheckKind::LineStrength, Some(strength), Some(ruling.si())));
-                    self.accept_conditional(list, ruling, LimitKind::LineStrengthConditional, strength);
+                    self.accept_conditional(list, ruling, LimitKind::LineStrength, strength);
                 }
             }
             (None, Some(ruling)) => {
@@ -365,6 +346,22 @@ impl Run<'_> {
         self.rule(list, CheckKind::StaticElongation, rules.static_elongation.as_ref(), elongation);
         let stretch = self.numbers.get("line_elongation_peak").zip(length).map(|(e, l)| e / l);
         self.rule(list, CheckKind::DynamicElongation, rules.dynamic_elongation.as_ref(), stretch);
+    }
+}
+
+/// A rule that accepts one of two: the one that is short is open while the other holds.
+fn accept_either(list: &mut [Check], kind: CheckKind, ruling: Option<&Ruling>, other: CheckKind) {
+    let wanted = match other {
+        CheckKind::FreeFall => LimitKind::FreeFall,
+        CheckKind::ArrestForce => LimitKind::ArrestForce,
+        _ => LimitKind::AnchorFactor,
+    };
+    let either = ruling.and_then(Ruling::judged_by_set).is_some_and(|p| p.or == Some(wanted));
+    let other_holds = list.iter().any(|c| c.kind == other && c.verdict == Verdict::Holds);
+    if either && other_holds {
+        list.iter_mut()
+            .filter(|c| c.kind == kind && c.verdict == Verdict::Short)
+            .for_each(|c| *c = c.open(Cause::OtherRule));
     }
 }
 

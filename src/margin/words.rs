@@ -42,7 +42,10 @@ pub fn remarks(rules: &Rules, scenario: &Scenario) -> Vec<String> {
             list.push(format!("`{name}` was written for persons: its limits are not applied to a load"));
         }
     } else if scenario.limits.own.is_empty() {
-        list.push("no limits are stated: forces and distances are not judged, only clearance, stroke, ratings and capacity".to_owned());
+        list.push(
+            "no limits are stated: forces and distances are not judged, only clearance, stroke, ratings and capacity"
+                .to_owned(),
+        );
     }
     list
 }
@@ -158,12 +161,12 @@ impl Words<'_> {
             Cause::NoNumber => self.missing_number(check.kind),
             Cause::NotStated => missing_key(check.kind).to_owned(),
             Cause::NotANumber => "the numbers of this run are out of range".to_owned(),
-            Cause::NotValid => {
-                self.validity.iter().map(|v| v.words(self.system)).collect::<Vec<_>>().join("; ")
-            }
+            Cause::NotValid => self.validity.iter().map(|v| v.words(self.system)).collect::<Vec<_>>().join("; "),
             Cause::OutsideSet => self.outside(),
             Cause::OtherRule => self.other_rule(check.kind),
-            Cause::StrokeUsedUp => "the stroke is used up: the absorber is locked and the force rises beyond it".to_owned(),
+            Cause::StrokeUsedUp => {
+                "the stroke is used up: the absorber is locked and the force rises beyond it".to_owned()
+            }
             Cause::OnTheLimit => "the value must stay below the limit; it is on it".to_owned(),
         })
     }
@@ -192,7 +195,9 @@ impl Words<'_> {
 
     fn other_rule(&self, kind: CheckKind) -> String {
         let remark = self.published(kind).and_then(|p| p.remark).unwrap_or("the set accepts another rule instead");
-        format!("less than the published value, but the set accepts another rule ({remark}): a competent person decides")
+        format!(
+            "less than the published value, but the set accepts another rule ({remark}): a competent person decides"
+        )
     }
 
     fn published(&self, kind: CheckKind) -> Option<&'static PublishedLimit> {

@@ -151,5 +151,9 @@ pub fn tally(verdicts: &[&str]) -> String {
         .map(|(word, count)| format!("{count} {word}"))
         .collect();
     let files = if verdicts.len() == 1 { "file" } else { "files" };
-    format!("{} {files}: {}", verdicts.len(), if parts.is_empty() { "none judged".to_owned() } else { parts.join(", ") })
+    format!(
+        "{} {files}: {}",
+        verdicts.len(),
+        if parts.is_empty() { "none judged".to_owned() } else { parts.join(", ") }
+    )
 }

@@ -130,7 +130,10 @@ fn group(page: &mut Page, title: &str, report: &Report, system: UnitSystem, belo
 }
 
 fn number_label(id: &str) -> String {
-    let label = DEFINITIONS.iter().find(|d| d.id == stem(id)).map_or_else(|| stem(id).replace('_', " "), |d| d.label.to_owned());
+    let label = DEFINITIONS
+        .iter()
+        .find(|d| d.id == stem(id))
+        .map_or_else(|| stem(id).replace('_', " "), |d| d.label.to_owned());
     id.split_once('.').map_or_else(|| label.clone(), |(_, name)| format!("{label}, {name}"))
 }
 

@@ -1,5 +1,6 @@
 //! Sets of the United States and of Canadian provinces.
-use super::super::limit::{Applies, LimitKind as K, LimitSet, Mark::*, WrittenFor};
+use super::super::limit::Mark::{Memory, Published, Secondary};
+use super::super::limit::{Applies, LimitKind as K, LimitSet, WrittenFor};
 use super::{factor, least, most};
 use crate::quantity::Unit;
 
@@ -107,17 +108,35 @@ pub const CA_QC: LimitSet = LimitSet {
             .or(K::AnchorFactor)
             .remark("or twice the arrest force, certified by an engineer"),
         factor(K::AnchorFactor, "certified anchor: factor on the arrest force", 2.0, (QC_ANCHOR, Published)),
-        most(K::SwingDistance, "sideways swing, distance", (3.0, Unit::Metre), (QC_ANCHOR, Published)).only(Applies::Swing),
+        most(K::SwingDistance, "sideways swing, distance", (3.0, Unit::Metre), (QC_ANCHOR, Published))
+            .only(Applies::Swing),
         most(K::SwingAngle, "sideways swing, angle", (22.0, Unit::Degree), (QC_ANCHOR, Published)).only(Applies::Swing),
-        least(K::SpanCableDiameter, "prescribed horizontal lifeline: steel cable diameter", (12.0, Unit::Millimetre), (QC_SPAN, Published))
+        least(
+            K::SpanCableDiameter,
+            "prescribed horizontal lifeline: steel cable diameter",
+            (12.0, Unit::Millimetre),
+            (QC_SPAN, Published),
+        )
+        .only(Applies::Span),
+        least(
+            K::SpanSlack,
+            "prescribed horizontal lifeline: slack over span",
+            (1.0 / 12.0, Unit::One),
+            (QC_SPAN, Published),
+        )
+        .only(Applies::Span)
+        .remark("1:12"),
+        most(K::SpanLength, "prescribed horizontal lifeline: span", (12.0, Unit::Metre), (QC_SPAN, Published))
             .only(Applies::Span),
-        least(K::SpanSlack, "prescribed horizontal lifeline: slack over span", (1.0 / 12.0, Unit::One), (QC_SPAN, Published))
-            .only(Applies::Span)
-            .remark("1:12"),
-        most(K::SpanLength, "prescribed horizontal lifeline: span", (12.0, Unit::Metre), (QC_SPAN, Published)).only(Applies::Span),
-        least(K::SpanAnchorStrength, "prescribed horizontal lifeline: end anchors", (90.0, Unit::Kilonewton), (QC_SPAN, Published))
+        least(
+            K::SpanAnchorStrength,
+            "prescribed horizontal lifeline: end anchors",
+            (90.0, Unit::Kilonewton),
+            (QC_SPAN, Published),
+        )
+        .only(Applies::Span),
+        most(K::SpanWorkers, "prescribed horizontal lifeline: workers", (2.0, Unit::One), (QC_SPAN, Published))
             .only(Applies::Span),
-        most(K::SpanWorkers, "prescribed horizontal lifeline: workers", (2.0, Unit::One), (QC_SPAN, Published)).only(Applies::Span),
     ],
 };
 
