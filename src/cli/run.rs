@@ -94,8 +94,9 @@ fn rendered(report: &Report, args: &RunArgs, place: usize) -> String {
 /// # Errors
 /// See [`Failure`].
 pub fn load_and_report(path: &Path) -> Result<(Loaded, Report), Failure> {
-    let file = path.display().to_string();
-    let loaded = if path == Path::new("-") { standard_input()? } else { from_disk(path)? };
+    let piped = path == Path::new("-");
+    let file = if piped { STANDARD_INPUT.to_owned() } else { path.display().to_string() };
+    let loaded = if piped { standard_input()? } else { from_disk(path)? };
     match report(&file, &loaded.text, &loaded.scenario) {
         Ok(report) => Ok((loaded, report)),
         Err(error) => Err(no_report(file, &loaded.text, error)),
@@ -109,6 +110,8 @@ fn from_disk(path: &Path) -> Result<Loaded, Failure> {
     })
 }
 
+/// The name of standard input in results and messages.
+const STANDARD_INPUT: &str = "standard input";
 /// Largest text read from standard input, as for files: 1 MiB.
 const LARGEST_INPUT: u64 = 1 << 20;
 
@@ -124,7 +127,7 @@ fn standard_input() -> Result<Loaded, Failure> {
     }
     let text = String::from_utf8(bytes)
         .map_err(|_| Failure::Unreadable("standard input is not UTF-8 text; save the scenario as UTF-8".to_owned()))?;
-    let scenario = read("standard input", &text).map_err(Failure::Refused)?;
+    let scenario = read(STANDARD_INPUT, &text).map_err(Failure::Refused)?;
     Ok(Loaded { text, scenario })
 }
 
@@ -132,7 +135,7 @@ fn no_report(file: String, text: &str, error: ReportError) -> Failure {
     match error {
         ReportError::Basis(unknown) => Failure::Refused(unknown_basis(&file, text, &unknown)),
         ReportError::Estimate(EstimateError::Geometry { message, hint, path }) => {
-            Failure::Refused(one_fault(&file, text, path, message, "numbers that agree", hint))
+            Failure::Refused(one_fault(&file, text, path, message, "expected numbers that agree", hint))
         }
         ReportError::Estimate(other) => Failure::NotComputed { file, reason: other.to_string() },
     }
