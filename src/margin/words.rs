@@ -3,6 +3,7 @@ use super::check::{Basis, Margin};
 use super::limit::{LimitKind, Mark, PublishedLimit};
 use super::numeric::{Cause, Check, CheckKind};
 use super::rules::{Rules, Ruling};
+use super::verdict::Verdict;
 use crate::estimate::Validity;
 use crate::quantity::{UnitSystem, format_si, format_unit};
 use crate::scenario::Scenario;
@@ -219,9 +220,7 @@ impl Words<'_> {
             CheckKind::Clearance(i) => self.reserve_note(i),
             CheckKind::ArrestForce => self.force_note(),
             CheckKind::DecelerationDistance => self.travel_note(),
-            CheckKind::AnchorStrength | CheckKind::LineStrength if check.cause != Some(Cause::OtherRule) => {
-                self.published(check.kind).and_then(|p| p.remark).map(str::to_owned)
-            }
+            CheckKind::AnchorStrength | CheckKind::LineStrength => self.strength_note(check),
             CheckKind::AnchorLoad if check.limit.is_none() => self.anchor_note(),
             _ => None,
         }
@@ -250,6 +249,13 @@ impl Words<'_> {
             None => Some("no absorber: the arrest distance is judged, elongation of the line included".to_owned()),
             Some(_) => self.published(CheckKind::DecelerationDistance).and_then(|p| p.remark).map(str::to_owned),
         }
+    }
+
+    /// The other rule of a set is told where it matters; a condition that the file cannot state always is.
+    fn strength_note(&self, check: &Check) -> Option<String> {
+        let published = self.published(check.kind)?;
+        let untold = published.or.is_none() || check.verdict == Verdict::Short;
+        published.remark.filter(|_| untold).map(str::to_owned)
     }
 
     fn anchor_note(&self) -> Option<String> {

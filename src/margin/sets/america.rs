@@ -17,11 +17,10 @@ pub const US_1926: LimitSet = LimitSet {
             .remark("and no contact with a lower level; the source prints 1.8 m beside it"),
         most(
             K::DecelerationDistance,
-            "deceleration distance (absorber travel, lifeline elongation excluded)",
+            "deceleration distance, 42 in (absorber travel, lifeline elongation excluded)",
             (3.5, Unit::Foot),
             ("29 CFR 1926.502(d)(16)(iv); 1926.500(b) definition", Published),
-        )
-        .remark("42 in"),
+        ),
         factor(
             K::LineFactor,
             "strength of the system: factor on the arrest force",
