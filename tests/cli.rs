@@ -118,7 +118,7 @@ fn run_ends_with_2_for_faults_and_shows_the_place_on_stderr() {
         .assert()
         .code(2)
         .stdout("")
-        .stderr(predicate::str::contains("faulty.toml:7:8").and(predicate::str::contains("mass = \"100\"")));
+        .stderr(predicate::str::contains("faulty.toml:7:9").and(predicate::str::contains("mass = \"100\"")));
 }
 
 #[test]
@@ -128,7 +128,7 @@ fn an_unknown_set_is_a_fault_at_its_line_with_the_nearest_name() {
     for command in ["run", "audit"] {
         let output = underfoot().arg(command).arg(&path).assert().code(2).get_output().clone();
         let all = String::from_utf8([output.stdout, output.stderr].concat()).unwrap();
-        assert!(all.contains("basis.toml:38:9") && all.contains("`eu-363`") && all.contains("`eu-336`"), "{all}");
+        assert!(all.contains("basis.toml:37:9") && all.contains("`eu-363`") && all.contains("`eu-336`"), "{all}");
     }
 }
 
@@ -263,7 +263,7 @@ fn audit_json_is_one_line_a_file_with_faults_doubts_and_margins() {
     assert!(doubts.iter().any(|d| d["message"].as_str().unwrap().contains("damping ratio")), "{doubts:?}");
     assert!(!rows[0]["margins"].as_array().unwrap().is_empty());
     assert_eq!(rows[1]["verdict"], "refused");
-    assert_eq!((&rows[1]["faults"][0]["line"], &rows[1]["faults"][0]["column"]), (&7.into(), &8.into()));
+    assert_eq!((&rows[1]["faults"][0]["line"], &rows[1]["faults"][0]["column"]), (&7.into(), &9.into()));
     assert_eq!(rows[2]["verdict"], "unreadable");
     assert!(rows.iter().all(|row| !row["cautions"].as_array().unwrap().is_empty()));
 }
@@ -396,6 +396,8 @@ fn words_of_a_file_cannot_steer_the_terminal() {
     for command in ["run", "audit"] {
         let output = underfoot().env("CLICOLOR_FORCE", "1").arg(command).arg(&path).output().unwrap();
         let text = String::from_utf8(output.stdout).unwrap();
+        assert_eq!(output.status.code(), Some(1), "{command}");
+        assert!(text.contains("roof \u{fffd}[2J"), "{command}: {text}");
         assert!(!text.contains("\u{1b}[2J") && !text.contains('\u{7}'), "{command}");
     }
 }

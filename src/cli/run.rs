@@ -4,6 +4,7 @@ use super::locate::{one_fault, unknown_basis};
 use super::options::RunArgs;
 use super::output::{self, PAINT, Reader};
 use crate::estimate::EstimateError;
+use crate::margin::Rules;
 use crate::scenario::{Faults, LoadError, Loaded, load, read};
 use crate::sheet::{CAUTION_LINE, Layout, Report, ReportError, csv, json, report, text};
 use std::io::Read;
@@ -101,6 +102,16 @@ pub fn load_and_report(path: &Path) -> Result<(Loaded, Report), Failure> {
         Ok(report) => Ok((loaded, report)),
         Err(error) => Err(no_report(file, &loaded.text, error)),
     }
+}
+
+/// Looks whether a file can be edited on the screen: it reads without a fault and its set of limits is known.
+///
+/// # Errors
+/// See [`Failure`].
+pub fn load_for_screen(path: &Path) -> Result<(), Failure> {
+    let loaded = from_disk(path)?;
+    let unknown = |basis| Failure::Refused(unknown_basis(&path.display().to_string(), &loaded.text, &basis));
+    Rules::of(&loaded.scenario).map(|_| ()).map_err(unknown)
 }
 
 fn from_disk(path: &Path) -> Result<Loaded, Failure> {

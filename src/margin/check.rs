@@ -1,5 +1,6 @@
 //! The checks of one run.
-use super::numeric::{Check, checks};
+use super::judge::Check;
+use super::numeric::checks;
 use super::{Rules, Verdict, margin_of};
 use crate::estimate::{Estimate, Numbers, Validity};
 use crate::quantity::{Dimension, UnitSystem};

@@ -1,7 +1,7 @@
 //! The words of a check: id, label, where its limit comes from, and what must be read beside it.
 use super::check::{Basis, Margin};
+use super::judge::{Cause, Check, CheckKind};
 use super::limit::{LimitKind, Mark, PublishedLimit};
-use super::numeric::{Cause, Check, CheckKind};
 use super::rules::{Rules, Ruling};
 use super::verdict::Verdict;
 use crate::estimate::Validity;
