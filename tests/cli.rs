@@ -1,4 +1,6 @@
 //! The command line as a user or a script meets it: exit codes, streams, several files, closed pipes.
+#![expect(clippy::unwrap_used, reason = "a test stops at what it cannot have")]
+
 use assert_cmd::cargo::cargo_bin_cmd;
 use predicates::prelude::*;
 use std::fs;

@@ -1,4 +1,6 @@
 //! Every check: its verdict, its open cases, and where its limit is said to come from.
+#![expect(clippy::unwrap_used, clippy::panic, reason = "a test stops at what it cannot have")]
+
 use underfoot::estimate::{Number, Numbers, Validity, Value};
 use underfoot::margin::{CheckKind, Margin, Rules, UnknownBasis, Verdict, checks, judge, margins_from, remarks, worst};
 use underfoot::quantity::{Dimension, Measure, Unit};

@@ -1,4 +1,6 @@
 //! Outputs as bytes: the shape of JSON, the width of text, the sentences about margins.
+#![expect(clippy::unwrap_used, clippy::panic, reason = "a test stops at what it cannot have")]
+
 use serde_json::Value;
 use underfoot::margin::{Basis, Margin, Sense, Verdict};
 use underfoot::quantity::{Dimension, UnitSystem};
