@@ -68,7 +68,7 @@ impl Model {
             self.complain(format!("`{}` is at the end of its range", input.path));
             return;
         }
-        self.write(&input.path, &format_measure(&measure));
+        self.write(&input.path, &value_text(&measure));
     }
 
     /// Writes a value text into the document; a refusal becomes a notice. True when it was taken.
@@ -86,18 +86,37 @@ impl Model {
         }
     }
 
-    /// Back to the value that the file holds for the chosen input.
+    /// Back to the value that the file holds for the chosen input, in the file's own words.
     pub fn restore(&mut self) {
         let Some(input) = self.chosen().cloned() else { return };
-        let stored = inputs(self.saved.scenario()).into_iter().find(|stored| stored.path == input.path);
-        let Some(stored) = stored else { return self.complain(format!("the file holds no `{}`", input.path)) };
-        if stored.measure == input.measure {
+        let stored = inputs(self.saved.scenario());
+        let Some(own) = stored.iter().find(|stored| stored.path == input.path) else {
+            return self.complain(format!("the file holds no `{}`", input.path));
+        };
+        if own.measure == input.measure {
             return self.say(format!("`{}` is at the file's value", input.path));
         }
-        self.write(&input.path, &format_measure(&stored.measure));
-        if inputs(self.document.scenario()) == inputs(self.saved.scenario()) {
-            self.document = self.saved.clone();
+        match self.rebuilt_without(&input.path, &stored) {
+            Ok(document) => {
+                self.notice = None;
+                self.take(document);
+            }
+            Err(faults) => self.complain(first_fault(&faults)),
         }
+    }
+
+    /// The file's text with every change but that of one input.
+    fn rebuilt_without(&self, path: &str, stored: &[Input]) -> Result<Document, Box<Faults>> {
+        let mut document = self.saved.clone();
+        for input in self.inputs.iter().filter(|input| input.path != path) {
+            let own = stored.iter().find(|stored| stored.path == input.path);
+            if own.is_none_or(|own| own.measure != input.measure) {
+                let ends_moved = own.is_none_or(|own| !same_ends(&own.measure, &input.measure));
+                let text = if ends_moved { format_measure(&input.measure) } else { value_text(&input.measure) };
+                document = document.with_value(&input.path, &text)?;
+            }
+        }
+        Ok(document)
     }
 
     /// Takes back the last change.
@@ -146,13 +165,11 @@ impl Model {
             let refused = self.document.with_value(&input.path, &text).err();
             refused.map(|faults| first_fault(&faults))
         });
-        match fault {
-            Some(words) => self.set_fault(Some(words)),
-            None => {
-                self.mode = Mode::Commands;
-                self.write(&input.path, &text);
-            }
+        if fault.is_some() {
+            return self.set_fault(fault);
         }
+        self.mode = Mode::Commands;
+        self.write(&input.path, &text);
     }
 
     /// Judges the text as it stands, for the message below it.
@@ -173,6 +190,18 @@ impl Model {
 fn fault_of(text: &str, dimension: Option<Dimension>) -> Option<String> {
     let fault = parse_measure(text.trim(), dimension?).err()?;
     Some(format!("{fault}; {}", fault.hint()))
+}
+
+/// The typical value alone, in the file's unit.
+#[must_use]
+pub fn value_text(measure: &Measure) -> String {
+    let mut measure = *measure;
+    (measure.band.low, measure.band.high) = (measure.band.typical, measure.band.typical);
+    format_measure(&measure)
+}
+
+fn same_ends(a: &Measure, b: &Measure) -> bool {
+    (a.band.low, a.band.high) == (b.band.low, b.band.high)
 }
 
 /// The first error of a refused value, with its hint.

@@ -9,7 +9,7 @@ pub const LEAST_WIDTH: u16 = 60;
 /// Rows that the screen needs.
 pub const LEAST_HEIGHT: u16 = 20;
 /// From this width on the log stands beside the view.
-const LOG_FROM: u16 = 120;
+const LOG_FROM: u16 = 132;
 /// From this height on the margins stand below.
 const MARGINS_FROM: u16 = 32;
 
@@ -71,11 +71,11 @@ impl Panes {
     fn place_body(&mut self, rest: Rect, has_timeline: bool) {
         let inputs_width = match rest.width {
             0..70 => 30,
-            70..100 => 36,
-            100..120 => 42,
-            _ => 47 + (rest.width - 120).min(40) / 8,
+            70..100 => 34,
+            100..132 => 40,
+            _ => 43 + (rest.width - 132).min(80) / 8,
         };
-        let log_width = if rest.width >= LOG_FROM { 32 + (rest.width - LOG_FROM).min(80) / 5 } else { 0 };
+        let log_width = if rest.width >= LOG_FROM { 30 + (rest.width - LOG_FROM).min(120) / 6 } else { 0 };
         let mut left = Rect { width: inputs_width, ..rest };
         let mut right = Rect { x: rest.x + inputs_width + 1, width: rest.width - inputs_width - 1, ..rest };
         if log_width > 0 {

@@ -48,11 +48,11 @@ fn draw_top(model: &Model, frame: &mut Frame, panes: &Panes) {
 }
 
 fn draw_lists(model: &Model, frame: &mut Frame, panes: &Panes) {
+    let size = frame.area().as_size();
     let buffer = frame.buffer_mut();
     inputs::draw(buffer, panes.inputs, model);
     about::draw(buffer, panes.about, model);
-    tabs::draw(buffer, panes.tabs, views(frame.area().as_size()), model);
-    let buffer = frame.buffer_mut();
+    tabs::draw(buffer, panes.tabs, views(size), model);
     log::draw(buffer, panes.log, model);
     if panes.margins.height > 0 {
         margins::draw(buffer, panes.margins, model);

@@ -1,5 +1,5 @@
 //! The view Elevation: the fall to scale, its marks side by side, the dimension string.
-use super::scene::{Bar, Origin, Scene, Station};
+use super::scene::{Bar, Origin, Part, Scene, Station};
 use crate::scenario::SubjectKind;
 use crate::sheet::ticks::ticks;
 use crate::tui::text::{cells, fit, put, put_right, spread};
@@ -8,10 +8,13 @@ use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 use ratatui::style::Style;
 
+/// Columns of the tick labels and the axis.
 const GUTTER: u16 = 7;
-const STATION: u16 = 7;
-const LABELS: u16 = 27;
-const LEAST_LABELS: u16 = 20;
+/// Least columns of one station: its name and a blank.
+const STATION: u16 = 6;
+/// Columns of the names beside the dimension string, with and without what is wanted.
+const LABELS: u16 = 34;
+const LEAST_LABELS: u16 = 21;
 
 /// Heights to rows of the drawing.
 struct Rows {
@@ -52,8 +55,8 @@ struct Places {
 
 impl Places {
     fn of(area: Rect) -> Self {
-        let labels = if area.width >= GUTTER + 5 * STATION + LABELS { LABELS } else { LEAST_LABELS };
-        let labels = labels.min(area.width.saturating_sub(GUTTER + STATION));
+        let spare = area.width.saturating_sub(GUTTER + 5 * STATION);
+        let labels = spare.clamp(LEAST_LABELS, LABELS).min(area.width.saturating_sub(GUTTER + STATION));
         let sum = u16::from(area.height >= 16);
         let body = Rect { y: area.y + 2, height: area.height.saturating_sub(2 + sum), ..area };
         let figures_width = area.width.saturating_sub(GUTTER.min(area.width) + labels);
@@ -223,7 +226,7 @@ fn draw_labels(buffer: &mut Buffer, places: &Places, scene: &Scene, rows: &Rows,
     let mut labels = level_labels(scene, rows, theme);
     let string = string_marks(scene);
     draw_string(buffer, places.labels, &string, rows, theme);
-    labels.extend(part_labels(scene, &string, rows, theme));
+    labels.extend(part_labels(scene, &string, rows, places.labels.width.saturating_sub(2), theme));
     labels.sort_by_key(|label| label.row);
     let wanted: Vec<u16> = labels.iter().map(|label| label.row).collect();
     let area = Rect { x: places.labels.x + 2, width: places.labels.width.saturating_sub(2), ..places.labels };
@@ -276,16 +279,24 @@ fn part_numbers(scene: &Scene, marks: &[f64]) -> Vec<f64> {
     shown.windows(2).map(|pair| pair[0] - pair[1]).collect()
 }
 
-fn part_labels(scene: &Scene, marks: &[f64], rows: &Rows, theme: Theme) -> Vec<Label> {
+fn part_labels(scene: &Scene, marks: &[f64], rows: &Rows, room: u16, theme: Theme) -> Vec<Label> {
     let numbers = part_numbers(scene, marks);
     let mut labels = Vec::new();
     for ((part, number), pair) in scene.parts.iter().zip(numbers).zip(marks.windows(2)) {
         let (from, to) = (rows.below(pair[0].max(pair[1])), rows.below(pair[0].min(pair[1])));
-        let text = format!("{} {}", scene.scale.print(number), part.name);
+        let long = format!("{} {}{}", scene.scale.print(number), part.name, wanted(scene, part));
+        let short = format!("{} {}", scene.scale.print(number), part.name);
+        let text = if cells(&long) <= room { long } else { short };
         let style = part.verdict.map_or(theme.plain(), |verdict| theme.verdict(verdict));
         labels.push(Label { row: ((from + to.max(from + 1) - 1) / 2).min(rows.count - 1), text, style });
     }
     labels
+}
+
+/// What a clearance should be.
+fn wanted(scene: &Scene, part: &Part) -> String {
+    let bar = scene.bars.iter().find(|bar| part.verdict.is_some() && scene.string_end.as_deref() == Some(&bar.name));
+    bar.map_or_else(String::new, |bar| format!(", {} wanted", scene.scale.text(bar.reserve_m)))
 }
 
 fn draw_sum(buffer: &mut Buffer, places: &Places, scene: &Scene, theme: Theme) {
@@ -293,9 +304,11 @@ fn draw_sum(buffer: &mut Buffer, places: &Places, scene: &Scene, theme: Theme) {
     let numbers = part_numbers(scene, &string_marks(scene));
     let terms: Vec<String> = numbers.iter().map(|&n| crate::sheet::ticks::fixed(n, scene.scale.decimals)).collect();
     let total = scene.scale.print(numbers.iter().sum());
-    let goal = scene.string_end.as_ref().map_or_else(|| "below the start".to_owned(), |name| format!("start to {name}"));
-    let long = format!("{} = {total} {goal}", terms.join(" + ").replace("+ -", "- "));
+    let sum = format!("{} = {total}", terms.join(" + ").replace("+ -", "- "));
+    let goal = scene.string_end.as_ref().map_or_else(String::new, |name| format!("{total} down to {name}"));
+    let long = format!("{sum} down to {}", scene.string_end.as_deref().unwrap_or("the lowest point"));
     let room = usize::from(area.width);
-    let text = if crate::tui::text::width(&long) <= room { long } else { format!("{total} {goal}") };
+    let fits = |text: &String| usize::from(cells(text)) <= room;
+    let text = [long, sum, goal].into_iter().find(fits).unwrap_or(total);
     put(buffer, area, 0, 0, &fit(&text, room), theme.plain());
 }

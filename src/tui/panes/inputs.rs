@@ -1,7 +1,8 @@
 //! The list of inputs, in sections as the file has them.
 use super::units::bare;
-use crate::quantity::{Measure, format_measure};
+use crate::quantity::Measure;
 use crate::scenario::Input;
+use crate::tui::edit::value_text;
 use crate::tui::lean::Lean;
 use crate::tui::model::{Mode, Model, Pane};
 use crate::tui::text::{cells, fit, put, put_right, width};
@@ -71,18 +72,12 @@ struct Columns {
 impl Columns {
     fn of(model: &Model, total: u16) -> Self {
         let widest = |texts: Vec<String>| texts.iter().map(|text| cells(text)).max().unwrap_or(0);
-        let value = widest(model.inputs.iter().map(value_text).collect()).max(8);
+        let value = widest(model.inputs.iter().map(|input| value_text(&input.measure)).collect()).max(8);
         let band = widest(model.inputs.iter().map(band_text).collect());
         let rest = total.saturating_sub(1 + value + 3);
         let band = if band > 0 && rest >= band + 1 + 20 { band + 1 } else { 0 };
         Self { label: rest - band, value, band }
     }
-}
-
-fn value_text(input: &Input) -> String {
-    let mut measure = input.measure;
-    (measure.band.low, measure.band.high) = (measure.band.typical, measure.band.typical);
-    format_measure(&measure)
 }
 
 fn band_text(input: &Input) -> String {
@@ -92,7 +87,6 @@ fn band_text(input: &Input) -> String {
 
 /// Draws title and list.
 pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
-    let has_keys = model.pane == Pane::Inputs;
     let columns = Columns::of(model, area.width);
     put(buffer, area, 0, 0, "Inputs", model.theme.heading());
     let head = if columns.band > 0 { "value      band  " } else { "value  " };
@@ -109,7 +103,6 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
         }
     }
     draw_scroll_marks(buffer, area, model, (first, shown, rows.len()));
-    let _ = has_keys;
 }
 
 /// How many rows stand above and below those shown.
@@ -136,7 +129,7 @@ fn draw_input(buffer: &mut Buffer, row: Rect, model: &Model, index: usize, colum
         return draw_typing(buffer, Rect { x: row.x + columns.label, width: row.width - columns.label, ..row }, model, typing);
     }
     let value = Rect { x: row.x + 1 + columns.label, width: columns.value, ..row };
-    put_right(buffer, value, 0, &value_text(input), style);
+    put_right(buffer, value, 0, &value_text(&input.measure), style);
     let band = Rect { x: value.right(), width: columns.band, ..row };
     put_right(buffer, band, 0, &band_text(input), style);
     let lean = model.leans.get(index).copied().unwrap_or(Lean::Unknown);

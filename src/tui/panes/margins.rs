@@ -196,7 +196,7 @@ fn draw_bar(buffer: &mut Buffer, area: Rect, margin: &Margin, look: &Look) {
     put(buffer, area, half, 0, "|", look.style);
     let Some(share) = share(margin) else { return };
     let length = super::plot::place(share.abs(), half + 1);
-    let length = if share != 0.0 { length.max(1).min(half) } else { 0 };
+    let length = if share == 0.0 { 0 } else { length.clamp(1, half) };
     let bar = "#".repeat(usize::from(length));
     let start = if share < 0.0 { half - length } else { half + 1 };
     put(buffer, area, start, 0, &bar, look.verdict_style);

@@ -122,6 +122,7 @@ impl Scene {
 }
 
 /// Heights of the marks, m.
+#[expect(clippy::struct_field_names, reason = "the suffix is the unit")]
 struct Marks {
     anchor_m: Option<f64>,
     standing_m: Option<f64>,
@@ -223,8 +224,8 @@ fn parts(report: &Report, marks: &Marks, lowest: Sample, end: Option<&Bar>) -> V
     let stretch = marks.taut_m - marks.lowest_m;
     let line = stretch - lowest.other_elongation_m - lowest.deployed_m;
     let body = match report.scenario.subject.kind {
-        SubjectKind::Person => "attachment to feet",
-        SubjectKind::Load => "attachment to underside",
+        SubjectKind::Person => "to feet",
+        SubjectKind::Load => "to underside",
     };
     let mut parts = vec![
         part("free fall", marks.start_m - marks.taut_m),
@@ -232,7 +233,7 @@ fn parts(report: &Report, marks: &Marks, lowest: Sample, end: Option<&Bar>) -> V
         part("other stretch", lowest.other_elongation_m),
         part("deployed", lowest.deployed_m),
         part(body, marks.body_m),
-        part("harness allowance", marks.allowance_m),
+        part("allowance", marks.allowance_m),
     ];
     parts.retain(|part| part.length_m.abs() > TOO_SHORT_M);
     if let Some(bar) = end {
