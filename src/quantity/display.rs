@@ -66,17 +66,24 @@ pub fn format_unit(value_si: f64, unit: Unit) -> String {
 #[must_use]
 pub fn format_measure(measure: &Measure) -> String {
     let band = &measure.band;
-    let values = if !band.is_wide() {
-        vec![band.typical]
-    } else if same(band.typical, band.low + (band.high - band.low) / 2.0) {
-        vec![band.low, band.high]
-    } else {
-        vec![band.low, band.typical, band.high]
-    };
-    if measure.feet_and_inches {
-        return values.into_iter().map(feet_and_inches).collect::<Vec<_>>().join("..");
+    if band.is_wide() && same(band.typical, band.low + (band.high - band.low) / 2.0) {
+        return join(measure, &[band.low, band.high]);
     }
-    let numbers: Vec<String> = values.into_iter().map(|value| shortest(in_unit(value, measure.unit))).collect();
+    format_band(measure)
+}
+
+/// A measure as [`format_measure`] writes it, a band always with its three values.
+#[must_use]
+pub fn format_band(measure: &Measure) -> String {
+    let band = &measure.band;
+    if band.is_wide() { join(measure, &[band.low, band.typical, band.high]) } else { join(measure, &[band.typical]) }
+}
+
+fn join(measure: &Measure, values: &[f64]) -> String {
+    if measure.feet_and_inches {
+        return values.iter().copied().map(feet_and_inches).collect::<Vec<_>>().join("..");
+    }
+    let numbers: Vec<String> = values.iter().map(|value| shortest(in_unit(*value, measure.unit))).collect();
     with_symbol(&numbers.join(".."), measure.unit)
 }
 

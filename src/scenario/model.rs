@@ -207,8 +207,13 @@ impl Obstacle {
     /// Name as used in ids: lower case, `_` for blanks.
     #[must_use]
     pub fn id(&self) -> String {
-        self.name.trim().to_lowercase().split_whitespace().collect::<Vec<_>>().join("_")
+        id_of(&self.name)
     }
+}
+
+/// A name as used in ids.
+pub(super) fn id_of(name: &str) -> String {
+    name.to_lowercase().split_whitespace().collect::<Vec<_>>().join("_")
 }
 
 /// Limits to check against.
