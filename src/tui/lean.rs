@@ -1,6 +1,6 @@
 //! Which way raising an input moves the governing margin, by a small step to both sides.
-use crate::estimate::estimate;
-use crate::margin::margins;
+use crate::estimate::{Estimate, estimate};
+use crate::margin::{Check, Rules, checks, governing_first};
 use crate::scenario::{Input, Scenario, with_value};
 use crate::sheet::Report;
 
@@ -50,26 +50,40 @@ const NOTHING: f64 = 1e-9;
 /// The arrows of all inputs, in their order.
 #[must_use]
 pub fn leans(inputs: &[Input], scenario: &Scenario, report: Option<&Report>) -> Vec<Lean> {
-    let governing = report.and_then(|report| report.margins.iter().find(|margin| margin.margin.is_some()));
+    let governing = report.and_then(|report| {
+        let mut found = judged(scenario, &report.estimate)?;
+        found.sort_by(governing_first);
+        found.into_iter().find(|check| check.margin.is_some())
+    });
     let Some(governing) = governing else { return vec![Lean::Unknown; inputs.len()] };
-    let size = governing.demand.unwrap_or(0.0).abs().max(governing.limit.unwrap_or(0.0).abs()).max(1e-9);
-    inputs.iter().map(|input| lean(input, scenario, &governing.id, governing.margin, size)).collect()
+    inputs.iter().map(|input| lean(input, scenario, &governing)).collect()
 }
 
-fn lean(input: &Input, scenario: &Scenario, id: &str, here: Option<f64>, size: f64) -> Lean {
+fn judged(scenario: &Scenario, estimate: &Estimate) -> Option<Vec<Check>> {
+    Some(checks(&Rules::of(scenario).ok()?, scenario, &estimate.numbers, &estimate.validity))
+}
+
+/// The difference of the governing margin over a step to both sides; one side where the other cannot be had.
+fn lean(input: &Input, scenario: &Scenario, governing: &Check) -> Lean {
     let value = input.measure.si();
     let step = if value == 0.0 { STEP } else { value.abs() * STEP };
     let margin_at = |value: f64| {
         let moved = with_value(scenario, &input.path, value)?;
-        let found = margins(&moved, &estimate(&moved).ok()?).ok()?;
-        found.into_iter().find(|margin| margin.id == id)?.margin
+        let found = judged(&moved, &estimate(&moved).ok()?)?;
+        found.into_iter().find(|check| check.kind == governing.kind)?.margin
     };
-    let above = margin_at(value + step).or(here);
-    let below = margin_at(value - step).or(here);
-    match (above, below) {
-        (Some(above), Some(below)) if (above - below).abs() <= NOTHING * size => Lean::None,
-        (Some(above), Some(below)) if above > below => Lean::More,
-        (Some(_), Some(_)) => Lean::Less,
-        _ => Lean::Unknown,
+    let (above, below) = (margin_at(value + step), margin_at(value - step));
+    if above.is_none() && below.is_none() {
+        return Lean::Unknown;
+    }
+    let here = governing.margin.unwrap_or(0.0);
+    let change = above.unwrap_or(here) - below.unwrap_or(here);
+    let size = governing.demand.unwrap_or(0.0).abs().max(governing.limit.unwrap_or(0.0).abs()).max(1e-9);
+    if change.abs() <= NOTHING * size {
+        Lean::None
+    } else if change > 0.0 {
+        Lean::More
+    } else {
+        Lean::Less
     }
 }

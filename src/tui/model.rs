@@ -304,6 +304,10 @@ impl Model {
     /// Takes note of what the file on disk now holds, in the present state and in all that undo and redo bring back.
     pub fn adopt(&mut self, on_disk: &Document) {
         self.saved = on_disk.clone();
+        let states = self.undo.iter_mut().chain(&mut self.redo).chain(std::iter::once(&mut self.document));
+        for state in states {
+            *state = state.clone().on_disk_as(on_disk);
+        }
     }
 
     /// Tells the user something.

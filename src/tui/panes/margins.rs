@@ -1,5 +1,5 @@
 //! The checks: demand, limit, a bar about the zero line, margin and verdict.
-use crate::margin::{Margin, Sense, Verdict};
+use crate::margin::{Margin, Rules, Sense, Verdict, checks, margin_of};
 use crate::quantity::{UnitSystem, format_si};
 use crate::tui::model::{Model, Pane};
 use crate::tui::text::{cells, fit, put, put_right, wrap};
@@ -16,7 +16,7 @@ const MOST_BAR: u16 = 61;
 const NUMBER: u16 = 12;
 const WORD: u16 = 8;
 
-fn checks(model: &Model) -> &[Margin] {
+fn listed(model: &Model) -> &[Margin] {
     model.answer.report.as_ref().map_or(&[], |report| &report.margins)
 }
 
@@ -32,13 +32,13 @@ fn shown(area: Rect) -> usize {
 #[must_use]
 pub fn check_at(model: &Model, area: Rect, row: u16) -> Option<usize> {
     let line = usize::from(row.checked_sub(area.y + 1)? / rows_each(area));
-    let first = crate::tui::layout::scroll(model.check, checks(model).len(), shown(area));
-    (first + line < checks(model).len()).then_some(first + line)
+    let first = crate::tui::layout::scroll(model.check, listed(model).len(), shown(area));
+    (first + line < listed(model).len()).then_some(first + line)
 }
 
 /// Draws title and checks.
 pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
-    let all = checks(model);
+    let all = listed(model);
     let first = crate::tui::layout::scroll(model.check, all.len(), shown(area));
     let below = all.len().saturating_sub(first + shown(area));
     draw_title(buffer, area, model, (first, below));
@@ -64,7 +64,7 @@ fn draw_title(buffer: &mut Buffer, area: Rect, model: &Model, (above, below): (u
         put(buffer, area, 9, 0, &format!("{above} more above, {below} below"), model.theme.quiet());
     }
     if rows_each(area) == 1 {
-        let columns = Columns::of(checks(model), area.width);
+        let columns = Columns::of(listed(model), area.width);
         let quiet = model.theme.quiet();
         put_right(buffer, columns.demand(area), 0, "demand", quiet);
         put_right(buffer, columns.limit(area), 0, "limit", quiet);
@@ -209,12 +209,12 @@ fn draw_bar(buffer: &mut Buffer, area: Rect, margin: &Margin, look: &Look) {
 
 /// Draws the source and the note of the chosen check.
 pub fn draw_basis(buffer: &mut Buffer, area: Rect, model: &Model) {
-    let Some(margin) = checks(model).get(model.check) else { return };
+    let Some(margin) = listed(model).get(model.check) else { return };
     let mut words = format!("{}: {}", margin.label, margin.basis.words);
     if margin.basis.from_memory {
         words += " - from memory, unverified";
     }
-    if let Some(note) = &margin.note {
+    if let Some(note) = note(model, margin) {
         words = format!("{words} - {note}");
     }
     let inner = Rect { x: area.x + 1, width: area.width.saturating_sub(2), ..area };
@@ -223,4 +223,14 @@ pub fn draw_basis(buffer: &mut Buffer, area: Rect, model: &Model) {
     for (row, line) in (0..area.height).zip(lines) {
         put(buffer, inner, 0, row, &line, style);
     }
+}
+
+/// The note of a check in the units of display.
+fn note(model: &Model, margin: &Margin) -> Option<String> {
+    let report = model.answer.report.as_ref()?;
+    let (scenario, estimate) = (&report.scenario, &report.estimate);
+    let rules = Rules::of(scenario).ok()?;
+    let found = checks(&rules, scenario, &estimate.numbers, &estimate.validity);
+    let same = |check| margin_of(&rules, scenario, &estimate.validity, check, model.units);
+    found.iter().map(same).find(|found| found.id == margin.id)?.note
 }

@@ -1,9 +1,8 @@
 //! The verdict in a sentence.
 use crate::estimate::Estimate;
-use crate::margin::{Margin, Sense, Verdict};
+use crate::margin::Verdict;
 use crate::quantity::{Dimension, UnitSystem, format_si};
-use crate::scenario::{Scenario, SubjectKind};
-use crate::sheet::Report;
+use crate::sheet::{Report, governing_words};
 use crate::tui::model::Model;
 use crate::tui::text::{put, put_right, width, wrap};
 use ratatui::buffer::Buffer;
@@ -46,43 +45,13 @@ fn words(model: &Model) -> (String, String) {
         return (format!("{}: {fault}{rest}", head(Verdict::Open)), String::new());
     }
     let Some(report) = &model.answer.report else { return (head(Verdict::Open), String::new()) };
-    let sentence = report.margins.first().map_or_else(
-        || "no check applies: the file states no limit and no obstacle".to_owned(),
-        |margin| sentence(margin, &report.scenario, model.units),
-    );
+    let sentence = governing_words(&report.scenario, &report.margins, model.units);
     (format!("{}  {sentence}", head(report.verdict)), peak(report, model.units))
 }
 
 /// `x SHORT`.
 fn head(verdict: Verdict) -> String {
     format!("{} {}", verdict.symbol(), verdict.word().to_uppercase())
-}
-
-/// What the governing check says.
-#[must_use]
-pub fn sentence(margin: &Margin, scenario: &Scenario, units: UnitSystem) -> String {
-    let text = |si: f64| format_si(si, margin.dimension, units);
-    let (Some(demand), Some(limit), Some(room)) = (margin.demand, margin.limit, margin.margin) else {
-        let why = margin.note.as_deref().unwrap_or("a number is missing");
-        return format!("{}: {why}", margin.label);
-    };
-    let room = if room < 0.0 { format!("{} short", text(-room)) } else { format!("{} room", text(room)) };
-    let note = match (&margin.note, margin.verdict) {
-        (Some(note), Verdict::Open) => format!("; {note}"),
-        _ => String::new(),
-    };
-    if let Some(obstacle) = scenario.obstacles.iter().find(|o| margin.id == format!("clearance.{}", o.id())) {
-        let part = if scenario.subject.kind == SubjectKind::Person { "feet" } else { "underside" };
-        let name = obstacle.name.trim();
-        let place = if demand < 0.0 {
-            format!("{part} would pass {} below the top of {name}", text(-demand))
-        } else {
-            format!("{part} stop {} above {name}", text(demand))
-        };
-        return format!("{place}, {} wanted ({room}){note}", text(limit));
-    }
-    let side = if margin.sense == Sense::AtMost { "at most" } else { "at least" };
-    format!("{} {}, {side} {} ({room}){note}", margin.label, text(demand), text(limit))
 }
 
 fn peak(report: &Report, units: UnitSystem) -> String {
