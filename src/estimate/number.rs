@@ -59,3 +59,9 @@ impl Numbers {
         self.0.iter()
     }
 }
+
+impl FromIterator<Number> for Numbers {
+    fn from_iter<I: IntoIterator<Item = Number>>(numbers: I) -> Self {
+        Self(numbers.into_iter().collect())
+    }
+}
