@@ -1,4 +1,5 @@
 //! Numbers with units: reading, refusing, printing, and there and back.
+#![allow(clippy::unwrap_used, clippy::panic, reason = "helpers of tests fail loudly")]
 use proptest::prelude::*;
 use underfoot::quantity::{
     Dimension, QuantityError, Unit, UnitSystem, format_measure, format_si, format_unit, parse_measure, parse_quantity,

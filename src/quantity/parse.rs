@@ -167,7 +167,7 @@ fn refuse_separator(text: &str, at: Range<usize>, end: usize) -> Result<Range<us
     let after = rest.trim_start_matches([',', '_', '\'', '.']).trim_start();
     let more = after.chars().take_while(char::is_ascii_digit).count();
     let per = after[more..].starts_with('/');
-    if rest.len() == after.len() && more == 0 || more == 0 || per {
+    if more == 0 || per {
         return Ok(at);
     }
     let stop = end - after.len() + more;

@@ -123,6 +123,15 @@ impl Document {
         Ok(())
     }
 
+    /// The same text judged against what another state of the same file knows to be on disk: after a save, states
+    /// kept for undo can be saved again.
+    #[must_use]
+    pub fn on_disk_as(mut self, other: &Self) -> Self {
+        self.disk_sha256 = other.disk_sha256;
+        self.edited = <[u8; 32]>::from(Sha256::digest(self.text.as_bytes())) != self.disk_sha256;
+        self
+    }
+
     /// True when the text differs from what is on disk as far as this program knows.
     #[must_use]
     pub const fn is_edited(&self) -> bool {

@@ -79,20 +79,7 @@ fn quoted_like(old: &str, value: &str) -> String {
     if old.starts_with('\'') && !old.starts_with("'''") && value.chars().all(plain) {
         return format!("'{value}'");
     }
-    basic_string(value)
-}
-
-fn basic_string(value: &str) -> String {
-    let mut text = String::from("\"");
-    for c in value.chars() {
-        match c {
-            '"' | '\\' => text.extend(['\\', c]),
-            c if c.is_control() => text.push_str(&format!("\\u{:04X}", u32::from(c))),
-            c => text.push(c),
-        }
-    }
-    text.push('"');
-    text
+    toml_edit::Value::from(value).to_string()
 }
 
 /// The text with a key added at the end of its section, which is made where it is absent.

@@ -43,7 +43,8 @@ fn scalar(values: &mut Values, text: &str, field: &Field, dimension: Dimension, 
         let message = format!("{} of {} is a bare number", quoted(&written), field.label);
         let units = Unit::for_dimension(dimension).iter().map(|u| format!("`{}`", u.symbol())).collect::<Vec<_>>();
         let hint = format!(
-            "write it in quotes with its unit, such as {}; units that fit: {}",
+            "write it in quotes with its unit, such as `{} = {}`; units that fit: {}",
+            field.key(),
             field.example,
             units.join(", ")
         );
@@ -120,7 +121,7 @@ fn long_band(
         return None;
     }
     let ([Some(low), typical, Some(high)], Some(shape)) = (ends, shape) else {
-        let hint = Some("write { low = .., typical = .., high = .., shape = \"uniform\" }".to_owned());
+        let hint = Some("write `{ low = .., typical = .., high = .., shape = \"uniform\" }`".to_owned());
         values.error(at, format!("the band of {} lacks an end", field.label), "expected low and high", hint);
         return None;
     };
@@ -193,13 +194,16 @@ fn limit(
             ("why", other) => wrong_type(values, value.span(), field, other, "expected text in quotes"),
             (other, _) => {
                 let message = format!("unknown key {} in a limit", quoted(other));
-                let hint = Some("a limit holds `value` and `why`".to_owned());
+                let hint = Some(match nearest(other, ["value", "why"].into_iter()) {
+                    Some(near) => format!("did you mean `{near}`? a limit holds `value` and `why`"),
+                    None => "a limit holds `value` and `why`".to_owned(),
+                });
                 values.error(key.span(), message, "expected value or why", hint);
             }
         }
     }
     if !stands {
-        let hint = Some(format!("write {{ value = {}, why = \"..\" }}", field.example));
+        let hint = Some(format!("write `{{ value = {}, why = \"..\" }}`", field.example));
         values.error(at, format!("{} has no value", field.label), "expected `value`", hint);
     }
     found
@@ -214,11 +218,16 @@ fn in_range(values: &mut Values, field: &Field, measure: &Measure, at: Range<usi
     let shown = |value: f64| format_unit(value, measure.unit);
     let message = format!("`{}` is outside the range of {}", shown(wrong), field.label);
     let expected = format!("expected {} to {}", shown(field.least), shown(field.most));
-    values.error(at, message, &expected, Some(format!("check the number and its unit; typical is {}", field.example)));
+    values.error(
+        at,
+        message,
+        &expected,
+        Some(format!("check the number and its unit; for example `{} = {}`", field.key(), field.example)),
+    );
     false
 }
 
 fn wrong_type(values: &mut Values, at: Range<usize>, field: &Field, found: &DeValue<'_>, expected: &str) {
     let message = format!("{} cannot be of type {}", field.label, found.type_str());
-    values.error(at, message, expected, Some(format!("write it like {}", field.example)));
+    values.error(at, message, expected, Some(format!("write it like `{} = {}`", field.key(), field.example)));
 }

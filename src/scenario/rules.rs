@@ -84,7 +84,7 @@ fn fall(text: &str, values: &mut Values) {
     if let (Some(band), Some(span)) = (offset, values.spans.get("place.anchor_offset").cloned())
         && (band.low != 0.0 || band.high != 0.0)
     {
-        values.later(span, "place.anchor_offset other than 0 m");
+        values.later(span, "`place.anchor_offset` other than `0 m`");
     }
 }
 

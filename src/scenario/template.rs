@@ -23,6 +23,9 @@ const SHOWN: &[&str] = &[
 /// Sections that stand in the new file as comments.
 const OPTIONAL_SECTIONS: &[&str] = &["fall", "harness", "line.rated_impact", "line.static_elongation"];
 
+/// Longest line of the new file; a longer note stands above its key.
+const LONGEST_LINE: usize = 116;
+
 /// An annotated scenario that reads without a fault.
 #[must_use]
 pub fn new_file() -> String {
@@ -81,6 +84,11 @@ fn key_line(field: &Field, section: &str) -> String {
         (_, Need::Default(default)) if default != "none" => format!("; {default} if absent"),
         _ => String::new(),
     };
-    let pair = format!("{mark}{} = {}", field.key(), field.example);
-    format!("{pair:<46}  # {}{note}\n", field.doc)
+    let example = match (section, field.key()) {
+        ("limits", key) if key != "basis" => format!("{{ value = {}, why = \"\" }}", field.example),
+        _ => field.example.to_owned(),
+    };
+    let pair = format!("{mark}{} = {example}", field.key());
+    let line = format!("{pair:<46}  # {}{note}\n", field.doc);
+    if line.len() <= LONGEST_LINE { line } else { format!("# {}{note}\n{pair}\n", field.doc) }
 }

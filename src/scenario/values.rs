@@ -51,19 +51,26 @@ impl Values {
             let name = key.get_ref().as_ref();
             let path = if prefix.is_empty() { name.to_owned() } else { format!("{prefix}.{name}") };
             match (plain(name), field_for(&path)) {
-                (true, Some(field)) if !field.ready => self.later(key.span(), &path),
+                (true, Some(field)) if !field.ready => self.later(key.span(), &format!("`{path}`")),
                 (true, Some(field)) => {
                     self.spans.insert(path.clone(), value.span());
                     leaf::read(self, text, &path, field, value);
                 }
                 (true, None) if is_section(&path) => self.section(text, &path, key.span(), value),
-                _ => self.unknown(prefix, name, key.span()),
+                _ => {
+                    let meant = self.unknown(prefix, name, key.span());
+                    if let Some(section) = meant.filter(|meant| is_section(meant) && value.get_ref().is_table()) {
+                        self.section(text, &section, key.span(), value);
+                    }
+                }
             }
         }
     }
 
     fn section(&mut self, text: &str, path: &str, at: Range<usize>, value: &Spanned<DeValue<'_>>) {
-        self.spans.insert(path.to_owned(), at.clone());
+        if value.get_ref().is_table() || value.get_ref().is_array() {
+            self.spans.insert(path.to_owned(), at.clone());
+        }
         match (path, value.get_ref()) {
             ("obstacle", DeValue::Array(list)) if list.iter().all(|entry| entry.get_ref().is_table()) => {
                 self.obstacles(text, list.iter());
@@ -100,10 +107,11 @@ impl Values {
     /// A key or word that a later version will read.
     pub fn later(&mut self, span: Range<usize>, what: &str) {
         let hint = Some("a later version will read it; take it out or keep it in a comment until then".to_owned());
-        self.error(span, format!("`{what}` is not read by this version"), "not supported yet", hint);
+        self.error(span, format!("{what} is not read by this version"), "not supported yet", hint);
     }
 
-    fn unknown(&mut self, prefix: &str, name: &str, at: Range<usize>) {
+    /// Notes an unknown key; returns the path that was probably meant.
+    fn unknown(&mut self, prefix: &str, name: &str, at: Range<usize>) -> Option<String> {
         let shown = quoted(name);
         let message = if prefix.is_empty() {
             format!("unknown key {shown}")
@@ -111,17 +119,19 @@ impl Values {
             format!("unknown key {shown} in `{prefix}`")
         };
         let known: Vec<&str> = children(prefix).collect();
-        let hint = if let Some(near) = nearest(name, known.iter().copied()) {
-            // What was meant counts as present: one slip of the pen is one fault.
-            let meant = if prefix.is_empty() { near.to_owned() } else { format!("{prefix}.{near}") };
-            self.spans.entry(meant).or_insert_with(|| at.clone());
+        let near = nearest(name, known.iter().copied());
+        let hint = if let Some(near) = near {
             format!("did you mean `{near}`?")
         } else if let Some(field) = FIELDS.iter().find(|field| field.key() == name) {
             format!("`{name}` belongs elsewhere: `{}`", field.path)
         } else {
             format!("known here: `{}`", known.join("`, `"))
         };
-        self.error(at, message, "not a key of this file format", Some(hint));
+        self.error(at.clone(), message, "not a key of this file format", Some(hint));
+        let meant = near.map(|near| if prefix.is_empty() { near.to_owned() } else { format!("{prefix}.{near}") })?;
+        // What was meant counts as present: one slip of the pen is one fault.
+        self.spans.entry(meant.clone()).or_insert(at);
+        Some(meant)
     }
 
     /// A word out of a list, or a fault.
@@ -129,7 +139,7 @@ impl Values {
         if field.words.is_empty() {
             self.words.insert(path.to_owned(), word.to_owned());
         } else if LATER_WORDS.contains(&(field.path, word)) {
-            self.later(at, word);
+            self.later(at, &format!("`{word}`"));
         } else if field.words.contains(&word) {
             self.words.insert(path.to_owned(), word.to_owned());
         } else {

@@ -7,6 +7,7 @@ mod limits;
 mod page;
 mod report;
 mod text;
+pub mod ticks;
 mod words;
 
 pub use audit::{Audited, Finding, audit_head, audit_json, audit_text, tally};
