@@ -172,6 +172,8 @@ fn arrest_force_is_judged_by_the_named_set() {
     assert_eq!(at("ca-on", 7999.0).verdict, Verdict::Holds);
     assert_eq!(at("ca-ab", 6000.5).verdict, Verdict::Short);
     assert_eq!(at("au-qld", 6000.5).verdict, Verdict::Short);
+    assert!(at("us-1926", 5000.0).note.unwrap().contains("other sets allow 6 kN"));
+    assert_eq!(at("eu-363", 5000.0).note, None);
     assert_eq!(at("eu-363", 5000.0).basis.words, "eu-363: EN 363 as applied in DGUV Regel 112-198 s.5.1 (published)");
 }
 
@@ -526,8 +528,14 @@ fn the_governing_check_comes_first() {
     assert_eq!((list[0].id.as_str(), list[1].id.as_str()), ("clearance.plant-room_roof", "arrest_force"));
     let order: Vec<_> = list.iter().map(|m| m.verdict).collect();
     assert!(order.windows(2).all(|pair| pair[0] >= pair[1]), "{order:?}");
-    let holding: Vec<f64> = list[2..].iter().map(|m| m.margin.unwrap() / m.limit.unwrap()).collect();
-    assert!(holding.windows(2).all(|pair| pair[0] <= pair[1]), "{holding:?}");
+    let holding: Vec<(&str, f64)> =
+        list[2..].iter().map(|m| (m.id.as_str(), m.margin.unwrap() / m.limit.unwrap())).collect();
+    let stated = holding.iter().position(|(id, _)| *id == "lanyard_length").unwrap();
+    assert_eq!(holding[stated].1, 0.0);
+    for group in [&holding[..stated], &holding[stated..]] {
+        assert!(group.len() > 2 && group.windows(2).all(|pair| pair[0].1 <= pair[1].1), "{holding:?}");
+    }
+    assert!(holding[..stated].iter().all(|(id, _)| !["rated_mass", "anchor_strength"].contains(id)), "{holding:?}");
 }
 
 #[test]

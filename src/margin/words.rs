@@ -1,7 +1,7 @@
 //! The words of a check: id, label, where its limit comes from, and what must be read beside it.
 use super::check::{Basis, Margin};
 use super::judge::{Cause, Check, CheckKind};
-use super::limit::{LimitKind, Mark, PublishedLimit};
+use super::limit::{Applies, LimitKind, Mark, PublishedLimit};
 use super::rules::{Rules, Ruling};
 use super::verdict::Verdict;
 use crate::estimate::Validity;
@@ -50,6 +50,9 @@ pub fn remarks(rules: &Rules, scenario: &Scenario) -> Vec<String> {
     }
     list
 }
+
+/// The lower of the two arrest forces on which the sources disagree, N.
+const LOWER_FORCE_N: f64 = 6000.0;
 
 struct Words<'a> {
     rules: &'a Rules,
@@ -238,9 +241,12 @@ impl Words<'_> {
     fn force_note(&self) -> Option<String> {
         let factor = self.scenario.subject.body_factor.map(|f| f.si()).filter(|f| *f != 1.0);
         let body = factor.map(|f| format!("largest line force divided by the file's body factor of {f}"));
-        let remark = self.published(CheckKind::ArrestForce).filter(|p| p.kind == LimitKind::ArrestForce);
-        let single_rope = remark.filter(|p| p.applies == super::Applies::SingleRope).and_then(|p| p.remark);
-        let notes: Vec<String> = body.into_iter().chain(single_rope.map(str::to_owned)).collect();
+        let published = self.published(CheckKind::ArrestForce);
+        let rope = |p: &&PublishedLimit| p.applies == Applies::SingleRope;
+        let single_rope = published.filter(rope).and_then(|p| p.remark).map(str::to_owned);
+        let higher = published.filter(|p| !rope(p) && p.si() > LOWER_FORCE_N);
+        let other = higher.map(|_| "other sets allow 6 kN only: see `underfoot limits`".to_owned());
+        let notes: Vec<String> = body.into_iter().chain(single_rope).chain(other).collect();
         (!notes.is_empty()).then(|| notes.join("; "))
     }
 
