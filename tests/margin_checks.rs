@@ -496,6 +496,20 @@ fn a_run_outside_of_the_model_is_open_wherever_its_numbers_count() {
 }
 
 #[test]
+fn another_rule_of_a_set_helps_only_where_it_is_judged_to_hold() {
+    let mut file = scenario(Some("us-1926"));
+    file.anchor.capacity = Some(kilonewtons(15.0));
+    let why = [Validity::FreeFallBeyondRating { free_fall_m: 5.0, rated_m: 4.0 }];
+    let verdict = |file: &Scenario, kind| {
+        let list = checks(&Rules::of(file).unwrap(), file, &numbers(&[("free_fall_distance", 5.0)]), &why);
+        list.iter().find(|c| c.kind == kind).unwrap().verdict
+    };
+    assert_eq!(verdict(&file, CheckKind::AnchorStrength), Verdict::Short);
+    file.limits.basis = Some("ca-qc".to_owned());
+    assert_eq!(verdict(&file, CheckKind::FreeFall), Verdict::Short);
+}
+
+#[test]
 fn an_unknown_set_is_an_error_with_the_nearest_name() {
     let nearest = |name: &str| match Rules::of(&scenario(Some(name))) {
         Err(UnknownBasis { nearest, .. }) => nearest,
