@@ -3,6 +3,7 @@
 //! [`solve`] takes a [`Fall`] and gives an [`Outcome`]. Every mode of the path is affine and has a closed-form
 //! solution; events are zeros of scalars of that solution, and no time is stepped.
 pub mod drift;
+mod hang;
 mod ledger;
 mod mode;
 mod motion;
@@ -18,6 +19,7 @@ pub mod signal;
 mod solve;
 pub mod third;
 
+pub use hang::Hang;
 pub use mode::{Mode, State, Stretch};
 pub use motion::{Instant, Motion};
 pub use outcome::{ArrestError, Ended, EnergyAccount, Fall, Happening, Lowest, Outcome, Settings, WorkCount};

@@ -249,8 +249,7 @@ impl<'a> Path<'a> {
             None => (b.slope(), b.c, b.force()),
         };
         let c = c1 + c2;
-        let of =
-            Spectrum::of_cubic((k1 + k2) / c + c1 * c2 / (m * c), (k1 * c2 + k2 * c1) / (m * c), k1 * k2 / (m * c));
+        let of = Spectrum::in_series(m, (k1, c1), (k2, c2));
         // Derivatives at the start, in turn: stretch of part 1, of part 2, speed, force.
         let w = self.weight();
         let e1 = (f2 - f1 + c2 * state.v) / c;

@@ -73,7 +73,9 @@ impl Motion {
         }
     }
 
-    fn falling(&self, time_s: f64) -> Instant {
+    /// The state in the free fall before taut.
+    #[must_use]
+    pub fn falling(&self, time_s: f64) -> Instant {
         let speed = self.gravity_m_per_s2 * time_s;
         Instant {
             time_s,

@@ -111,6 +111,8 @@ pub struct Outcome {
     pub hang_travel_m: f64,
     /// Rise from the lowest point to the next highest, m; none when settled before.
     pub rebound_rise_m: Option<f64>,
+    /// When that highest point is reached, s.
+    pub time_highest_s: Option<f64>,
     /// First time slack, s.
     pub time_first_slack_s: Option<f64>,
     /// Times the line went slack before it was settled.

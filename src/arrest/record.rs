@@ -53,8 +53,8 @@ pub struct Record {
     pub stretch: [Peak; 2],
     /// Deepest turning point so far.
     pub lowest: Option<Lowest>,
-    /// Next highest point after the lowest: travel, m.
-    pub highest: Option<f64>,
+    /// Next highest point after the lowest: its time from the start of the fall in s, and travel in m.
+    pub highest: Option<(f64, f64)>,
     /// First slack, s.
     pub first_slack_s: Option<f64>,
     /// Times slack.
@@ -98,7 +98,7 @@ impl Record {
             self.turned_down(stretch, t, &mut on_lowest);
             from = t;
             if let Some(top) = stretch.v.first_passage(0.0, Passage::Up, t, until) {
-                self.turned_up(stretch.x.value(top));
+                self.turned_up(stretch, top);
                 from = top;
             }
             // A swing's later lowest points are higher; a drift turns once.
@@ -113,7 +113,7 @@ impl Record {
         if stretch.v.value(0.0) <= 0.0
             && let Some(top) = stretch.v.first_passage(0.0, Passage::Up, 0.0, until)
         {
-            self.turned_up(stretch.x.value(top));
+            self.turned_up(stretch, top);
         }
     }
 
@@ -127,9 +127,9 @@ impl Record {
         }
     }
 
-    fn turned_up(&mut self, travel_m: f64) {
+    fn turned_up(&mut self, stretch: &Stretch, t: f64) {
         if self.lowest.is_some() && self.highest.is_none() {
-            self.highest = Some(travel_m);
+            self.highest = Some((stretch.start_s + t, stretch.x.value(t)));
         }
     }
 }

@@ -275,6 +275,7 @@ impl<'a> Run<'a> {
         if !(energy_residual <= BALANCE) {
             return Err(ArrestError::Energy { residual: energy_residual });
         }
+        let highest = deepest.and(self.record.highest);
         let energy = match (deepest, self.account) {
             (Some(_), Some(account)) => account,
             _ => self.account_at_rest(),
@@ -287,7 +288,8 @@ impl<'a> Run<'a> {
             lowest: deepest,
             arrest_distance_m,
             hang_travel_m,
-            rebound_rise_m: deepest.and(self.record.highest).map(|top| arrest_distance_m - top),
+            rebound_rise_m: highest.map(|(_, travel_m)| arrest_distance_m - travel_m),
+            time_highest_s: highest.map(|(time_s, _)| time_s),
             time_first_slack_s: self.record.first_slack_s,
             slack_episodes: self.record.slack_episodes,
             deployed_m: self.state.s,

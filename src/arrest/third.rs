@@ -37,6 +37,16 @@ impl Spectrum {
         Self::deflated(lonely, b2, b1, b0)
     }
 
+    /// Of a mass on two parts in series, each a spring (N/m) with a damper (N s/m); at least one damper works.
+    ///
+    /// `m C s^3 + (m K + c1 c2) s^2 + (k1 c2 + k2 c1) s + k1 k2 = 0` with `K = k1 + k2`, `C = c1 + c2`.
+    #[must_use]
+    pub fn in_series(mass_kg: f64, (k1, c1): (f64, f64), (k2, c2): (f64, f64)) -> Self {
+        let c = c1 + c2;
+        let mc = mass_kg * c;
+        Self::of_cubic((k1 + k2) / c + c1 * c2 / mc, (k1 * c2 + k2 * c1) / mc, k1 * k2 / mc)
+    }
+
     fn deflated(lambda: f64, b2: f64, b1: f64, b0: f64) -> Self {
         // s^2 + p s + r, with the better conditioned of the two ways to each coefficient.
         let r = -b0 / lambda;

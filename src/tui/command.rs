@@ -193,7 +193,14 @@ pub const COMMANDS: &[Entry] = &[
     entry(Command::Down, "down", &[Key::plain(KeyCode::Down)], "", "the row below", Group::Choose),
     entry(Command::PageUp, "page-up", &[Key::plain(KeyCode::PageUp)], "", "ten rows up", Group::Choose),
     entry(Command::PageDown, "page-down", &[Key::plain(KeyCode::PageDown)], "", "ten rows down", Group::Choose),
-    entry(Command::NextPane, "next-pane", &[Key::plain(KeyCode::Tab)], "pane", "keys go to the next pane", Group::Choose),
+    entry(
+        Command::NextPane,
+        "next-pane",
+        &[Key::plain(KeyCode::Tab)],
+        "pane",
+        "keys go to the next pane",
+        Group::Choose,
+    ),
     entry(
         Command::PreviousPane,
         "previous-pane",
@@ -260,7 +267,14 @@ pub const COMMANDS: &[Entry] = &[
         "Elevation: the fall to scale, with its dimensions",
         Group::View,
     ),
-    entry(Command::History, "history", &[Key::letter('2')], "", "History: travel and line force over time", Group::View),
+    entry(
+        Command::History,
+        "history",
+        &[Key::letter('2')],
+        "",
+        "History: travel and line force over time",
+        Group::View,
+    ),
     entry(Command::Margins, "margins", &[Key::letter('3')], "", "Margins: every check with its limit", Group::View),
     entry(Command::NextView, "next-view", &[Key::letter('v')], "view", "the next view", Group::View),
     entry(

@@ -99,7 +99,9 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
             Row::Section(title) => {
                 put(buffer, area, 1, line, &fit(title, usize::from(area.width.saturating_sub(2))), model.theme.quiet());
             }
-            Row::Input(index) => draw_input(buffer, Rect { y: area.y + line, height: 1, ..area }, model, *index, &columns),
+            Row::Input(index) => {
+                draw_input(buffer, Rect { y: area.y + line, height: 1, ..area }, model, *index, &columns)
+            }
         }
     }
     draw_scroll_marks(buffer, area, model, (first, shown, rows.len()));
@@ -126,7 +128,12 @@ fn draw_input(buffer: &mut Buffer, row: Rect, model: &Model, index: usize, colum
     let label = split(&input.path).1.replace('_', " ");
     put(buffer, row, 2, 0, &fit(&label, usize::from(columns.label.saturating_sub(2))), style);
     if let (true, Mode::Typing(typing)) = (is_chosen, &model.mode) {
-        return draw_typing(buffer, Rect { x: row.x + columns.label, width: row.width - columns.label, ..row }, model, typing);
+        return draw_typing(
+            buffer,
+            Rect { x: row.x + columns.label, width: row.width - columns.label, ..row },
+            model,
+            typing,
+        );
     }
     let value = Rect { x: row.x + 1 + columns.label, width: columns.value, ..row };
     put_right(buffer, value, 0, &value_text(&input.measure), style);
