@@ -172,6 +172,7 @@ fn arrest_force_is_judged_by_the_named_set() {
     assert_eq!(at("ca-on", 7999.0).verdict, Verdict::Holds);
     assert_eq!(at("ca-ab", 6000.5).verdict, Verdict::Short);
     assert_eq!(at("au-qld", 6000.5).verdict, Verdict::Short);
+    assert_eq!(at("us-1926", 5000.0).basis.words, "us-1926: 1800 lbf, 29 CFR 1926.502(d)(16)(ii) (published)");
     assert!(at("us-1926", 5000.0).note.unwrap().contains("other sets allow 6 kN"));
     assert_eq!(at("eu-363", 5000.0).note, None);
     assert_eq!(at("eu-363", 5000.0).basis.words, "eu-363: EN 363 as applied in DGUV Regel 112-198 s.5.1 (published)");
