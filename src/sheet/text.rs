@@ -37,6 +37,9 @@ fn head(page: &mut Page, report: &Report) {
     }
     page.wrapped("file   ", &report.file, Tone::Plain);
     let datum = report.scenario.datum.as_deref().unwrap_or("not stated");
+    if let Some(notes) = &report.scenario.notes {
+        page.wrapped("notes  ", notes, Tone::Plain);
+    }
     page.wrapped("datum  ", &format!("elevation 0 is: {datum}"), Tone::Plain);
     page.gap();
 }
