@@ -6,6 +6,7 @@ use screen_support::{Bench, LOAD, ROOF};
 use std::time::Duration;
 use underfoot::quantity::UnitSystem;
 use underfoot::scenario::Document;
+use underfoot::tui::layout::Panes;
 use underfoot::tui::lean::Lean;
 use underfoot::tui::message::{Effect, Message};
 use underfoot::tui::model::{Exit, Mode, Pane, View, Window};
@@ -374,14 +375,14 @@ fn a_click_chooses_inputs_tabs_checks_and_events() {
 #[test]
 fn dragging_on_the_play_bar_scrubs() {
     let mut bench = Bench::roof();
-    let (_, row) = bench.find("paused");
-    let (left, _) = bench.find("┼");
-    let window = bench.model.window_s();
-    bench.mouse(MouseEventKind::Drag(MouseButton::Left), left + 20, row);
-    let there = bench.model.play.time_s;
-    assert!(there > window.0 && there < window.1);
-    bench.mouse(MouseEventKind::Drag(MouseButton::Left), left + 10, row);
-    assert!(bench.model.play.time_s < there);
+    let bar = Panes::of(bench.model.size, &bench.model).unwrap().bar();
+    let (from, to) = bench.model.window_s();
+    for (cell, share) in [(bar.width - 1, 1.0), ((bar.width - 1) / 2, 0.5), (0, 0.0)] {
+        bench.mouse(MouseEventKind::Drag(MouseButton::Left), bar.x + cell, bar.y);
+        let wanted = from + share * (to - from);
+        let one_cell = (to - from) / f64::from(bar.width - 1);
+        assert!((bench.model.play.time_s - wanted).abs() <= one_cell, "{} {wanted}", bench.model.play.time_s);
+    }
 }
 
 #[test]

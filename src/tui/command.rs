@@ -193,7 +193,7 @@ pub const COMMANDS: &[Entry] = &[
     entry(Command::Down, "down", &[Key::plain(KeyCode::Down)], "", "the row below", Group::Choose),
     entry(Command::PageUp, "page-up", &[Key::plain(KeyCode::PageUp)], "", "ten rows up", Group::Choose),
     entry(Command::PageDown, "page-down", &[Key::plain(KeyCode::PageDown)], "", "ten rows down", Group::Choose),
-    entry(Command::NextPane, "next-pane", &[Key::plain(KeyCode::Tab)], "pane", "keys go to the next pane", Group::Choose),
+    entry(Command::NextPane, "next-pane", &[Key::plain(KeyCode::Tab)], "", "keys go to the next pane", Group::Choose),
     entry(
         Command::PreviousPane,
         "previous-pane",
@@ -214,7 +214,7 @@ pub const COMMANDS: &[Entry] = &[
         Command::Lower,
         "lower",
         &[Key::plain(KeyCode::Left), Key::letter('-')],
-        "lower",
+        "",
         "lower the chosen input by a small step",
         Group::Change,
     ),
@@ -242,7 +242,6 @@ pub const COMMANDS: &[Entry] = &[
         "type a value with its unit, or a band such as 80..100..120 kg; enter takes it, esc leaves it",
         Group::Change,
     ),
-    entry(Command::Restore, "restore", &[Key::letter('f')], "file's value", "back to the file's value", Group::Change),
     entry(
         Command::Undo,
         "undo",
@@ -251,7 +250,16 @@ pub const COMMANDS: &[Entry] = &[
         "take back the last change",
         Group::Change,
     ),
-    entry(Command::Redo, "redo", &[Key::letter('y'), Key::ctrl('y')], "redo", "make it again", Group::Change),
+    entry(
+        Command::Save,
+        "save",
+        &[Key::letter('s'), Key::ctrl('s')],
+        "save",
+        "write the changed values to the file; comments and order stay",
+        Group::File,
+    ),
+    entry(Command::Redo, "redo", &[Key::letter('y'), Key::ctrl('y')], "", "make it again", Group::Change),
+    entry(Command::Restore, "restore", &[Key::letter('f')], "", "back to the file's value", Group::Change),
     entry(
         Command::Elevation,
         "elevation",
@@ -281,14 +289,6 @@ pub const COMMANDS: &[Entry] = &[
     entry(Command::EventOn, "event-on", &[Key::letter('n')], "next event", "the next event", Group::Play),
     entry(Command::ToStart, "to-start", &[Key::plain(KeyCode::Home)], "", "the start of the fall", Group::Play),
     entry(Command::ToEnd, "to-end", &[Key::plain(KeyCode::End)], "", "the end of the motion", Group::Play),
-    entry(
-        Command::Save,
-        "save",
-        &[Key::letter('s'), Key::ctrl('s')],
-        "save",
-        "write the changed values to the file; comments and order stay",
-        Group::File,
-    ),
     entry(
         Command::Reload,
         "reload",

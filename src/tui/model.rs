@@ -169,7 +169,7 @@ pub struct Model {
     pub theme: Theme,
     /// Size of the terminal.
     pub size: Size,
-    /// The inputs of the document, in file order.
+    /// The inputs of the document, in file order; those of no section last.
     pub inputs: Vec<Input>,
     /// Which way raising each input moves the governing margin; same order as the inputs.
     pub leans: Vec<Lean>,
@@ -285,7 +285,7 @@ impl Model {
     /// Solves the present document; a failure keeps the last report, marked as stale by the fault.
     pub fn recompute(&mut self) {
         let chosen = self.chosen().map(|input| input.path.clone());
-        self.inputs = inputs(self.document.scenario());
+        self.inputs = sections_first(inputs(self.document.scenario()));
         if let Some(index) = chosen.and_then(|path| self.inputs.iter().position(|input| input.path == path)) {
             self.input = index;
         }
@@ -332,4 +332,10 @@ fn words(error: &ReportError) -> String {
         },
         ReportError::Estimate(_) => error.to_string(),
     }
+}
+
+/// Keys of no section (gravity) stand first in a file and last on the screen.
+fn sections_first(mut inputs: Vec<Input>) -> Vec<Input> {
+    inputs.sort_by_key(|input| !input.path.contains('.'));
+    inputs
 }

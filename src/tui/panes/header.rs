@@ -34,7 +34,7 @@ fn right_words(model: &Model) -> String {
         UnitSystem::Metric => "metric",
         UnitSystem::Us => "US units",
     };
-    let clock = model.answer.report.as_ref().map_or_else(String::new, |report| {
+    let clock = model.answer.current().map_or_else(|| "no current run".to_owned(), |report| {
         let ending = super::verdict::ending(&report.estimate);
         format!("{:.2} s of {:.2} s, {ending}", model.play.time_s, model.end_s())
     });

@@ -22,6 +22,8 @@ pub struct Picture {
     pub hang_m: Option<f64>,
     /// Travel at the lowest point, m past taut.
     pub lowest_m: Option<f64>,
+    /// Largest line force of the run, N.
+    pub peak_n: f64,
     /// Limit of the line force, N.
     pub limit_n: Option<f64>,
     /// Play head, s.
@@ -136,7 +138,7 @@ fn force_plot(picture: &Picture, theme: Theme) -> Plot {
         style: theme.plain(),
     });
     Plot {
-        title: format!("line force ({})", picture.force.symbol),
+        title: format!("line force ({}), peak {}", picture.force.symbol, picture.force.text(picture.peak_n)),
         across: picture.window_s,
         along: (0.0, along.1),
         grows: Grows::Up,

@@ -61,7 +61,7 @@ fn draw_title(buffer: &mut Buffer, area: Rect, model: &Model, (above, below): (u
         return put(buffer, area, 9, 0, words, model.theme.fault());
     }
     if above + below > 0 {
-        put(buffer, area, 9, 0, &format!("{above} more above, {below} below"), model.theme.quiet());
+        put(buffer, area, 9, 0, &super::more_words(above, below), model.theme.quiet());
     }
     if rows_each(area) == 1 {
         let columns = Columns::of(listed(model), area.width);

@@ -28,9 +28,6 @@ pub fn draw(buffer: &mut Buffer, area: Rect, views: &[View], model: &Model) {
         put(buffer, area, column, 0, &text, style);
         column += cells(&text) + 1;
     }
-    if model.answer.is_stale() {
-        put(buffer, area, column, 0, "NOT CURRENT", model.theme.fault());
-    }
 }
 
 /// The view whose tab holds a column.
