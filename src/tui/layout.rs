@@ -70,7 +70,7 @@ impl Panes {
 
     fn place_body(&mut self, rest: Rect, has_timeline: bool) {
         let inputs_width = match rest.width {
-            0..70 => 30,
+            0..70 => 28,
             70..100 => 34,
             100..132 => 40,
             _ => 43 + (rest.width - 132).min(80) / 8,

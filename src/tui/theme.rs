@@ -34,8 +34,8 @@ impl Theme {
 
     /// Text of second rank.
     #[must_use]
-    pub fn quiet(self) -> Style {
-        self.pick(Color::DarkGray, Modifier::DIM)
+    pub const fn quiet(self) -> Style {
+        Style::new().add_modifier(Modifier::DIM)
     }
 
     /// Headings.
@@ -59,7 +59,7 @@ impl Theme {
         if has_keys {
             Style::new().add_modifier(Modifier::REVERSED)
         } else {
-            Style::new().add_modifier(Modifier::BOLD | Modifier::UNDERLINED)
+            Style::new().add_modifier(Modifier::BOLD)
         }
     }
 
