@@ -1,8 +1,8 @@
 //! Every check: its verdict, its open cases, and where its limit is said to come from.
+#![expect(clippy::unwrap_used, clippy::panic, reason = "a test stops at what it cannot have")]
+
 use underfoot::estimate::{Number, Numbers, Validity, Value};
-use underfoot::margin::{
-    CheckKind, Margin, Rules, UnknownBasis, Verdict, checks, judge, margins_from, remarks, worst,
-};
+use underfoot::margin::{CheckKind, Margin, Rules, UnknownBasis, Verdict, checks, judge, margins_from, remarks, worst};
 use underfoot::quantity::{Dimension, Measure, Unit};
 use underfoot::scenario::{
     Absorber, Anchor, AnchorKind, DampingLaw, Fall, Limits, Line, LineKind, Obstacle, OwnLimit, Place, Scenario,
@@ -172,6 +172,8 @@ fn arrest_force_is_judged_by_the_named_set() {
     assert_eq!(at("ca-on", 7999.0).verdict, Verdict::Holds);
     assert_eq!(at("ca-ab", 6000.5).verdict, Verdict::Short);
     assert_eq!(at("au-qld", 6000.5).verdict, Verdict::Short);
+    assert!(at("us-1926", 5000.0).note.unwrap().contains("other sets allow 6 kN"));
+    assert_eq!(at("eu-363", 5000.0).note, None);
     assert_eq!(at("eu-363", 5000.0).basis.words, "eu-363: EN 363 as applied in DGUV Regel 112-198 s.5.1 (published)");
 }
 
@@ -366,7 +368,10 @@ fn a_low_stretch_rope_is_judged_up_to_its_fall_factor() {
     let at = |file: &Scenario, factor| one(file, &[("fall_factor", factor)], "arrest_force").verdict;
     assert_eq!(at(&file, 0.1 + 0.2), Verdict::Holds);
     assert_eq!(at(&file, 0.31), Verdict::Open);
-    assert_eq!(one(&file, &[("fall_factor", 0.3), ("arrest_force_peak", 6000.0)], "arrest_force").verdict, Verdict::Short);
+    assert_eq!(
+        one(&file, &[("fall_factor", 0.3), ("arrest_force_peak", 6000.0)], "arrest_force").verdict,
+        Verdict::Short
+    );
     file.line.stretch = StretchLaw::StaticElongation {
         percent: Measure::exact(0.04, Unit::Percent),
         from: kilograms(50.0),
@@ -408,7 +413,8 @@ fn rules_for_persons_are_not_applied_to_loads() {
     let mut file = scenario(Some("us-1926"));
     file.subject.kind = SubjectKind::Load;
     file.subject.mass = kilograms(400.0);
-    for id in ["arrest_force", "free_fall", "deceleration_distance", "subject_mass", "anchor_strength", "line_strength"] {
+    for id in ["arrest_force", "free_fall", "deceleration_distance", "subject_mass", "anchor_strength", "line_strength"]
+    {
         assert!(!has(&file, id), "{id}");
     }
     let anchor = one(&file, &[], "anchor_load");
@@ -464,7 +470,10 @@ fn without_limits_only_clearance_stroke_ratings_and_stated_capacities_are_checke
     let file = scenario(None);
     let mut ids: Vec<_> = all(&file, &[]).into_iter().map(|m| m.id).collect();
     ids.sort();
-    assert_eq!(ids, ["anchor_load", "clearance.plant-room_roof", "line_load", "rated_free_fall", "rated_mass", "stroke"]);
+    assert_eq!(
+        ids,
+        ["anchor_load", "clearance.plant-room_roof", "line_load", "rated_free_fall", "rated_mass", "stroke"]
+    );
     assert!(remarks(&Rules::of(&file).unwrap(), &file)[0].contains("no limits are stated"));
 }
 
@@ -519,8 +528,14 @@ fn the_governing_check_comes_first() {
     assert_eq!((list[0].id.as_str(), list[1].id.as_str()), ("clearance.plant-room_roof", "arrest_force"));
     let order: Vec<_> = list.iter().map(|m| m.verdict).collect();
     assert!(order.windows(2).all(|pair| pair[0] >= pair[1]), "{order:?}");
-    let holding: Vec<f64> = list[2..].iter().map(|m| m.margin.unwrap() / m.limit.unwrap()).collect();
-    assert!(holding.windows(2).all(|pair| pair[0] <= pair[1]), "{holding:?}");
+    let holding: Vec<(&str, f64)> =
+        list[2..].iter().map(|m| (m.id.as_str(), m.margin.unwrap() / m.limit.unwrap())).collect();
+    let stated = holding.iter().position(|(id, _)| *id == "lanyard_length").unwrap();
+    assert_eq!(holding[stated].1, 0.0);
+    for group in [&holding[..stated], &holding[stated..]] {
+        assert!(group.len() > 2 && group.windows(2).all(|pair| pair[0].1 <= pair[1].1), "{holding:?}");
+    }
+    assert!(holding[..stated].iter().all(|(id, _)| !["rated_mass", "anchor_strength"].contains(id)), "{holding:?}");
 }
 
 #[test]

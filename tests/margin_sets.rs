@@ -138,7 +138,8 @@ fn the_list_says_which_values_are_from_memory() {
 fn the_list_shows_where_sources_disagree() {
     let text = limits_text(Paint::Plain);
     assert_eq!(disagreements().len(), 5);
-    for wanted in ["6 kN", "8 kN (1800 lbf)", "1.07 m", "1.08 m", "1.1 m", "2 ft", "3 ft", "1.5 m", "below the anchor"] {
+    for wanted in ["6 kN", "8 kN (1800 lbf)", "1.07 m", "1.08 m", "1.1 m", "2 ft", "3 ft", "1.5 m", "below the anchor"]
+    {
         let shown = text.split("where the sources disagree").nth(1).unwrap();
         assert!(shown.contains(wanted), "{wanted}");
     }

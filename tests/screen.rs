@@ -174,7 +174,10 @@ fn saving_writes_the_value_and_keeps_every_comment() {
     let effects = bench.key(KeyCode::Char('s'));
     saved_to_disk(&mut bench, effects);
     assert!(!bench.model.is_edited());
-    assert_eq!(std::fs::read_to_string(&bench.path).unwrap(), ROOF.replace("length = \"1.8 m\"", "length = \"1.79 m\""));
+    assert_eq!(
+        std::fs::read_to_string(&bench.path).unwrap(),
+        ROOF.replace("length = \"1.8 m\"", "length = \"1.79 m\"")
+    );
 }
 
 #[test]
@@ -313,7 +316,9 @@ fn arrows_agree_with_what_a_larger_step_does() {
         bench.choose(&path);
         bench.key(KeyCode::Right);
         let Some(report) = bench.model.answer.current() else { continue };
-        let Some(now) = report.margins.iter().find(|margin| margin.id == base.id).and_then(|m| m.margin) else { continue };
+        let Some(now) = report.margins.iter().find(|margin| margin.id == base.id).and_then(|m| m.margin) else {
+            continue;
+        };
         let change = now - base.margin.unwrap();
         match lean {
             Lean::More => assert!(change > 0.0, "{path} {change}"),
@@ -435,10 +440,29 @@ fn the_caution_stands_in_every_frame_at_every_size() {
 fn no_key_and_no_size_makes_the_screen_panic() {
     let mut bench = Bench::roof();
     let codes = [
-        KeyCode::Up, KeyCode::Down, KeyCode::Left, KeyCode::Right, KeyCode::Tab, KeyCode::Enter, KeyCode::Esc,
-        KeyCode::PageDown, KeyCode::PageUp, KeyCode::Home, KeyCode::End, KeyCode::Char(' '), KeyCode::Char('2'),
-        KeyCode::Char('3'), KeyCode::Char('v'), KeyCode::Char('n'), KeyCode::Char('?'), KeyCode::Char('w'),
-        KeyCode::Char('m'), KeyCode::Char('u'), KeyCode::Char('9'), KeyCode::Backspace, KeyCode::Delete,
+        KeyCode::Up,
+        KeyCode::Down,
+        KeyCode::Left,
+        KeyCode::Right,
+        KeyCode::Tab,
+        KeyCode::Enter,
+        KeyCode::Esc,
+        KeyCode::PageDown,
+        KeyCode::PageUp,
+        KeyCode::Home,
+        KeyCode::End,
+        KeyCode::Char(' '),
+        KeyCode::Char('2'),
+        KeyCode::Char('3'),
+        KeyCode::Char('v'),
+        KeyCode::Char('n'),
+        KeyCode::Char('?'),
+        KeyCode::Char('w'),
+        KeyCode::Char('m'),
+        KeyCode::Char('u'),
+        KeyCode::Char('9'),
+        KeyCode::Backspace,
+        KeyCode::Delete,
     ];
     let mut seed = 12_345_u32;
     for _ in 0..600 {

@@ -169,7 +169,16 @@ fn history_names_its_axes_its_levels_and_its_modes() {
     let rows = draw_picture(72, 28);
     println!("{}", rows.join("\n"));
     let all = rows.join("\n");
-    for word in ["travel past taut", "(m)", "line force (kN), peak 3.72 kN", "limit 6.00 kN", "hangs at 0.30 m", "lowest 0.93 m", "= taut", "~ slack"] {
+    for word in [
+        "travel past taut",
+        "(m)",
+        "line force (kN), peak 3.72 kN",
+        "limit 6.00 kN",
+        "hangs at 0.30 m",
+        "lowest 0.93 m",
+        "= taut",
+        "~ slack",
+    ] {
         assert!(all.contains(word), "no `{word}` in\n{all}");
     }
 }

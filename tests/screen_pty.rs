@@ -193,9 +193,13 @@ fn no_color_leaves_the_marks_and_drops_the_colours() {
     session.wait_for("quit");
     {
         let terminal = session.terminal.lock().unwrap();
-        let cells: Vec<&vt100::Cell> =
-            (0..40).flat_map(|row| (0..100).map(move |column| (row, column))).filter_map(|(row, column)| terminal.screen().cell(row, column)).collect();
-        assert!(cells.iter().all(|cell| cell.fgcolor() == vt100::Color::Default && cell.bgcolor() == vt100::Color::Default));
+        let cells: Vec<&vt100::Cell> = (0..40)
+            .flat_map(|row| (0..100).map(move |column| (row, column)))
+            .filter_map(|(row, column)| terminal.screen().cell(row, column))
+            .collect();
+        assert!(
+            cells.iter().all(|cell| cell.fgcolor() == vt100::Color::Default && cell.bgcolor() == vt100::Color::Default)
+        );
         assert!(cells.iter().any(|cell| cell.inverse()), "the caution is no longer set off");
     }
     session.press("q");

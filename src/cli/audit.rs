@@ -3,7 +3,7 @@ use super::exit::Code;
 use super::options::AuditArgs;
 use super::output::{self, PAINT, Reader};
 use super::run::{Failure, load_and_report};
-use crate::scenario::{Faults, Loaded};
+use crate::scenario::doubts;
 use crate::sheet::{Audited, Finding, audit_head, audit_json, audit_text, tally};
 use std::io;
 use std::path::{Path, PathBuf};
@@ -40,7 +40,7 @@ fn one_file(path: &Path) -> (Audited, Code) {
     let (finding, code) = match load_and_report(path) {
         Ok((loaded, report)) => {
             let code = Code::from(report.verdict);
-            let doubts = doubts_of(&file, &loaded);
+            let doubts = doubts(&file, &loaded.text, &loaded.scenario);
             (Finding::Judged(Box::new(report), doubts), code)
         }
         Err(failure) => {
@@ -57,10 +57,6 @@ fn finding_of(failure: Failure) -> Finding {
         Failure::Unreadable(why) => Finding::Unreadable(why),
         Failure::NotComputed { reason, .. } => Finding::NotComputed(reason),
     }
-}
-
-fn doubts_of(file: &str, loaded: &Loaded) -> Faults {
-    Faults { file: file.to_owned(), text: loaded.text.clone(), faults: Vec::new() }
 }
 
 /// Files as given, folders searched; in the order given, a folder's files by name.

@@ -56,14 +56,15 @@ fn dispatch(arguments: Arguments) -> Next {
     }
 }
 
-/// The screen needs a terminal and a file without faults; both are looked at before anything is drawn.
+/// The screen needs a terminal and a file without faults; both are looked at before anything is drawn. What cannot be
+/// computed is shown on the screen, where it can be put right.
 fn screen(view: ViewArgs) -> Next {
     if !(std::io::stdout().is_terminal() && std::io::stdin().is_terminal()) {
         output::message("the screen needs a terminal; use `underfoot run FILE` for text, or `--json` for JSON");
         return Next::Exit(Code::WrongInput);
     }
-    match run::load_and_report(&view.file) {
-        Ok(_) => Next::View { path: view.file, units: view.units.system() },
+    match run::load_for_screen(&view.file) {
+        Ok(()) => Next::View { path: view.file, units: view.units.system() },
         Err(failure) => {
             failure.print();
             Next::Exit(failure.code())

@@ -3,7 +3,7 @@ use super::exit::Code;
 use super::options::{LimitsArgs, NewArgs};
 use super::output::{self, PAINT};
 use crate::scenario::new_file;
-use crate::sheet::{limits_json, limits_text};
+use crate::sheet::{CAUTION_LINE, limits_json, limits_text};
 use std::fs::OpenOptions;
 use std::io::{self, ErrorKind, Write};
 use std::path::Path;
@@ -16,7 +16,7 @@ pub fn limits(args: &LimitsArgs) -> Code {
 
 /// Prints the annotated scenario or writes it to a file that does not exist yet.
 pub fn new(args: &NewArgs) -> Code {
-    let text = new_file();
+    let text = format!("# {CAUTION_LINE}\n\n{}", new_file());
     let Some(path) = &args.output else {
         output::results(&text);
         return Code::Holds;

@@ -24,14 +24,19 @@ pub struct Arguments {
 #[derive(Debug, Subcommand)]
 pub enum Command {
     /// Open the screen on a scenario file (the same as `underfoot FILE`)
+    #[command(before_help = CAUTION_LINE)]
     View(ViewArgs),
     /// Print the estimate and its margins
+    #[command(before_help = CAUTION_LINE)]
     Run(RunArgs),
     /// Review files and folders: faults, doubtful inputs, margins, one verdict a file
+    #[command(before_help = CAUTION_LINE)]
     Audit(AuditArgs),
     /// List the built-in published limits with clause, year and how each value was confirmed
+    #[command(before_help = CAUTION_LINE)]
     Limits(LimitsArgs),
     /// Print an annotated scenario to start from
+    #[command(before_help = CAUTION_LINE)]
     New(NewArgs),
 }
 

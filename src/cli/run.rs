@@ -4,6 +4,7 @@ use super::locate::{one_fault, unknown_basis};
 use super::options::RunArgs;
 use super::output::{self, PAINT, Reader};
 use crate::estimate::EstimateError;
+use crate::margin::Rules;
 use crate::scenario::{Faults, LoadError, Loaded, load, read};
 use crate::sheet::{CAUTION_LINE, Layout, Report, ReportError, csv, json, report, text};
 use std::io::Read;
@@ -94,12 +95,23 @@ fn rendered(report: &Report, args: &RunArgs, place: usize) -> String {
 /// # Errors
 /// See [`Failure`].
 pub fn load_and_report(path: &Path) -> Result<(Loaded, Report), Failure> {
-    let file = path.display().to_string();
-    let loaded = if path == Path::new("-") { standard_input()? } else { from_disk(path)? };
+    let piped = path == Path::new("-");
+    let file = if piped { STANDARD_INPUT.to_owned() } else { path.display().to_string() };
+    let loaded = if piped { standard_input()? } else { from_disk(path)? };
     match report(&file, &loaded.text, &loaded.scenario) {
         Ok(report) => Ok((loaded, report)),
         Err(error) => Err(no_report(file, &loaded.text, error)),
     }
+}
+
+/// Looks whether a file can be edited on the screen: it reads without a fault and its set of limits is known.
+///
+/// # Errors
+/// See [`Failure`].
+pub fn load_for_screen(path: &Path) -> Result<(), Failure> {
+    let loaded = from_disk(path)?;
+    let unknown = |basis| Failure::Refused(unknown_basis(&path.display().to_string(), &loaded.text, &basis));
+    Rules::of(&loaded.scenario).map(|_| ()).map_err(unknown)
 }
 
 fn from_disk(path: &Path) -> Result<Loaded, Failure> {
@@ -109,6 +121,8 @@ fn from_disk(path: &Path) -> Result<Loaded, Failure> {
     })
 }
 
+/// The name of standard input in results and messages.
+const STANDARD_INPUT: &str = "standard input";
 /// Largest text read from standard input, as for files: 1 MiB.
 const LARGEST_INPUT: u64 = 1 << 20;
 
@@ -124,7 +138,7 @@ fn standard_input() -> Result<Loaded, Failure> {
     }
     let text = String::from_utf8(bytes)
         .map_err(|_| Failure::Unreadable("standard input is not UTF-8 text; save the scenario as UTF-8".to_owned()))?;
-    let scenario = read("standard input", &text).map_err(Failure::Refused)?;
+    let scenario = read(STANDARD_INPUT, &text).map_err(Failure::Refused)?;
     Ok(Loaded { text, scenario })
 }
 
@@ -132,7 +146,7 @@ fn no_report(file: String, text: &str, error: ReportError) -> Failure {
     match error {
         ReportError::Basis(unknown) => Failure::Refused(unknown_basis(&file, text, &unknown)),
         ReportError::Estimate(EstimateError::Geometry { message, hint, path }) => {
-            Failure::Refused(one_fault(&file, text, path, message, "numbers that agree", hint))
+            Failure::Refused(one_fault(&file, text, path, message, "expected numbers that agree", hint))
         }
         ReportError::Estimate(other) => Failure::NotComputed { file, reason: other.to_string() },
     }

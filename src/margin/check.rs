@@ -1,5 +1,6 @@
 //! The checks of one run.
-use super::numeric::{Check, checks};
+use super::judge::Check;
+use super::numeric::checks;
 use super::{Rules, Verdict, margin_of};
 use crate::estimate::{Estimate, Numbers, Validity};
 use crate::quantity::{Dimension, UnitSystem};
@@ -59,8 +60,8 @@ pub struct UnknownBasis {
     pub nearest: Option<&'static str>,
 }
 
-/// Every check that applies to a scenario and its estimate, the governing one first: worst verdict first, then the
-/// least room as a share of the limit. Notes are in metric units.
+/// Every check that applies to a scenario and its estimate, the governing one first (see [`governing_first`]). Notes are
+/// in metric units.
 ///
 /// # Errors
 /// When the scenario names an unknown set.
@@ -83,11 +84,15 @@ pub fn margins_from(
     Ok(list.iter().map(|check| margin_of(&rules, scenario, validity, check, UnitSystem::Metric)).collect())
 }
 
-/// The order of checks: worst verdict first, then the least room as a share of the limit, then by kind.
+/// The order of checks: worst verdict first; within one verdict what the run gives before what only compares two
+/// stated values (a lanyard of just the length allowed does not govern the fall); then the least room as a share of
+/// the limit; then by kind.
 #[must_use]
 pub fn governing_first(a: &Check, b: &Check) -> std::cmp::Ordering {
+    let from_run = |check: &Check| check.kind.needs_model();
     b.verdict
         .cmp(&a.verdict)
+        .then_with(|| from_run(b).cmp(&from_run(a)))
         .then_with(|| a.relative().total_cmp(&b.relative()))
         .then_with(|| a.kind.cmp(&b.kind))
 }

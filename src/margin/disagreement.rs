@@ -37,7 +37,11 @@ const DISAGREEMENTS: &[Disagreement] = &[
     },
     Disagreement {
         topic: "reserve below the feet",
-        readings: &[("1 m", "DGUV Regel 112-198 s.7.3"), ("2 ft", "practice, no source"), ("3 ft", "practice, no source")],
+        readings: &[
+            ("1 m", "DGUV Regel 112-198 s.7.3"),
+            ("2 ft", "practice, no source"),
+            ("3 ft", "practice, no source"),
+        ],
         here: "each obstacle states its own reserve; where it states less than the set, the check says so",
     },
     Disagreement {

@@ -57,8 +57,6 @@ pub enum LimitKind {
     AnchorFactor,
     /// Least static strength of the line.
     LineStrength,
-    /// Least static strength of a line of another material.
-    LineStrengthConditional,
     /// Factor on the largest line force.
     LineFactor,
     /// Factor on the largest tension of a horizontal lifeline.
@@ -165,7 +163,7 @@ pub struct PublishedLimit {
     pub clause: &'static str,
     /// How confirmed.
     pub mark: Mark,
-    /// The rule is met as well when the limit of this kind is met.
+    /// The rule is met as well when another limit of the set, of this kind, is met.
     pub or: Option<LimitKind>,
     /// What else the source says.
     pub remark: Option<&'static str>,

@@ -1,6 +1,7 @@
 //! Published limits as data, the checks against them, and the verdicts.
 mod check;
 mod disagreement;
+mod judge;
 mod limit;
 mod numeric;
 mod rules;
@@ -10,8 +11,9 @@ mod words;
 
 pub use check::{Basis, Margin, Sense, UnknownBasis, governing_first, margins, margins_from};
 pub use disagreement::{Disagreement, disagreements};
+pub use judge::{Cause, Check, CheckKind, judge};
 pub use limit::{Applies, Bound, LimitKind, LimitSet, Mark, PublishedLimit, WrittenFor, limit_set, limit_sets};
-pub use numeric::{Cause, Check, CheckKind, checks, judge};
+pub use numeric::checks;
 pub use rules::{Rules, Ruling};
 pub use verdict::{Verdict, worst};
 pub use words::{margin_of, remarks};

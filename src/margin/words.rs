@@ -1,8 +1,9 @@
 //! The words of a check: id, label, where its limit comes from, and what must be read beside it.
 use super::check::{Basis, Margin};
-use super::limit::{LimitKind, Mark, PublishedLimit};
-use super::numeric::{Cause, Check, CheckKind};
+use super::judge::{Cause, Check, CheckKind};
+use super::limit::{Applies, LimitKind, Mark, PublishedLimit};
 use super::rules::{Rules, Ruling};
+use super::verdict::Verdict;
 use crate::estimate::Validity;
 use crate::quantity::{UnitSystem, format_si, format_unit};
 use crate::scenario::Scenario;
@@ -42,10 +43,16 @@ pub fn remarks(rules: &Rules, scenario: &Scenario) -> Vec<String> {
             list.push(format!("`{name}` was written for persons: its limits are not applied to a load"));
         }
     } else if scenario.limits.own.is_empty() {
-        list.push("no limits are stated: forces and distances are not judged, only clearance, stroke, ratings and capacity".to_owned());
+        list.push(
+            "no limits are stated: forces and distances are not judged, only clearance, stroke, ratings and capacity"
+                .to_owned(),
+        );
     }
     list
 }
+
+/// The lower of the two arrest forces on which the sources disagree, N.
+const LOWER_FORCE_N: f64 = 6000.0;
 
 struct Words<'a> {
     rules: &'a Rules,
@@ -158,12 +165,12 @@ impl Words<'_> {
             Cause::NoNumber => self.missing_number(check.kind),
             Cause::NotStated => missing_key(check.kind).to_owned(),
             Cause::NotANumber => "the numbers of this run are out of range".to_owned(),
-            Cause::NotValid => {
-                self.validity.iter().map(|v| v.words(self.system)).collect::<Vec<_>>().join("; ")
-            }
+            Cause::NotValid => self.validity.iter().map(|v| v.words(self.system)).collect::<Vec<_>>().join("; "),
             Cause::OutsideSet => self.outside(),
             Cause::OtherRule => self.other_rule(check.kind),
-            Cause::StrokeUsedUp => "the stroke is used up: the absorber is locked and the force rises beyond it".to_owned(),
+            Cause::StrokeUsedUp => {
+                "the stroke is used up: the absorber is locked and the force rises beyond it".to_owned()
+            }
             Cause::OnTheLimit => "the value must stay below the limit; it is on it".to_owned(),
         })
     }
@@ -192,7 +199,9 @@ impl Words<'_> {
 
     fn other_rule(&self, kind: CheckKind) -> String {
         let remark = self.published(kind).and_then(|p| p.remark).unwrap_or("the set accepts another rule instead");
-        format!("less than the published value, but the set accepts another rule ({remark}): a competent person decides")
+        format!(
+            "less than the published value, but the set accepts another rule ({remark}): a competent person decides"
+        )
     }
 
     fn published(&self, kind: CheckKind) -> Option<&'static PublishedLimit> {
@@ -214,9 +223,7 @@ impl Words<'_> {
             CheckKind::Clearance(i) => self.reserve_note(i),
             CheckKind::ArrestForce => self.force_note(),
             CheckKind::DecelerationDistance => self.travel_note(),
-            CheckKind::AnchorStrength | CheckKind::LineStrength if check.cause != Some(Cause::OtherRule) => {
-                self.published(check.kind).and_then(|p| p.remark).map(str::to_owned)
-            }
+            CheckKind::AnchorStrength | CheckKind::LineStrength => self.strength_note(check),
             CheckKind::AnchorLoad if check.limit.is_none() => self.anchor_note(),
             _ => None,
         }
@@ -234,9 +241,12 @@ impl Words<'_> {
     fn force_note(&self) -> Option<String> {
         let factor = self.scenario.subject.body_factor.map(|f| f.si()).filter(|f| *f != 1.0);
         let body = factor.map(|f| format!("largest line force divided by the file's body factor of {f}"));
-        let remark = self.published(CheckKind::ArrestForce).filter(|p| p.kind == LimitKind::ArrestForce);
-        let single_rope = remark.filter(|p| p.applies == super::Applies::SingleRope).and_then(|p| p.remark);
-        let notes: Vec<String> = body.into_iter().chain(single_rope.map(str::to_owned)).collect();
+        let published = self.published(CheckKind::ArrestForce);
+        let rope = |p: &&PublishedLimit| p.applies == Applies::SingleRope;
+        let single_rope = published.filter(rope).and_then(|p| p.remark).map(str::to_owned);
+        let higher = published.filter(|p| !rope(p) && p.si() > LOWER_FORCE_N);
+        let other = higher.map(|_| "other sets allow 6 kN only: see `underfoot limits`".to_owned());
+        let notes: Vec<String> = body.into_iter().chain(single_rope).chain(other).collect();
         (!notes.is_empty()).then(|| notes.join("; "))
     }
 
@@ -245,6 +255,13 @@ impl Words<'_> {
             None => Some("no absorber: the arrest distance is judged, elongation of the line included".to_owned()),
             Some(_) => self.published(CheckKind::DecelerationDistance).and_then(|p| p.remark).map(str::to_owned),
         }
+    }
+
+    /// The other rule of a set is told where it matters; a condition that the file cannot state always is.
+    fn strength_note(&self, check: &Check) -> Option<String> {
+        let published = self.published(check.kind)?;
+        let untold = published.or.is_none() || check.verdict == Verdict::Short;
+        published.remark.filter(|_| untold).map(str::to_owned)
     }
 
     fn anchor_note(&self) -> Option<String> {

@@ -5,7 +5,7 @@ use super::text::{margin_table, sentences, verdict_line};
 use super::{CAUTION_LINE, CAUTIONS, Report};
 use crate::margin::Verdict;
 use crate::quantity::UnitSystem;
-use crate::scenario::{Fault, Faults, Severity};
+use crate::scenario::Faults;
 use serde_json::{Map, Value, json};
 
 /// What became of one file.
@@ -108,34 +108,18 @@ pub fn audit_json(audited: &Audited) -> String {
         Finding::Judged(report, doubts) => {
             object.insert("scenario_sha256".into(), json!(report.scenario_sha256));
             object.insert("faults".into(), json!([]));
-            object.insert("doubts".into(), fault_objects(doubts));
+            object.insert("doubts".into(), json!(doubts.rows()));
             object.insert("margins".into(), report.margins.iter().map(margin).collect());
             object.insert("warnings".into(), json!(report.estimate.warnings));
         }
         Finding::Refused(faults) => {
-            object.insert("faults".into(), fault_objects(faults));
+            object.insert("faults".into(), json!(faults.rows()));
         }
         Finding::Unreadable(why) | Finding::NotComputed(why) => {
             object.insert("reason".into(), json!(why));
         }
     }
     print(&Value::Object(object), Layout::OneLine)
-}
-
-fn fault_objects(faults: &Faults) -> Value {
-    faults.faults.iter().map(|fault| fault_object(faults, fault)).collect()
-}
-
-fn fault_object(faults: &Faults, fault: &Fault) -> Value {
-    let (line, column) = faults.line_column(fault.span.start);
-    json!({
-        "line": line,
-        "column": column,
-        "severity": match fault.severity { Severity::Error => "error", Severity::Doubt => "doubt" },
-        "message": fault.message,
-        "expected": fault.expected,
-        "hint": fault.hint,
-    })
 }
 
 /// The verdicts of an audit in the order in which they are counted.
@@ -151,5 +135,9 @@ pub fn tally(verdicts: &[&str]) -> String {
         .map(|(word, count)| format!("{count} {word}"))
         .collect();
     let files = if verdicts.len() == 1 { "file" } else { "files" };
-    format!("{} {files}: {}", verdicts.len(), if parts.is_empty() { "none judged".to_owned() } else { parts.join(", ") })
+    format!(
+        "{} {files}: {}",
+        verdicts.len(),
+        if parts.is_empty() { "none judged".to_owned() } else { parts.join(", ") }
+    )
 }

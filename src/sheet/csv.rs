@@ -6,8 +6,7 @@ use crate::estimate::{Sample, Trace};
 const ROWS: f64 = 2000.0;
 
 /// Column heads; the caution stands once, in the first row, and travels with the data.
-const HEAD: [&str; 7] =
-    ["time_s", "travel_m", "speed_m_per_s", "line_force_n", "mode", "deployed_m", "caution"];
+const HEAD: [&str; 7] = ["time_s", "travel_m", "speed_m_per_s", "line_force_n", "mode", "deployed_m", "caution"];
 
 /// The trace of a report.
 ///

@@ -16,9 +16,13 @@ pub fn limits_text(paint: Paint) -> String {
     let intro = "Published limits, each as its source states it. Name a set in a file by `basis` below `[limits]`. \
                  The text of the code itself decides; check that it is the one in force.";
     page.wrapped("", intro, Tone::Plain);
-    limit_sets().iter().for_each(|set| one_set(&mut page, set));
+    for set in limit_sets() {
+        one_set(&mut page, set);
+    }
     page.heading("where the sources disagree");
-    disagreements().iter().for_each(|d| one_disagreement(&mut page, d));
+    for disagreement in disagreements() {
+        one_disagreement(&mut page, disagreement);
+    }
     sentences(&mut page, "cautions", CAUTIONS);
     sentences(&mut page, "cautions about equipment", EQUIPMENT_CAUTIONS);
     page.finish()

@@ -1,6 +1,7 @@
 //! A text page: wrapped to a width, cleaned of control characters, painted only when asked.
 use crate::margin::Verdict;
 use anstyle::{AnsiColor, Style};
+use std::fmt::Write;
 use unicode_width::{UnicodeWidthChar, UnicodeWidthStr};
 
 /// Columns of a text page.
@@ -89,7 +90,7 @@ impl Page {
             Paint::Plain => self.text.push_str(words),
             Paint::Colour => {
                 let style = tone.style();
-                self.text.push_str(&format!("{style}{words}{style:#}"));
+                let _ = write!(self.text, "{style}{words}{style:#}");
             }
         }
         self.text.push('\n');

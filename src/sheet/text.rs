@@ -6,6 +6,7 @@ use crate::estimate::{DEFINITIONS, Number, Value};
 use crate::margin::{Margin, Sense, Verdict};
 use crate::quantity::{Dimension, UnitSystem, format_si};
 use crate::scenario::Scenario;
+use unicode_width::UnicodeWidthStr;
 
 /// The whole report as text.
 #[must_use]
@@ -124,13 +125,16 @@ fn group(page: &mut Page, title: &str, report: &Report, system: UnitSystem, belo
     }
     page.heading(title);
     for number in members {
-        let label = number_label(&number.id);
-        page.line(&format!("  {}  {}", pad(&label, 44), pad_left(&number_words(number, system), 16)), Tone::Plain);
+        let cell = pad_left(&number_words(number, system), 16);
+        row(page, "  ", (&number_label(&number.id), 44), &format!("  {cell}"), Tone::Plain);
     }
 }
 
 fn number_label(id: &str) -> String {
-    let label = DEFINITIONS.iter().find(|d| d.id == stem(id)).map_or_else(|| stem(id).replace('_', " "), |d| d.label.to_owned());
+    let label = DEFINITIONS
+        .iter()
+        .find(|d| d.id == stem(id))
+        .map_or_else(|| stem(id).replace('_', " "), |d| d.label.to_owned());
     id.split_once('.').map_or_else(|| label.clone(), |(_, name)| format!("{label}, {name}"))
 }
 
@@ -151,11 +155,22 @@ pub(super) fn margin_table(page: &mut Page, margins: &[Margin], system: UnitSyst
     let head = ["demand", "limit", "room"].map(|h| pad_left(h, 15)).concat();
     page.line(&format!("  {}{head}", pad("", 42)), Tone::Faint);
     for margin in margins {
-        page.line(&margin_row(margin, system), Tone::Verdict(margin.verdict));
+        let lead = format!("  {}", pad(&format!("{} {}", margin.verdict.symbol(), margin.verdict.word()), 9));
+        row(page, &lead, (&margin.label, 33), &margin_cells(margin, system), Tone::Verdict(margin.verdict));
     }
 }
 
-fn margin_row(margin: &Margin, system: UnitSystem) -> String {
+/// A row with its label in a column; a label that is too wide for it stands above its cells.
+fn row(page: &mut Page, lead: &str, (label, width): (&str, usize), cells: &str, tone: Tone) {
+    if label.width() <= width {
+        page.line(&format!("{lead}{}{cells}", pad(label, width)), tone);
+    } else {
+        page.wrapped(lead, label, tone);
+        page.line(&format!("{}{cells}", " ".repeat(lead.width() + width)), tone);
+    }
+}
+
+fn margin_cells(margin: &Margin, system: UnitSystem) -> String {
     let show = |value: Option<f64>| value.map_or_else(|| "-".to_owned(), |v| format_si(v, margin.dimension, system));
     let sign = match margin.sense {
         Sense::AtMost => "<=",
@@ -163,9 +178,7 @@ fn margin_row(margin: &Margin, system: UnitSystem) -> String {
     };
     let limit = margin.limit.map_or_else(|| "-".to_owned(), |l| format!("{sign} {}", show(Some(l))));
     let room = margin.margin.map_or_else(|| "-".to_owned(), |m| signed(m, margin.dimension, system));
-    let cells = [show(margin.demand), limit, room].map(|cell| pad_left(&cell, 15)).concat();
-    let word = format!("{} {}", margin.verdict.symbol(), margin.verdict.word());
-    format!("  {}{}{cells}", pad(&word, 9), pad(&margin.label, 33))
+    [show(margin.demand), limit, room].map(|cell| pad_left(&cell, 15)).concat()
 }
 
 fn signed(value: f64, dimension: Dimension, system: UnitSystem) -> String {

@@ -35,9 +35,18 @@ fn judged_words(scenario: &Scenario, margin: &Margin, numbers: [f64; 3], system:
         let lowest = lowest_part(scenario.subject.kind);
         let name = with_article(&obstacle.name);
         return if demand < 0.0 {
-            format!("{lowest} {} below the top of {name}, {} wanted above it ({room_words})", passes(demand, &show), show(limit))
+            format!(
+                "{lowest} {} below the top of {name}, {} wanted above it ({room_words})",
+                passes(demand, &show),
+                show(limit)
+            )
         } else {
-            format!("{lowest} stop{} {} above {name}, {} wanted ({room_words})", s_of(scenario), show(demand), show(limit))
+            format!(
+                "{lowest} stop{} {} above {name}, {} wanted ({room_words})",
+                s_of(scenario),
+                show(demand),
+                show(limit)
+            )
         };
     }
     let allowed = match margin.sense {

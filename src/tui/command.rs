@@ -268,7 +268,14 @@ pub const COMMANDS: &[Entry] = &[
         "Elevation: the fall to scale, with its dimensions",
         Group::View,
     ),
-    entry(Command::History, "history", &[Key::letter('2')], "", "History: travel and line force over time", Group::View),
+    entry(
+        Command::History,
+        "history",
+        &[Key::letter('2')],
+        "",
+        "History: travel and line force over time",
+        Group::View,
+    ),
     entry(Command::Margins, "margins", &[Key::letter('3')], "", "Margins: every check with its limit", Group::View),
     entry(Command::NextView, "next-view", &[Key::letter('v')], "view", "the next view", Group::View),
     entry(

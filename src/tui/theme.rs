@@ -56,11 +56,7 @@ impl Theme {
     /// The row or tab that is chosen, with or without the keys going there.
     #[must_use]
     pub fn chosen(self, has_keys: bool) -> Style {
-        if has_keys {
-            Style::new().add_modifier(Modifier::REVERSED)
-        } else {
-            Style::new().add_modifier(Modifier::BOLD)
-        }
+        if has_keys { Style::new().add_modifier(Modifier::REVERSED) } else { Style::new().add_modifier(Modifier::BOLD) }
     }
 
     /// The play head and what it points at.

@@ -30,10 +30,8 @@ pub fn view(model: &Model, frame: &mut Frame) {
 }
 
 fn too_small(model: &Model, frame: &mut Frame, area: Rect) {
-    let words = format!(
-        "the screen needs {LEAST_WIDTH}x{LEAST_HEIGHT} (columns x rows), has {}x{}",
-        area.width, area.height
-    );
+    let words =
+        format!("the screen needs {LEAST_WIDTH}x{LEAST_HEIGHT} (columns x rows), has {}x{}", area.width, area.height);
     let room = usize::from(area.width);
     for (row, line) in (0..).zip(super::text::wrap(&words, room)) {
         put(frame.buffer_mut(), area, 0, row, &line, model.theme.heading());

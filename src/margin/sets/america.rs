@@ -1,5 +1,6 @@
 //! Sets of the United States and of Canadian provinces.
-use super::super::limit::{Applies, LimitKind as K, LimitSet, Mark::*, WrittenFor};
+use super::super::limit::Mark::{Memory, Published, Secondary};
+use super::super::limit::{Applies, LimitKind as K, LimitSet, WrittenFor};
 use super::{factor, least, most};
 use crate::quantity::Unit;
 
@@ -16,11 +17,10 @@ pub const US_1926: LimitSet = LimitSet {
             .remark("and no contact with a lower level; the source prints 1.8 m beside it"),
         most(
             K::DecelerationDistance,
-            "deceleration distance (absorber travel, lifeline elongation excluded)",
+            "deceleration distance, 42 in (absorber travel, lifeline elongation excluded)",
             (3.5, Unit::Foot),
             ("29 CFR 1926.502(d)(16)(iv); 1926.500(b) definition", Published),
-        )
-        .remark("42 in"),
+        ),
         factor(
             K::LineFactor,
             "strength of the system: factor on the arrest force",
@@ -107,17 +107,35 @@ pub const CA_QC: LimitSet = LimitSet {
             .or(K::AnchorFactor)
             .remark("or twice the arrest force, certified by an engineer"),
         factor(K::AnchorFactor, "certified anchor: factor on the arrest force", 2.0, (QC_ANCHOR, Published)),
-        most(K::SwingDistance, "sideways swing, distance", (3.0, Unit::Metre), (QC_ANCHOR, Published)).only(Applies::Swing),
+        most(K::SwingDistance, "sideways swing, distance", (3.0, Unit::Metre), (QC_ANCHOR, Published))
+            .only(Applies::Swing),
         most(K::SwingAngle, "sideways swing, angle", (22.0, Unit::Degree), (QC_ANCHOR, Published)).only(Applies::Swing),
-        least(K::SpanCableDiameter, "prescribed horizontal lifeline: steel cable diameter", (12.0, Unit::Millimetre), (QC_SPAN, Published))
+        least(
+            K::SpanCableDiameter,
+            "prescribed horizontal lifeline: steel cable diameter",
+            (12.0, Unit::Millimetre),
+            (QC_SPAN, Published),
+        )
+        .only(Applies::Span),
+        least(
+            K::SpanSlack,
+            "prescribed horizontal lifeline: slack over span",
+            (1.0 / 12.0, Unit::One),
+            (QC_SPAN, Published),
+        )
+        .only(Applies::Span)
+        .remark("1:12"),
+        most(K::SpanLength, "prescribed horizontal lifeline: span", (12.0, Unit::Metre), (QC_SPAN, Published))
             .only(Applies::Span),
-        least(K::SpanSlack, "prescribed horizontal lifeline: slack over span", (1.0 / 12.0, Unit::One), (QC_SPAN, Published))
-            .only(Applies::Span)
-            .remark("1:12"),
-        most(K::SpanLength, "prescribed horizontal lifeline: span", (12.0, Unit::Metre), (QC_SPAN, Published)).only(Applies::Span),
-        least(K::SpanAnchorStrength, "prescribed horizontal lifeline: end anchors", (90.0, Unit::Kilonewton), (QC_SPAN, Published))
+        least(
+            K::SpanAnchorStrength,
+            "prescribed horizontal lifeline: end anchors",
+            (90.0, Unit::Kilonewton),
+            (QC_SPAN, Published),
+        )
+        .only(Applies::Span),
+        most(K::SpanWorkers, "prescribed horizontal lifeline: workers", (2.0, Unit::One), (QC_SPAN, Published))
             .only(Applies::Span),
-        most(K::SpanWorkers, "prescribed horizontal lifeline: workers", (2.0, Unit::One), (QC_SPAN, Published)).only(Applies::Span),
     ],
 };
 

@@ -62,11 +62,6 @@ const fn least(
     limit(kind, Bound::AtLeast, quantity, value, source)
 }
 
-const fn factor(
-    kind: LimitKind,
-    quantity: &'static str,
-    value: f64,
-    source: (&'static str, Mark),
-) -> PublishedLimit {
+const fn factor(kind: LimitKind, quantity: &'static str, value: f64, source: (&'static str, Mark)) -> PublishedLimit {
     limit(kind, Bound::Factor, quantity, (value, Unit::One), source)
 }

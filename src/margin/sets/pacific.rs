@@ -1,5 +1,6 @@
 //! Sets of Queensland and Singapore.
-use super::super::limit::{Applies, LimitKind as K, LimitSet, Mark::*, WrittenFor};
+use super::super::limit::Mark::Published;
+use super::super::limit::{Applies, LimitKind as K, LimitSet, WrittenFor};
 use super::{factor, least, most};
 use crate::quantity::Unit;
 
@@ -29,10 +30,20 @@ pub const SG_WSH: LimitSet = LimitSet {
     scope: "Singapore guideline for work at height: horizontal lifelines; the deflection counts in full in the clearance",
     written_for: WrittenFor::ANY,
     limits: &[
-        factor(K::SpanFactor, "horizontal lifeline of wire: strength over the largest line load", 2.0, (WSH, Published))
-            .only(Applies::WireSpan),
-        factor(K::SpanFactor, "horizontal lifeline of webbing or fibre: strength over the largest line load", 3.0, (WSH, Published))
-            .only(Applies::FibreSpan)
-            .remark("deflection added to the clearance in full"),
+        factor(
+            K::SpanFactor,
+            "horizontal lifeline of wire: strength over the largest line load",
+            2.0,
+            (WSH, Published),
+        )
+        .only(Applies::WireSpan),
+        factor(
+            K::SpanFactor,
+            "horizontal lifeline of webbing or fibre: strength over the largest line load",
+            3.0,
+            (WSH, Published),
+        )
+        .only(Applies::FibreSpan)
+        .remark("deflection added to the clearance in full"),
     ],
 };

@@ -1,5 +1,6 @@
 //! Sets that are type tests of one component: absorbers and ropes.
-use super::super::limit::{Applies, LimitKind as K, LimitSet, Mark::*, WrittenFor};
+use super::super::limit::Mark::{Published, Secondary};
+use super::super::limit::{Applies, LimitKind as K, LimitSet, WrittenFor};
 use super::most;
 use crate::quantity::Unit;
 
@@ -40,7 +41,8 @@ pub const ROPE_892: LimitSet = LimitSet {
         most(K::ArrestForce, "first drop, single rope: force", (12.0, Unit::Kilonewton), (EN_892, Published))
             .only(Applies::SingleRope)
             .remark("judged as a single rope; a half rope is tested to 8 kN, a twin rope to 12 kN"),
-        most(K::ArrestForce, "first drop, half rope: force", (8.0, Unit::Kilonewton), (EN_892, Published)).only(Applies::HalfOrTwinRope),
+        most(K::ArrestForce, "first drop, half rope: force", (8.0, Unit::Kilonewton), (EN_892, Published))
+            .only(Applies::HalfOrTwinRope),
         most(K::ArrestForce, "first drop, twin rope: force", (12.0, Unit::Kilonewton), (EN_892, Published))
             .only(Applies::HalfOrTwinRope),
         most(K::DynamicElongation, "first drop: elongation", (40.0, Unit::Percent), (EN_892, Published)),
@@ -55,7 +57,8 @@ pub const ROPE_1891: LimitSet = LimitSet {
     scope: "type test of low-stretch ropes of type A: 100 kg at a fall factor of 0.3",
     written_for: WrittenFor { rope: true, fall_factor: Some(0.3), mass_kg: Some(100.0), ..WrittenFor::ANY },
     limits: &[
-        most(K::ArrestForce, "force at fall factor 0.3 with 100 kg", (6.0, Unit::Kilonewton), (EN_1891, Secondary)).below(),
+        most(K::ArrestForce, "force at fall factor 0.3 with 100 kg", (6.0, Unit::Kilonewton), (EN_1891, Secondary))
+            .below(),
         most(K::StaticElongation, "elongation from 50 kg to 150 kg", (5.0, Unit::Percent), (EN_1891, Secondary)),
     ],
 };

@@ -288,10 +288,12 @@ fn part_numbers(scene: &Scene, marks: &[f64]) -> Vec<f64> {
     let scale = &scene.scale;
     let unit = 10_f64.powi(-i32::try_from(scale.decimals).unwrap_or(0));
     let mut numbers: Vec<f64> = scene.parts.iter().map(|part| scale.rounded(part.length_m)).collect();
-    let total = scale.rounded(marks.iter().copied().next().unwrap_or(0.0) - marks.iter().copied().last().unwrap_or(0.0));
+    let total =
+        scale.rounded(marks.iter().copied().next().unwrap_or(0.0) - marks.iter().copied().last().unwrap_or(0.0));
     let mut between: Vec<usize> = (0..numbers.len()).filter(|&index| !is_kept(&scene.parts[index])).collect();
     let left = total - numbers.iter().sum::<f64>();
-    let error = |index: usize| (scale.shown(scene.parts[index].length_m) - scale.rounded(scene.parts[index].length_m)) * left;
+    let error =
+        |index: usize| (scale.shown(scene.parts[index].length_m) - scale.rounded(scene.parts[index].length_m)) * left;
     between.sort_by(|&a, &b| error(b).total_cmp(&error(a)));
     let mut over = (left / unit).round();
     for &index in between.iter().cycle().take(4 * between.len()) {

@@ -101,7 +101,9 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
             Row::Section(title) => {
                 put(buffer, area, 1, line, &fit(title, usize::from(area.width.saturating_sub(2))), model.theme.quiet());
             }
-            Row::Input(index) => draw_input(buffer, Rect { y: area.y + line, height: 1, ..area }, model, *index, &columns),
+            Row::Input(index) => {
+                draw_input(buffer, Rect { y: area.y + line, height: 1, ..area }, model, *index, &columns)
+            }
         }
     }
     draw_scroll_marks(buffer, area, model, (first, shown, rows.len()));

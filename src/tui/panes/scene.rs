@@ -183,7 +183,8 @@ pub fn lowest_time(report: &Report) -> f64 {
 fn stations(report: &Report, marks: &Marks, lowest: Sample, now: Sample) -> [Station; 5] {
     let hanging = marks.body_m + marks.allowance_m;
     let final_deployed = report.estimate.numbers.get("deployed_length").unwrap_or(0.0);
-    let station = |name, attachment_m, body_m, deployed_m, taut| Station { name, attachment_m, body_m, deployed_m, taut };
+    let station =
+        |name, attachment_m, body_m, deployed_m, taut| Station { name, attachment_m, body_m, deployed_m, taut };
     let now_body = if now.mode == Mode::Falling { marks.body_m } else { hanging };
     let now_taut = matches!(now.mode, Mode::Taut | Mode::Deploying);
     [
