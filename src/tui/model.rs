@@ -1,6 +1,7 @@
 //! The state of the screen.
-use super::lean::{Lean, leans};
+use super::lean::{Lean, is_slow, leans};
 use super::theme::Theme;
+use super::worker::Job;
 use crate::quantity::UnitSystem;
 use crate::scenario::{Document, Input, inputs};
 use crate::sheet::{Report, ReportError, report};
@@ -175,6 +176,10 @@ pub struct Model {
     pub leans: Vec<Lean>,
     /// Report and fault.
     pub answer: Answer,
+    /// Number of the present state of the inputs.
+    pub generation: u64,
+    /// Work to be handed out after this message.
+    pub job: Option<Box<Job>>,
     /// Which pane the keys go to.
     pub pane: Pane,
     /// The chosen input.
@@ -212,6 +217,8 @@ impl Model {
             inputs: Vec::new(),
             leans: Vec::new(),
             answer: Answer { report: None, fault: None },
+            generation: 0,
+            job: None,
             pane: Pane::default(),
             input: 0,
             check: 0,
@@ -295,7 +302,9 @@ impl Model {
             Ok(report) => self.answer = Answer { report: Some(report), fault: None },
             Err(error) => self.answer.fault = Some(words(&error)),
         }
-        self.leans = leans(&self.inputs, self.document.scenario(), self.answer.current());
+        self.generation += 1;
+        self.job = None;
+        self.lean();
         let checks = self.answer.report.as_ref().map_or(0, |report| report.margins.len());
         self.check = self.check.min(checks.saturating_sub(1));
         self.play.time_s = self.play.time_s.min(self.end_s());
@@ -307,6 +316,23 @@ impl Model {
         let states = self.undo.iter_mut().chain(&mut self.redo).chain(std::iter::once(&mut self.document));
         for state in states {
             *state = state.clone().on_disk_as(on_disk);
+        }
+    }
+
+    /// Works the arrows out, or leaves a job behind where that takes longer than a frame may.
+    fn lean(&mut self) {
+        let scenario = self.document.scenario();
+        match self.answer.current() {
+            Some(report) if is_slow(&self.inputs, report) => {
+                self.leans = vec![Lean::Pending; self.inputs.len()];
+                self.job = Some(Box::new(Job {
+                    generation: self.generation,
+                    scenario: scenario.clone(),
+                    inputs: self.inputs.clone(),
+                    report: Box::new(report.clone()),
+                }));
+            }
+            current => self.leans = leans(&self.inputs, scenario, current),
         }
     }
 

@@ -2,7 +2,7 @@
 use super::layout::{LEAST_HEIGHT, LEAST_WIDTH, Panes, views};
 use super::model::{Mode, Model, View};
 use super::panes::history::Picture;
-use super::panes::scene::{Scene, lowest_time};
+use super::panes::scene::Scene;
 use super::panes::units::Scale;
 use super::panes::{about, elevation, foot, header, help, history, inputs, log, margins, tabs, timeline, verdict};
 use super::text::put;
@@ -122,7 +122,7 @@ pub fn picture(report: &Report, model: &Model, columns: u16) -> Picture {
         window_s: window,
         envelope: estimate.envelope,
         hang_m: estimate.numbers.get("hang_travel"),
-        lowest_m: Some(estimate.trace.at(lowest_time(report)).travel_m),
+        lowest_m: estimate.numbers.get("time_lowest").map(|time| estimate.trace.at(time).travel_m),
         peak_n: estimate.numbers.get("arrest_force_peak").unwrap_or(0.0),
         limit_n: verdict::force_limit(report),
         now_s: model.play.time_s,
