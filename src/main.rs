@@ -1,2 +1,32 @@
 //! Picks the command line or the screen.
-fn main() {}
+use std::path::Path;
+use std::process::ExitCode;
+use underfoot::cli::{self, Next};
+use underfoot::quantity::UnitSystem;
+use underfoot::scenario::LoadError;
+use underfoot::tui::{self, ScreenError};
+
+fn main() -> color_eyre::Result<ExitCode> {
+    color_eyre::install()?;
+    match cli::parse_and_run(std::env::args_os()) {
+        Next::Exit(code) => Ok(ExitCode::from(code.number())),
+        Next::View { path, units } => screen(&path, units),
+    }
+}
+
+/// Runs the screen; a reason to end that the user knows, or can act on, is a line and a code and not a report.
+fn screen(path: &Path, units: UnitSystem) -> color_eyre::Result<ExitCode> {
+    let Err(report) = tui::run(path, units) else { return Ok(ExitCode::SUCCESS) };
+    if let Some(error) = report.downcast_ref::<ScreenError>() {
+        if !error.is_silent() {
+            eprintln!("underfoot: {error}");
+        }
+        return Ok(ExitCode::from(error.exit_code()));
+    }
+    match report.downcast_ref::<LoadError>() {
+        Some(LoadError::Refused(faults)) => eprintln!("{}", faults.render(false)),
+        Some(error) => eprintln!("underfoot: {error}"),
+        None => return Err(report),
+    }
+    Ok(ExitCode::from(2))
+}

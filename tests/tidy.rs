@@ -277,7 +277,9 @@ fn a_breach_of_the_import_table_is_noticed_in_every_spelling() {
 
 #[test]
 fn a_claim_is_noticed_in_every_kind_of_literal() {
-    for text in ["f(\"It is Safe.\")", "r#\"a \"safe\" fall\"#", "('\"', \"safe\")", "fn f<'a>(x: &'a str) { \"safe\" }"] {
+    for text in
+        ["f(\"It is Safe.\")", "r#\"a \"safe\" fall\"#", "('\"', \"safe\")", "fn f<'a>(x: &'a str) { \"safe\" }"]
+    {
         assert!(split(text).1.iter().any(|literal| says_safe(literal)), "{text}");
     }
     assert!(!split("\"SAFETY.md, unsafe\" // safe").1.iter().any(|literal| says_safe(literal)));

@@ -1,6 +1,26 @@
 //! The vertical arrest, exact from event to event.
 //!
-//! `solve(&Fall, &Settings) -> Result<Outcome, ArrestError>` is the entry.
+//! [`solve`] takes a [`Fall`] and gives an [`Outcome`]. Every mode of the path is affine and has a closed-form
+//! solution; events are zeros of scalars of that solution, and no time is stepped.
+pub mod drift;
+mod hang;
+mod ledger;
+mod mode;
+mod motion;
+mod next;
+mod onset;
+pub mod oscillator;
 mod outcome;
+mod quadrature;
+mod record;
+pub mod roots;
+mod settle;
+pub mod signal;
+mod solve;
+pub mod third;
 
+pub use hang::Hang;
+pub use mode::{Mode, State, Stretch};
+pub use motion::{Instant, Motion};
 pub use outcome::{ArrestError, Ended, EnergyAccount, Fall, Happening, Lowest, Outcome, Settings, WorkCount};
+pub use solve::solve;

@@ -1,4 +1,5 @@
 //! What goes into a vertical arrest and what comes out.
+use super::motion::Motion;
 use crate::physics::SeriesPath;
 
 /// A mass falling onto a line.
@@ -89,8 +90,6 @@ pub enum Happening {
 pub struct WorkCount {
     /// Modes entered.
     pub modes: u32,
-    /// Evaluations of event functions.
-    pub evaluations: u32,
 }
 
 /// Everything one vertical arrest gives. Times run from the start of the fall.
@@ -112,6 +111,8 @@ pub struct Outcome {
     pub hang_travel_m: f64,
     /// Rise from the lowest point to the next highest, m; none when settled before.
     pub rebound_rise_m: Option<f64>,
+    /// When that highest point is reached, s.
+    pub time_highest_s: Option<f64>,
     /// First time slack, s.
     pub time_first_slack_s: Option<f64>,
     /// Times the line went slack before it was settled.
@@ -136,6 +137,8 @@ pub struct Outcome {
     pub work: WorkCount,
     /// Mode changes in order: time from the start of the fall in s, and what happened.
     pub happenings: Vec<(f64, Happening)>,
+    /// The motion, exact at any time.
+    pub motion: Motion,
 }
 
 /// Why an arrest could not be solved.
@@ -155,6 +158,9 @@ pub enum ArrestError {
         /// When, s.
         time_s: f64,
     },
+    /// Two damped groups on an absorber whose force rises with its length: not solved in closed form.
+    #[error("two damped groups in series with an absorber whose force rises with its length are not solved")]
+    FourthOrder,
     /// The account does not balance.
     #[error("the energy account is off by {residual:e} of the fall energy")]
     Energy {

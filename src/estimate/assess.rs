@@ -1,6 +1,9 @@
 //! Scenario to physics to arrest to numbers.
-use super::{Event, Numbers, Trace};
-use crate::scenario::Scenario;
+use super::setup::{Setup, body_below_attachment};
+use super::{Event, Numbers, Trace, collect, log, remark};
+use crate::arrest::{ArrestError, Outcome, Settings, solve};
+use crate::quantity::{Dimension, UnitSystem, format_si};
+use crate::scenario::{Scenario, SubjectKind};
 
 /// Everything that one run says.
 #[derive(Clone, Debug)]
@@ -11,13 +14,13 @@ pub struct Estimate {
     pub assumptions: Vec<String>,
     /// Sentences: what the reader must know about these numbers.
     pub warnings: Vec<String>,
-    /// The event log in order of time (the first dozen and the last: see `Trace` for all).
+    /// The event log in order of time: the first dozen and the last; the trace has all.
     pub events: Vec<Event>,
     /// The motion.
     pub trace: Trace,
     /// Elevations where the file gives `place.standing`.
     pub elevations: Option<Elevations>,
-    /// The envelope for drawing: see its fields.
+    /// The envelope for drawing.
     pub envelope: Option<Envelope>,
     /// Whether the model is valid for this run.
     pub validity: Vec<Validity>,
@@ -38,8 +41,15 @@ pub enum Validity {
 impl Validity {
     /// The reason in words with both numbers.
     #[must_use]
-    pub fn words(&self, _system: crate::quantity::UnitSystem) -> String {
-        todo!()
+    pub fn words(&self, system: UnitSystem) -> String {
+        let length = |m: f64| format_si(m, Dimension::Length, system);
+        match self {
+            Self::FreeFallBeyondRating { free_fall_m, rated_m } => format!(
+                "free fall of {} is beyond the {} that the absorber is rated for",
+                length(*free_fall_m),
+                length(*rated_m)
+            ),
+        }
     }
 }
 
@@ -62,6 +72,35 @@ pub struct Elevations {
     pub lowest_point_below_attachment_m: f64,
     /// From the attachment down to the feet or underside, without allowance.
     pub body_below_attachment_m: f64,
+}
+
+impl Elevations {
+    /// Elevation of the feet (with allowance) or of the underside at the lowest point, m.
+    #[must_use]
+    pub fn lowest_point_m(&self) -> f64 {
+        self.attachment_lowest_m - self.lowest_point_below_attachment_m
+    }
+
+    fn of(scenario: &Scenario, setup: &Setup, outcome: &Outcome) -> Option<Self> {
+        let start = setup.attachment_start_m?;
+        let body = body_below_attachment(&scenario.subject)?;
+        let allowance = match scenario.subject.kind {
+            SubjectKind::Person => scenario.subject.stretch_allowance.map_or(0.0, |a| a.si()),
+            SubjectKind::Load => 0.0,
+        };
+        let taut = start - setup.fall.free_fall_m;
+        let length = scenario.line.length.map(|l| l.si());
+        Some(Self {
+            anchor_m: scenario.place.anchor.map(|a| a.si()).or_else(|| length.map(|l| taut + l)),
+            standing_m: scenario.place.standing?.si(),
+            attachment_start_m: start,
+            attachment_taut_m: taut,
+            attachment_lowest_m: taut - outcome.arrest_distance_m,
+            attachment_rest_m: taut - outcome.hang_travel_m,
+            lowest_point_below_attachment_m: body + allowance,
+            body_below_attachment_m: body,
+        })
+    }
 }
 
 /// `hang +- amplitude * exp(-decay * (t - from))` bounds the travel in the phase it is drawn for.
@@ -106,10 +145,41 @@ pub enum EstimateError {
     },
 }
 
+impl From<ArrestError> for EstimateError {
+    fn from(error: ArrestError) -> Self {
+        match error {
+            ArrestError::Energy { residual } => Self::Energy { residual },
+            error => Self::Numerical { message: error.to_string() },
+        }
+    }
+}
+
 /// Solves a scenario at its typical values.
 ///
 /// # Errors
 /// See [`EstimateError`].
-pub fn estimate(_scenario: &Scenario) -> Result<Estimate, EstimateError> {
-    todo!()
+pub fn estimate(scenario: &Scenario) -> Result<Estimate, EstimateError> {
+    let setup = Setup::of(scenario)?;
+    let outcome = solve(&setup.fall, &Settings::default())?;
+    let elevations = Elevations::of(scenario, &setup, &outcome);
+    Ok(Estimate {
+        numbers: collect::numbers(scenario, &setup, &outcome, elevations.as_ref()),
+        assumptions: remark::assumptions(scenario, &setup),
+        warnings: remark::warnings(scenario, &setup, &outcome),
+        events: log::events(&setup, &outcome),
+        envelope: collect::envelope(&setup, &outcome),
+        validity: validity(scenario, &setup),
+        elevations,
+        trace: Trace::new(outcome.motion),
+    })
+}
+
+fn validity(scenario: &Scenario, setup: &Setup) -> Vec<Validity> {
+    let rated = scenario.absorber.as_ref().and_then(|a| a.rated_free_fall).map(|r| r.si());
+    let free_fall_m = setup.fall.free_fall_m;
+    rated
+        .filter(|&rated_m| free_fall_m > rated_m * (1.0 + 1e-12))
+        .map(|rated_m| Validity::FreeFallBeyondRating { free_fall_m, rated_m })
+        .into_iter()
+        .collect()
 }

@@ -1,4 +1,5 @@
 //! The event log: what the fall does, in words.
+use crate::quantity::{Dimension, UnitSystem, format_si};
 
 /// What happened.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -47,7 +48,33 @@ pub struct Event {
 impl Event {
     /// `taut at 5.94 m/s`, in the units of the system.
     #[must_use]
-    pub fn words(&self, _system: crate::quantity::UnitSystem) -> String {
-        todo!()
+    pub fn words(&self, system: UnitSystem) -> String {
+        let length = |m: f64| format_si(m, Dimension::Length, system);
+        let speed = format_si(self.speed_m_per_s.abs(), Dimension::Speed, system);
+        let force = format_si(self.force_n, Dimension::Force, system);
+        match self.kind {
+            EventKind::Start if self.travel_m < 0.0 => format!("falls {}", length(-self.travel_m)),
+            EventKind::Start => "let go with the line just taut".to_owned(),
+            EventKind::Taut => format!("taut at {speed}"),
+            EventKind::DeploymentStart => format!("absorber starts at {force}"),
+            EventKind::DeploymentEnd => format!("absorber stops, {} deployed", length(self.deployed_m)),
+            EventKind::StrokeUsedUp => format!("stroke used up at {}", length(self.deployed_m)),
+            EventKind::PeakForce => format!("largest line force, {force}"),
+            EventKind::Lowest => format!("lowest, {} below taut", length(self.travel_m)),
+            EventKind::Slack => {
+                format!("slack, {} at {speed}", if self.speed_m_per_s < 0.0 { "rises" } else { "falls" })
+            }
+            EventKind::Highest => format!("highest, {}", beside_taut(self.travel_m, length)),
+            EventKind::Settled => format!("hangs, {}", beside_taut(self.travel_m, length)),
+            EventKind::TimeLimit => "still moving at the time limit".to_owned(),
+        }
+    }
+}
+
+fn beside_taut(travel_m: f64, length: impl Fn(f64) -> String) -> String {
+    if travel_m < 0.0 {
+        format!("{} above taut", length(-travel_m))
+    } else {
+        format!("{} below taut", length(travel_m))
     }
 }

@@ -1,10 +1,16 @@
 //! From a scenario to every number of the arrest, with units, definitions and provenance.
 mod assess;
+mod collect;
+mod definition;
 mod event;
+mod log;
 mod number;
+mod remark;
+mod setup;
 mod trace;
 
 pub use assess::{Elevations, Envelope, Estimate, EstimateError, Validity, estimate};
+pub use definition::{DEFINITIONS, Definition, definition};
 pub use event::{Event, EventKind};
-pub use number::{DEFINITIONS, Definition, Number, Numbers, Value};
+pub use number::{Number, Numbers, Value};
 pub use trace::{Mode, Phase, Sample, Trace};

@@ -1,4 +1,5 @@
 //! Numbers that come out, by id.
+use super::definition::definition;
 use crate::quantity::Dimension;
 
 /// A number or a word.
@@ -23,24 +24,6 @@ pub struct Number {
     pub unit: &'static str,
 }
 
-/// What an id means.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Definition {
-    /// Id, without the name of an obstacle (`clearance`).
-    pub id: &'static str,
-    /// Unit as in JSON.
-    pub unit: &'static str,
-    /// What it measures.
-    pub dimension: Dimension,
-    /// Short label for screens and text: `arrest force, peak`.
-    pub label: &'static str,
-    /// One sentence.
-    pub meaning: &'static str,
-}
-
-/// Every id with its meaning, in the order in which results are shown.
-pub const DEFINITIONS: &[Definition] = &[];
-
 /// The results of one run in the order of [`DEFINITIONS`]; an id that does not apply is not there.
 #[derive(Clone, Debug, Default, PartialEq)]
 pub struct Numbers(Vec<Number>);
@@ -54,8 +37,34 @@ impl Numbers {
             Value::Text(_) => None,
         })
     }
+    /// Adds a number under an id of [`super::DEFINITIONS`]; an unknown id or a number that is not finite is left out.
+    pub(super) fn put(&mut self, id: &str, value: f64) {
+        if value.is_finite() {
+            self.push(id, Value::Number(value));
+        }
+    }
+
+    /// Adds a number where there is one.
+    pub(super) fn put_some(&mut self, id: &str, value: Option<f64>) {
+        if let Some(value) = value {
+            self.put(id, value);
+        }
+    }
+
+    pub(super) fn push(&mut self, id: &str, value: Value) {
+        if let Some(d) = definition(id) {
+            self.0.push(Number { id: id.to_owned(), value, dimension: d.dimension, unit: d.unit });
+        }
+    }
+
     /// All results in order.
     pub fn iter(&self) -> impl Iterator<Item = &Number> {
         self.0.iter()
+    }
+}
+
+impl FromIterator<Number> for Numbers {
+    fn from_iter<I: IntoIterator<Item = Number>>(numbers: I) -> Self {
+        Self(numbers.into_iter().collect())
     }
 }

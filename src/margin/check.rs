@@ -1,7 +1,9 @@
 //! The checks of one run.
-use super::Verdict;
-use crate::estimate::Estimate;
-use crate::quantity::Dimension;
+use super::judge::Check;
+use super::numeric::checks;
+use super::{Rules, Verdict, margin_of};
+use crate::estimate::{Estimate, Numbers, Validity};
+use crate::quantity::{Dimension, UnitSystem};
 use crate::scenario::Scenario;
 
 /// Which side of the limit is good.
@@ -58,10 +60,39 @@ pub struct UnknownBasis {
     pub nearest: Option<&'static str>,
 }
 
-/// Every check that applies to a scenario and its estimate, the governing one first.
+/// Every check that applies to a scenario and its estimate, the governing one first (see [`governing_first`]). Notes are
+/// in metric units.
 ///
 /// # Errors
 /// When the scenario names an unknown set.
-pub fn margins(_scenario: &Scenario, _estimate: &Estimate) -> Result<Vec<Margin>, UnknownBasis> {
-    todo!()
+pub fn margins(scenario: &Scenario, estimate: &Estimate) -> Result<Vec<Margin>, UnknownBasis> {
+    margins_from(scenario, &estimate.numbers, &estimate.validity)
+}
+
+/// As [`margins`], from the numbers of a run and the reasons why its model is not valid (none when it is).
+///
+/// # Errors
+/// When the scenario names an unknown set.
+pub fn margins_from(
+    scenario: &Scenario,
+    numbers: &Numbers,
+    validity: &[Validity],
+) -> Result<Vec<Margin>, UnknownBasis> {
+    let rules = Rules::of(scenario)?;
+    let mut list = checks(&rules, scenario, numbers, validity);
+    list.sort_by(governing_first);
+    Ok(list.iter().map(|check| margin_of(&rules, scenario, validity, check, UnitSystem::Metric)).collect())
+}
+
+/// The order of checks: worst verdict first; within one verdict what the run gives before what only compares two
+/// stated values (a lanyard of just the length allowed does not govern the fall); then the least room as a share of
+/// the limit; then by kind.
+#[must_use]
+pub fn governing_first(a: &Check, b: &Check) -> std::cmp::Ordering {
+    let from_run = |check: &Check| check.kind.needs_model();
+    b.verdict
+        .cmp(&a.verdict)
+        .then_with(|| from_run(b).cmp(&from_run(a)))
+        .then_with(|| a.relative().total_cmp(&b.relative()))
+        .then_with(|| a.kind.cmp(&b.kind))
 }

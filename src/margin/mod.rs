@@ -1,8 +1,19 @@
 //! Published limits as data, the checks against them, and the verdicts.
 mod check;
+mod disagreement;
+mod judge;
 mod limit;
+mod numeric;
+mod rules;
+mod sets;
 mod verdict;
+mod words;
 
-pub use check::{Basis, Margin, Sense, UnknownBasis, margins};
-pub use limit::{LimitSet, Mark, PublishedLimit, limit_set, limit_sets};
+pub use check::{Basis, Margin, Sense, UnknownBasis, governing_first, margins, margins_from};
+pub use disagreement::{Disagreement, disagreements};
+pub use judge::{Cause, Check, CheckKind, judge};
+pub use limit::{Applies, Bound, LimitKind, LimitSet, Mark, PublishedLimit, WrittenFor, limit_set, limit_sets};
+pub use numeric::checks;
+pub use rules::{Rules, Ruling};
 pub use verdict::{Verdict, worst};
+pub use words::{margin_of, remarks};

@@ -2,5 +2,5 @@
 mod elastic;
 mod path;
 
-pub use elastic::{Elastic, Table, TableError};
+pub use elastic::{Elastic, Piece, Table, TableError};
 pub use path::{Absorber, Group, SeriesPath};

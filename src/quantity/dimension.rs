@@ -34,3 +34,27 @@ pub enum Dimension {
     /// A plain number.
     Ratio,
 }
+
+impl Dimension {
+    /// The word for it in messages: `length`, `force`.
+    #[must_use]
+    pub const fn word(self) -> &'static str {
+        match self {
+            Self::Length => "length",
+            Self::Mass => "mass",
+            Self::Force => "force",
+            Self::Stiffness => "stiffness",
+            Self::Damping => "damping",
+            Self::Time => "time",
+            Self::Speed => "speed",
+            Self::Acceleration => "acceleration",
+            Self::Angle => "angle",
+            Self::Energy => "energy",
+            Self::MassPerLength => "mass per length",
+            Self::AngularFrequency => "angular frequency",
+            Self::Rate => "rate",
+            Self::GravityMultiple => "multiple of gravity",
+            Self::Ratio => "ratio",
+        }
+    }
+}

@@ -4,11 +4,13 @@
 mod band;
 mod dimension;
 mod display;
+mod error;
 mod parse;
 mod unit;
 
 pub use band::{Band, Measure, Shape};
 pub use dimension::Dimension;
-pub use display::{display_unit, format_si, format_unit};
-pub use parse::{QuantityError, parse_measure, parse_quantity};
+pub use display::{display_unit, format_band, format_measure, format_si, format_unit};
+pub use error::QuantityError;
+pub use parse::{parse_measure, parse_quantity};
 pub use unit::{Unit, UnitSystem};

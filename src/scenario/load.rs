@@ -1,5 +1,7 @@
 //! The one place that reads files.
-use super::{Faults, Scenario};
+use super::read::MOST_BYTES;
+use super::{Faults, Scenario, read};
+use std::io::Read;
 use std::path::{Path, PathBuf};
 
 /// Why a file gave no scenario.
@@ -31,6 +33,33 @@ pub struct Loaded {
 ///
 /// # Errors
 /// When it cannot be read, or has faults.
-pub fn load(_path: &Path) -> Result<Loaded, LoadError> {
-    todo!()
+pub fn load(path: &Path) -> Result<Loaded, LoadError> {
+    let text = read_text(path).map_err(|reason| LoadError::Unreadable { path: path.to_owned(), reason })?;
+    let scenario = read(&path.display().to_string(), &text).map_err(LoadError::Refused)?;
+    Ok(Loaded { text, scenario })
+}
+
+/// The text of a file, never more than the limit read into memory.
+fn read_text(path: &Path) -> Result<String, String> {
+    if path.is_dir() {
+        return Err("it is a folder; name a scenario file in it".to_owned());
+    }
+    let file = std::fs::File::open(path).map_err(|error| reason(&error))?;
+    let mut bytes = Vec::new();
+    file.take(MOST_BYTES as u64 + 1).read_to_end(&mut bytes).map_err(|error| reason(&error))?;
+    if bytes.len() > MOST_BYTES {
+        return Err("it is larger than 1 MiB; a scenario file is a few kilobytes of text".to_owned());
+    }
+    String::from_utf8(bytes).map_err(|error| {
+        let at = error.utf8_error().valid_up_to();
+        format!("byte {} is not UTF-8 text; save the file as UTF-8", at + 1)
+    })
+}
+
+fn reason(error: &std::io::Error) -> String {
+    match error.kind() {
+        std::io::ErrorKind::NotFound => "there is no such file; check the path".to_owned(),
+        std::io::ErrorKind::PermissionDenied => "reading it is not permitted; check its permissions".to_owned(),
+        _ => error.to_string(),
+    }
 }

@@ -204,11 +204,23 @@ pub struct Obstacle {
 }
 
 impl Obstacle {
+    /// Whether a body on the fall line (offset 0, with its half width) is above some of it.
+    #[must_use]
+    pub fn is_below(&self, subject: &Subject) -> bool {
+        let half_width = subject.half_width.map_or(0.0, |w| w.si());
+        self.extent.is_none_or(|(from, to)| from.si() <= half_width && to.si() >= -half_width)
+    }
+
     /// Name as used in ids: lower case, `_` for blanks.
     #[must_use]
     pub fn id(&self) -> String {
-        self.name.trim().to_lowercase().split_whitespace().collect::<Vec<_>>().join("_")
+        id_of(&self.name)
     }
+}
+
+/// A name as used in ids.
+pub(super) fn id_of(name: &str) -> String {
+    name.to_lowercase().split_whitespace().collect::<Vec<_>>().join("_")
 }
 
 /// Limits to check against.

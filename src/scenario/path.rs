@@ -1,5 +1,7 @@
 //! Addressing an input by its path.
-use super::{Field, Scenario};
+use super::field::{FIELDS, Field, field_for};
+use super::model::{AnchorKind, DampingLaw, Obstacle, Scenario, StretchLaw};
+use super::{clash, field};
 use crate::quantity::Measure;
 
 /// One numeric input of a scenario, present in it.
@@ -14,14 +16,163 @@ pub struct Input {
 }
 
 /// Every numeric input that the scenario holds, in file order.
+///
+/// Gravity counts; the limits of `[limits]` do not: they are what the fall is judged by, not what it is.
 #[must_use]
-pub fn inputs(_scenario: &Scenario) -> Vec<Input> {
-    todo!()
+pub fn inputs(scenario: &Scenario) -> Vec<Input> {
+    let mut scenario = scenario.clone();
+    let obstacles = scenario.obstacles.len();
+    let mut found = Vec::new();
+    let numeric = |field: &&Field| field.dimension.is_some() && !field.path.starts_with(field::OBSTACLE);
+    for field in FIELDS.iter().filter(numeric) {
+        found.extend(input(&mut scenario, field.path.to_owned(), field));
+    }
+    for n in 1..=obstacles {
+        for field in FIELDS.iter().filter(|field| field.path.starts_with(field::OBSTACLE)) {
+            found.extend(input(&mut scenario, field.path.replace('*', &n.to_string()), field));
+        }
+    }
+    found
 }
 
-/// The scenario with the typical value of one input replaced (the band's ends kept where they still enclose it).
-/// `None` when the scenario has no such input or the value is outside the field's range.
+fn input(scenario: &mut Scenario, path: String, field: &'static Field) -> Option<Input> {
+    let measure = *measure_mut(scenario, &path)?;
+    Some(Input { path, field, measure })
+}
+
+/// The scenario with the typical value of one input replaced (the band's ends kept where they still enclose it,
+/// moved to it where not).
+///
+/// `None` when the scenario has no such input, the value is outside the field's range, or it cannot be together
+/// with the other values (an onset force below the deployment force).
 #[must_use]
-pub fn with_value(_scenario: &Scenario, _path: &str, _value_si: f64) -> Option<Scenario> {
-    todo!()
+pub fn with_value(scenario: &Scenario, path: &str, value_si: f64) -> Option<Scenario> {
+    let field = field_for(path)?;
+    if !(value_si >= field.least && value_si <= field.most) {
+        return None;
+    }
+    let mut changed = scenario.clone();
+    let measure = measure_mut(&mut changed, path)?;
+    *measure = moved(measure, value_si);
+    clash::clashes(&changed).is_empty().then_some(changed)
+}
+
+/// A measure with another typical value, its band stretched to enclose it.
+pub(super) fn moved(measure: &Measure, value_si: f64) -> Measure {
+    let mut moved = *measure;
+    if measure.band.is_wide() {
+        moved.band.low = measure.band.low.min(value_si);
+        moved.band.high = measure.band.high.max(value_si);
+    } else {
+        moved.band.low = value_si;
+        moved.band.high = value_si;
+    }
+    moved.band.typical = value_si;
+    moved
+}
+
+/// The measure at a path, if the scenario holds it.
+fn measure_mut<'s>(scenario: &'s mut Scenario, path: &str) -> Option<&'s mut Measure> {
+    let (section, key) = path.split_once('.').unwrap_or(("", path));
+    match section {
+        "" => (key == "gravity").then_some(&mut scenario.gravity),
+        "subject" => subject(scenario, key),
+        "place" => match key {
+            "standing" => scenario.place.standing.as_mut(),
+            "anchor" => scenario.place.anchor.as_mut(),
+            _ => None,
+        },
+        "fall" => scenario.fall.free_fall.as_mut().filter(|_| key == "free_fall"),
+        "line" => line(scenario, key),
+        "absorber" => absorber(scenario, key),
+        "harness" => spring(scenario.harness.as_mut()?, key),
+        "anchor" => anchor(scenario, key),
+        "obstacle" => {
+            let (number, key) = key.split_once('.')?;
+            let index = number.parse::<usize>().ok()?.checked_sub(1)?;
+            obstacle(scenario.obstacles.get_mut(index)?, key)
+        }
+        _ => None,
+    }
+}
+
+fn subject<'s>(scenario: &'s mut Scenario, key: &str) -> Option<&'s mut Measure> {
+    let subject = &mut scenario.subject;
+    match key {
+        "mass" => Some(&mut subject.mass),
+        "attachment_above_feet" => subject.attachment_above_feet.as_mut(),
+        "underside_below_attachment" => subject.underside_below_attachment.as_mut(),
+        "stretch_allowance" => subject.stretch_allowance.as_mut(),
+        "half_width" => subject.half_width.as_mut(),
+        "body_factor" => subject.body_factor.as_mut(),
+        _ => None,
+    }
+}
+
+fn line<'s>(scenario: &'s mut Scenario, key: &str) -> Option<&'s mut Measure> {
+    let line = &mut scenario.line;
+    match key {
+        "length" => line.length.as_mut(),
+        "series_stiffness" => line.series_stiffness.as_mut(),
+        "strength" => line.strength.as_mut(),
+        "mass_per_length" => line.mass_per_length.as_mut(),
+        "damping" | "damping_ratio" => match (&mut line.damping, key) {
+            (DampingLaw::Damping(measure), "damping") | (DampingLaw::Ratio(measure), "damping_ratio") => Some(measure),
+            _ => None,
+        },
+        _ => stretch(&mut line.stretch, key),
+    }
+}
+
+fn stretch<'s>(law: &'s mut StretchLaw, key: &str) -> Option<&'s mut Measure> {
+    match (law, key) {
+        (StretchLaw::Stiffness(measure), "stiffness")
+        | (StretchLaw::Modulus(measure), "modulus")
+        | (StretchLaw::RatedImpact { force: measure, .. }, "rated_impact.force")
+        | (StretchLaw::RatedImpact { mass: measure, .. }, "rated_impact.mass")
+        | (StretchLaw::RatedImpact { fall_factor: measure, .. }, "rated_impact.fall_factor")
+        | (StretchLaw::StaticElongation { percent: measure, .. }, "static_elongation.percent")
+        | (StretchLaw::StaticElongation { from: measure, .. }, "static_elongation.from")
+        | (StretchLaw::StaticElongation { to: measure, .. }, "static_elongation.to") => Some(measure),
+        _ => None,
+    }
+}
+
+fn absorber<'s>(scenario: &'s mut Scenario, key: &str) -> Option<&'s mut Measure> {
+    let absorber = scenario.absorber.as_mut()?;
+    match key {
+        "deploy_force" => Some(&mut absorber.deploy_force),
+        "onset_force" => absorber.onset_force.as_mut(),
+        "stroke" => Some(&mut absorber.stroke),
+        "rated_mass" => absorber.rated_mass.as_mut(),
+        "rated_free_fall" => absorber.rated_free_fall.as_mut(),
+        "packed_length" => absorber.packed_length.as_mut(),
+        _ => None,
+    }
+}
+
+fn spring<'s>(compliance: &'s mut super::Compliance, key: &str) -> Option<&'s mut Measure> {
+    match key {
+        "stiffness" => Some(&mut compliance.stiffness),
+        "damping" => compliance.damping.as_mut(),
+        _ => None,
+    }
+}
+
+fn anchor<'s>(scenario: &'s mut Scenario, key: &str) -> Option<&'s mut Measure> {
+    match (&mut scenario.anchor.kind, key) {
+        (_, "capacity") => scenario.anchor.capacity.as_mut(),
+        (AnchorKind::Sprung(compliance), key) => spring(compliance, key),
+        (AnchorKind::Fixed, _) => None,
+    }
+}
+
+fn obstacle<'s>(obstacle: &'s mut Obstacle, key: &str) -> Option<&'s mut Measure> {
+    match key {
+        "top" => Some(&mut obstacle.top),
+        "from" => obstacle.extent.as_mut().map(|extent| &mut extent.0),
+        "to" => obstacle.extent.as_mut().map(|extent| &mut extent.1),
+        "reserve" => obstacle.reserve.as_mut(),
+        _ => None,
+    }
 }

@@ -1,6 +1,21 @@
 //! Results to bytes: text, JSON and CSV. Pure functions.
+mod audit;
 mod caution;
+mod csv;
+mod json;
+mod limits;
+mod page;
 mod report;
+mod text;
+pub mod ticks;
+mod words;
 
-pub use caution::{CAUTION_LINE, CAUTIONS};
-pub use report::{Report, ReportError, report};
+pub use audit::{Audited, Finding, audit_head, audit_json, audit_text, tally};
+pub use caution::{CAUTION_LINE, CAUTIONS, EQUIPMENT_CAUTIONS, LEFT_OUT};
+pub use csv::csv;
+pub use json::{Layout, json, margin as margin_object, object, print};
+pub use limits::{limits_json, limits_text};
+pub use page::{Paint, clean};
+pub use report::{Report, ReportError, report, sha256_hex};
+pub use text::text;
+pub use words::{governing_words, margin_words};

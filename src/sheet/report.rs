@@ -1,7 +1,9 @@
 //! Everything an output needs about one file.
-use crate::estimate::{Estimate, EstimateError};
-use crate::margin::{Margin, UnknownBasis, Verdict};
+use crate::estimate::{Estimate, EstimateError, estimate};
+use crate::margin::{Margin, Rules, UnknownBasis, Verdict, margins, remarks, worst};
 use crate::scenario::Scenario;
+use sha2::{Digest, Sha256};
+use std::fmt::Write;
 
 /// One file's scenario, estimate and margins.
 #[derive(Clone, Debug)]
@@ -18,6 +20,8 @@ pub struct Report {
     pub margins: Vec<Margin>,
     /// The worst verdict.
     pub verdict: Verdict,
+    /// Sentences about the limits as a whole: what the set was written for, what is not judged.
+    pub limit_remarks: Vec<String>,
 }
 
 /// Why there is no report.
@@ -35,6 +39,26 @@ pub enum ReportError {
 ///
 /// # Errors
 /// See [`ReportError`].
-pub fn report(_file: &str, _text: &str, _scenario: &Scenario) -> Result<Report, ReportError> {
-    todo!()
+pub fn report(file: &str, text: &str, scenario: &Scenario) -> Result<Report, ReportError> {
+    let rules = Rules::of(scenario)?;
+    let estimate = estimate(scenario)?;
+    let margins = margins(scenario, &estimate)?;
+    Ok(Report {
+        file: file.to_owned(),
+        scenario_sha256: sha256_hex(text),
+        scenario: scenario.clone(),
+        estimate,
+        verdict: worst(margins.iter().map(|m| m.verdict)),
+        margins,
+        limit_remarks: remarks(&rules, scenario),
+    })
+}
+
+/// Hex SHA-256 of a text's bytes.
+#[must_use]
+pub fn sha256_hex(text: &str) -> String {
+    Sha256::digest(text.as_bytes()).iter().fold(String::with_capacity(64), |mut hex, byte| {
+        let _ = write!(hex, "{byte:02x}");
+        hex
+    })
 }

@@ -1,0 +1,127 @@
+//! Constant acceleration with relaxing dampers: slack flight, and deployment at a constant force.
+use super::roots::{Passage, first_passage, monotone_zero};
+use super::signal::Turn;
+
+/// `w(t) = c0 + c1 t + c2 t^2 + sum of E exp(-r t)` over at most two relaxations with `r > 0`.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub struct Drift {
+    /// Polynomial coefficients.
+    pub c: [f64; 3],
+    /// Amplitude and rate of each relaxation; amplitude 0 where there is none.
+    pub relax: [(f64, f64); 2],
+}
+
+/// Turning points, at most three, in order.
+type Turns = [Option<Turn>; 3];
+
+impl Drift {
+    fn exponentials(&self, t: f64) -> [(f64, f64); 2] {
+        self.relax.map(|(e, r)| if e == 0.0 { (0.0, 0.0) } else { (e * (-r * t).exp(), r) })
+    }
+
+    /// Value, slope and curvature at `t`.
+    fn jet(&self, t: f64) -> [f64; 3] {
+        let [c0, c1, c2] = self.c;
+        let mut jet = [c0 + t * (c1 + t * c2), c1 + 2.0 * c2 * t, 2.0 * c2];
+        for (e, r) in self.exponentials(t) {
+            jet[0] += e;
+            jet[1] -= r * e;
+            jet[2] += r * r * e;
+        }
+        jet
+    }
+
+    /// Value at `t`.
+    #[must_use]
+    pub fn value(&self, t: f64) -> f64 {
+        self.jet(t)[0]
+    }
+
+    /// Value and slope at `t`.
+    #[must_use]
+    pub fn value_slope(&self, t: f64) -> (f64, f64) {
+        let jet = self.jet(t);
+        (jet[0], jet[1])
+    }
+
+    /// The time derivative.
+    #[must_use]
+    pub fn derivative(&self) -> Self {
+        let [_, c1, c2] = self.c;
+        Self { c: [c1, 2.0 * c2, 0.0], relax: self.relax.map(|(e, r)| (-e * r, r)) }
+    }
+
+    /// `a w + b`.
+    #[must_use]
+    pub fn scaled(&self, a: f64, b: f64) -> Self {
+        let [c0, c1, c2] = self.c;
+        Self { c: [a * c0 + b, a * c1, a * c2], relax: self.relax.map(|(e, r)| (a * e, r)) }
+    }
+
+    /// Where the third derivative is zero: at most once.
+    fn third_derivative_zero(&self) -> Option<f64> {
+        let [(e1, r1), (e2, r2)] = self.relax;
+        let t = (-(e1 * r1.powi(3)) / (e2 * r2.powi(3))).ln() / (r1 - r2);
+        (t.is_finite() && t > 0.0).then_some(t)
+    }
+
+    /// Turning points in `(from, to]`, by the chain of derivatives: the third derivative has at most one zero, so the
+    /// curvature has at most two, so the slope at most three.
+    #[must_use]
+    pub fn turns(&self, from: f64, to: f64) -> Turns {
+        let mut turns = [None; 3];
+        let slope = self.derivative();
+        let flat = self.relax.iter().all(|(e, _)| *e == 0.0);
+        if flat {
+            let time = -self.c[1] / (2.0 * self.c[2]);
+            if time > from && time <= to {
+                turns[0] = Some(Turn { time, is_maximum: self.c[2] < 0.0 });
+            }
+            return turns;
+        }
+        let curvature = slope.derivative();
+        let bends = crossings(&curvature, from, self.third_derivative_zero().into_iter(), to);
+        let found = crossings(&slope, from, bends.into_iter().flatten().map(|(t, _)| t), to);
+        for (slot, (time, passage)) in turns.iter_mut().zip(found.into_iter().flatten()) {
+            *slot = Some(Turn { time, is_maximum: passage == Passage::Down });
+        }
+        turns
+    }
+
+    /// First passage of `level` in `(from, to]`.
+    #[must_use]
+    pub fn first_passage(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<f64> {
+        let turns = self.turns(from, to);
+        first_passage(
+            |t| {
+                let (w, slope) = self.value_slope(t);
+                (w - level, slope)
+            },
+            passage,
+            from,
+            turns.into_iter().flatten().map(|turn| turn.time),
+            to,
+        )
+    }
+}
+
+fn crossings(
+    f: &Drift,
+    from: f64,
+    monotone_between: impl Iterator<Item = f64>,
+    to: f64,
+) -> [Option<(f64, Passage)>; 3] {
+    let mut found = [None; 3];
+    let mut count = 0;
+    let (mut a, mut fa) = (from, f.value(from));
+    for b in monotone_between.filter(|&t| t > from && t < to).chain(std::iter::once(to)) {
+        let fb = f.value(b);
+        let passage = [Passage::Up, Passage::Down].into_iter().find(|p| p.shows(fa, fb));
+        if let Some(passage) = passage.filter(|_| count < 3) {
+            found[count] = Some((monotone_zero(|t| f.value_slope(t), a, fa, b, fb), passage));
+            count += 1;
+        }
+        (a, fa) = (b, fb);
+    }
+    found
+}

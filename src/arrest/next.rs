@@ -1,0 +1,155 @@
+//! The first event that ends a mode.
+use super::mode::{Mode, Path, Pieces, State, Stretch};
+use super::outcome::Fall;
+use super::roots::{Passage, monotone_zero};
+use super::signal::Signal;
+
+/// Relative size of a passage that is told from touching a level.
+pub const TOUCH: f64 = 1e-12;
+
+/// What ends a mode.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum End {
+    /// The force becomes negative.
+    Slack,
+    /// Taut again.
+    Taut,
+    /// The force reaches what moves the slider.
+    Onset,
+    /// The slider stops.
+    SliderStops,
+    /// The slider is at its stroke.
+    StrokeUsedUp,
+    /// The slider passes a knot of its table.
+    SliderKnot,
+    /// A group passes a knot: which group, and whether upward.
+    Knot(usize, bool),
+}
+
+/// The slider's part of the state.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct Slider {
+    /// It has moved before: the onset force counts once.
+    pub started: bool,
+    /// It is at its stroke for good.
+    pub locked: bool,
+}
+
+/// Force that moves the slider; none when there is none or it is locked.
+pub fn moving_force(fall: &Fall, slider: Slider, s: f64) -> Option<f64> {
+    let absorber = fall.path.absorber.as_ref().filter(|_| !slider.locked)?;
+    Some(if slider.started { absorber.force.value(s) } else { absorber.onset_n })
+}
+
+/// Earliest of several ends.
+struct Earliest {
+    best: Option<(f64, End)>,
+    horizon: f64,
+}
+
+impl Earliest {
+    fn offer(&mut self, time: Option<f64>, end: End) {
+        if let Some(time) = time.filter(|&t| self.best.is_none_or(|(b, _)| t < b)) {
+            self.best = Some((time, end));
+        }
+    }
+
+    fn until(&self) -> f64 {
+        self.best.map_or(self.horizon, |(t, _)| t)
+    }
+}
+
+impl Path<'_> {
+    /// The first end of a stretch within `horizon` s.
+    pub fn first_end(&self, stretch: &Stretch, pieces: Pieces, slider: Slider, horizon: f64) -> Option<(f64, End)> {
+        let mut first = Earliest { best: None, horizon };
+        match stretch.mode {
+            Mode::Stuck => self.stuck_ends(stretch, slider, &mut first),
+            Mode::Sliding => self.sliding_ends(stretch, pieces, &mut first),
+            Mode::Slack => first.offer(taut_again(stretch, horizon), End::Taut),
+        }
+        self.knots(stretch, pieces, &mut first);
+        first.best
+    }
+
+    fn stuck_ends(&self, stretch: &Stretch, slider: Slider, first: &mut Earliest) {
+        let s = stretch.s.value(0.0);
+        let scale = self.fall().mass_kg * self.fall().gravity_m_per_s2 + stretch.force.value(0.0).abs();
+        if let Some(level) = moving_force(self.fall(), slider, s) {
+            first.offer(through(&stretch.force, level, TOUCH * level, first.until()), End::Onset);
+        }
+        let scale = moving_force(self.fall(), slider, s).map_or(scale, |level| scale.max(level));
+        let down = stretch.force.scaled(-1.0, 0.0);
+        first.offer(through(&down, 0.0, TOUCH * scale, first.until()), End::Slack);
+    }
+
+    fn sliding_ends(&self, stretch: &Stretch, pieces: Pieces, first: &mut Earliest) {
+        let Some(absorber) = &self.fall().path.absorber else { return };
+        first.offer(stretch.s.first_maximum(0.0, first.horizon), End::SliderStops);
+        let knot = absorber.force.piece(pieces.slider).x1;
+        let (level, end) =
+            if knot < absorber.stroke_m { (knot, End::SliderKnot) } else { (absorber.stroke_m, End::StrokeUsedUp) };
+        first.offer(stretch.s.first_passage(level, Passage::Up, 0.0, first.until()), end);
+    }
+
+    fn knots(&self, stretch: &Stretch, pieces: Pieces, first: &mut Earliest) {
+        for (group, law) in [&self.fall().path.line.elastic, &self.fall().path.other.elastic].into_iter().enumerate() {
+            let Some(piece) = law.piece(pieces.group[group]) else { continue };
+            if piece.x1.is_finite() {
+                let time = stretch.e[group].first_passage(piece.x1, Passage::Up, 0.0, first.until());
+                first.offer(time, End::Knot(group, true));
+            }
+            if pieces.group[group] > 0 {
+                let time = stretch.e[group].first_passage(piece.x0, Passage::Down, 0.0, first.until());
+                first.offer(time, End::Knot(group, false));
+            }
+        }
+    }
+
+    /// Pieces that hold a state.
+    pub fn pieces(&self, state: &State) -> Pieces {
+        let path = &self.fall().path;
+        Pieces {
+            group: [path.line.elastic.piece_at(state.e[0]), path.other.elastic.piece_at(state.e[1])],
+            slider: path.absorber.as_ref().map_or(0, |a| a.force.piece_at(state.s)),
+        }
+    }
+}
+
+/// First rise through a level that goes on to more than `touch` above it before it falls again.
+fn through(signal: &Signal, level: f64, touch: f64, to: f64) -> Option<f64> {
+    let mut from = 0.0;
+    loop {
+        let rise = signal.first_passage(level, Passage::Up, from, to)?;
+        let top = signal.first_maximum(rise, to).unwrap_or(to);
+        if signal.value(top) > level + touch {
+            return Some(rise);
+        }
+        if top <= from || top >= to {
+            return None;
+        }
+        from = top;
+    }
+}
+
+/// When a slack path is taut again: the gap `e1 + e2 + s - x` opens from zero (with zero rate where a damper lets go
+/// smoothly) and closes once. Its curvature, decaying stretches less gravity, changes sign at most once, so after its
+/// largest opening it only closes.
+fn taut_again(stretch: &Stretch, horizon: f64) -> Option<f64> {
+    let (Signal::Drift(x), Signal::Drift(e1), Signal::Drift(e2)) = (stretch.x, stretch.e[0], stretch.e[1]) else {
+        return None;
+    };
+    let s = stretch.s.value(0.0);
+    let c = [e1.c[0] + e2.c[0] + s - x.c[0], -x.c[1], -x.c[2]];
+    let gap = super::drift::Drift { c, relax: [e1.relax[0], e2.relax[0]] };
+    let widest = gap.turns(0.0, horizon).into_iter().flatten().filter(|t| t.is_maximum).last();
+    let (from, open) = match widest {
+        Some(turn) => (turn.time, gap.value(turn.time)),
+        None => (0.0, gap.value(0.0)),
+    };
+    let (end, closed) = (horizon, gap.value(horizon));
+    if closed > 0.0 {
+        return None;
+    }
+    Some(if open > 0.0 { monotone_zero(|t| gap.value_slope(t), from, open, end, closed) } else { from })
+}

@@ -1,0 +1,245 @@
+//! The damped oscillator `m x'' + c x' + k x = const` in its three regimes, and its envelope.
+//!
+//! One form serves all regimes: with `alpha = c/2m` and `q = k/m - alpha^2`,
+//! `exp(-alpha t) (P C(t) + Q S(t))`, where `C' = -q S`, `S' = C`, that is `cos` and `sin/omega` for `q > 0`, `cosh`
+//! and `sinh/delta` for `q < 0`. Nothing divides by the difference of the two roots, so no digits are lost near
+//! critical damping.
+use super::roots::{Passage, first_passage};
+use super::signal::Turn;
+
+/// The class of a damped oscillator.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Regime {
+    /// `c^2 > 4 m k`: crosses rest at most once.
+    Overdamped,
+    /// `c^2 = 4 m k` within 1e-9 of the ratio.
+    Critical,
+    /// `c^2 < 4 m k`: swings inside its envelope.
+    Underdamped,
+}
+
+/// Rates of a damped oscillator.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Oscillator {
+    /// Decay `alpha = c/2m`, 1/s, `>= 0`.
+    pub decay: f64,
+    /// `q = k/m - alpha^2`, 1/s2: square of the damped frequency, negative when overdamped.
+    pub q: f64,
+    /// `sqrt(|q|)`, 1/s.
+    pub frequency: f64,
+    /// `k/m`, 1/s2.
+    pub stiffness: f64,
+}
+
+impl Oscillator {
+    /// From mass in kg (`> 0`), damping in N s/m (`>= 0`) and stiffness in N/m (`>= 0`).
+    #[must_use]
+    pub fn new(mass_kg: f64, damping_n_s_per_m: f64, stiffness_n_per_m: f64) -> Self {
+        let decay = 0.5 * damping_n_s_per_m / mass_kg;
+        let stiffness = stiffness_n_per_m / mass_kg;
+        let q = stiffness - decay * decay;
+        Self { decay, q, frequency: q.abs().sqrt(), stiffness }
+    }
+
+    /// Damping ratio `alpha / sqrt(k/m)`.
+    #[must_use]
+    pub fn ratio(&self) -> f64 {
+        self.decay / self.stiffness.sqrt()
+    }
+
+    /// The regime; critical within 1e-9 of the ratio.
+    #[must_use]
+    pub fn regime(&self) -> Regime {
+        let ratio = self.ratio();
+        if (ratio - 1.0).abs() <= 1e-9 {
+            Regime::Critical
+        } else if ratio > 1.0 {
+            Regime::Overdamped
+        } else {
+            Regime::Underdamped
+        }
+    }
+
+    /// `exp(-alpha t) C(t)` and `exp(-alpha t) S(t)` for `t >= 0`, accurate to a few units in the last place of the
+    /// larger of the two exponentials.
+    #[must_use]
+    pub fn pair(&self, t: f64) -> (f64, f64) {
+        let angle = self.frequency * t;
+        if angle < 1e-3 {
+            let z = -self.q * t * t;
+            let e = (-self.decay * t).exp();
+            return (e * (1.0 + z / 2.0 * (1.0 + z / 12.0)), e * t * (1.0 + z / 6.0 * (1.0 + z / 20.0)));
+        }
+        if self.q > 0.0 {
+            let e = (-self.decay * t).exp();
+            let (sin, cos) = angle.sin_cos();
+            return (e * cos, e * sin / self.frequency);
+        }
+        let slow = (-t * self.stiffness / (self.decay + self.frequency)).exp();
+        let ratio = (-2.0 * angle).exp();
+        (0.5 * slow * (1.0 + ratio), -0.5 * slow * (-2.0 * angle).exp_m1() / self.frequency)
+    }
+
+    /// The envelope's amplitude `C = sqrt(u0^2 + ((v0 + alpha u0)/omega)^2)` of a start `u0` from rest position at
+    /// speed `v0`; none unless underdamped.
+    #[must_use]
+    pub fn envelope_amplitude(&self, u0: f64, v0: f64) -> Option<f64> {
+        (self.q > 0.0).then(|| u0.hypot((v0 + self.decay * u0) / self.frequency))
+    }
+}
+
+/// `w(t) = rest + exp(-alpha t) (p C(t) + q S(t))`.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Swing {
+    /// The oscillator.
+    pub of: Oscillator,
+    /// Value it tends to.
+    pub rest: f64,
+    /// Coefficient of `C`.
+    pub p: f64,
+    /// Coefficient of `S`.
+    pub q: f64,
+}
+
+impl Swing {
+    /// From the distance to rest and the slope at `t = 0`.
+    #[must_use]
+    pub fn new(of: Oscillator, rest: f64, from_rest: f64, slope: f64) -> Self {
+        Self { of, rest, p: from_rest, q: slope + of.decay * from_rest }
+    }
+
+    /// The time derivative.
+    #[must_use]
+    pub fn derivative(&self) -> Self {
+        let Oscillator { decay, q, .. } = self.of;
+        Self { of: self.of, rest: 0.0, p: self.q - decay * self.p, q: -decay * self.q - q * self.p }
+    }
+
+    /// `a w + b`.
+    #[must_use]
+    pub fn scaled(&self, a: f64, b: f64) -> Self {
+        Self { of: self.of, rest: a * self.rest + b, p: a * self.p, q: a * self.q }
+    }
+
+    /// Value at `t`.
+    #[must_use]
+    pub fn value(&self, t: f64) -> f64 {
+        let (c, s) = self.of.pair(t);
+        self.rest + self.p * c + self.q * s
+    }
+
+    /// Value and slope at `t`.
+    #[must_use]
+    pub fn value_slope(&self, t: f64) -> (f64, f64) {
+        let (c, s) = self.of.pair(t);
+        let Oscillator { decay, q, .. } = self.of;
+        (self.rest + self.p * c + self.q * s, (self.q - decay * self.p) * c - (decay * self.q + q * self.p) * s)
+    }
+
+    /// Times of the first turning point after `from` and the distance between turning points (infinite when there is
+    /// at most one).
+    fn first_turn(&self, from: f64) -> Option<(f64, f64)> {
+        let d = self.derivative();
+        if d.p == 0.0 && d.q == 0.0 {
+            return None;
+        }
+        let frequency = self.of.frequency;
+        if self.of.q > 0.0 {
+            let period = std::f64::consts::PI / frequency;
+            let mut first = (-d.p * frequency).atan2(d.q) / frequency;
+            if first <= 0.0 {
+                first += period;
+            }
+            if first <= from {
+                first += period * ((from - first) / period).floor();
+                while first <= from {
+                    first += period;
+                }
+            }
+            return Some((first, period));
+        }
+        let u = -d.p / d.q * frequency;
+        let t = if u < 1e-9 { -d.p / d.q } else { u.atanh() / frequency };
+        (t.is_finite() && t > from).then_some((t, f64::INFINITY))
+    }
+
+    /// Turning points after `from` and before `to`, in order.
+    pub fn turns(&self, from: f64, to: f64) -> impl Iterator<Item = Turn> + use<> {
+        let swing = *self;
+        self.turn_times(from, to).map(move |time| Turn { time, is_maximum: swing.value(time) > swing.rest })
+    }
+
+    fn turn_times(&self, from: f64, to: f64) -> impl Iterator<Item = f64> + use<> {
+        let first = self.first_turn(from);
+        (0..u32::MAX).map_while(move |n| {
+            let (start, period) = first?;
+            let t = if n == 0 { start } else { start + f64::from(n) * period };
+            (t < to).then_some(t)
+        })
+    }
+
+    /// First passage of `level` in `(from, to]`. Turning points close in on the rest value from both sides, so after
+    /// one of each without passage there is none.
+    #[must_use]
+    pub fn first_passage(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<f64> {
+        let mut turns = [f64::INFINITY; 3];
+        for (slot, turn) in turns.iter_mut().zip(self.turn_times(from, to)) {
+            *slot = turn;
+        }
+        let end = if turns[2] < to { turns[2] } else { to };
+        first_passage(
+            |t| {
+                let (w, slope) = self.value_slope(t);
+                (w - level, slope)
+            },
+            passage,
+            from,
+            turns,
+            end,
+        )
+    }
+
+    /// The largest value from `t` on: there, at the next maximum, or at rest.
+    #[must_use]
+    pub fn first_maximum_bound(&self, t: f64) -> f64 {
+        let next = self.turns(t, f64::INFINITY).take(2).find(|turn| turn.is_maximum);
+        self.value(t).max(self.rest).max(next.map_or(f64::NEG_INFINITY, |turn| self.value(turn.time)))
+    }
+
+    /// Integral of `w^2` over `0..t` for a swing with rest value 0, relative accuracy about 1e-12.
+    #[must_use]
+    pub fn square_integral(&self, t: f64) -> f64 {
+        let Oscillator { decay, q, frequency, .. } = self.of;
+        if q > 0.0 && frequency > 0.3 * decay {
+            let (re, im) = (self.p, -self.q / frequency);
+            let steady = 0.5 * re.hypot(im).powi(2) * decayed_time(2.0 * decay, t);
+            return steady + 0.5 * waving_integral(re * re - im * im, 2.0 * re * im, 2.0 * decay, 2.0 * frequency, t);
+        }
+        if q < 0.0 && frequency > 0.3 * decay {
+            let slow = self.of.stiffness / (decay + frequency);
+            let fast = decay + frequency;
+            let a = 0.5 * (self.p + self.q / frequency);
+            let b = 0.5 * (self.p - self.q / frequency);
+            return a * a * decayed_time(2.0 * slow, t)
+                + 2.0 * a * b * decayed_time(slow + fast, t)
+                + b * b * decayed_time(2.0 * fast, t);
+        }
+        super::quadrature::integral(|time| self.value(time).powi(2), t, decay + frequency)
+    }
+}
+
+/// Integral of `exp(-rate t)` over `0..t`.
+pub(super) fn decayed_time(rate: f64, t: f64) -> f64 {
+    if rate == 0.0 { t } else { -(-rate * t).exp_m1() / rate }
+}
+
+/// Integral of `Re((re + i im) exp((-rate + i frequency) t))` over `0..t`.
+pub(super) fn waving_integral(re: f64, im: f64, rate: f64, frequency: f64, t: f64) -> f64 {
+    let e = (-rate * t).exp();
+    let (sin, cos) = (frequency * t).sin_cos();
+    // (exp(z t) - 1) / z with z = -rate + i frequency.
+    let (nr, ni) = (e * cos - 1.0, e * sin);
+    let norm = rate * rate + frequency * frequency;
+    let (dr, di) = ((-rate * nr + frequency * ni) / norm, (-rate * ni - frequency * nr) / norm);
+    re * dr - im * di
+}

@@ -1,0 +1,158 @@
+//! What is read off each stretch: peaks, the lowest point, times above a level.
+use super::mode::{State, Stretch};
+use super::outcome::Lowest;
+use super::roots::Passage;
+use super::signal::Signal;
+
+/// A later peak replaces an earlier one only when larger by more than this share.
+const LARGER: f64 = 1e-9;
+
+/// A largest value and when it was reached.
+#[derive(Clone, Copy, Debug)]
+pub struct Peak {
+    /// The value.
+    pub value: f64,
+    /// Time from the start of the fall, s.
+    pub time_s: f64,
+}
+
+impl Peak {
+    /// No value yet.
+    pub const NONE: Self = Self { value: f64::NEG_INFINITY, time_s: 0.0 };
+
+    /// Takes a later value in.
+    pub fn offer(&mut self, value: f64, time_s: f64) {
+        if self.value == f64::NEG_INFINITY || value > self.value + LARGER * self.value.abs() {
+            *self = Self { value, time_s };
+        }
+    }
+
+    /// Takes in all of a signal over a stretch.
+    fn scan(&mut self, signal: &Signal, stretch: &Stretch) {
+        let (start, length) = (stretch.start_s, stretch.length_s);
+        self.offer(signal.value(0.0), start);
+        let mut from = 0.0;
+        while signal.upper_bound(from) > self.value + LARGER * self.value.abs() {
+            let Some(top) = signal.first_maximum(from, length) else { break };
+            self.offer(signal.value(top), start + top);
+            if top <= from {
+                break;
+            }
+            from = top;
+        }
+        self.offer(signal.value(length), start + length);
+    }
+}
+
+/// What has been read off so far.
+#[derive(Clone, Debug)]
+pub struct Record {
+    /// Line force, N.
+    pub force: Peak,
+    /// Stretch of the groups, m.
+    pub stretch: [Peak; 2],
+    /// Deepest turning point so far.
+    pub lowest: Option<Lowest>,
+    /// Next highest point after the lowest: its time from the start of the fall in s, and travel in m.
+    pub highest: Option<(f64, f64)>,
+    /// First slack, s.
+    pub first_slack_s: Option<f64>,
+    /// Times slack.
+    pub slack_episodes: u32,
+    /// Time above each level, s.
+    pub above_s: [f64; 2],
+}
+
+impl Record {
+    /// Nothing read yet.
+    pub const fn new() -> Self {
+        Self {
+            force: Peak::NONE,
+            stretch: [Peak::NONE; 2],
+            lowest: None,
+            highest: None,
+            first_slack_s: None,
+            slack_episodes: 0,
+            above_s: [0.0; 2],
+        }
+    }
+
+    /// Reads peaks and times above the levels off a stretch of known length.
+    pub fn read(&mut self, stretch: &Stretch, levels_n: [f64; 2], previous: &State) {
+        self.force.scan(&stretch.force, stretch);
+        for (peak, (signal, before)) in self.stretch.iter_mut().zip(stretch.e.iter().zip(previous.e)) {
+            peak.offer(before, stretch.start_s);
+            peak.scan(signal, stretch);
+        }
+        if self.first_slack_s.is_none() {
+            for (above, level) in self.above_s.iter_mut().zip(levels_n) {
+                *above += time_above(&stretch.force, level * (1.0 + LARGER), stretch.length_s);
+            }
+        }
+    }
+
+    /// Reads turning points off the first `until` s of a stretch and calls `on_lowest` for each new lowest one.
+    pub fn turnings(&mut self, stretch: &Stretch, until: f64, mut on_lowest: impl FnMut(f64)) {
+        let mut from = 0.0;
+        while let Some(t) = stretch.v.first_passage(0.0, Passage::Down, from, until) {
+            self.turned_down(stretch, t, &mut on_lowest);
+            from = t;
+            if let Some(top) = stretch.v.first_passage(0.0, Passage::Up, t, until) {
+                self.turned_up(stretch, top);
+                from = top;
+            }
+            // A swing's later lowest points are higher; a drift turns once.
+            if !matches!(stretch.v, Signal::Wave(_)) || from <= t {
+                return;
+            }
+        }
+    }
+
+    /// Reads the first highest point off a stretch that starts upward.
+    pub fn first_highest(&mut self, stretch: &Stretch, until: f64) {
+        if stretch.v.value(0.0) <= 0.0
+            && let Some(top) = stretch.v.first_passage(0.0, Passage::Up, 0.0, until)
+        {
+            self.turned_up(stretch, top);
+        }
+    }
+
+    fn turned_down(&mut self, stretch: &Stretch, t: f64, on_lowest: &mut impl FnMut(f64)) {
+        let travel_m = stretch.x.value(t);
+        let deeper = |old: Lowest| travel_m > old.travel_m + LARGER * old.travel_m.abs();
+        if self.lowest.is_none_or(deeper) {
+            self.lowest = Some(Lowest { time_s: stretch.start_s + t, travel_m });
+            self.highest = None;
+            on_lowest(t);
+        }
+    }
+
+    fn turned_up(&mut self, stretch: &Stretch, t: f64) {
+        if self.lowest.is_some() && self.highest.is_none() {
+            self.highest = Some((stretch.start_s + t, stretch.x.value(t)));
+        }
+    }
+}
+
+/// Time that a signal spends strictly above a level in `0..length`.
+fn time_above(signal: &Signal, level: f64, length: f64) -> f64 {
+    let mut total = 0.0;
+    let mut from = 0.0;
+    let mut above = signal.value(0.0) > level;
+    loop {
+        if !above && signal.upper_bound(from) <= level {
+            return total;
+        }
+        let passage = if above { Passage::Down } else { Passage::Up };
+        let next = signal.first_passage(level, passage, from, length);
+        let to = next.unwrap_or(length);
+        if above {
+            total += to - from;
+        }
+        if next.is_none() || to <= from {
+            return total;
+        }
+        above = !above;
+        from = to;
+    }
+}

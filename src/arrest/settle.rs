@@ -1,0 +1,77 @@
+//! The first instant at which the energy above the hang position is small.
+use super::mode::Stretch;
+use super::record::Record;
+use super::solve::Run;
+
+/// When the run settles, s from the start of the fall, if it does so up to the end of `stretch`; `last` says that no
+/// event ends that stretch.
+///
+/// The settled level is a share of `m g (h + x)` at the deepest turning point, so it is known only once the motion has
+/// turned, or is known never to turn: then `x` is the travel at rest. Stretches before that are looked at again.
+pub fn time(run: &Run, stretch: &Stretch, last: bool) -> Option<f64> {
+    let deepest = deepest(run, stretch, last)?;
+    let level_j = run.settings.settled_share * run.fall_energy_j(deepest);
+    let first_look = run.record.lowest.is_none();
+    let earlier = if first_look { run.stretches.as_slice() } else { &[] };
+    earlier.iter().chain(std::iter::once(stretch)).find_map(|s| within(run, s, level_j).map(|t| s.start_s + t))
+}
+
+/// When the energy first is below a level in a stretch, s from its start. It never rises while taut or slack.
+fn within(run: &Run, stretch: &Stretch, level_j: f64) -> Option<f64> {
+    // The energy falls nearly as an exponential: its logarithm is nearly straight.
+    let above = |t: f64| (run.fall.energy_above_j(&stretch.state(t)) / level_j).max(f64::MIN_POSITIVE).ln();
+    let start = above(0.0);
+    if start < 0.0 {
+        return Some(0.0);
+    }
+    let end = above(stretch.length_s);
+    if end >= 0.0 {
+        return None;
+    }
+    Some(falling_zero(above, start, stretch.length_s, end))
+}
+
+fn deepest(run: &Run, stretch: &Stretch, last: bool) -> Option<f64> {
+    let mut record = Record { lowest: run.record.lowest, ..Record::new() };
+    if record.lowest.is_none() {
+        record.turnings(stretch, stretch.length_s, |_| {});
+    }
+    match record.lowest {
+        Some(lowest) => Some(lowest.travel_m),
+        None => last.then(|| run.fall.hang_travel_m(stretch.s.value(stretch.length_s))),
+    }
+}
+
+/// Zero of a function that never rises, by false position with the weight of a stuck end halved (Illinois).
+///
+/// # Reference
+/// Dowell and Jarratt, BIT 11 (1971), 168-174.
+fn falling_zero(f: impl Fn(f64) -> f64, mut flo: f64, to: f64, mut fhi: f64) -> f64 {
+    let (mut lo, mut hi) = (0.0, to);
+    let mut side = 0_i8;
+    for _ in 0..200 {
+        let secant = lo + (hi - lo) * flo / (flo - fhi);
+        let t = if secant > lo && secant < hi { secant } else { 0.5 * (lo + hi) };
+        if hi - lo <= 4.0 * f64::EPSILON * hi || t <= lo || t >= hi {
+            break;
+        }
+        let value = f(t);
+        if value >= 0.0 {
+            (lo, flo) = (t, value);
+            if side == 1 {
+                fhi *= 0.5;
+            }
+            side = 1;
+        } else {
+            (hi, fhi) = (t, value);
+            if side == -1 {
+                flo *= 0.5;
+            }
+            side = -1;
+        }
+        if value == 0.0 {
+            break;
+        }
+    }
+    hi
+}

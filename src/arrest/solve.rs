@@ -1,0 +1,354 @@
+//! From event to event until settled.
+use super::ledger::Work;
+use super::mode::{Mode, Path, Pieces, State, Stretch};
+use super::motion::Motion;
+use super::next::{End, Slider, TOUCH, moving_force};
+use super::onset::give_back;
+use super::outcome::{ArrestError, Ended, EnergyAccount, Fall, Happening, Outcome, Settings, WorkCount};
+use super::record::Record;
+use super::settle;
+
+/// More modes than any real arrest has: 120 s of rebounds ten times a second, with knots.
+const MODES: u32 = 100_000;
+
+/// Largest imbalance of the energy account over the fall energy with which a run counts as computed.
+const BALANCE: f64 = 1e-9;
+
+/// Solves a vertical arrest from the moment the line is taut until it is settled or the time limit.
+///
+/// # Errors
+/// [`ArrestError`] for an input out of range, a path that cannot stretch, or an account that does not balance.
+///
+/// # Reference
+/// The solution of each mode is in closed form; see the modules `oscillator`, `drift` and `third`.
+pub fn solve(fall: &Fall, settings: &Settings) -> Result<Outcome, ArrestError> {
+    fall.check()?;
+    let mut run = Run::new(fall, *settings);
+    run.all()?;
+    run.outcome()
+}
+
+/// A run in progress.
+pub(super) struct Run<'a> {
+    pub fall: &'a Fall,
+    pub settings: Settings,
+    path: Path<'a>,
+    pub state: State,
+    before: State,
+    pub time_s: f64,
+    taut_s: f64,
+    speed_m_per_s: f64,
+    slider: Slider,
+    mode: Mode,
+    pub work: Work,
+    account: Option<EnergyAccount>,
+    imbalance_j: f64,
+    pub record: Record,
+    pub stretches: Vec<Stretch>,
+    happenings: Vec<(f64, Happening)>,
+    ended: Option<Ended>,
+    settled_s: Option<f64>,
+    modes: u32,
+}
+
+impl<'a> Run<'a> {
+    fn new(fall: &'a Fall, settings: Settings) -> Self {
+        let g = fall.gravity_m_per_s2;
+        let h = fall.free_fall_m;
+        let taut_s = if h > 0.0 { (2.0 * h / g).sqrt() } else { 0.0 };
+        let speed_m_per_s = fall.speed_at_taut_m_per_s.unwrap_or_else(|| (2.0 * g * h).sqrt());
+        let state = State { v: speed_m_per_s, ..State::default() };
+        Self {
+            fall,
+            settings,
+            path: Path::new(fall),
+            state,
+            before: state,
+            time_s: taut_s,
+            taut_s,
+            speed_m_per_s,
+            slider: Slider { started: false, locked: false },
+            mode: Mode::Stuck,
+            work: Work::default(),
+            account: None,
+            imbalance_j: 0.0,
+            record: Record::new(),
+            stretches: Vec::with_capacity(16),
+            happenings: Vec::with_capacity(16),
+            ended: None,
+            settled_s: None,
+            modes: 0,
+        }
+    }
+
+    fn all(&mut self) -> Result<(), ArrestError> {
+        self.taut()?;
+        let limit_s = self.taut_s + self.settings.time_limit_s;
+        while self.ended.is_none() {
+            if self.modes >= MODES {
+                return Err(ArrestError::TooManyModes { modes: MODES });
+            }
+            self.modes += 1;
+            let pieces = self.pieces();
+            let mut stretch = self.path.stretch(self.mode, pieces, &self.state, self.time_s)?;
+            let horizon = limit_s - self.time_s;
+            let end = self.path.first_end(&stretch, pieces, self.slider, horizon);
+            stretch.length_s = end.map_or(horizon, |(t, _)| t);
+            self.settled_s = self.settled_s.or_else(|| settle::time(self, &stretch, end.is_none()));
+            // What is settled while the slider still moves goes on until the slider stops.
+            let settled = self.settled_s.filter(|_| self.mode != Mode::Sliding);
+            let reach = stretch.length_s;
+            if let Some(time_s) = settled {
+                self.ended = Some(Ended::Settled { time_s });
+                stretch.length_s = (time_s - stretch.start_s).clamp(0.0, reach);
+            } else if end.is_none() {
+                self.ended = Some(Ended::TimeLimit);
+            }
+            self.pass(&stretch, if self.record.lowest.is_none() { reach } else { stretch.length_s });
+            if let (None, Some((_, end))) = (self.ended, end) {
+                self.after(end)?;
+            }
+        }
+        Ok(())
+    }
+
+    /// Takes in one finished stretch; turning points count up to `reach`.
+    fn pass(&mut self, stretch: &Stretch, reach: f64) {
+        self.record.read(stretch, self.settings.levels_n, &self.before);
+        if self.record.lowest.is_some() {
+            self.record.first_highest(stretch, stretch.length_s);
+        }
+        let (fall, work) = (self.fall, self.work);
+        let mut account = None;
+        self.record.turnings(stretch, reach, |t| {
+            account = Some(fall.account(&stretch.state(t), work + fall.work_in(stretch, t)));
+        });
+        self.account = account.or(self.account);
+        self.work += self.fall.work_in(stretch, stretch.length_s);
+        self.time_s = stretch.start_s + stretch.length_s;
+        self.state = stretch.state(stretch.length_s);
+        self.before = self.state;
+        self.balance();
+        self.stretches.push(*stretch);
+    }
+
+    /// Kinetic energy at taut, J.
+    fn start_j(&self) -> f64 {
+        0.5 * self.fall.mass_kg * self.speed_m_per_s * self.speed_m_per_s
+    }
+
+    /// `m g (h + x)`, J.
+    pub fn fall_energy_j(&self, travel_m: f64) -> f64 {
+        self.start_j() + self.fall.weight_n() * travel_m
+    }
+
+    fn balance(&mut self) {
+        let put_in = self.fall_energy_j(self.state.x);
+        let out = self.fall.account(&self.state, self.work).total_j();
+        self.imbalance_j = self.imbalance_j.max((put_in - out).abs());
+    }
+
+    fn happened(&mut self, what: Happening) {
+        self.happenings.push((self.time_s, what));
+    }
+
+    fn pieces(&self) -> Pieces {
+        self.path.pieces(&self.state)
+    }
+
+    fn after(&mut self, end: End) -> Result<(), ArrestError> {
+        match end {
+            End::Slack => {
+                self.go_slack();
+                Ok(())
+            }
+            End::Taut => self.taut(),
+            End::Onset => {
+                self.slide();
+                Ok(())
+            }
+            End::SliderStops => {
+                self.happened(Happening::DeploymentEnd);
+                self.mode = Mode::Stuck;
+                Ok(())
+            }
+            End::StrokeUsedUp => self.lock(),
+            End::SliderKnot | End::Knot(..) => {
+                self.snap(end);
+                Ok(())
+            }
+        }
+    }
+
+    /// Puts the state exactly on the knot it has reached, on the side it goes to.
+    fn snap(&mut self, end: End) {
+        let path = &self.fall.path;
+        match end {
+            End::Knot(group, up) => {
+                let law = [&path.line.elastic, &path.other.elastic][group];
+                let at = self.state.e[group];
+                let next = law.piece_at(at + 1e-9 * at.abs() * if up { 1.0 } else { -1.0 });
+                if let Some(piece) = law.piece(next) {
+                    self.state.e[group] = if up { piece.x0 } else { piece.x1.next_down() };
+                }
+            }
+            End::SliderKnot => {
+                if let Some(absorber) = &path.absorber {
+                    let next = absorber.force.piece_at(self.state.s * (1.0 + 1e-9));
+                    self.state.s = absorber.force.piece(next).x0;
+                }
+            }
+            _ => {}
+        }
+    }
+
+    fn go_slack(&mut self) {
+        self.happened(Happening::Slack);
+        self.record.first_slack_s.get_or_insert(self.time_s);
+        self.record.slack_episodes += 1;
+        let path = &self.fall.path;
+        for (e, group) in self.state.e.iter_mut().zip([&path.line, &path.other]) {
+            if !group.is_damped() {
+                *e = 0.0;
+            }
+        }
+        self.mode = Mode::Slack;
+    }
+
+    /// The path is taut, first or again: the force right after decides whether the slider moves.
+    fn taut(&mut self) -> Result<(), ArrestError> {
+        self.happened(Happening::Taut);
+        self.mode = Mode::Stuck;
+        let s = self.state.s;
+        let level = moving_force(self.fall, self.slider, s);
+        let path = &self.fall.path;
+        if path.line.is_rigid() && path.other.is_rigid() && self.state.v > 0.0 {
+            let Some(level) = level else { return Err(ArrestError::Rigid { time_s: self.time_s }) };
+            self.record.force.offer(level, self.time_s);
+            self.slide();
+            return Ok(());
+        }
+        let stuck = self.path.stretch(Mode::Stuck, self.pieces(), &self.state, self.time_s)?;
+        if let Some(level) = level.filter(|l| stuck.force.value(0.0) > l * (1.0 + TOUCH)) {
+            self.record.force.offer(level, self.time_s);
+            self.slide();
+        }
+        Ok(())
+    }
+
+    fn slide(&mut self) {
+        self.happened(Happening::DeploymentStart);
+        let lost_j = give_back(self.fall, &mut self.state, self.slider);
+        self.slider.started = true;
+        self.work.absorber_j += lost_j;
+        self.mode = Mode::Sliding;
+        let stroke = self.fall.path.absorber.as_ref().map_or(f64::INFINITY, |a| a.stroke_m);
+        if self.state.s >= stroke {
+            self.state.s = stroke;
+            self.slider.locked = true;
+            self.mode = Mode::Stuck;
+            self.happened(Happening::StrokeUsedUp);
+        }
+    }
+
+    fn lock(&mut self) -> Result<(), ArrestError> {
+        self.happened(Happening::StrokeUsedUp);
+        self.slider.locked = true;
+        self.mode = Mode::Stuck;
+        let path = &self.fall.path;
+        if let Some(absorber) = &path.absorber {
+            self.state.s = absorber.stroke_m;
+        }
+        if path.line.is_rigid() && path.other.is_rigid() {
+            return Err(ArrestError::Rigid { time_s: self.time_s });
+        }
+        Ok(())
+    }
+
+    fn outcome(self) -> Result<Outcome, ArrestError> {
+        let fall = self.fall;
+        let hang_travel_m = fall.hang_travel_m(self.state.s);
+        let deepest = self.record.lowest.filter(|l| l.travel_m >= hang_travel_m * (1.0 - 1e-9));
+        let arrest_distance_m = deepest.map_or(hang_travel_m, |l| l.travel_m);
+        let total_j = self.fall_energy_j(arrest_distance_m);
+        let energy_residual = if total_j > 0.0 { self.imbalance_j / total_j } else { self.imbalance_j };
+        if !(energy_residual <= BALANCE) {
+            return Err(ArrestError::Energy { residual: energy_residual });
+        }
+        let highest = deepest.and(self.record.highest);
+        let energy = match (deepest, self.account) {
+            (Some(_), Some(account)) => account,
+            _ => self.account_at_rest(),
+        };
+        Ok(Outcome {
+            time_taut_s: self.taut_s,
+            speed_at_taut_m_per_s: self.speed_m_per_s,
+            peak_force_n: self.record.force.value,
+            time_peak_force_s: self.record.force.time_s,
+            lowest: deepest,
+            arrest_distance_m,
+            hang_travel_m,
+            rebound_rise_m: highest.map(|(_, travel_m)| arrest_distance_m - travel_m),
+            time_highest_s: highest.map(|(time_s, _)| time_s),
+            time_first_slack_s: self.record.first_slack_s,
+            slack_episodes: self.record.slack_episodes,
+            deployed_m: self.state.s,
+            stroke_used_up: self.slider.locked,
+            line_elongation_peak_m: self.record.stretch[0].value,
+            other_elongation_peak_m: self.record.stretch[1].value,
+            time_above_s: self.record.above_s,
+            ended: self.ended.unwrap_or(Ended::TimeLimit),
+            energy,
+            energy_residual,
+            work: WorkCount { modes: self.modes },
+            happenings: self.happenings,
+            motion: Motion {
+                gravity_m_per_s2: fall.gravity_m_per_s2,
+                free_fall_m: fall.free_fall_m,
+                stretches: self.stretches,
+            },
+        })
+    }
+
+    /// The account at rest, where what is still above the hang position has gone into the dampers.
+    fn account_at_rest(&self) -> EnergyAccount {
+        let rest = State { e: self.fall.hang_elongation_m(), v: 0.0, ..self.state };
+        let mut work = self.work;
+        work.damper_j += self.fall.energy_above_j(&self.state);
+        self.fall.account(&rest, work)
+    }
+}
+
+impl Fall {
+    fn check(&self) -> Result<(), ArrestError> {
+        let positive = |what, value: f64| {
+            if value > 0.0 && value.is_finite() { Ok(()) } else { Err(ArrestError::Input { what, value }) }
+        };
+        let not_negative = |what, value: f64| {
+            if value >= 0.0 && value.is_finite() { Ok(()) } else { Err(ArrestError::Input { what, value }) }
+        };
+        positive("mass", self.mass_kg)?;
+        not_negative("free fall", self.free_fall_m)?;
+        not_negative("gravity", self.gravity_m_per_s2)?;
+        if self.free_fall_m > 0.0 {
+            positive("gravity", self.gravity_m_per_s2)?;
+        }
+        if let Some(speed) = self.speed_at_taut_m_per_s {
+            not_negative("speed at taut", speed)?;
+        }
+        for group in [&self.path.line, &self.path.other] {
+            if let Some(piece) = group.elastic.piece(0) {
+                positive("stiffness", piece.slope)?;
+                not_negative("damping", group.damping_n_s_per_m)?;
+            }
+        }
+        if let Some(absorber) = &self.path.absorber {
+            positive("deployment force", absorber.force.value(0.0))?;
+            positive("stroke", absorber.stroke_m)?;
+            if absorber.onset_n.is_nan() || absorber.onset_n < absorber.force.value(0.0) {
+                return Err(ArrestError::Input { what: "onset force", value: absorber.onset_n });
+            }
+        }
+        Ok(())
+    }
+}

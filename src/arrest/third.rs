@@ -1,0 +1,305 @@
+//! Third-order modes: a damped and an undamped part in series, or two damped parts.
+//!
+//! The solution is an interpolation of the exponential on the spectrum,
+//! `w = rest + exp(mu t) (p C + q S) + r f(t)`, with the pair `mu +- sqrt(-q)` in the form of [`Oscillator`] and `f` the
+//! divided difference of `exp(s t)` over all three roots. It stays accurate when roots meet.
+use super::oscillator::{Oscillator, decayed_time, waving_integral};
+use super::quadrature::integral_with_waves;
+use super::roots::{Passage, monotone_zero};
+
+/// A real root and a pair (complex or real) of a cubic whose roots have negative real parts.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Spectrum {
+    /// The real root farthest from the others, 1/s, negative.
+    pub lambda: f64,
+    /// The pair as an oscillator: decay `-mu`, and `q` of its sign.
+    pub pair: Oscillator,
+    /// `(lambda - mu)^2 + q`: product of the distances from `lambda` to the pair.
+    pub apart: f64,
+}
+
+impl Spectrum {
+    /// Roots of `s^3 + b2 s^2 + b1 s + b0` with all coefficients positive and `b2 b1 > b0` (a stable cubic).
+    ///
+    /// The residual of the cubic is a few units in the last place of its largest term.
+    #[must_use]
+    pub fn of_cubic(b2: f64, b1: f64, b0: f64) -> Self {
+        let root = real_root(b2, b1, b0);
+        let first = Self::deflated(root, b2, b1, b0);
+        if first.pair.q >= 0.0 {
+            return first;
+        }
+        // Three real roots: keep the lonely one apart, so that a near pair stays together.
+        let (mu, delta) = (-first.pair.decay, first.pair.frequency);
+        let mut roots = [root, mu - delta, -first.pair.stiffness / (first.pair.decay + delta)];
+        roots.sort_by(f64::total_cmp);
+        let lonely = if roots[1] - roots[0] < roots[2] - roots[1] { roots[2] } else { roots[0] };
+        Self::deflated(lonely, b2, b1, b0)
+    }
+
+    /// Of a mass on two parts in series, each a spring (N/m) with a damper (N s/m); at least one damper works.
+    ///
+    /// `m C s^3 + (m K + c1 c2) s^2 + (k1 c2 + k2 c1) s + k1 k2 = 0` with `K = k1 + k2`, `C = c1 + c2`.
+    #[must_use]
+    pub fn in_series(mass_kg: f64, (k1, c1): (f64, f64), (k2, c2): (f64, f64)) -> Self {
+        let c = c1 + c2;
+        let mc = mass_kg * c;
+        Self::of_cubic((k1 + k2) / c + c1 * c2 / mc, (k1 * c2 + k2 * c1) / mc, k1 * k2 / mc)
+    }
+
+    fn deflated(lambda: f64, b2: f64, b1: f64, b0: f64) -> Self {
+        // s^2 + p s + r, with the better conditioned of the two ways to each coefficient.
+        let r = -b0 / lambda;
+        let p = if b2 * lambda.abs() < b1 { b2 + lambda } else { (b1 - r) / -lambda };
+        let decay = 0.5 * p;
+        let q = r - decay * decay;
+        let pair = Oscillator { decay, q, frequency: q.abs().sqrt(), stiffness: r };
+        Self { lambda, pair, apart: (lambda + decay).powi(2) + q }
+    }
+
+    /// `exp(mu t) C`, `exp(mu t) S` and the divided difference `f` at `t`.
+    fn basis(&self, t: f64) -> (f64, f64, f64) {
+        let (c, s) = self.pair.pair(t);
+        let d = -self.pair.decay - self.lambda;
+        if (d.abs() + self.pair.frequency) * t < 0.5 {
+            return (c, s, (self.lambda * t).exp() * self.divided_series(d, t));
+        }
+        (c, s, ((self.lambda * t).exp() - c + d * s) / self.apart)
+    }
+
+    /// Divided difference of `exp(s t)` over 0 and the pair `d +- sqrt(-q)`, as a series for small `d t`.
+    fn divided_series(&self, d: f64, t: f64) -> f64 {
+        let product = d * d + self.pair.q;
+        let (mut before, mut h) = (0.0, 1.0);
+        let mut power = 0.5 * t * t;
+        let mut sum = 0.0;
+        for n in 3..22 {
+            sum += h * power;
+            (before, h) = (h, 2.0 * d * h - product * before);
+            power *= t / f64::from(n);
+        }
+        sum
+    }
+
+    /// Largest rate of the spectrum, 1/s.
+    #[must_use]
+    pub fn fastest(&self) -> f64 {
+        self.lambda.abs().max(self.pair.decay + self.pair.frequency)
+    }
+}
+
+fn real_root(b2: f64, b1: f64, b0: f64) -> f64 {
+    let cubic = |s: f64| (((s + b2) * s + b1) * s + b0, (3.0 * s + 2.0 * b2) * s + b1);
+    // All real parts are negative and their sum is -b2, so a real root lies in (-b2, 0).
+    let (mut lo, mut hi) = (-b2, 0.0);
+    // Start where the cubic bends: from there Newton's step is monotone.
+    let bend = -b2 / 3.0;
+    if cubic(bend).0 > 0.0 {
+        hi = bend;
+    } else {
+        lo = bend;
+    }
+    monotone_between_turns(cubic, lo, hi)
+}
+
+/// Zero of the cubic in `[lo, hi]`, negative at `lo` and positive at `hi`, where it may have a flat part.
+fn monotone_between_turns(cubic: impl Fn(f64) -> (f64, f64), mut lo: f64, mut hi: f64) -> f64 {
+    let mut s = 0.5 * (lo + hi);
+    for _ in 0..200 {
+        let (value, slope) = cubic(s);
+        if value == 0.0 {
+            return s;
+        }
+        if value > 0.0 {
+            hi = s;
+        } else {
+            lo = s;
+        }
+        let newton = s - value / slope;
+        let next = if newton > lo && newton < hi { newton } else { 0.5 * (lo + hi) };
+        if (next - s).abs() <= f64::EPSILON * s.abs() {
+            return next;
+        }
+        s = next;
+    }
+    s
+}
+
+/// A scalar of a third-order mode.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Wave {
+    /// The roots.
+    pub of: Spectrum,
+    /// Value it tends to.
+    pub rest: f64,
+    /// Coefficients of the basis.
+    pub a: [f64; 3],
+}
+
+impl Wave {
+    /// From the distance to rest and the first two derivatives at `t = 0`.
+    #[must_use]
+    pub fn new(of: Spectrum, rest: f64, jet: [f64; 3]) -> Self {
+        let [w, w1, w2] = jet;
+        let decay = of.pair.decay;
+        Self { of, rest, a: [w, w1 + decay * w, w2 + 2.0 * decay * w1 + of.pair.stiffness * w] }
+    }
+
+    /// Value at `t`.
+    #[must_use]
+    pub fn value(&self, t: f64) -> f64 {
+        let (c, s, f) = self.of.basis(t);
+        self.rest + self.a[0] * c + self.a[1] * s + self.a[2] * f
+    }
+
+    /// The time derivative.
+    #[must_use]
+    pub fn derivative(&self) -> Self {
+        let Spectrum { lambda, pair, .. } = self.of;
+        let [p, q, r] = self.a;
+        // (e^mu C)' = mu e^mu C - q e^mu S; (e^mu S)' = e^mu C + mu e^mu S; f' = lambda f + e^mu S.
+        let a = [q - pair.decay * p, r - pair.decay * q - pair.q * p, lambda * r];
+        Self { of: self.of, rest: 0.0, a }
+    }
+
+    /// `a w + b`.
+    #[must_use]
+    pub fn scaled(&self, a: f64, b: f64) -> Self {
+        Self { of: self.of, rest: a * self.rest + b, a: self.a.map(|x| a * x) }
+    }
+
+    /// A bound on `|w - rest|` for all times from `t` on.
+    #[must_use]
+    pub fn distance_bound(&self, t: f64) -> f64 {
+        self.split_bound(t).min(self.joint_bound(t))
+    }
+
+    /// From the three exponentials one by one: tight when the roots are apart.
+    fn split_bound(&self, t: f64) -> f64 {
+        let Spectrum { lambda, pair, apart } = self.of;
+        let alone = self.a[2] / apart;
+        let d = -pair.decay - lambda;
+        let (p, q) = (self.a[0] - alone, self.a[1] + alone * d);
+        let own = alone.abs() * (lambda * t).exp();
+        if pair.q > 0.0 {
+            return own + (-pair.decay * t).exp() * p.hypot(q / pair.frequency);
+        }
+        let (a, b) = (0.5 * (p + q / pair.frequency), 0.5 * (p - q / pair.frequency));
+        let slow = pair.stiffness / (pair.decay + pair.frequency);
+        own + a.abs() * (-slow * t).exp() + b.abs() * (-(pair.decay + pair.frequency) * t).exp()
+    }
+
+    /// From `|C| <= e^(delta t)`, `|S| <= t e^(delta t)`, `|f| <= t^2/2 e^(nu t)` with the slowest decay `nu`: tight
+    /// when the roots meet.
+    fn joint_bound(&self, t: f64) -> f64 {
+        let Spectrum { lambda, pair, .. } = self.of;
+        let grow = if pair.q < 0.0 { pair.frequency } else { 0.0 };
+        let slow = if grow > 0.0 { pair.stiffness / (pair.decay + grow) } else { pair.decay };
+        let nu = slow.min(-lambda);
+        // t^n exp(-nu t) falls only after n/nu: take its largest value from t on.
+        let largest = |n: f64| {
+            let at = t.max(n / nu);
+            at.powf(n) * (-nu * at).exp()
+        };
+        let [p, q, r] = self.a.map(f64::abs);
+        p * largest(0.0) + q * largest(1.0) + 0.5 * r * largest(2.0)
+    }
+
+    /// Integral of `w^2` over `0..t` for a wave with rest value 0, relative accuracy about 1e-12.
+    #[must_use]
+    pub fn square_integral(&self, t: f64) -> f64 {
+        let Spectrum { lambda, pair, apart } = self.of;
+        let d = -pair.decay - lambda;
+        let far = apart > 0.1 * (lambda * lambda + pair.stiffness);
+        if !(far && pair.q > 0.0 && pair.frequency > 0.3 * pair.decay) {
+            let wave = if pair.q > 0.0 { pair.frequency } else { 0.0 };
+            return integral_with_waves(|time| self.value(time).powi(2), t, self.of.fastest(), wave);
+        }
+        let alone = self.a[2] / apart;
+        let (re, im) = (self.a[0] - alone, -(self.a[1] + alone * d) / pair.frequency);
+        let steady = 0.5 * re.hypot(im).powi(2) * decayed_time(2.0 * pair.decay, t);
+        alone * alone * decayed_time(-2.0 * lambda, t)
+            + 2.0 * alone * waving_integral(re, im, pair.decay - lambda, pair.frequency, t)
+            + steady
+            + 0.5 * waving_integral(re * re - im * im, 2.0 * re * im, 2.0 * pair.decay, 2.0 * pair.frequency, t)
+    }
+
+    /// First passage of `level` in `(from, to]`.
+    ///
+    /// From a point with distance `w > 0` and slope `w'` to the level, and `|w''| <= M` from there on, no zero lies
+    /// before the zero of `w + w' t - M t^2/2`; going there again and again comes to the first zero and never past it.
+    #[must_use]
+    pub fn first_passage(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<f64> {
+        let signal = self.scaled(1.0, -level);
+        let rate = signal.derivative();
+        let bend = rate.derivative();
+        let started = signal.distance_bound(0.0);
+        let mut search = Search { signal, rate, bend, at: from, to, started };
+        let wanted_start_above = passage == Passage::Down;
+        if (signal.value(from) > 0.0) != wanted_start_above {
+            search.at = search.zero()?;
+        }
+        search.zero()
+    }
+}
+
+struct Search {
+    signal: Wave,
+    rate: Wave,
+    bend: Wave,
+    at: f64,
+    to: f64,
+    started: f64,
+}
+
+impl Search {
+    /// The next zero after `at`, at which the sign has changed.
+    fn zero(&mut self) -> Option<f64> {
+        let start = self.signal.value(self.at);
+        let sign = if start > 0.0 { 1.0 } else { -1.0 };
+        let changed = |w: f64| if sign > 0.0 { w <= 0.0 } else { w > 0.0 };
+        let scale = self.signal.rest.abs() + self.started;
+        let (mut t, mut w) = (self.at, start.abs());
+        loop {
+            if self.gone(sign, t) {
+                return None;
+            }
+            let slope = sign * self.rate.value(t);
+            let bound = self.bend.distance_bound(t);
+            let safe = safe_step(w, slope, bound);
+            // Below the resolution of the numbers a step must still go on.
+            let step = safe.max(1e-9 * (scale / bound).sqrt()).max(4.0 * f64::EPSILON * t);
+            let next = if t + step >= self.to { self.to } else { t + step };
+            let value = self.signal.value(next);
+            if changed(value) {
+                let zero = self.between(t, next);
+                self.at = next;
+                return Some(zero);
+            }
+            if next >= self.to || !value.is_finite() {
+                return None;
+            }
+            (t, w) = (next, value.abs());
+        }
+    }
+
+    /// Whether the sign can never change again, or what is left of the motion is below the numbers' resolution.
+    fn gone(&self, sign: f64, t: f64) -> bool {
+        let left = self.signal.distance_bound(t);
+        sign * self.signal.rest > left || left < 1e-15 * self.started
+    }
+
+    fn between(&self, a: f64, b: f64) -> f64 {
+        let (fa, fb) = (self.signal.value(a), self.signal.value(b));
+        if fb == 0.0 {
+            return b;
+        }
+        monotone_zero(|t| (self.signal.value(t), self.rate.value(t)), a, fa, b, fb)
+    }
+}
+
+/// Zero of `w + slope t - bound t^2 / 2` for `w >= 0`.
+fn safe_step(w: f64, slope: f64, bound: f64) -> f64 {
+    let root = (slope * slope + 2.0 * bound * w).sqrt();
+    if slope > 0.0 { (slope + root) / bound } else { 2.0 * w / (root - slope) }
+}

@@ -1,0 +1,118 @@
+//! The arguments and their help.
+use crate::quantity::UnitSystem;
+use crate::sheet::CAUTION_LINE;
+use clap::{Args, Parser, Subcommand, ValueEnum};
+use std::path::PathBuf;
+
+const EXIT_CODES: &str = "Exit codes: 0 every check holds; 1 a check is thin, short or open; 2 the input is wrong; \
+                          3 it could not be computed; 130 interrupted.";
+
+/// First-pass estimate of fall arrest and suspended lines: clearance, force and margin.
+#[derive(Debug, Parser)]
+#[command(name = "underfoot", version, about, before_help = CAUTION_LINE, after_help = EXIT_CODES)]
+#[command(args_conflicts_with_subcommands = true, arg_required_else_help = true, max_term_width = 100)]
+pub struct Arguments {
+    /// What to do; a file alone opens the screen.
+    #[command(subcommand)]
+    pub command: Option<Command>,
+    /// The file for the screen.
+    #[command(flatten)]
+    pub view: Option<ViewArgs>,
+}
+
+/// Everything the program does.
+#[derive(Debug, Subcommand)]
+pub enum Command {
+    /// Open the screen on a scenario file (the same as `underfoot FILE`)
+    #[command(before_help = CAUTION_LINE)]
+    View(ViewArgs),
+    /// Print the estimate and its margins
+    #[command(before_help = CAUTION_LINE)]
+    Run(RunArgs),
+    /// Review files and folders: faults, doubtful inputs, margins, one verdict a file
+    #[command(before_help = CAUTION_LINE)]
+    Audit(AuditArgs),
+    /// List the built-in published limits with clause, year and how each value was confirmed
+    #[command(before_help = CAUTION_LINE)]
+    Limits(LimitsArgs),
+    /// Print an annotated scenario to start from
+    #[command(before_help = CAUTION_LINE)]
+    New(NewArgs),
+}
+
+/// Units shown.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, ValueEnum)]
+pub enum Units {
+    /// m, kg, kN
+    #[default]
+    Metric,
+    /// ft, lb, lbf
+    Us,
+}
+
+impl Units {
+    /// The system of units.
+    pub const fn system(self) -> UnitSystem {
+        match self {
+            Self::Metric => UnitSystem::Metric,
+            Self::Us => UnitSystem::Us,
+        }
+    }
+}
+
+/// Arguments of the screen.
+#[derive(Args, Clone, Debug)]
+pub struct ViewArgs {
+    /// Scenario file
+    pub file: PathBuf,
+    /// Units shown
+    #[arg(long, value_enum, default_value_t)]
+    pub units: Units,
+}
+
+/// Arguments of `run`.
+#[derive(Args, Clone, Debug)]
+pub struct RunArgs {
+    /// Scenario files; `-` reads standard input
+    #[arg(required = true, value_name = "FILE")]
+    pub files: Vec<PathBuf>,
+    /// JSON, SI units: one object, or with several files one a line
+    #[arg(long, conflicts_with = "csv")]
+    pub json: bool,
+    /// CSV of travel, speed, force and mode over time, SI units; one file only
+    #[arg(long)]
+    pub csv: bool,
+    /// Units shown in text
+    #[arg(long, value_enum, default_value_t)]
+    pub units: Units,
+}
+
+/// Arguments of `audit`.
+#[derive(Args, Clone, Debug)]
+pub struct AuditArgs {
+    /// Scenario files, and folders that are searched for `*.toml`
+    #[arg(required = true, value_name = "PATH")]
+    pub paths: Vec<PathBuf>,
+    /// JSON, one object a line and file
+    #[arg(long)]
+    pub json: bool,
+    /// Units shown in text
+    #[arg(long, value_enum, default_value_t)]
+    pub units: Units,
+}
+
+/// Arguments of `limits`.
+#[derive(Args, Clone, Debug)]
+pub struct LimitsArgs {
+    /// JSON, each value in its source's unit
+    #[arg(long)]
+    pub json: bool,
+}
+
+/// Arguments of `new`.
+#[derive(Args, Clone, Debug)]
+pub struct NewArgs {
+    /// Write to this file, which must not exist yet
+    #[arg(short, long, value_name = "FILE")]
+    pub output: Option<PathBuf>,
+}

@@ -1,0 +1,44 @@
+//! Results to stdout and messages to stderr; a closed pipe ends quietly.
+use crate::sheet::{Paint, clean};
+use std::io::{self, Write};
+
+/// Whether there is still somebody who reads the results.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Reader {
+    /// Go on.
+    Listens,
+    /// The pipe is closed, or the device is full (which was said): further results go nowhere.
+    Gone,
+}
+
+/// Writes results. Colour codes are taken out where stdout is no terminal or `NO_COLOR` is set.
+pub fn results(text: &str) -> Reader {
+    let mut stdout = anstream::stdout().lock();
+    match stdout.write_all(text.as_bytes()).and_then(|()| stdout.flush()) {
+        Ok(()) => Reader::Listens,
+        Err(error) if error.kind() == io::ErrorKind::BrokenPipe => Reader::Gone,
+        Err(error) => {
+            message(&format!("cannot write the results: {error}; look at the device they go to"));
+            Reader::Gone
+        }
+    }
+}
+
+/// How results are painted: always with colour, see [`results`].
+pub const PAINT: Paint = Paint::Colour;
+
+/// Writes one message of the program.
+pub fn message(words: &str) {
+    diagnostics(&format!("underfoot: {}\n", clean(words)));
+}
+
+/// Writes diagnostics that are already laid out.
+pub fn diagnostics(text: &str) {
+    // Nobody left to read the messages: nothing more can be said.
+    let _ = anstream::stderr().lock().write_all(text.as_bytes());
+}
+
+/// Whether diagnostics on stderr are painted.
+pub fn stderr_has_colour() -> bool {
+    anstream::AutoStream::choice(&io::stderr()) != anstream::ColorChoice::Never
+}

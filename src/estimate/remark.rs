@@ -1,0 +1,95 @@
+//! Sentences beside the numbers: what is taken for granted, and what the reader must know.
+use super::setup::Setup;
+use crate::arrest::{Ended, Outcome};
+use crate::physics::Group;
+use crate::quantity::{Dimension, UnitSystem, format_si};
+use crate::scenario::{Scenario, SubjectKind};
+
+/// What the model takes for granted in this run.
+pub fn assumptions(scenario: &Scenario, setup: &Setup) -> Vec<String> {
+    let path = &setup.fall.path;
+    let mut list = vec![
+        "The subject is a rigid mass that falls straight down; the line has no mass and nothing drags in the air."
+            .to_owned(),
+        path_sentence(&path.line, &path.other).to_owned(),
+    ];
+    if path.absorber.is_some() {
+        list.push(
+            "The absorber slides at its deployment force, never takes anything back, and is rigid at its stroke."
+                .to_owned(),
+        );
+    }
+    list.extend(setup.joined.map(str::to_owned));
+    if scenario.fall.free_fall.is_none() {
+        list.push("The free fall is worked out from the elevations and the length of the line.".to_owned());
+    }
+    list.push(format!("Gravity is {} m/s2; elevations are above the file's datum.", setup.fall.gravity_m_per_s2));
+    list
+}
+
+fn path_sentence(line: &Group, other: &Group) -> &'static str {
+    match (line.is_damped() || other.is_damped(), other.is_rigid()) {
+        (false, true) => "The line is a linear spring without damping.",
+        (true, true) => "The line is a linear spring with a viscous damper beside it (Kelvin-Voigt).",
+        (false, false) => "The line and the other parts of the path are linear springs without damping.",
+        (true, false) => "The line and the other parts of the path are linear springs with viscous dampers, in series.",
+    }
+}
+
+/// What the reader must know about these numbers.
+pub fn warnings(scenario: &Scenario, setup: &Setup, outcome: &Outcome) -> Vec<String> {
+    let mut list = Vec::new();
+    if contact_jump(setup, outcome) {
+        list.push(
+            "The largest force is the jump of the damper at the moment of taut (c v0): an artefact of the two-parameter \
+             line. Give `line.series_stiffness` for a three-parameter line without that jump."
+                .to_owned(),
+        );
+    }
+    if outcome.ended == Ended::TimeLimit {
+        list.push(
+            "The motion is not settled at the time limit: settle time and slack episodes are left out. Little or no \
+             damping does that."
+                .to_owned(),
+        );
+    }
+    if outcome.stroke_used_up {
+        list.push("The absorber's stroke is used up: from there on only stretch limits the force.".to_owned());
+    }
+    if scenario.harness.is_some() && scenario.subject.stretch_allowance.is_some() {
+        list.push(
+            "Both [harness] and `subject.stretch_allowance` are given: the stretch of the harness is counted twice."
+                .to_owned(),
+        );
+    }
+    list.extend(heavy(scenario));
+    list.extend(beside(scenario));
+    list
+}
+
+fn contact_jump(setup: &Setup, outcome: &Outcome) -> bool {
+    let path = &setup.fall.path;
+    let one_damped = path.line.is_damped() && path.other.is_rigid();
+    one_damped && outcome.peak_force_n > 0.0 && outcome.time_peak_force_s == outcome.time_taut_s
+}
+
+/// # Reference
+/// Goh and Love, Safety Science 48 (2010), 747-754.
+fn heavy(scenario: &Scenario) -> Option<String> {
+    let mass = scenario.subject.mass.si();
+    let heavy = scenario.subject.kind == SubjectKind::Person && scenario.absorber.is_some() && mass > 100.0;
+    heavy.then(|| {
+        format!(
+            "The person's mass of {} is above 100 kg: most absorbers tested were not adequate for heavy workers (Goh and \
+             Love 2010).",
+            format_si(mass, Dimension::Mass, UnitSystem::Metric)
+        )
+    })
+}
+
+fn beside(scenario: &Scenario) -> Option<String> {
+    let names: Vec<_> =
+        scenario.obstacles.iter().filter(|o| !o.is_below(&scenario.subject)).map(|o| format!("`{}`", o.name)).collect();
+    (!names.is_empty())
+        .then(|| format!("Beside the fall line and not met by a straight fall, so not judged: {}.", names.join(", ")))
+}

@@ -1,0 +1,101 @@
+//! Values that are possible alone and impossible together.
+use super::model::{Obstacle, Scenario, StretchLaw};
+use super::{Fault, Places, Severity};
+use crate::quantity::{Dimension, Measure, format_measure};
+
+/// Two values that cannot both be.
+pub(super) struct Clash {
+    path: String,
+    message: String,
+    expected: String,
+    hint: String,
+}
+
+impl Clash {
+    fn new(path: &str, message: String, expected: String, hint: &str) -> Self {
+        Self { path: path.to_owned(), message, expected, hint: hint.to_owned() }
+    }
+
+    /// The fault at the place of the value.
+    pub fn at(self, places: &Places) -> Fault {
+        let Self { path, message, expected, hint } = self;
+        Fault { severity: Severity::Error, span: places.of(&path), message, expected, hint: Some(hint) }
+    }
+}
+
+/// Every clash of a scenario's typical values.
+pub(super) fn clashes(scenario: &Scenario) -> Vec<Clash> {
+    let mut found = Vec::new();
+    found.extend(absorber(scenario));
+    found.extend(packed(scenario));
+    found.extend(rated_impact(scenario));
+    found.extend(static_elongation(scenario));
+    found.extend(scenario.obstacles.iter().enumerate().filter_map(|(index, obstacle)| extent(index + 1, obstacle)));
+    found
+}
+
+fn absorber(scenario: &Scenario) -> Option<Clash> {
+    let absorber = scenario.absorber.as_ref()?;
+    let onset = absorber.onset_force?;
+    (onset.si() < absorber.deploy_force.si()).then(|| {
+        Clash::new(
+            "absorber.onset_force",
+            format!("the onset force is below the deployment force `{}`", format_measure(&absorber.deploy_force)),
+            format!("expected at least {}", format_measure(&absorber.deploy_force)),
+            "deployment starts at the onset force and goes on at the deployment force, which is not larger",
+        )
+    })
+}
+
+fn packed(scenario: &Scenario) -> Option<Clash> {
+    let packed = scenario.absorber.as_ref()?.packed_length?;
+    let length = scenario.line.length?;
+    (packed.si() > length.si()).then(|| {
+        Clash::new(
+            "absorber.packed_length",
+            format!("the packed absorber is longer than the whole line of `{}`", format_measure(&length)),
+            format!("expected at most {}", format_measure(&length)),
+            "`line.length` includes the packed absorber",
+        )
+    })
+}
+
+fn rated_impact(scenario: &Scenario) -> Option<Clash> {
+    let StretchLaw::RatedImpact { force, mass, .. } = &scenario.line.stretch else { return None };
+    let least_n = 2.0 * mass.si() * scenario.gravity.si();
+    (force.si() <= least_n).then(|| {
+        Clash::new(
+            "line.rated_impact.force",
+            format!("a rated force of `{}` gives no stiffness for a mass of `{}`", format_measure(force), format_measure(mass)),
+            format!("expected more than twice the weight, {:.3} kN", least_n / 1000.0),
+            "an elastic line that stops a fall feels more than twice the weight; check the force and the mass of the rating",
+        )
+    })
+}
+
+fn static_elongation(scenario: &Scenario) -> Option<Clash> {
+    let StretchLaw::StaticElongation { from, to, .. } = &scenario.line.stretch else { return None };
+    let load_n = |load: &Measure| {
+        if load.dimension() == Dimension::Mass { load.si() * scenario.gravity.si() } else { load.si() }
+    };
+    (load_n(from) >= load_n(to)).then(|| {
+        Clash::new(
+            "line.static_elongation.to",
+            format!("the larger load `{}` is not above the smaller one `{}`", format_measure(to), format_measure(from)),
+            format!("expected more than {}", format_measure(from)),
+            "`from` is the smaller load, `to` the larger one",
+        )
+    })
+}
+
+fn extent(number: usize, obstacle: &Obstacle) -> Option<Clash> {
+    let (from, to) = obstacle.extent.as_ref()?;
+    (from.si() >= to.si()).then(|| {
+        Clash::new(
+            &format!("obstacle.{number}.to"),
+            format!("the extent ends at `{}`, where it starts at `{}`", format_measure(to), format_measure(from)),
+            format!("expected more than {}", format_measure(from)),
+            "`from` is left of `to`; both count from the fall line, right positive",
+        )
+    })
+}

@@ -1,0 +1,205 @@
+//! The first pass over a file: every key to its value and place, every fault of a single value.
+use super::field::{FIELDS, Field, LATER_WORDS, field_for};
+use super::{Fault, Severity, leaf};
+use crate::quantity::Measure;
+use std::collections::BTreeMap;
+use std::ops::Range;
+use toml::Spanned;
+use toml::de::{DeTable, DeValue};
+
+/// More obstacles than a hand-written file has.
+pub(super) const MOST_OBSTACLES: usize = 200;
+
+/// What the file holds, by concrete path.
+#[derive(Default)]
+pub(super) struct Values {
+    /// Quantities that were read.
+    pub measures: BTreeMap<String, Measure>,
+    /// Words, names and free text that were read.
+    pub words: BTreeMap<String, String>,
+    /// The reasons of single limits.
+    pub whys: BTreeMap<String, String>,
+    /// Where each key's value stands, also of refused ones; sections stand at their name.
+    pub spans: BTreeMap<String, Range<usize>>,
+    /// How many obstacles there are.
+    pub obstacles: usize,
+    /// What was wrong.
+    pub faults: Vec<Fault>,
+}
+
+impl Values {
+    /// Reads a whole document.
+    pub fn of(text: &str, document: &DeTable<'_>) -> Self {
+        let mut values = Self::default();
+        values.walk(text, "", document);
+        values
+    }
+
+    /// True when the key stands in the file, readable or not.
+    pub fn has(&self, path: &str) -> bool {
+        self.spans.contains_key(path)
+    }
+
+    /// Notes an error.
+    pub fn error(&mut self, span: Range<usize>, message: String, expected: &str, hint: Option<String>) {
+        let expected = expected.to_owned();
+        self.faults.push(Fault { severity: Severity::Error, span, message, expected, hint });
+    }
+
+    fn walk(&mut self, text: &str, prefix: &str, table: &DeTable<'_>) {
+        for (key, value) in table {
+            let name = key.get_ref().as_ref();
+            let path = if prefix.is_empty() { name.to_owned() } else { format!("{prefix}.{name}") };
+            match (plain(name), field_for(&path)) {
+                (true, Some(field)) if !field.ready => self.later(key.span(), &format!("`{path}`")),
+                (true, Some(field)) => {
+                    self.spans.insert(path.clone(), value.span());
+                    leaf::read(self, text, &path, field, value);
+                }
+                (true, None) if is_section(&path) => self.section(text, &path, key.span(), value),
+                _ => {
+                    let meant = self.unknown(prefix, name, key.span());
+                    if let Some(section) = meant.filter(|meant| is_section(meant) && value.get_ref().is_table()) {
+                        self.section(text, &section, key.span(), value);
+                    }
+                }
+            }
+        }
+    }
+
+    fn section(&mut self, text: &str, path: &str, at: Range<usize>, value: &Spanned<DeValue<'_>>) {
+        if value.get_ref().is_table() || value.get_ref().is_array() {
+            self.spans.insert(path.to_owned(), at.clone());
+        }
+        match (path, value.get_ref()) {
+            ("obstacle", DeValue::Array(list)) if list.iter().all(|entry| entry.get_ref().is_table()) => {
+                self.obstacles(text, list.iter());
+            }
+            ("obstacle", _) => {
+                let hint = Some("write each obstacle below a line `[[obstacle]]` of its own".to_owned());
+                self.error(at, "`obstacle` is not a list".into(), "expected [[obstacle]]", hint);
+            }
+            (_, DeValue::Table(table)) => self.walk(text, path, table),
+            _ => {
+                let keys = children(path).collect::<Vec<_>>().join("`, `");
+                let hint = Some(format!("`{path}` holds `{keys}`"));
+                self.error(value.span(), format!("`{path}` is not a section"), "expected keys of its own", hint);
+            }
+        }
+    }
+
+    fn obstacles<'v, 'i: 'v>(&mut self, text: &str, list: impl Iterator<Item = &'v Spanned<DeValue<'i>>>) {
+        for (index, entry) in list.enumerate() {
+            if index == MOST_OBSTACLES {
+                let hint = Some("keep the obstacles that the subject can reach".to_owned());
+                let message = format!("more than {MOST_OBSTACLES} obstacles");
+                return self.error(entry.span(), message, "one too many", hint);
+            }
+            self.obstacles += 1;
+            let path = format!("obstacle.{}", index + 1);
+            self.spans.insert(path.clone(), entry.span());
+            if let Some(table) = entry.get_ref().as_table() {
+                self.walk(text, &path, table);
+            }
+        }
+    }
+
+    /// A key or word that a later version will read.
+    pub fn later(&mut self, span: Range<usize>, what: &str) {
+        let hint = Some("a later version will read it; take it out or keep it in a comment until then".to_owned());
+        self.error(span, format!("{what} is not read by this version"), "not supported yet", hint);
+    }
+
+    /// Notes an unknown key; returns the path that was probably meant.
+    fn unknown(&mut self, prefix: &str, name: &str, at: Range<usize>) -> Option<String> {
+        let shown = quoted(name);
+        let message = if prefix.is_empty() {
+            format!("unknown key {shown}")
+        } else {
+            format!("unknown key {shown} in `{prefix}`")
+        };
+        let known: Vec<&str> = children(prefix).collect();
+        let near = nearest(name, known.iter().copied());
+        let hint = if let Some(near) = near {
+            format!("did you mean `{near}`?")
+        } else if let Some(field) = FIELDS.iter().find(|field| field.key() == name) {
+            format!("`{name}` belongs elsewhere: `{}`", field.path)
+        } else {
+            format!("known here: `{}`", known.join("`, `"))
+        };
+        self.error(at.clone(), message, "not a key of this file format", Some(hint));
+        let meant = near.map(|near| if prefix.is_empty() { near.to_owned() } else { format!("{prefix}.{near}") })?;
+        // What was meant counts as present: one slip of the pen is one fault.
+        self.spans.entry(meant.clone()).or_insert(at);
+        Some(meant)
+    }
+
+    /// A word out of a list, or a fault.
+    pub fn word(&mut self, path: &str, field: &Field, at: Range<usize>, word: &str) {
+        if field.words.is_empty() {
+            self.words.insert(path.to_owned(), word.to_owned());
+        } else if LATER_WORDS.contains(&(field.path, word)) {
+            self.later(at, &format!("`{word}`"));
+        } else if field.words.contains(&word) {
+            self.words.insert(path.to_owned(), word.to_owned());
+        } else {
+            let ready = field.words.iter().copied().filter(|word| !LATER_WORDS.contains(&(field.path, *word)));
+            let list = ready.clone().collect::<Vec<_>>().join("`, `");
+            let hint = match nearest(word, ready) {
+                Some(near) => format!("did you mean `{near}`? known: `{list}`"),
+                None => format!("known: `{list}`"),
+            };
+            self.error(
+                at,
+                format!("unknown {} {}", field.label, quoted(word)),
+                "expected one of the known words",
+                Some(hint),
+            );
+        }
+    }
+}
+
+/// A key that can be part of a path: quoted keys with points or digits alone cannot.
+fn plain(name: &str) -> bool {
+    !name.is_empty()
+        && name.bytes().all(|b| b.is_ascii_lowercase() || b.is_ascii_digit() || b == b'_')
+        && !name.bytes().all(|b| b.is_ascii_digit())
+}
+
+/// True when keys stand below the path.
+fn is_section(path: &str) -> bool {
+    path == "obstacle" || children(path).next().is_some()
+}
+
+/// The names that may stand directly below a path, each once.
+fn children(prefix: &str) -> impl Iterator<Item = &'static str> {
+    let pattern = if prefix.starts_with("obstacle.") { "obstacle.*".to_owned() } else { prefix.to_owned() };
+    let mut last = "";
+    FIELDS.iter().filter_map(move |field| {
+        let rest =
+            if pattern.is_empty() { field.path } else { field.path.strip_prefix(&pattern)?.strip_prefix('.')? };
+        let name = rest.split('.').next()?;
+        if name == last || name == "*" {
+            return None;
+        }
+        last = name;
+        Some(name)
+    })
+}
+
+/// The known name that was probably meant: few letters off.
+pub(super) fn nearest(name: &str, known: impl Iterator<Item = &'static str>) -> Option<&'static str> {
+    known
+        .map(|candidate| (strsim::jaro_winkler(&name.to_lowercase(), candidate), candidate))
+        .filter(|(likeness, _)| *likeness > 0.8)
+        .max_by(|a, b| a.0.total_cmp(&b.0))
+        .map(|(_, candidate)| candidate)
+}
+
+/// A file's own text inside a message: in back-quotes, short, without control characters.
+pub(super) fn quoted(text: &str) -> String {
+    const LONGEST: usize = 40;
+    let clean: String = text.chars().take(LONGEST).map(|c| if c.is_control() { '?' } else { c }).collect();
+    let more = if text.chars().count() > LONGEST { ".." } else { "" };
+    format!("`{clean}{more}`")
+}

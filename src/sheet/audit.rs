@@ -1,0 +1,143 @@
+//! What a reviewer is told about one file after the other.
+use super::json::{Layout, margin, print};
+use super::page::{Page, Paint, Tone};
+use super::text::{margin_table, sentences, verdict_line};
+use super::{CAUTION_LINE, CAUTIONS, Report};
+use crate::margin::Verdict;
+use crate::quantity::UnitSystem;
+use crate::scenario::Faults;
+use serde_json::{Map, Value, json};
+
+/// What became of one file.
+#[derive(Clone, Debug)]
+pub enum Finding {
+    /// Read, computed and judged; the doubts may be none.
+    Judged(Box<Report>, Faults),
+    /// Read and refused.
+    Refused(Faults),
+    /// Not readable; why.
+    Unreadable(String),
+    /// Read, but not computed; why.
+    NotComputed(String),
+}
+
+/// One file with its finding.
+#[derive(Clone, Debug)]
+pub struct Audited {
+    /// Name of the file as given.
+    pub file: String,
+    /// What became of it.
+    pub finding: Finding,
+}
+
+impl Audited {
+    /// The one verdict of the file: a verdict word, or `refused`, `unreadable`, `not computed`.
+    #[must_use]
+    pub fn verdict(&self) -> &'static str {
+        match &self.finding {
+            Finding::Judged(report, _) => report.verdict.word(),
+            Finding::Refused(_) => "refused",
+            Finding::Unreadable(_) => "unreadable",
+            Finding::NotComputed(_) => "not computed",
+        }
+    }
+    const fn symbol(&self) -> char {
+        match &self.finding {
+            Finding::Judged(report, _) => report.verdict.symbol(),
+            Finding::Refused(_) | Finding::Unreadable(_) | Finding::NotComputed(_) => '!',
+        }
+    }
+}
+
+/// The caution that stands above an audit.
+#[must_use]
+pub fn audit_head(paint: Paint) -> String {
+    let mut page = Page::new(paint);
+    page.wrapped("", CAUTION_LINE, Tone::Caution);
+    page.finish()
+}
+
+/// One file of an audit as text.
+#[must_use]
+pub fn audit_text(audited: &Audited, system: UnitSystem, paint: Paint) -> String {
+    let mut page = Page::new(paint);
+    page.heading(&audited.file);
+    let colour = paint == Paint::Colour;
+    match &audited.finding {
+        Finding::Judged(report, doubts) => judged(&mut page, report, doubts, system, colour),
+        Finding::Refused(faults) => {
+            refusal(&mut page, audited, "the file has faults");
+            page.raw(&faults.render(colour));
+        }
+        Finding::Unreadable(why) | Finding::NotComputed(why) => refusal(&mut page, audited, why),
+    }
+    page.finish()
+}
+
+fn refusal(page: &mut Page, audited: &Audited, why: &str) {
+    let lead = format!("{} {}  ", audited.symbol(), audited.verdict().to_uppercase());
+    page.wrapped(&lead, why, Tone::Verdict(Verdict::Short));
+}
+
+fn judged(page: &mut Page, report: &Report, doubts: &Faults, system: UnitSystem, colour: bool) {
+    verdict_line(page, &report.scenario, &report.margins, report.verdict, system);
+    margin_table(page, &report.margins, system);
+    for margin in &report.margins {
+        page.wrapped("    ", &format!("{}: {}", margin.label, margin.basis.words), Tone::Faint);
+        if let Some(note) = &margin.note {
+            page.wrapped("      note: ", note, Tone::Plain);
+        }
+    }
+    sentences(page, "limits", &report.limit_remarks);
+    sentences(page, "warnings", &report.estimate.warnings);
+    if !doubts.faults.is_empty() {
+        page.heading(&format!("doubtful inputs: {}", doubts.faults.len()));
+        page.raw(&doubts.render(colour));
+    }
+}
+
+/// One file of an audit as one line of JSON.
+#[must_use]
+pub fn audit_json(audited: &Audited) -> String {
+    let mut object = Map::new();
+    object.insert("file".into(), json!(audited.file));
+    object.insert("verdict".into(), json!(audited.verdict()));
+    object.insert("version".into(), json!(env!("CARGO_PKG_VERSION")));
+    object.insert("cautions".into(), json!(CAUTIONS));
+    match &audited.finding {
+        Finding::Judged(report, doubts) => {
+            object.insert("scenario_sha256".into(), json!(report.scenario_sha256));
+            object.insert("faults".into(), json!([]));
+            object.insert("doubts".into(), json!(doubts.rows()));
+            object.insert("margins".into(), report.margins.iter().map(margin).collect());
+            object.insert("warnings".into(), json!(report.estimate.warnings));
+        }
+        Finding::Refused(faults) => {
+            object.insert("faults".into(), json!(faults.rows()));
+        }
+        Finding::Unreadable(why) | Finding::NotComputed(why) => {
+            object.insert("reason".into(), json!(why));
+        }
+    }
+    print(&Value::Object(object), Layout::OneLine)
+}
+
+/// The verdicts of an audit in the order in which they are counted.
+const COUNTED: &[&str] = &["holds", "thin", "open", "short", "refused", "unreadable", "not computed"];
+
+/// The last line of an audit: `3 files: 1 holds, 1 short, 1 refused`.
+#[must_use]
+pub fn tally(verdicts: &[&str]) -> String {
+    let parts: Vec<String> = COUNTED
+        .iter()
+        .map(|word| (word, verdicts.iter().filter(|v| *v == word).count()))
+        .filter(|(_, count)| *count > 0)
+        .map(|(word, count)| format!("{count} {word}"))
+        .collect();
+    let files = if verdicts.len() == 1 { "file" } else { "files" };
+    format!(
+        "{} {files}: {}",
+        verdicts.len(),
+        if parts.is_empty() { "none judged".to_owned() } else { parts.join(", ") }
+    )
+}

@@ -1,0 +1,335 @@
+//! The state of the screen.
+use super::lean::{Lean, leans};
+use super::theme::Theme;
+use crate::quantity::UnitSystem;
+use crate::scenario::{Document, Input, inputs};
+use crate::sheet::{Report, ReportError, report};
+use ratatui::layout::Size;
+use std::path::PathBuf;
+
+/// The large view.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub enum View {
+    /// The fall to scale.
+    #[default]
+    Elevation,
+    /// Travel and force over time.
+    History,
+    /// Every check; a view of its own only where the margins find no room below.
+    Margins,
+}
+
+impl View {
+    /// All views in the order of the tabs.
+    pub const ALL: [Self; 3] = [Self::Elevation, Self::History, Self::Margins];
+
+    /// The name on the tab.
+    #[must_use]
+    pub const fn title(self) -> &'static str {
+        match self {
+            Self::Elevation => "Elevation",
+            Self::History => "History",
+            Self::Margins => "Margins",
+        }
+    }
+}
+
+/// Which pane the keys go to.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub enum Pane {
+    /// The inputs.
+    #[default]
+    Inputs,
+    /// The margins.
+    Margins,
+}
+
+/// What keys mean at present.
+#[derive(Clone, Debug, Default)]
+pub enum Mode {
+    /// Commands.
+    #[default]
+    Commands,
+    /// A value is being typed.
+    Typing(Typing),
+    /// The help screen is open, scrolled down by so many rows.
+    Help(u16),
+    /// Asked whether to leave with unsaved changes.
+    Leaving(Exit),
+}
+
+/// A value being typed.
+#[derive(Clone, Debug)]
+pub struct Typing {
+    /// The text with its cursor.
+    pub text: tui_input::Input,
+    /// What is wrong with it, with a hint.
+    pub fault: Option<String>,
+}
+
+/// How the screen ends.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Exit {
+    /// The user is done.
+    Done,
+    /// Interrupted from the keyboard.
+    Interrupted,
+}
+
+/// A message to the user.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct Notice {
+    /// The words.
+    pub words: String,
+    /// Whether something went wrong.
+    pub is_fault: bool,
+}
+
+/// The stretch of time that History shows.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub enum Window {
+    /// From the start to a while after the lowest point.
+    #[default]
+    FirstCatch,
+    /// The whole motion.
+    Whole,
+}
+
+/// The play head.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Play {
+    /// Where it is, s from the start of the fall.
+    pub time_s: f64,
+    /// Whether it runs.
+    pub running: bool,
+    /// Index into [`Play::SPEEDS`].
+    pub speed: usize,
+}
+
+impl Play {
+    /// Seconds of the fall for each second of watching, with their names.
+    pub const SPEEDS: [(f64, &'static str); 8] = [
+        (0.01, "1/100"),
+        (0.02, "1/50"),
+        (0.05, "1/20"),
+        (0.1, "1/10"),
+        (0.2, "1/5"),
+        (0.5, "1/2"),
+        (1.0, "1/1"),
+        (2.0, "2/1"),
+    ];
+
+    /// Rate and name of the present speed.
+    #[must_use]
+    pub fn rate(&self) -> (f64, &'static str) {
+        Self::SPEEDS[self.speed.min(Self::SPEEDS.len() - 1)]
+    }
+}
+
+/// The answer to the present inputs.
+#[derive(Clone, Debug)]
+pub struct Answer {
+    /// The newest report that could be computed.
+    pub report: Option<Report>,
+    /// Why the present inputs give none; the report is then that of earlier inputs and must not pass for current.
+    pub fault: Option<String>,
+}
+
+impl Answer {
+    /// The report, if it belongs to the present inputs.
+    #[must_use]
+    pub const fn current(&self) -> Option<&Report> {
+        match self.fault {
+            None => self.report.as_ref(),
+            Some(_) => None,
+        }
+    }
+
+    /// True when the report on show belongs to earlier inputs.
+    #[must_use]
+    pub const fn is_stale(&self) -> bool {
+        self.fault.is_some()
+    }
+}
+
+/// Everything the screen knows.
+#[derive(Clone, Debug)]
+pub struct Model {
+    /// The file with the present values.
+    pub document: Document,
+    /// The file as last read or written.
+    pub saved: Document,
+    /// Earlier states, the latest last.
+    pub undo: Vec<Document>,
+    /// States taken back, the latest last.
+    pub redo: Vec<Document>,
+    /// Units of display.
+    pub units: UnitSystem,
+    /// Colours.
+    pub theme: Theme,
+    /// Size of the terminal.
+    pub size: Size,
+    /// The inputs of the document, in file order.
+    pub inputs: Vec<Input>,
+    /// Which way raising each input moves the governing margin; same order as the inputs.
+    pub leans: Vec<Lean>,
+    /// Report and fault.
+    pub answer: Answer,
+    /// Which pane the keys go to.
+    pub pane: Pane,
+    /// The chosen input.
+    pub input: usize,
+    /// The chosen check.
+    pub check: usize,
+    /// The large view.
+    pub view: View,
+    /// Stretch of time in History.
+    pub window: Window,
+    /// Play head.
+    pub play: Play,
+    /// What keys mean.
+    pub mode: Mode,
+    /// Message to the user.
+    pub notice: Option<Notice>,
+    /// Whether the file on disk was changed by somebody else.
+    pub changed_on_disk: bool,
+}
+
+/// States kept for undo.
+const UNDO_DEPTH: usize = 300;
+
+impl Model {
+    /// The screen of a file just read.
+    #[must_use]
+    pub fn new(document: Document, units: UnitSystem) -> Self {
+        let mut model = Self {
+            saved: document.clone(),
+            undo: Vec::new(),
+            redo: Vec::new(),
+            units,
+            theme: Theme::default(),
+            size: Size::new(80, 24),
+            inputs: Vec::new(),
+            leans: Vec::new(),
+            answer: Answer { report: None, fault: None },
+            pane: Pane::default(),
+            input: 0,
+            check: 0,
+            view: View::default(),
+            window: Window::default(),
+            play: Play { time_s: 0.0, running: false, speed: 3 },
+            mode: Mode::default(),
+            notice: None,
+            changed_on_disk: false,
+            document,
+        };
+        model.recompute();
+        model
+    }
+
+    /// Where the file is.
+    #[must_use]
+    pub fn path(&self) -> PathBuf {
+        self.document.path().to_owned()
+    }
+
+    /// True when leaving now would lose changes.
+    #[must_use]
+    pub fn is_edited(&self) -> bool {
+        self.document.text() != self.saved.text()
+    }
+
+    /// The chosen input.
+    #[must_use]
+    pub fn chosen(&self) -> Option<&Input> {
+        self.inputs.get(self.input)
+    }
+
+    /// End of the motion on show, s.
+    #[must_use]
+    pub fn end_s(&self) -> f64 {
+        self.answer.report.as_ref().map_or(0.0, |report| report.estimate.trace.end_s())
+    }
+
+    /// The stretch of time shown in History, s.
+    #[must_use]
+    pub fn window_s(&self) -> (f64, f64) {
+        let end = self.end_s().max(1e-3);
+        let first = self.answer.report.as_ref().map_or(end, |report| {
+            let numbers = &report.estimate.numbers;
+            let taut = numbers.get("time_taut").unwrap_or(0.0);
+            let lowest = numbers.get("time_lowest").unwrap_or(end);
+            (lowest + 2.5 * (lowest - taut) + 0.1 * end.min(1.0)).min(end)
+        });
+        match self.window {
+            Window::Whole => (0.0, end),
+            Window::FirstCatch if self.play.time_s <= first => (0.0, first),
+            Window::FirstCatch => {
+                let page = (self.play.time_s / first).floor();
+                (page * first, (page + 1.0) * first)
+            }
+        }
+    }
+
+    /// Puts a new state in place of the present one, which undo brings back.
+    pub fn take(&mut self, document: Document) {
+        let before = std::mem::replace(&mut self.document, document);
+        self.undo.push(before);
+        if self.undo.len() > UNDO_DEPTH {
+            self.undo.remove(0);
+        }
+        self.redo.clear();
+        self.recompute();
+    }
+
+    /// Solves the present document; a failure keeps the last report, marked as stale by the fault.
+    pub fn recompute(&mut self) {
+        let chosen = self.chosen().map(|input| input.path.clone());
+        self.inputs = inputs(self.document.scenario());
+        if let Some(index) = chosen.and_then(|path| self.inputs.iter().position(|input| input.path == path)) {
+            self.input = index;
+        }
+        self.input = self.input.min(self.inputs.len().saturating_sub(1));
+        let file = self.document.path().display().to_string();
+        match report(&file, self.document.text(), self.document.scenario()) {
+            Ok(report) => self.answer = Answer { report: Some(report), fault: None },
+            Err(error) => self.answer.fault = Some(words(&error)),
+        }
+        self.leans = leans(&self.inputs, self.document.scenario(), self.answer.current());
+        let checks = self.answer.report.as_ref().map_or(0, |report| report.margins.len());
+        self.check = self.check.min(checks.saturating_sub(1));
+        self.play.time_s = self.play.time_s.min(self.end_s());
+    }
+
+    /// Takes note of what the file on disk now holds, in the present state and in all that undo and redo bring back.
+    pub fn adopt(&mut self, on_disk: &Document) {
+        self.saved = on_disk.clone();
+        let states = self.undo.iter_mut().chain(&mut self.redo).chain(std::iter::once(&mut self.document));
+        for state in states {
+            *state = state.clone().on_disk_as(on_disk);
+        }
+    }
+
+    /// Tells the user something.
+    pub fn say(&mut self, words: impl Into<String>) {
+        self.notice = Some(Notice { words: words.into(), is_fault: false });
+    }
+
+    /// Tells the user that something went wrong.
+    pub fn complain(&mut self, words: impl Into<String>) {
+        self.notice = Some(Notice { words: words.into(), is_fault: true });
+    }
+}
+
+/// The error with its hint.
+fn words(error: &ReportError) -> String {
+    use crate::estimate::EstimateError;
+    match error {
+        ReportError::Estimate(EstimateError::Geometry { message, hint, .. }) => format!("{message}; {hint}"),
+        ReportError::Basis(basis) => match basis.nearest {
+            Some(nearest) => format!("{error}; did you mean `{nearest}`"),
+            None => error.to_string(),
+        },
+        ReportError::Estimate(_) => error.to_string(),
+    }
+}

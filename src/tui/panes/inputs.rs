@@ -1,0 +1,169 @@
+//! The list of inputs, in sections as the file has them.
+use super::units::bare;
+use crate::quantity::Measure;
+use crate::scenario::Input;
+use crate::tui::edit::value_text;
+use crate::tui::lean::Lean;
+use crate::tui::model::{Mode, Model, Pane};
+use crate::tui::text::{cells, fit, put, put_right, width};
+use ratatui::buffer::Buffer;
+use ratatui::layout::Rect;
+
+/// One row of the list.
+#[derive(Clone, Debug, PartialEq, Eq)]
+enum Row {
+    Section(String),
+    Input(usize),
+}
+
+/// `obstacle.2` and `top` of `obstacle.2.top`.
+fn split(path: &str) -> (&str, &str) {
+    path.rsplit_once('.').unwrap_or(("general", path))
+}
+
+fn section_title(section: &str, model: &Model) -> String {
+    let words = section.replace(['.', '_'], " ");
+    let index = section.strip_prefix("obstacle.").and_then(|number| number.parse::<usize>().ok());
+    let obstacles = &model.document.scenario().obstacles;
+    match index.and_then(|number| obstacles.get(number.checked_sub(1)?)) {
+        Some(obstacle) => format!("{words}  {}", obstacle.name.trim()),
+        None => words,
+    }
+}
+
+fn rows(model: &Model) -> Vec<Row> {
+    let mut rows = Vec::new();
+    let mut last = "";
+    for (index, input) in model.inputs.iter().enumerate() {
+        let (section, _) = split(&input.path);
+        if section != last {
+            rows.push(Row::Section(section_title(section, model)));
+            last = section;
+        }
+        rows.push(Row::Input(index));
+    }
+    rows
+}
+
+fn first_shown(rows: &[Row], model: &Model, shown: usize) -> usize {
+    let at = rows.iter().position(|row| *row == Row::Input(model.input)).unwrap_or(0);
+    crate::tui::layout::scroll(at, rows.len(), shown)
+}
+
+/// The input in a terminal row.
+#[must_use]
+pub fn input_at(model: &Model, area: Rect, row: u16) -> Option<usize> {
+    let line = usize::from(row.checked_sub(area.y + 1)?);
+    let rows = rows(model);
+    let first = first_shown(&rows, model, usize::from(area.height.saturating_sub(1)));
+    match rows.get(first + line) {
+        Some(Row::Input(index)) => Some(*index),
+        _ => None,
+    }
+}
+
+/// Columns of the list.
+struct Columns {
+    label: u16,
+    value: u16,
+    band: u16,
+}
+
+impl Columns {
+    fn of(model: &Model, total: u16) -> Self {
+        let widest = |texts: Vec<String>| texts.iter().map(|text| cells(text)).max().unwrap_or(0);
+        let value = widest(model.inputs.iter().map(|input| value_text(&input.measure)).collect()).max(8);
+        let band = widest(model.inputs.iter().map(band_text).collect());
+        let rest = total.saturating_sub(1 + value + 3);
+        let band = if band > 0 && rest >= band + 1 + 20 { band + 1 } else { 0 };
+        Self { label: rest - band, value, band }
+    }
+}
+
+fn band_text(input: &Input) -> String {
+    let Measure { band, unit, .. } = input.measure;
+    if band.is_wide() { format!("{}..{}", bare(band.low, unit), bare(band.high, unit)) } else { String::new() }
+}
+
+/// Draws title and list.
+pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
+    let columns = Columns::of(model, area.width);
+    put(buffer, area, 0, 0, "Inputs", model.theme.heading());
+    let head = if columns.band > 0 { "value      band  " } else { "value  " };
+    put_right(buffer, area, 0, head, model.theme.quiet());
+    let rows = rows(model);
+    let shown = usize::from(area.height.saturating_sub(1));
+    let first = first_shown(&rows, model, shown);
+    for (line, row) in (1..).zip(rows.iter().skip(first).take(shown)) {
+        match row {
+            Row::Section(title) => {
+                put(buffer, area, 1, line, &fit(title, usize::from(area.width.saturating_sub(2))), model.theme.quiet());
+            }
+            Row::Input(index) => {
+                draw_input(buffer, Rect { y: area.y + line, height: 1, ..area }, model, *index, &columns)
+            }
+        }
+    }
+    draw_scroll_marks(buffer, area, model, (first, shown, rows.len()));
+}
+
+/// How many rows stand above and below those shown.
+fn draw_scroll_marks(buffer: &mut Buffer, area: Rect, model: &Model, (first, shown, count): (usize, usize, usize)) {
+    let below = count.saturating_sub(first + shown);
+    if first + below > 0 {
+        let words = format!("Inputs  {first} more above, {below} below");
+        put(buffer, area, 0, 0, &" ".repeat(usize::from(area.width)), model.theme.plain());
+        put(buffer, area, 0, 0, &words, model.theme.heading());
+    }
+}
+
+fn draw_input(buffer: &mut Buffer, row: Rect, model: &Model, index: usize, columns: &Columns) {
+    let input = &model.inputs[index];
+    let is_chosen = index == model.input;
+    let style = if is_chosen { model.theme.chosen(model.pane == Pane::Inputs) } else { model.theme.plain() };
+    if is_chosen {
+        buffer.set_style(row, style);
+        put(buffer, row, 0, 0, ">", style);
+    }
+    let label = split(&input.path).1.replace('_', " ");
+    put(buffer, row, 2, 0, &fit(&label, usize::from(columns.label.saturating_sub(2))), style);
+    if let (true, Mode::Typing(typing)) = (is_chosen, &model.mode) {
+        return draw_typing(
+            buffer,
+            Rect { x: row.x + columns.label, width: row.width - columns.label, ..row },
+            model,
+            typing,
+        );
+    }
+    let value = Rect { x: row.x + 1 + columns.label, width: columns.value, ..row };
+    put_right(buffer, value, 0, &value_text(&input.measure), style);
+    let band = Rect { x: value.right(), width: columns.band, ..row };
+    put_right(buffer, band, 0, &band_text(input), style);
+    let lean = model.leans.get(index).copied().unwrap_or(Lean::Unknown);
+    put_right(buffer, row, 0, &format!("{} ", lean.symbol()), style);
+}
+
+fn draw_typing(buffer: &mut Buffer, area: Rect, model: &Model, typing: &crate::tui::model::Typing) {
+    let plain = model.theme.plain();
+    put(buffer, area, 0, 0, &" ".repeat(usize::from(area.width)), plain);
+    buffer.set_style(area, ratatui::style::Style::reset());
+    let room = usize::from(area.width.saturating_sub(1));
+    let text = typing.text.value();
+    let skip = typing.text.visual_scroll(room.saturating_sub(1));
+    let shown: String = text.chars().skip(skip).collect();
+    put(buffer, area, 0, 0, &fit_hard(&shown, room), model.theme.heading());
+    let cursor = u16::try_from(typing.text.visual_cursor().saturating_sub(skip)).unwrap_or(0);
+    let under = text.chars().nth(typing.text.cursor()).unwrap_or(' ');
+    put(buffer, area, cursor, 0, &under.to_string(), model.theme.chosen(true));
+}
+
+fn fit_hard(text: &str, room: usize) -> String {
+    let mut kept = String::new();
+    for symbol in text.chars() {
+        if width(&kept) + 1 > room {
+            break;
+        }
+        kept.push(symbol);
+    }
+    kept
+}

@@ -1,0 +1,76 @@
+//! The verdict in a sentence.
+use crate::estimate::Estimate;
+use crate::margin::Verdict;
+use crate::quantity::{Dimension, UnitSystem, format_si};
+use crate::sheet::{Report, governing_words};
+use crate::tui::model::Model;
+use crate::tui::text::{put, put_right, width, wrap};
+use ratatui::buffer::Buffer;
+use ratatui::layout::Rect;
+
+/// Rows that the sentence and the peak force take.
+#[must_use]
+pub fn rows(model: &Model, columns: u16) -> u16 {
+    let (sentence, peak) = words(model);
+    u16::try_from(lines(&sentence, &peak, columns).len()).unwrap_or(1).min(4)
+}
+
+/// Draws it.
+pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
+    let (sentence, peak) = words(model);
+    let verdict = model.answer.current().map_or(Verdict::Open, |report| report.verdict);
+    let lines = lines(&sentence, &peak, area.width);
+    let inner = Rect { x: area.x + 1, width: area.width.saturating_sub(2), ..area };
+    for (row, line) in (0..).zip(&lines) {
+        put(buffer, inner, 0, row, line, model.theme.verdict(verdict));
+    }
+    if lines.len() == 1 {
+        put_right(buffer, inner, 0, &peak, model.theme.heading());
+    }
+}
+
+/// One line when sentence and peak fit beside each other, else the peak follows the wrapped sentence.
+fn lines(sentence: &str, peak: &str, columns: u16) -> Vec<String> {
+    let room = usize::from(columns.saturating_sub(2));
+    if width(sentence) + width(peak) + 3 <= room {
+        return vec![sentence.to_owned()];
+    }
+    let glue = if peak.is_empty() { "" } else { " - " };
+    wrap(&format!("{sentence}{glue}{peak}"), room)
+}
+
+fn words(model: &Model) -> (String, String) {
+    if let Some(fault) = &model.answer.fault {
+        let rest = if model.answer.report.is_some() { "; the numbers below are of earlier inputs" } else { "" };
+        return (format!("{}: {fault}{rest}", head(Verdict::Open)), String::new());
+    }
+    let Some(report) = &model.answer.report else { return (head(Verdict::Open), String::new()) };
+    let sentence = governing_words(&report.scenario, &report.margins, model.units);
+    (format!("{}  {sentence}", head(report.verdict)), peak(report, model.units))
+}
+
+/// `x SHORT`.
+fn head(verdict: Verdict) -> String {
+    format!("{} {}", verdict.symbol(), verdict.word().to_uppercase())
+}
+
+fn peak(report: &Report, units: UnitSystem) -> String {
+    let force = |si: f64| format_si(si, Dimension::Force, units);
+    let Some(peak) = report.estimate.numbers.get("arrest_force_peak") else { return String::new() };
+    match force_limit(report) {
+        Some(limit) => format!("peak {} of {}", force(peak), force(limit)),
+        None => format!("peak {}, no limit stated", force(peak)),
+    }
+}
+
+/// Limit of the arrest force, N.
+#[must_use]
+pub fn force_limit(report: &Report) -> Option<f64> {
+    report.margins.iter().find(|margin| margin.id == "arrest_force")?.limit
+}
+
+/// The regime and the end of the run in a few words.
+#[must_use]
+pub fn ending(estimate: &Estimate) -> &'static str {
+    if estimate.numbers.get("settle_time").is_some() { "settled" } else { "not settled" }
+}

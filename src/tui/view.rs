@@ -1,0 +1,117 @@
+//! Draws the whole screen from the model.
+use super::layout::{LEAST_HEIGHT, LEAST_WIDTH, Panes, views};
+use super::model::{Mode, Model, View};
+use super::panes::history::Picture;
+use super::panes::scene::{Scene, lowest_time};
+use super::panes::units::Scale;
+use super::panes::{about, elevation, foot, header, help, history, inputs, log, margins, tabs, timeline, verdict};
+use super::text::put;
+use crate::quantity::Dimension;
+use crate::sheet::Report;
+use ratatui::Frame;
+use ratatui::layout::Rect;
+
+/// Draws one frame; reads nothing but the model.
+pub fn view(model: &Model, frame: &mut Frame) {
+    let area = frame.area();
+    let Some(panes) = Panes::of(area.as_size(), model) else {
+        return too_small(model, frame, area);
+    };
+    draw_top(model, frame, &panes);
+    if let Mode::Help(row) = model.mode {
+        let top = panes.verdict.bottom();
+        help::draw(frame, Rect { y: top, height: area.height.saturating_sub(top), ..area }, model, row);
+        return;
+    }
+    draw_lists(model, frame, &panes);
+    draw_rules(model, frame, &panes);
+    draw_view(model, frame, &panes);
+    foot::draw(frame.buffer_mut(), panes.foot, model);
+}
+
+fn too_small(model: &Model, frame: &mut Frame, area: Rect) {
+    let words =
+        format!("the screen needs {LEAST_WIDTH}x{LEAST_HEIGHT} (columns x rows), has {}x{}", area.width, area.height);
+    let room = usize::from(area.width);
+    for (row, line) in (0..).zip(super::text::wrap(&words, room)) {
+        put(frame.buffer_mut(), area, 0, row, &line, model.theme.heading());
+    }
+}
+
+fn draw_top(model: &Model, frame: &mut Frame, panes: &Panes) {
+    let buffer = frame.buffer_mut();
+    header::draw(buffer, panes.header, model);
+    header::draw_caution(buffer, panes.caution, model);
+    verdict::draw(buffer, panes.verdict, model);
+}
+
+fn draw_lists(model: &Model, frame: &mut Frame, panes: &Panes) {
+    let size = frame.area().as_size();
+    let buffer = frame.buffer_mut();
+    inputs::draw(buffer, panes.inputs, model);
+    about::draw(buffer, panes.about, model);
+    tabs::draw(buffer, panes.tabs, views(size), model);
+    log::draw(buffer, panes.log, model);
+    if panes.margins.height > 0 {
+        margins::draw(buffer, panes.margins, model);
+        margins::draw_basis(buffer, panes.basis, model);
+    }
+}
+
+/// Upright rules between the columns.
+fn draw_rules(model: &Model, frame: &mut Frame, panes: &Panes) {
+    let buffer = frame.buffer_mut();
+    let top = panes.inputs.y;
+    let bottom = panes.about.bottom();
+    let columns = [Some(panes.inputs.right()), (panes.log.width > 0).then(|| panes.log.x - 1)];
+    for column in columns.into_iter().flatten() {
+        for row in top..bottom {
+            buffer.set_string(column, row, "│", model.theme.quiet());
+        }
+    }
+}
+
+fn draw_view(model: &Model, frame: &mut Frame, panes: &Panes) {
+    let area = panes.view;
+    let Some(report) = &model.answer.report else {
+        put(frame.buffer_mut(), area, 1, 1, "nothing to draw: see the message above", model.theme.quiet());
+        return;
+    };
+    match model.view {
+        View::Elevation => {
+            let scene = Scene::of(report, model.play.time_s, model.units);
+            elevation::draw(frame.buffer_mut(), area, &scene, model.theme);
+        }
+        View::History => history::draw(frame, area, &picture(report, model, area.width), model.theme),
+        View::Margins if panes.margins.height == 0 => draw_margins_view(model, frame, area),
+        View::Margins => {}
+    }
+    timeline::draw(frame.buffer_mut(), panes.timeline, panes.bar(), model);
+}
+
+fn draw_margins_view(model: &Model, frame: &mut Frame, area: Rect) {
+    let basis = Rect { y: area.bottom().saturating_sub(3), height: 3.min(area.height), ..area };
+    let table = Rect { height: area.height.saturating_sub(3), ..area };
+    margins::draw(frame.buffer_mut(), table, model);
+    margins::draw_basis(frame.buffer_mut(), basis, model);
+}
+
+/// What History draws of a report: two samples for each column of dots.
+#[must_use]
+pub fn picture(report: &Report, model: &Model, columns: u16) -> Picture {
+    let window = model.window_s();
+    let estimate = &report.estimate;
+    let step = (window.1 - window.0) / (f64::from(columns.max(10)) * 4.0);
+    Picture {
+        samples: estimate.trace.samples(window.0, window.1.min(estimate.trace.end_s()), step),
+        phases: estimate.trace.phases().to_vec(),
+        window_s: window,
+        envelope: estimate.envelope,
+        hang_m: estimate.numbers.get("hang_travel"),
+        lowest_m: Some(estimate.trace.at(lowest_time(report)).travel_m),
+        limit_n: verdict::force_limit(report),
+        now_s: model.play.time_s,
+        length: Scale::of(Dimension::Length, model.units),
+        force: Scale::of(Dimension::Force, model.units),
+    }
+}

@@ -1,0 +1,225 @@
+//! Outputs as bytes: the shape of JSON, the width of text, the sentences about margins.
+#![expect(clippy::unwrap_used, clippy::panic, reason = "a test stops at what it cannot have")]
+
+use serde_json::Value;
+use underfoot::margin::{Basis, Margin, Sense, Verdict};
+use underfoot::quantity::{Dimension, UnitSystem};
+use underfoot::scenario::{Scenario, read};
+use underfoot::sheet::{CAUTIONS, Layout, Paint, Report, governing_words, json, margin_words, report, tally, text};
+use unicode_width::UnicodeWidthStr;
+
+const FILE: &str = r#"
+title = "Roof edge"
+datum = "finished floor of level 0"
+
+[subject]
+kind = "person"
+mass = "100 kg"
+attachment_above_feet = "1.5 m"
+
+[place]
+standing = "12.0 m"
+anchor = "13.5 m"
+
+[line]
+kind = "lanyard"
+length = "2.0 m"
+stiffness = "60 kN/m"
+damping_ratio = 0.05
+strength = "25 kN"
+
+[absorber]
+deploy_force = "4.0 kN"
+stroke = "1.75 m"
+rated_mass = "110 kg"
+rated_free_fall = "4 m"
+
+[anchor]
+capacity = "25 kN"
+
+[[obstacle]]
+name = "plant-room roof"
+top = "5 m"
+reserve = "1 m"
+
+[limits]
+basis = "eu-363"
+arrest_force = { value = "5 kN", why = "apprentices on site" }
+"#;
+
+fn scenario(text: &str) -> Scenario {
+    read("roof-edge.toml", text).unwrap_or_else(|faults| panic!("{}", faults.render(false)))
+}
+
+fn reported(text: &str) -> Report {
+    report("roof-edge.toml", text, &scenario(text)).unwrap()
+}
+
+/// Every number becomes `0` and every sentence of a list its own kind, so that the shape alone is left.
+fn shape(value: &Value) -> Value {
+    match value {
+        Value::Number(_) => Value::from(0),
+        Value::Array(list) if list.iter().all(Value::is_string) => Value::from("list of sentences"),
+        Value::Array(list) => list.iter().take(1).map(shape).collect(),
+        Value::Object(map) => map.iter().map(|(key, value)| (key.clone(), shape(value))).collect(),
+        other => other.clone(),
+    }
+}
+
+#[test]
+fn json_has_the_agreed_shape() {
+    let mut value: Value = serde_json::from_str(&json(&reported(FILE), Layout::Lines)).unwrap();
+    value["version"] = "x.y.z".into();
+    value["scenario_sha256"] = "64 hex digits".into();
+    value["events"][0]["words"] = "words".into();
+    value["verdict"] = "one of the four words".into();
+    let margins = value["margins"].as_array().unwrap();
+    value["margins"] = margins.iter().filter(|m| m["id"] == "arrest_force").cloned().collect();
+    let ids: Vec<String> = value["numbers"].as_object().unwrap().keys().cloned().collect();
+    value["numbers"] = value["numbers"]["free_fall_distance"].clone();
+    insta::assert_snapshot!("json_shape", format!("{:#}", shape(&value)));
+    for id in ["arrest_force_peak", "clearance.plant-room_roof", "margin.plant-room_roof", "damping_regime"] {
+        assert!(ids.contains(&id.to_owned()), "{id} is not among {ids:?}");
+    }
+}
+
+#[test]
+fn every_json_number_has_a_value_and_a_unit() {
+    let value: Value = serde_json::from_str(&json(&reported(FILE), Layout::OneLine)).unwrap();
+    for (id, number) in value["numbers"].as_object().unwrap() {
+        assert!(number["value"].is_number() || number["unit"] == "text", "{id}: {number}");
+        assert!(number["unit"].as_str().is_some_and(|unit| !unit.is_empty()), "{id}: {number}");
+    }
+    for margin in value["margins"].as_array().unwrap() {
+        assert!(margin["basis"].as_str().is_some_and(|basis| !basis.is_empty()), "{margin}");
+        assert!(["m", "N", "kg", "1"].contains(&margin["unit"].as_str().unwrap()), "{margin}");
+    }
+    assert_eq!(value["cautions"].as_array().unwrap().len(), CAUTIONS.len());
+}
+
+#[test]
+fn one_line_json_is_one_line_and_says_the_same() {
+    let report = reported(FILE);
+    let (long, short) = (json(&report, Layout::Lines), json(&report, Layout::OneLine));
+    assert_eq!(short.matches('\n').count(), 1);
+    assert_eq!(serde_json::from_str::<Value>(&long).unwrap(), serde_json::from_str::<Value>(&short).unwrap());
+}
+
+#[test]
+fn the_hash_is_that_of_the_file() {
+    let abc = underfoot::sheet::sha256_hex("abc");
+    assert_eq!(abc, "ba7816bf8f01cfea414140de5dae2223b00361a396177a9cb410ff61f20015ad");
+    assert_eq!(reported(FILE).scenario_sha256, underfoot::sheet::sha256_hex(FILE));
+}
+
+#[test]
+fn an_override_shows_both_values_and_its_reason_in_text_and_json() {
+    let report = reported(FILE);
+    for output in [text(&report, UnitSystem::Metric, Paint::Plain), json(&report, Layout::Lines)] {
+        let words = output.split_whitespace().collect::<Vec<_>>().join(" ");
+        assert!(words.contains("5 kN instead of 6 kN of eu-363"), "{output}");
+        assert!(words.contains("why: apprentices on site"), "{output}");
+    }
+}
+
+#[test]
+fn a_value_from_memory_says_so_in_text_and_json() {
+    let report = reported(&FILE.replace("eu-363", "us-1926"));
+    for output in [text(&report, UnitSystem::Us, Paint::Plain), json(&report, Layout::Lines)] {
+        assert!(output.contains("from memory, unverified"), "{output}");
+    }
+}
+
+#[test]
+fn text_stays_within_a_hundred_columns_even_with_long_names() {
+    let long = "a very long name of an obstacle that nobody would write but somebody will some day, twice as long";
+    for file in [FILE.to_owned(), FILE.replace("plant-room roof", long).replace("Roof edge", &"x".repeat(300))] {
+        for system in [UnitSystem::Metric, UnitSystem::Us] {
+            for line in text(&reported(&file), system, Paint::Plain).lines() {
+                assert!(line.width() <= 100, "{} columns: {line}", line.width());
+            }
+        }
+    }
+}
+
+#[test]
+fn text_starts_with_the_caution_and_names_version_hash_and_datum() {
+    let report = reported(FILE);
+    let page = text(&report, UnitSystem::Metric, Paint::Plain);
+    assert!(page.starts_with("FIRST-PASS ESTIMATE, NOT A DESIGN"));
+    let tail =
+        [env!("CARGO_PKG_VERSION"), &report.scenario_sha256, "elevation 0 is: finished floor of level 0", "Left out"];
+    for words in tail {
+        assert!(page.contains(words), "{words}");
+    }
+    let (title, verdict) = (page.find("Roof edge").unwrap(), page.find("HOLDS").or(page.find("SHORT")).unwrap());
+    assert!(title < verdict);
+}
+
+#[test]
+fn every_verdict_is_told_by_symbol_and_word_without_colour() {
+    let report = reported(FILE);
+    let page = text(&report, UnitSystem::Metric, Paint::Plain);
+    for margin in &report.margins {
+        let row = format!("{} {}", margin.verdict.symbol(), margin.verdict.word());
+        assert!(page.lines().any(|l| l.contains(&row) && l.contains(&margin.label)), "{}", margin.label);
+    }
+    let colour = text(&report, UnitSystem::Metric, Paint::Colour);
+    assert!(colour.contains('\u{1b}') && !page.contains('\u{1b}'));
+    assert_eq!(anstream::adapter::strip_str(&colour).to_string(), page);
+}
+
+#[test]
+fn the_same_file_gives_the_same_bytes() {
+    assert_eq!(json(&reported(FILE), Layout::Lines), json(&reported(FILE), Layout::Lines));
+}
+
+fn clearance(demand: f64, limit: f64, verdict: Verdict) -> Margin {
+    Margin {
+        id: "clearance.plant-room_roof".to_owned(),
+        label: "clearance plant-room roof".to_owned(),
+        demand: Some(demand),
+        limit: Some(limit),
+        dimension: Dimension::Length,
+        sense: Sense::AtLeast,
+        margin: Some(demand - limit),
+        verdict,
+        basis: Basis { words: String::new(), from_memory: false },
+        note: None,
+    }
+}
+
+#[test]
+fn the_governing_margin_is_told_in_words() {
+    let file = scenario(FILE);
+    let say = |demand, limit, verdict| margin_words(&file, &clearance(demand, limit, verdict), UnitSystem::Metric);
+    let words = say(0.42, 1.0, Verdict::Short).replace("0.420", "0.42").replace("0.580", "0.58");
+    assert_eq!(words, "feet stop 0.42 m above the plant-room roof, 1.00 m wanted (0.58 m short)");
+    assert!(say(3.0, 1.0, Verdict::Holds).ends_with("(2.00 m to spare)"));
+    assert!(
+        say(-1.25, 1.0, Verdict::Short).starts_with("feet would reach 1.25 m below the top of the plant-room roof")
+    );
+    let load = FILE
+        .replace("kind = \"person\"", "kind = \"load\"")
+        .replace("attachment_above_feet", "underside_below_attachment");
+    let words = margin_words(&scenario(&load), &clearance(2.0, 1.0, Verdict::Holds), UnitSystem::Metric);
+    assert!(words.starts_with("underside stops 2.00 m above"), "{words}");
+}
+
+#[test]
+fn an_open_margin_says_why_and_nothing_to_judge_says_what_to_state() {
+    let file = scenario(FILE);
+    let mut open = clearance(1.0, 1.0, Verdict::Open);
+    open.demand = None;
+    open.note = Some("state `place.standing`".to_owned());
+    let words = margin_words(&file, &open, UnitSystem::Metric);
+    assert_eq!(words, "clearance plant-room roof cannot be judged: state `place.standing`");
+    assert!(governing_words(&file, &[], UnitSystem::Metric).contains("`limits`"));
+}
+
+#[test]
+fn the_count_names_every_verdict_that_occurs() {
+    assert_eq!(tally(&["holds", "short", "holds", "refused"]), "4 files: 2 holds, 1 short, 1 refused");
+    assert_eq!(tally(&["open"]), "1 file: 1 open");
+    assert_eq!(tally(&[]), "0 files: none judged");
+}
