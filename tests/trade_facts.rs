@@ -117,7 +117,7 @@ proptest! {
 
     #[test]
     fn a_line_never_pushes_and_parts_add_up_to_the_travel(index in 0_u64..100_000) {
-        let case = physical(77, index, true);
+        let case = physical(77, index, false);
         let outcome = arrest(&case);
         let end = outcome.motion.end_s().min(outcome.time_taut_s + 6.0);
         let stroke = case.slider.as_ref().map_or(0.0, |slider| slider.stroke);
