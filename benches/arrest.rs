@@ -37,10 +37,8 @@ fn closed_form(mass: f64, k: f64, c: f64, gravity: f64, speed: f64) -> [f64; 4] 
     let first_turn = |a: f64, b: f64| (omega * b - alpha * a).atan2(omega * a + alpha * b) / omega;
     let at = |a: f64, b: f64, t: f64| (-alpha * t).exp() * (a * (omega * t).cos() + b * (omega * t).sin());
     let low = first_turn(p, q);
-    let (f, h) = (
-        natural * p + 2.0 * alpha * (omega * q - alpha * p),
-        natural * q - 2.0 * alpha * (omega * p + alpha * q),
-    );
+    let (f, h) =
+        (natural * p + 2.0 * alpha * (omega * q - alpha * p), natural * q - 2.0 * alpha * (omega * p + alpha * q));
     let peak = first_turn(f, h);
     [low, rest + at(p, q, low), peak, mass * (gravity + at(f, h, peak))]
 }
@@ -85,7 +83,8 @@ fn main() {
     let speed = Case::on(mass, 4.0, Part::damped(k, c)).speed_at_taut();
     let [_, travel, _, force] = closed_form(mass, k, c, 9.80665, speed);
     assert!((travel - 0.849_889_315_2).abs() < 1e-9 && (force - 8_651.802_438).abs() < 1e-5);
-    let closed = seconds(100_000, || closed_form(black_box(mass), black_box(k), black_box(c), 9.80665, black_box(speed)));
+    let closed =
+        seconds(100_000, || closed_form(black_box(mass), black_box(k), black_box(c), 9.80665, black_box(speed)));
     let absorber = Slider::constant(4e3, 4.4e3, 1.75);
     let lanyard = Case::on(100.0, 2.0, Part::damped(6e4, 800.0)).with_slider(absorber.clone());
     let harness = Case::on(100.0, 2.0, Part::damped(6e4, 1200.0)).with_other(Part::spring(4e4)).with_slider(absorber);
@@ -94,6 +93,8 @@ fn main() {
         report("absorber, damped line, harness", &harness, closed),
         report("damped line with rebounds", &Case::on(mass, 4.0, Part::damped(k, c)), closed),
     ];
-    println!("goals: at least {FASTER_THAN_INTEGRATOR} times the integrator's speed, at most {TIMES_CLOSED_FORM} times the closed form");
+    println!(
+        "goals: at least {FASTER_THAN_INTEGRATOR} times the integrator's speed, at most {TIMES_CLOSED_FORM} times the closed form"
+    );
     println!("first case meets them: {}", if met[0] { "yes" } else { "no" });
 }

@@ -150,6 +150,7 @@ fn picture() -> Picture {
         envelope: Some(Envelope { hang_m: 0.3, amplitude_m: 0.8, decay_per_s: 0.9, from_s: 0.606, to_s: 3.0 }),
         hang_m: Some(0.3),
         lowest_m: Some(0.93),
+        peak_n: 3720.0,
         limit_n: Some(6000.0),
         now_s: 0.9,
         length: Scale::of(Dimension::Length, UnitSystem::Metric),
@@ -171,7 +172,7 @@ fn history_names_its_axes_its_levels_and_its_modes() {
     for word in [
         "travel past taut",
         "(m)",
-        "line force (kN)",
+        "line force (kN), peak 3.72 kN",
         "limit 6.00 kN",
         "hangs at 0.30 m",
         "lowest 0.93 m",

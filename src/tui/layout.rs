@@ -53,7 +53,7 @@ impl Panes {
         let mut panes = Self { header: top(&mut rest, 1), ..Self::default() };
         panes.caution = top(&mut rest, rows(CAUTION_LINE, size.width));
         panes.verdict = top(&mut rest, super::panes::verdict::rows(model, size.width));
-        panes.foot = bottom(&mut rest, 1);
+        panes.foot = bottom(&mut rest, super::panes::foot::rows(model, size.width));
         if has_margins_below(size) {
             panes.place_margins(&mut rest, model);
         }
@@ -63,14 +63,14 @@ impl Panes {
 
     fn place_margins(&mut self, rest: &mut Rect, model: &Model) {
         let checks = model.answer.report.as_ref().map_or(1, |report| report.margins.len());
-        let wanted = u16::try_from(checks).unwrap_or(u16::MAX).saturating_add(2);
+        let wanted = u16::try_from(checks).unwrap_or(u16::MAX).saturating_add(1);
         self.basis = bottom(rest, 2);
         self.margins = bottom(rest, wanted.min(rest.height / 3));
     }
 
     fn place_body(&mut self, rest: Rect, has_timeline: bool) {
         let inputs_width = match rest.width {
-            0..70 => 30,
+            0..70 => 28,
             70..100 => 34,
             100..132 => 40,
             _ => 43 + (rest.width - 132).min(80) / 8,

@@ -13,18 +13,21 @@ pub enum Lean {
     Less,
     /// The input does not matter to the governing margin.
     None,
+    /// Still being worked out.
+    Pending,
     /// Cannot be told: there is no margin, or the neighbours cannot be computed.
     Unknown,
 }
 
 impl Lean {
-    /// `^` more room, `v` less room, `.` does not matter, `?` cannot be told.
+    /// `^` more room, `v` less room, `.` does not matter, `?` cannot be told, blank while being worked out.
     #[must_use]
     pub const fn symbol(self) -> char {
         match self {
             Self::More => '^',
             Self::Less => 'v',
             Self::None => '.',
+            Self::Pending => ' ',
             Self::Unknown => '?',
         }
     }
@@ -36,6 +39,7 @@ impl Lean {
             Self::More => "raising it gives more room",
             Self::Less => "raising it gives less room",
             Self::None => "does not move the governing margin",
+            Self::Pending => "which way it moves the governing margin is being worked out",
             Self::Unknown => "cannot be told which way it moves the governing margin",
         }
     }
@@ -46,6 +50,15 @@ const STEP: f64 = 1e-4;
 /// Change of the margin, as a share of demand and limit, below which an input does not matter: well above the
 /// solver's 1e-12 and well below what a step of [`STEP`] does to a margin that depends on the input at all.
 const NOTHING: f64 = 1e-9;
+
+/// Phases that may be solved within one frame: some milliseconds.
+const PHASES_PER_FRAME: usize = 4000;
+
+/// True when working out the arrows takes longer than a frame may: long undamped motions with many phases.
+#[must_use]
+pub fn is_slow(inputs: &[Input], report: &Report) -> bool {
+    2 * inputs.len() * report.estimate.trace.phases().len() > PHASES_PER_FRAME
+}
 
 /// The arrows of all inputs, in their order.
 #[must_use]

@@ -1,6 +1,8 @@
 //! What comes in and what goes out of `update`.
 use super::command::Command;
+use super::lean::Lean;
 use super::model::Exit;
+use super::worker::Job;
 use crate::scenario::Document;
 use crossterm::event::{KeyEvent, MouseEvent};
 use std::path::PathBuf;
@@ -27,6 +29,13 @@ pub enum Message {
     Reloaded(Result<Box<Document>, String>),
     /// Somebody else changed the file.
     ChangedOnDisk,
+    /// The arrows of a state of the inputs are worked out.
+    Leaned {
+        /// Which state.
+        generation: u64,
+        /// In the order of the inputs.
+        leans: Vec<Lean>,
+    },
 }
 
 /// Something to do outside of `update`.
@@ -36,6 +45,8 @@ pub enum Effect {
     Save(Box<Document>),
     /// Read this file again; answer with [`Message::Reloaded`].
     Reload(PathBuf),
+    /// Work out the arrows beside this; answer with [`Message::Leaned`].
+    Lean(Box<Job>),
     /// Leave the screen.
     Quit(Exit),
 }

@@ -19,6 +19,7 @@ pub mod theme;
 pub mod update;
 pub mod view;
 pub mod watch;
+pub mod worker;
 
 pub use error::ScreenError;
 

@@ -1,6 +1,7 @@
 //! The state of the screen.
-use super::lean::{Lean, leans};
+use super::lean::{Lean, is_slow, leans};
 use super::theme::Theme;
+use super::worker::Job;
 use crate::quantity::UnitSystem;
 use crate::scenario::{Document, Input, inputs};
 use crate::sheet::{Report, ReportError, report};
@@ -169,12 +170,16 @@ pub struct Model {
     pub theme: Theme,
     /// Size of the terminal.
     pub size: Size,
-    /// The inputs of the document, in file order.
+    /// The inputs of the document, in file order; those of no section last.
     pub inputs: Vec<Input>,
     /// Which way raising each input moves the governing margin; same order as the inputs.
     pub leans: Vec<Lean>,
     /// Report and fault.
     pub answer: Answer,
+    /// Number of the present state of the inputs.
+    pub generation: u64,
+    /// Work to be handed out after this message.
+    pub job: Option<Box<Job>>,
     /// Which pane the keys go to.
     pub pane: Pane,
     /// The chosen input.
@@ -212,6 +217,8 @@ impl Model {
             inputs: Vec::new(),
             leans: Vec::new(),
             answer: Answer { report: None, fault: None },
+            generation: 0,
+            job: None,
             pane: Pane::default(),
             input: 0,
             check: 0,
@@ -285,7 +292,7 @@ impl Model {
     /// Solves the present document; a failure keeps the last report, marked as stale by the fault.
     pub fn recompute(&mut self) {
         let chosen = self.chosen().map(|input| input.path.clone());
-        self.inputs = inputs(self.document.scenario());
+        self.inputs = sections_first(inputs(self.document.scenario()));
         if let Some(index) = chosen.and_then(|path| self.inputs.iter().position(|input| input.path == path)) {
             self.input = index;
         }
@@ -295,7 +302,9 @@ impl Model {
             Ok(report) => self.answer = Answer { report: Some(report), fault: None },
             Err(error) => self.answer.fault = Some(words(&error)),
         }
-        self.leans = leans(&self.inputs, self.document.scenario(), self.answer.current());
+        self.generation += 1;
+        self.job = None;
+        self.lean();
         let checks = self.answer.report.as_ref().map_or(0, |report| report.margins.len());
         self.check = self.check.min(checks.saturating_sub(1));
         self.play.time_s = self.play.time_s.min(self.end_s());
@@ -307,6 +316,23 @@ impl Model {
         let states = self.undo.iter_mut().chain(&mut self.redo).chain(std::iter::once(&mut self.document));
         for state in states {
             *state = state.clone().on_disk_as(on_disk);
+        }
+    }
+
+    /// Works the arrows out, or leaves a job behind where that takes longer than a frame may.
+    fn lean(&mut self) {
+        let scenario = self.document.scenario();
+        match self.answer.current() {
+            Some(report) if is_slow(&self.inputs, report) => {
+                self.leans = vec![Lean::Pending; self.inputs.len()];
+                self.job = Some(Box::new(Job {
+                    generation: self.generation,
+                    scenario: scenario.clone(),
+                    inputs: self.inputs.clone(),
+                    report: Box::new(report.clone()),
+                }));
+            }
+            current => self.leans = leans(&self.inputs, scenario, current),
         }
     }
 
@@ -332,4 +358,10 @@ fn words(error: &ReportError) -> String {
         },
         ReportError::Estimate(_) => error.to_string(),
     }
+}
+
+/// Keys of no section (gravity) stand first in a file and last on the screen.
+fn sections_first(mut inputs: Vec<Input>) -> Vec<Input> {
+    inputs.sort_by_key(|input| !input.path.contains('.'));
+    inputs
 }

@@ -1,11 +1,13 @@
 //! The loop: events in, frames out, effects carried out.
 use super::error::ScreenError;
+use super::lean::Lean;
 use super::message::{Effect, Message};
 use super::model::{Exit, Model};
 use super::terminal::Guard;
 use super::update::update;
 use super::view::view;
 use super::watch::Watch;
+use super::worker::Worker;
 use crate::scenario::{Document, LoadError};
 use crossterm::event::{self, Event, KeyEventKind};
 use std::path::Path;
@@ -22,6 +24,7 @@ const WAITING: Duration = Duration::from_millis(100);
 /// When the terminal fails, a signal came or the user interrupted.
 pub fn run_loop(guard: &mut Guard, model: &mut Model, signals: &Signals) -> color_eyre::Result<()> {
     let mut watch = Watch::of(model.document.path());
+    let worker = Worker::start()?;
     let mut before = Instant::now();
     let mut stale = true;
     loop {
@@ -32,7 +35,9 @@ pub fn run_loop(guard: &mut Guard, model: &mut Model, signals: &Signals) -> colo
             guard.screen().draw(|frame| view(model, frame))?;
             std::io::Write::flush(guard.screen().backend_mut())?;
         }
-        let mut messages = wait(if model.play.running { PLAYING } else { WAITING })?;
+        let is_waited_for = model.play.running || model.leans.contains(&Lean::Pending);
+        let mut messages = wait(if is_waited_for { PLAYING } else { WAITING })?;
+        messages.extend(worker.answers());
         let now = Instant::now();
         if model.play.running {
             messages.push(Message::Tick(now - before));
@@ -43,7 +48,7 @@ pub fn run_loop(guard: &mut Guard, model: &mut Model, signals: &Signals) -> colo
         }
         stale = !messages.is_empty();
         for message in messages {
-            if let Some(exit) = handle(model, message, &mut watch) {
+            if let Some(exit) = handle(model, message, &mut watch, &worker) {
                 return leave(exit);
             }
         }
@@ -79,13 +84,14 @@ fn translate(event: Event) -> Option<Message> {
 }
 
 /// One message and all that follows from it.
-fn handle(model: &mut Model, message: Message, watch: &mut Watch) -> Option<Exit> {
+fn handle(model: &mut Model, message: Message, watch: &mut Watch, worker: &Worker) -> Option<Exit> {
     let mut queue = vec![message];
     while let Some(message) = queue.pop() {
         for effect in update(model, message) {
-            match carry_out(effect, watch) {
+            match carry_out(effect, watch, worker) {
                 Outcome::Message(message) => queue.push(message),
                 Outcome::Exit(exit) => return Some(exit),
+                Outcome::Later => {}
             }
         }
     }
@@ -94,11 +100,16 @@ fn handle(model: &mut Model, message: Message, watch: &mut Watch) -> Option<Exit
 
 enum Outcome {
     Message(Message),
+    Later,
     Exit(Exit),
 }
 
-fn carry_out(effect: Effect, watch: &mut Watch) -> Outcome {
+fn carry_out(effect: Effect, watch: &mut Watch, worker: &Worker) -> Outcome {
     match effect {
+        Effect::Lean(job) => {
+            worker.give(*job);
+            Outcome::Later
+        }
         Effect::Quit(exit) => Outcome::Exit(exit),
         Effect::Save(mut document) => {
             let written = document.save();

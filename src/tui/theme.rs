@@ -34,8 +34,8 @@ impl Theme {
 
     /// Text of second rank.
     #[must_use]
-    pub fn quiet(self) -> Style {
-        self.pick(Color::DarkGray, Modifier::DIM)
+    pub const fn quiet(self) -> Style {
+        Style::new().add_modifier(Modifier::DIM)
     }
 
     /// Headings.
@@ -56,11 +56,7 @@ impl Theme {
     /// The row or tab that is chosen, with or without the keys going there.
     #[must_use]
     pub fn chosen(self, has_keys: bool) -> Style {
-        if has_keys {
-            Style::new().add_modifier(Modifier::REVERSED)
-        } else {
-            Style::new().add_modifier(Modifier::BOLD | Modifier::UNDERLINED)
-        }
+        if has_keys { Style::new().add_modifier(Modifier::REVERSED) } else { Style::new().add_modifier(Modifier::BOLD) }
     }
 
     /// The play head and what it points at.

@@ -16,6 +16,12 @@ use tui_input::backend::crossterm::EventHandler;
 /// Takes one message. Reads no clock, file or terminal; the caller carries the effects out.
 #[must_use]
 pub fn update(model: &mut Model, message: Message) -> Vec<Effect> {
+    let mut effects = take(model, message);
+    effects.extend(model.job.take().map(Effect::Lean));
+    effects
+}
+
+fn take(model: &mut Model, message: Message) -> Vec<Effect> {
     match message {
         Message::Key(key) if key.kind == KeyEventKind::Press => press(model, key),
         Message::Key(_) => Vec::new(),
@@ -32,6 +38,12 @@ pub fn update(model: &mut Model, message: Message) -> Vec<Effect> {
         Message::Command(command) => run(model, command),
         Message::Saved(result) => saved(model, result),
         Message::Reloaded(result) => reloaded(model, result),
+        Message::Leaned { generation, leans } => {
+            if generation == model.generation {
+                model.leans = leans;
+            }
+            Vec::new()
+        }
         Message::ChangedOnDisk => {
             model.changed_on_disk = true;
             model.complain("the file changed on disk; r reads it again, undo then brings your changes back");

@@ -2,7 +2,7 @@
 use super::layout::{LEAST_HEIGHT, LEAST_WIDTH, Panes, views};
 use super::model::{Mode, Model, View};
 use super::panes::history::Picture;
-use super::panes::scene::{Scene, lowest_time};
+use super::panes::scene::Scene;
 use super::panes::units::Scale;
 use super::panes::{about, elevation, foot, header, help, history, inputs, log, margins, tabs, timeline, verdict};
 use super::text::put;
@@ -87,6 +87,20 @@ fn draw_view(model: &Model, frame: &mut Frame, panes: &Panes) {
         View::Margins => {}
     }
     timeline::draw(frame.buffer_mut(), panes.timeline, panes.bar(), model);
+    if model.answer.is_stale() {
+        mark_stale(model, frame, panes);
+    }
+}
+
+/// Nothing of earlier inputs may pass for current: words above the drawing and the log, and all of both dimmed.
+fn mark_stale(model: &Model, frame: &mut Frame, panes: &Panes) {
+    let words = "NOT CURRENT: of earlier inputs";
+    for area in [panes.view, panes.log] {
+        frame.buffer_mut().set_style(area, model.theme.quiet());
+        let blank = " ".repeat(usize::from(area.width));
+        put(frame.buffer_mut(), area, 0, 0, &blank, model.theme.plain());
+        put(frame.buffer_mut(), area, 0, 0, words, model.theme.fault());
+    }
 }
 
 fn draw_margins_view(model: &Model, frame: &mut Frame, area: Rect) {
@@ -108,7 +122,8 @@ pub fn picture(report: &Report, model: &Model, columns: u16) -> Picture {
         window_s: window,
         envelope: estimate.envelope,
         hang_m: estimate.numbers.get("hang_travel"),
-        lowest_m: Some(estimate.trace.at(lowest_time(report)).travel_m),
+        lowest_m: estimate.numbers.get("time_lowest").map(|time| estimate.trace.at(time).travel_m),
+        peak_n: estimate.numbers.get("arrest_force_peak").unwrap_or(0.0),
         limit_n: verdict::force_limit(report),
         now_s: model.play.time_s,
         length: Scale::of(Dimension::Length, model.units),

@@ -47,7 +47,12 @@ pub fn rows(case: &Case, outcome: &Outcome, numbers: &Numbers) -> Vec<Row> {
     if !numbers.creeps {
         table.row("time_peak_force", Some(outcome.time_peak_force_s), time(numbers.time_peak), period);
         table.row("line_elongation", Some(outcome.line_elongation_peak_m), Some(numbers.stretch_peak[0]), 1e-3 * size);
-        table.row("other_elongation", Some(outcome.other_elongation_peak_m), Some(numbers.stretch_peak[1]), 1e-3 * size);
+        table.row(
+            "other_elongation",
+            Some(outcome.other_elongation_peak_m),
+            Some(numbers.stretch_peak[1]),
+            1e-3 * size,
+        );
     }
     table.row("time_lowest", outcome.lowest.map(|l| l.time_s), numbers.lowest.and_then(|l| time(l.0)), period);
     table.row("travel_lowest", outcome.lowest.map(|l| l.travel_m), numbers.lowest.map(|l| l.1), 0.0);

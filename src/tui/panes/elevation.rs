@@ -1,15 +1,15 @@
 //! The view Elevation: the fall to scale, its marks side by side, the dimension string.
 use super::scene::{Bar, Origin, Part, Scene, Station};
 use crate::scenario::SubjectKind;
-use crate::sheet::ticks::ticks;
+use crate::sheet::ticks::{Ticks, ticks};
 use crate::tui::text::{cells, fit, put, put_right, spread};
 use crate::tui::theme::Theme;
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 use ratatui::style::Style;
 
-/// Columns of the tick labels and the axis.
-const GUTTER: u16 = 7;
+/// Least columns of the tick labels and the axis.
+const GUTTER: u16 = 5;
 /// Least columns of one station: its name and a blank.
 const STATION: u16 = 6;
 /// Columns of the names beside the dimension string, with and without what is wanted.
@@ -54,13 +54,15 @@ struct Places {
 }
 
 impl Places {
-    fn of(area: Rect) -> Self {
-        let spare = area.width.saturating_sub(GUTTER + 5 * STATION);
-        let labels = spare.clamp(LEAST_LABELS, LABELS).min(area.width.saturating_sub(GUTTER + STATION));
+    fn of(area: Rect, scene: &Scene) -> Self {
         let sum = u16::from(area.height >= 16);
         let body = Rect { y: area.y + 2, height: area.height.saturating_sub(2 + sum), ..area };
-        let figures_width = area.width.saturating_sub(GUTTER.min(area.width) + labels);
-        let gutter = Rect { width: GUTTER.min(area.width), ..body };
+        let found = axis_ticks(scene, &Rows::of(scene, body.height));
+        let ticks = u16::try_from(found.widest()).unwrap_or(GUTTER) + 2;
+        let gutter = Rect { width: ticks.clamp(GUTTER, 12), ..body };
+        let spare = area.width.saturating_sub(gutter.width + 5 * STATION);
+        let labels = spare.clamp(LEAST_LABELS, LABELS).min(area.width.saturating_sub(gutter.width + STATION));
+        let figures_width = area.width.saturating_sub(gutter.width + labels);
         let figures = Rect { x: gutter.right(), width: figures_width, ..body };
         Self {
             gutter,
@@ -79,7 +81,7 @@ pub fn draw(buffer: &mut Buffer, area: Rect, scene: &Scene, theme: Theme) {
         put(buffer, area, 0, 0, "no room to draw", theme.quiet());
         return;
     }
-    let places = Places::of(area);
+    let places = Places::of(area, scene);
     let rows = Rows::of(scene, places.figures.height);
     draw_title(buffer, &places, scene, theme);
     draw_axis(buffer, &places, scene, &rows, theme);
@@ -101,11 +103,16 @@ fn draw_title(buffer: &mut Buffer, places: &Places, scene: &Scene, theme: Theme)
     put(buffer, places.title, 0, 0, &fit(&words, usize::from(places.title.width)), theme.quiet());
 }
 
+fn axis_ticks(scene: &Scene, rows: &Rows) -> Ticks {
+    let factor = scene.scale.factor;
+    ticks(rows.low_m() / factor, rows.high_m / factor, usize::from(rows.count / 2).clamp(2, 12))
+}
+
 fn draw_axis(buffer: &mut Buffer, places: &Places, scene: &Scene, rows: &Rows, theme: Theme) {
     let factor = scene.scale.factor;
-    let found = ticks(rows.low_m() / factor, rows.high_m / factor, usize::from(rows.count / 2).clamp(2, 12));
+    let found = axis_ticks(scene, rows);
     for row in 0..rows.count {
-        put(buffer, places.gutter, GUTTER - 1, row, "│", theme.quiet());
+        put_right(buffer, places.gutter, row, "│", theme.quiet());
     }
     for &value in &found.values {
         let row = rows.below(value * factor);
@@ -158,7 +165,7 @@ fn draw_stations(buffer: &mut Buffer, places: &Places, scene: &Scene, rows: &Row
         let station = &scene.stations[index];
         let column = slot * pitch + pitch / 2;
         let style = if station.name == "now" { theme.play_head() } else { theme.plain() };
-        let start = column.saturating_sub(cells(station.name) / 2);
+        let start = column.saturating_sub((cells(station.name) - 1) / 2);
         put(buffer, places.names, start, 0, station.name, style);
         draw_line(buffer, places.figures, column, scene, station, rows, style);
         draw_body(buffer, places.figures, column, scene, station, rows, (style, theme));
@@ -273,10 +280,34 @@ fn draw_string(buffer: &mut Buffer, area: Rect, marks: &[f64], rows: &Rows, them
     put(buffer, area, 0, last, "┴", theme.plain());
 }
 
-/// Numbers of the parts: differences of the rounded marks, so that they add up as printed.
+/// Numbers of the parts as printed, which add up to the printed total.
+///
+/// Free fall, clearance and total are rounded on their own, as everywhere else on the screen; what rounding leaves over
+/// goes to the parts between, where it is nearest to a half already.
 fn part_numbers(scene: &Scene, marks: &[f64]) -> Vec<f64> {
-    let shown: Vec<f64> = marks.iter().map(|&mark| scene.scale.rounded(mark)).collect();
-    shown.windows(2).map(|pair| pair[0] - pair[1]).collect()
+    let scale = &scene.scale;
+    let unit = 10_f64.powi(-i32::try_from(scale.decimals).unwrap_or(0));
+    let mut numbers: Vec<f64> = scene.parts.iter().map(|part| scale.rounded(part.length_m)).collect();
+    let total =
+        scale.rounded(marks.iter().copied().next().unwrap_or(0.0) - marks.iter().copied().last().unwrap_or(0.0));
+    let mut between: Vec<usize> = (0..numbers.len()).filter(|&index| !is_kept(&scene.parts[index])).collect();
+    let left = total - numbers.iter().sum::<f64>();
+    let error =
+        |index: usize| (scale.shown(scene.parts[index].length_m) - scale.rounded(scene.parts[index].length_m)) * left;
+    between.sort_by(|&a, &b| error(b).total_cmp(&error(a)));
+    let mut over = (left / unit).round();
+    for &index in between.iter().cycle().take(4 * between.len()) {
+        if over == 0.0 {
+            break;
+        }
+        numbers[index] += unit * over.signum();
+        over -= over.signum();
+    }
+    numbers
+}
+
+fn is_kept(part: &Part) -> bool {
+    part.verdict.is_some() || part.name == "free fall"
 }
 
 fn part_labels(scene: &Scene, marks: &[f64], rows: &Rows, room: u16, theme: Theme) -> Vec<Label> {
@@ -296,7 +327,7 @@ fn part_labels(scene: &Scene, marks: &[f64], rows: &Rows, room: u16, theme: Them
 /// What a clearance should be.
 fn wanted(scene: &Scene, part: &Part) -> String {
     let bar = scene.bars.iter().find(|bar| part.verdict.is_some() && scene.string_end.as_deref() == Some(&bar.name));
-    bar.map_or_else(String::new, |bar| format!(", {} wanted", scene.scale.text(bar.reserve_m)))
+    bar.map_or_else(String::new, |bar| format!(" of {}", scene.scale.text(bar.reserve_m)))
 }
 
 fn draw_sum(buffer: &mut Buffer, places: &Places, scene: &Scene, theme: Theme) {

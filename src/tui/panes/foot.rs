@@ -1,29 +1,44 @@
-//! The last row: a message, a question, or the keys.
+//! The last rows: a message, a question, or the keys.
 use crate::tui::command::{COMMANDS, Command, Entry};
 use crate::tui::model::{Mode, Model};
-use crate::tui::text::{cells, fit, put, put_right};
+use crate::tui::text::{cells, put, put_right, wrap};
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
+use ratatui::style::Style;
+
+/// Rows it takes: a long message takes up to three.
+#[must_use]
+pub fn rows(model: &Model, columns: u16) -> u16 {
+    let (words, _) = words(model);
+    crate::tui::layout::rows(&words, columns).min(3)
+}
 
 /// Draws it.
 pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
     let inner = Rect { x: area.x + 1, width: area.width.saturating_sub(2), ..area };
-    let room = usize::from(inner.width);
+    let (words, style) = words(model);
+    if words.is_empty() {
+        return draw_keys(buffer, inner, model);
+    }
+    for (row, line) in (0..).zip(wrap(&words, usize::from(inner.width))) {
+        put(buffer, inner, 0, row, &line, style);
+    }
+}
+
+/// The message; none when the keys are to be shown.
+fn words(model: &Model) -> (String, Style) {
+    let theme = model.theme;
     match (&model.mode, &model.notice) {
         (Mode::Leaving(_), _) => {
-            let words = "unsaved changes: q again drops them and leaves, s saves, any other key stays";
-            put(buffer, inner, 0, 0, &fit(words, room), model.theme.fault());
+            ("unsaved changes: q again drops them and leaves, s saves, any other key stays".to_owned(), theme.fault())
         }
-        (Mode::Typing(typing), _) => {
-            let words = typing.fault.as_deref().unwrap_or("enter takes the value, esc leaves it");
-            let style = if typing.fault.is_some() { model.theme.fault() } else { model.theme.plain() };
-            put(buffer, inner, 0, 0, &fit(words, room), style);
-        }
-        (_, Some(notice)) => {
-            let style = if notice.is_fault { model.theme.fault() } else { model.theme.heading() };
-            put(buffer, inner, 0, 0, &fit(&notice.words, room), style);
-        }
-        _ => draw_keys(buffer, inner, model),
+        (Mode::Typing(typing), _) => match &typing.fault {
+            Some(fault) => (fault.clone(), theme.fault()),
+            None => ("enter takes the value, esc leaves it".to_owned(), theme.plain()),
+        },
+        (_, Some(notice)) if notice.is_fault => (notice.words.clone(), theme.fault()),
+        (_, Some(notice)) => (notice.words.clone(), theme.heading()),
+        _ => (String::new(), theme.plain()),
     }
 }
 
@@ -45,7 +60,7 @@ fn draw_keys(buffer: &mut Buffer, area: Rect, model: &Model) {
             format!("{key} {label}")
         })
         .collect();
-    let last = last.join("   ");
+    let last = last.join("  ");
     put_right(buffer, area, 0, &last, model.theme.key());
     let room = area.width.saturating_sub(cells(&last) + 2);
     let mut column = 0;
@@ -57,6 +72,6 @@ fn draw_keys(buffer: &mut Buffer, area: Rect, model: &Model) {
         }
         put(buffer, area, column, 0, &key, model.theme.key());
         put(buffer, area, column + cells(&key) + 1, 0, label, model.theme.plain());
-        column += wide + 3;
+        column += wide + 2;
     }
 }

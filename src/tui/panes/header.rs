@@ -7,14 +7,17 @@ use crate::tui::text::{fit, put, put_right, width, wrap};
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 
+/// Columns that the name of the file keeps at least.
+const LEAST_NAME: usize = 14;
+
 /// Draws the header row.
 pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
     let inner = Rect { x: area.x + 1, width: area.width.saturating_sub(2), ..area };
-    let right = right_words(model);
     let mark = mark(model);
-    let room = usize::from(inner.width).saturating_sub(width(&right) + width(&mark) + 4);
+    let all = usize::from(inner.width).saturating_sub(width(&mark) + 4);
+    let right = right_words(model, all.saturating_sub(LEAST_NAME));
     let name = model.document.path().file_name().map_or_else(String::new, |name| name.to_string_lossy().into_owned());
-    let name = fit(&name, room);
+    let name = fit(&name, all.saturating_sub(width(&right)));
     put(buffer, inner, 0, 0, &name, model.theme.heading());
     let column = u16::try_from(width(&name) + 2).unwrap_or(u16::MAX);
     let style = if model.changed_on_disk { model.theme.fault() } else { model.theme.play_head() };
@@ -28,17 +31,31 @@ fn mark(model: &Model) -> String {
     [edited, changed].into_iter().filter(|word| !word.is_empty()).collect::<Vec<_>>().join(", ")
 }
 
-fn right_words(model: &Model) -> String {
-    let basis = model.document.scenario().limits.basis.as_deref().unwrap_or("no limits");
+/// Basis, units, play head and the key of the help, as much of it as there is room for.
+fn right_words(model: &Model, room: usize) -> String {
+    let basis = fit(model.document.scenario().limits.basis.as_deref().unwrap_or("no limits").trim(), 16);
     let units = match model.units {
         UnitSystem::Metric => "metric",
         UnitSystem::Us => "US units",
     };
-    let clock = model.answer.report.as_ref().map_or_else(String::new, |report| {
-        let ending = super::verdict::ending(&report.estimate);
-        format!("{:.2} s of {:.2} s, {ending}", model.play.time_s, model.end_s())
-    });
-    format!("{}   {units}   {clock}   {} keys", fit(basis.trim(), 16), key_name(Command::Help))
+    let (clock, short_clock) = clock(model);
+    let help = format!("{} keys", key_name(Command::Help));
+    let choices = [
+        format!("{basis}   {units}   {clock}   {help}"),
+        format!("{basis}   {units}   {short_clock}   {help}"),
+        format!("{units}   {short_clock}   {help}"),
+        format!("{units}   {help}"),
+    ];
+    let [.., last] = choices.clone();
+    choices.into_iter().find(|words| width(words) <= room).unwrap_or(last)
+}
+
+/// Where the play head is, long and short.
+fn clock(model: &Model) -> (String, String) {
+    let Some(report) = model.answer.current() else { return ("no current run".to_owned(), "no run".to_owned()) };
+    let ending = super::verdict::ending(&report.estimate);
+    let short = format!("{:.2} s of {:.2} s", model.play.time_s, model.end_s());
+    (format!("{short}, {ending}"), short)
 }
 
 /// Draws the caution over the whole width of its rows.

@@ -22,6 +22,8 @@ pub struct Picture {
     pub hang_m: Option<f64>,
     /// Travel at the lowest point, m past taut.
     pub lowest_m: Option<f64>,
+    /// Largest line force of the run, N.
+    pub peak_n: f64,
     /// Limit of the line force, N.
     pub limit_n: Option<f64>,
     /// Play head, s.
@@ -53,7 +55,7 @@ pub fn draw(frame: &mut Frame, area: Rect, picture: &Picture, theme: Theme) {
     let upper = plots.div_ceil(2);
     let travel = Rect { height: upper, ..area };
     let force = Rect { y: area.y + upper, height: plots - upper, ..area };
-    travel_plot(picture, theme).draw(frame, travel);
+    travel_plot(picture, theme, area.width).draw(frame, travel);
     force_plot(picture, theme).draw(frame, force);
     let strip = Rect { y: force.bottom(), height: 1, ..area };
     draw_modes(frame, strip, picture, theme);
@@ -88,7 +90,7 @@ fn envelope_curves(picture: &Picture) -> Vec<(f64, f64, f64)> {
     if to > from { (0..=steps).map(point).collect() } else { Vec::new() }
 }
 
-fn travel_plot(picture: &Picture, theme: Theme) -> Plot {
+fn travel_plot(picture: &Picture, theme: Theme, columns: u16) -> Plot {
     let shown = |si: f64| picture.length.shown(si);
     let bounds = envelope_curves(picture);
     let ends = bounds.iter().flat_map(|&(_, above, below)| [shown(above), shown(below)]);
@@ -111,9 +113,8 @@ fn travel_plot(picture: &Picture, theme: Theme) -> Plot {
     };
     let lowest = picture.lowest_m.map(|at| level(at, "lowest"));
     let hang = picture.hang_m.map(|at| level(at, "hangs at"));
-    let envelope = if bounds.is_empty() { "" } else { "   .. envelope" };
     Plot {
-        title: format!("travel past taut, downward ({}){envelope}", picture.length.symbol),
+        title: travel_title(picture, !bounds.is_empty(), columns),
         across: picture.window_s,
         along,
         grows: Grows::Down,
@@ -126,6 +127,15 @@ fn travel_plot(picture: &Picture, theme: Theme) -> Plot {
     }
 }
 
+/// The longest title that there is room for.
+fn travel_title(picture: &Picture, has_envelope: bool, columns: u16) -> String {
+    let unit = picture.length.symbol;
+    let envelope = if has_envelope { "   .. envelope" } else { "" };
+    let short = format!("travel past taut ({unit})");
+    let choices = [format!("travel past taut, downward ({unit}){envelope}"), format!("{short}{envelope}")];
+    choices.into_iter().find(|title| cells(title) <= columns).unwrap_or(short)
+}
+
 fn force_plot(picture: &Picture, theme: Theme) -> Plot {
     let shown = |si: f64| picture.force.shown(si);
     let along = range(picture.samples.iter().map(|sample| shown(sample.force_n)).chain(picture.limit_n.map(shown)));
@@ -136,7 +146,7 @@ fn force_plot(picture: &Picture, theme: Theme) -> Plot {
         style: theme.plain(),
     });
     Plot {
-        title: format!("line force ({})", picture.force.symbol),
+        title: format!("line force ({}), peak {}", picture.force.symbol, picture.force.text(picture.peak_n)),
         across: picture.window_s,
         along: (0.0, along.1),
         grows: Grows::Up,
@@ -179,8 +189,9 @@ fn draw_legend(frame: &mut Frame, area: Rect, picture: &Picture, theme: Theme) {
         }
     }
     let words: Vec<String> = modes.iter().map(|&mode| format!("{} {}", mode_symbol(mode), mode.word())).collect();
-    let text = format!("time from the start of the fall (s)   {}", words.join("  "));
-    let short = words.join("  ");
-    let text = if cells(&text) <= area.width { text } else { short };
+    let all = words.join("  ");
+    let later = words.iter().skip(1).cloned().collect::<Vec<_>>().join("  ");
+    let choices = [format!("time from the start of the fall (s)   {all}"), all, later.clone()];
+    let text = choices.into_iter().find(|text| cells(text) <= area.width).unwrap_or(later);
     put(frame.buffer_mut(), area, 0, 0, &text, theme.quiet());
 }

@@ -8,6 +8,7 @@ use crate::tui::model::{Mode, Model, Pane};
 use crate::tui::text::{cells, fit, put, put_right, width};
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
+use ratatui::style::Style;
 
 /// One row of the list.
 #[derive(Clone, Debug, PartialEq, Eq)]
@@ -62,6 +63,9 @@ pub fn input_at(model: &Model, area: Rect, row: u16) -> Option<usize> {
     }
 }
 
+/// Columns kept for values; a longer one takes from its label.
+const MOST_VALUE: u16 = 10;
+
 /// Columns of the list.
 struct Columns {
     label: u16,
@@ -72,7 +76,7 @@ struct Columns {
 impl Columns {
     fn of(model: &Model, total: u16) -> Self {
         let widest = |texts: Vec<String>| texts.iter().map(|text| cells(text)).max().unwrap_or(0);
-        let value = widest(model.inputs.iter().map(|input| value_text(&input.measure)).collect()).max(8);
+        let value = widest(model.inputs.iter().map(|input| value_text(&input.measure)).collect()).clamp(8, MOST_VALUE);
         let band = widest(model.inputs.iter().map(band_text).collect());
         let rest = total.saturating_sub(1 + value + 3);
         let band = if band > 0 && rest >= band + 1 + 20 { band + 1 } else { 0 };
@@ -89,8 +93,6 @@ fn band_text(input: &Input) -> String {
 pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
     let columns = Columns::of(model, area.width);
     put(buffer, area, 0, 0, "Inputs", model.theme.heading());
-    let head = if columns.band > 0 { "value      band  " } else { "value  " };
-    put_right(buffer, area, 0, head, model.theme.quiet());
     let rows = rows(model);
     let shown = usize::from(area.height.saturating_sub(1));
     let first = first_shown(&rows, model, shown);
@@ -100,7 +102,7 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
                 put(buffer, area, 1, line, &fit(title, usize::from(area.width.saturating_sub(2))), model.theme.quiet());
             }
             Row::Input(index) => {
-                draw_input(buffer, Rect { y: area.y + line, height: 1, ..area }, model, *index, &columns)
+                draw_input(buffer, Rect { y: area.y + line, height: 1, ..area }, model, *index, &columns);
             }
         }
     }
@@ -111,9 +113,7 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
 fn draw_scroll_marks(buffer: &mut Buffer, area: Rect, model: &Model, (first, shown, count): (usize, usize, usize)) {
     let below = count.saturating_sub(first + shown);
     if first + below > 0 {
-        let words = format!("Inputs  {first} more above, {below} below");
-        put(buffer, area, 0, 0, &" ".repeat(usize::from(area.width)), model.theme.plain());
-        put(buffer, area, 0, 0, &words, model.theme.heading());
+        put(buffer, area, 8, 0, &super::more_words(first, below), model.theme.quiet());
     }
 }
 
@@ -125,28 +125,31 @@ fn draw_input(buffer: &mut Buffer, row: Rect, model: &Model, index: usize, colum
         buffer.set_style(row, style);
         put(buffer, row, 0, 0, ">", style);
     }
-    let label = split(&input.path).1.replace('_', " ");
-    put(buffer, row, 2, 0, &fit(&label, usize::from(columns.label.saturating_sub(2))), style);
     if let (true, Mode::Typing(typing)) = (is_chosen, &model.mode) {
-        return draw_typing(
-            buffer,
-            Rect { x: row.x + columns.label, width: row.width - columns.label, ..row },
-            model,
-            typing,
-        );
+        draw_label(buffer, row, input, columns.label.saturating_sub(1), style);
+        let field = Rect { x: row.x + columns.label, width: row.width - columns.label, ..row };
+        return draw_typing(buffer, field, model, typing);
     }
-    let value = Rect { x: row.x + 1 + columns.label, width: columns.value, ..row };
-    put_right(buffer, value, 0, &value_text(&input.measure), style);
-    let band = Rect { x: value.right(), width: columns.band, ..row };
+    let text = value_text(&input.measure);
+    let values = Rect { width: 1 + columns.label + columns.value, ..row };
+    put_right(buffer, values, 0, &text, style);
+    draw_label(buffer, row, input, values.width.saturating_sub(cells(&text) + 1), style);
+    let band = Rect { x: values.right(), width: columns.band, ..row };
     put_right(buffer, band, 0, &band_text(input), style);
     let lean = model.leans.get(index).copied().unwrap_or(Lean::Unknown);
     put_right(buffer, row, 0, &format!("{} ", lean.symbol()), style);
 }
 
+/// The key in words, left of column `end`.
+fn draw_label(buffer: &mut Buffer, row: Rect, input: &Input, end: u16, style: Style) {
+    let label = split(&input.path).1.replace('_', " ");
+    put(buffer, row, 2, 0, &fit(&label, usize::from(end.saturating_sub(2))), style);
+}
+
 fn draw_typing(buffer: &mut Buffer, area: Rect, model: &Model, typing: &crate::tui::model::Typing) {
     let plain = model.theme.plain();
     put(buffer, area, 0, 0, &" ".repeat(usize::from(area.width)), plain);
-    buffer.set_style(area, ratatui::style::Style::reset());
+    buffer.set_style(area, Style::reset());
     let room = usize::from(area.width.saturating_sub(1));
     let text = typing.text.value();
     let skip = typing.text.visual_scroll(room.saturating_sub(1));

@@ -1,6 +1,7 @@
 //! The checks: demand, limit, a bar about the zero line, margin and verdict.
 use crate::margin::{Margin, Rules, Sense, Verdict, checks, margin_of};
 use crate::quantity::{UnitSystem, format_si};
+use crate::sheet::margin_words;
 use crate::tui::model::{Model, Pane};
 use crate::tui::text::{cells, fit, put, put_right, wrap};
 use ratatui::buffer::Buffer;
@@ -61,7 +62,7 @@ fn draw_title(buffer: &mut Buffer, area: Rect, model: &Model, (above, below): (u
         return put(buffer, area, 9, 0, words, model.theme.fault());
     }
     if above + below > 0 {
-        put(buffer, area, 9, 0, &format!("{above} more above, {below} below"), model.theme.quiet());
+        put(buffer, area, 9, 0, &super::more_words(above, below), model.theme.quiet());
     }
     if rows_each(area) == 1 {
         let columns = Columns::of(listed(model), area.width);
@@ -78,6 +79,7 @@ fn draw_title(buffer: &mut Buffer, area: Rect, model: &Model, (above, below): (u
 
 /// How a check is shown.
 struct Look {
+    mark: &'static str,
     units: UnitSystem,
     verdict: Verdict,
     style: Style,
@@ -94,7 +96,8 @@ impl Look {
             (false, true) => model.theme.quiet(),
             (false, false) => model.theme.plain(),
         };
-        Self { units: model.units, verdict, style: base, verdict_style: model.theme.verdict(verdict).patch(base) }
+        let mark = if is_chosen { ">" } else { " " };
+        Self { mark, units: model.units, verdict, style: base, verdict_style: base.patch(model.theme.verdict(verdict)) }
     }
 }
 
@@ -149,6 +152,7 @@ const fn side(sense: Sense) -> &'static str {
 
 fn draw_row(buffer: &mut Buffer, row: Rect, margin: &Margin, look: &Look, columns: &Columns) {
     buffer.set_style(row, look.style);
+    put(buffer, row, 0, 0, look.mark, look.style);
     let symbol = look.verdict.symbol().to_string();
     put(buffer, row, 1, 0, &symbol, look.verdict_style);
     put(buffer, row, 3, 0, &fit(&margin.label, usize::from(columns.label)), look.style);
@@ -165,6 +169,7 @@ fn draw_row(buffer: &mut Buffer, row: Rect, margin: &Margin, look: &Look, column
 /// Two rows for a narrow pane: label and word, then the numbers.
 fn draw_pair(buffer: &mut Buffer, row: Rect, margin: &Margin, look: &Look) {
     buffer.set_style(row, look.style);
+    put(buffer, row, 0, 0, look.mark, look.style);
     let words = format!("{} {}", look.verdict.symbol(), look.verdict.word());
     let room = usize::from(row.width.saturating_sub(WORD + 2));
     put(buffer, row, 1, 0, &fit(&margin.label, room), look.style);
@@ -175,8 +180,11 @@ fn draw_pair(buffer: &mut Buffer, row: Rect, margin: &Margin, look: &Look) {
         side(margin.sense),
         number(margin.limit, margin, look.units)
     );
-    put(buffer, row, 4, 1, &sides, look.style);
-    put_right(buffer, row, 1, &format!("{} ", signed(margin, look.units)), look.style);
+    let room = format!("{} ", signed(margin, look.units));
+    if cells(&sides) + cells(&room) + 3 <= row.width {
+        put(buffer, row, 2, 1, &sides, look.style);
+    }
+    put_right(buffer, row, 1, &room, look.style);
 }
 
 /// Margin as a share of the limit (of the demand where the limit is zero); full scale is one.
@@ -210,7 +218,12 @@ fn draw_bar(buffer: &mut Buffer, area: Rect, margin: &Margin, look: &Look) {
 /// Draws the source and the note of the chosen check.
 pub fn draw_basis(buffer: &mut Buffer, area: Rect, model: &Model) {
     let Some(margin) = listed(model).get(model.check) else { return };
-    let mut words = format!("{}: {}", margin.label, margin.basis.words);
+    let mut words = match &model.answer.report {
+        Some(report) if margin.verdict != Verdict::Open && !model.answer.is_stale() => {
+            format!("{}: {}", margin_words(&report.scenario, margin, model.units), margin.basis.words)
+        }
+        _ => format!("{}: {}", margin.label, margin.basis.words),
+    };
     if margin.basis.from_memory {
         words += " - from memory, unverified";
     }

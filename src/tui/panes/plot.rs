@@ -172,7 +172,7 @@ impl Plot {
     /// Names stand at the right edge, each on a row of its own.
     fn draw_levels(&self, frame: &mut Frame, field: Rect) {
         let mut order: Vec<&Level> = self.levels.iter().collect();
-        order.sort_by_key(|level| self.row_of(level.at, field.height));
+        order.sort_by(|a, b| self.flip(b.at).total_cmp(&self.flip(a.at)));
         let wanted: Vec<u16> = order.iter().map(|level| self.row_of(level.at, field.height)).collect();
         for (level, row) in order.iter().zip(crate::tui::text::spread(&wanted, field.height)) {
             let (Some(row), true) = (row, cells(&level.name) + 2 <= field.width) else { continue };

@@ -15,34 +15,33 @@ pub const fn command(view: View) -> Command {
     }
 }
 
-fn title(view: View) -> String {
-    format!(" {} {} ", key_name(command(view)), view.title())
+/// The tabs with their first columns; without padding where the row is too short for it.
+fn placed(area: Rect, views: &[View]) -> Vec<(View, String, u16)> {
+    let bare: Vec<String> = views.iter().map(|&view| format!("{} {}", key_name(command(view)), view.title())).collect();
+    let padded: Vec<String> = bare.iter().map(|text| format!(" {text} ")).collect();
+    let wide = |texts: &[String]| texts.iter().map(|text| cells(text) + 1).sum::<u16>();
+    let texts = if wide(&padded) <= area.width { padded } else { bare };
+    let mut column = area.x;
+    let mut tabs = Vec::new();
+    for (&view, text) in views.iter().zip(texts) {
+        let next = column + cells(&text) + 1;
+        tabs.push((view, text, column));
+        column = next;
+    }
+    tabs
 }
 
 /// Draws the tabs.
 pub fn draw(buffer: &mut Buffer, area: Rect, views: &[View], model: &Model) {
-    let mut column = 0;
-    for &view in views {
-        let text = title(view);
-        let style = if view == model.view { model.theme.chosen(true) } else { model.theme.quiet() };
-        put(buffer, area, column, 0, &text, style);
-        column += cells(&text) + 1;
-    }
-    if model.answer.is_stale() {
-        put(buffer, area, column, 0, "NOT CURRENT", model.theme.fault());
+    for (view, text, column) in placed(area, views) {
+        let style = if view == model.view { model.theme.chosen(true) } else { model.theme.plain() };
+        put(buffer, area, column - area.x, 0, &text, style);
     }
 }
 
 /// The view whose tab holds a column.
 #[must_use]
 pub fn view_at(area: Rect, views: &[View], column: u16) -> Option<View> {
-    let mut left = area.x;
-    for &view in views {
-        let right = left + cells(&title(view));
-        if (left..right).contains(&column) {
-            return Some(view);
-        }
-        left = right + 1;
-    }
-    None
+    let tabs = placed(area, views);
+    tabs.into_iter().find(|(_, text, left)| (*left..left + cells(text)).contains(&column)).map(|(view, ..)| view)
 }

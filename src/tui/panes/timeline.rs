@@ -1,12 +1,12 @@
 //! The play bar below the view.
 use super::plot::place;
 use crate::tui::model::Model;
-use crate::tui::text::{put, put_right};
+use crate::tui::text::put;
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 
 /// Columns of the words before the bar.
-pub const WORDS: u16 = 22;
+pub const WORDS: u16 = 26;
 
 /// Draws words and bar.
 pub fn draw(buffer: &mut Buffer, area: Rect, bar: Rect, model: &Model) {
@@ -14,8 +14,8 @@ pub fn draw(buffer: &mut Buffer, area: Rect, bar: Rect, model: &Model) {
         return;
     }
     let state = if model.play.running { "playing" } else { "paused " };
-    let words = format!("{state} {} {:>8.3} s", model.play.rate().1, model.play.time_s);
-    put_right(buffer, Rect { width: WORDS - 1, ..area }, 0, &words, model.theme.plain());
+    let words = format!("{state} {:>5} {:>8.3} s", model.play.rate().1, model.play.time_s);
+    put(buffer, area, 0, 0, &words, model.theme.plain());
     let window = model.window_s();
     let column = |time: f64| place((time - window.0) / (window.1 - window.0), bar.width);
     put(buffer, bar, 0, 0, &"─".repeat(usize::from(bar.width)), model.theme.quiet());
