@@ -1,4 +1,5 @@
 //! The screen as a model that takes keys: (model, keys, model).
+#![allow(clippy::unwrap_used, clippy::panic, reason = "helpers of tests fail by panicking")]
 mod screen_support;
 
 use crossterm::event::{KeyCode, KeyEvent, KeyEventKind, KeyModifiers, MouseButton, MouseEventKind};

@@ -102,7 +102,7 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
                 put(buffer, area, 1, line, &fit(title, usize::from(area.width.saturating_sub(2))), model.theme.quiet());
             }
             Row::Input(index) => {
-                draw_input(buffer, Rect { y: area.y + line, height: 1, ..area }, model, *index, &columns)
+                draw_input(buffer, Rect { y: area.y + line, height: 1, ..area }, model, *index, &columns);
             }
         }
     }
