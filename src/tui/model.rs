@@ -18,11 +18,13 @@ pub enum View {
     History,
     /// Every check; a view of its own only where the margins find no room below.
     Margins,
+    /// What must be read beside the numbers.
+    Notes,
 }
 
 impl View {
     /// All views in the order of the tabs.
-    pub const ALL: [Self; 3] = [Self::Elevation, Self::History, Self::Margins];
+    pub const ALL: [Self; 4] = [Self::Elevation, Self::History, Self::Margins, Self::Notes];
 
     /// The name on the tab.
     #[must_use]
@@ -31,6 +33,7 @@ impl View {
             Self::Elevation => "Elevation",
             Self::History => "History",
             Self::Margins => "Margins",
+            Self::Notes => "Notes",
         }
     }
 }
@@ -84,6 +87,15 @@ pub struct Notice {
     pub words: String,
     /// Whether something went wrong.
     pub is_fault: bool,
+}
+
+/// A time axis that the mouse holds.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Scrubbing {
+    /// The play bar.
+    Bar,
+    /// The plots of History.
+    Plot,
 }
 
 /// The stretch of time that History shows.
@@ -188,6 +200,10 @@ pub struct Model {
     pub check: usize,
     /// The large view.
     pub view: View,
+    /// First row shown of the notes.
+    pub notes_row: usize,
+    /// Where the mouse button went down on a time axis and still is.
+    pub scrubbing: Option<Scrubbing>,
     /// Stretch of time in History.
     pub window: Window,
     /// Play head.
@@ -223,6 +239,8 @@ impl Model {
             input: 0,
             check: 0,
             view: View::default(),
+            notes_row: 0,
+            scrubbing: None,
             window: Window::default(),
             play: Play { time_s: 0.0, running: false, speed: 3 },
             mode: Mode::default(),

@@ -4,7 +4,9 @@ use super::model::{Mode, Model, View};
 use super::panes::history::Picture;
 use super::panes::scene::Scene;
 use super::panes::units::Scale;
-use super::panes::{about, elevation, foot, header, help, history, inputs, log, margins, tabs, timeline, verdict};
+use super::panes::{
+    about, elevation, foot, header, help, history, inputs, log, margins, notes, tabs, timeline, verdict,
+};
 use super::text::put;
 use crate::quantity::Dimension;
 use crate::sheet::Report;
@@ -85,6 +87,7 @@ fn draw_view(model: &Model, frame: &mut Frame, panes: &Panes) {
         View::History => history::draw(frame, area, &picture(report, model, area.width), model.theme),
         View::Margins if panes.margins.height == 0 => draw_margins_view(model, frame, area),
         View::Margins => {}
+        View::Notes => notes::draw(frame.buffer_mut(), area, model),
     }
     timeline::draw(frame.buffer_mut(), panes.timeline, panes.bar(), model);
     if model.answer.is_stale() {

@@ -8,6 +8,7 @@ pub mod history;
 pub mod inputs;
 pub mod log;
 pub mod margins;
+pub mod notes;
 pub mod plot;
 pub mod scene;
 pub mod tabs;
