@@ -172,6 +172,7 @@ fn arrest_force_is_judged_by_the_named_set() {
     assert_eq!(at("ca-on", 7999.0).verdict, Verdict::Holds);
     assert_eq!(at("ca-ab", 6000.5).verdict, Verdict::Short);
     assert_eq!(at("au-qld", 6000.5).verdict, Verdict::Short);
+    assert_eq!(at("us-1926", 5000.0).basis.words, "us-1926: 1800 lbf, 29 CFR 1926.502(d)(16)(ii) (published)");
     assert!(at("us-1926", 5000.0).note.unwrap().contains("other sets allow 6 kN"));
     assert_eq!(at("eu-363", 5000.0).note, None);
     assert_eq!(at("eu-363", 5000.0).basis.words, "eu-363: EN 363 as applied in DGUV Regel 112-198 s.5.1 (published)");
@@ -493,6 +494,20 @@ fn a_run_outside_of_the_model_is_open_wherever_its_numbers_count() {
         };
         assert_eq!(check.verdict, expected, "{:?}", check.kind);
     }
+}
+
+#[test]
+fn another_rule_of_a_set_helps_only_where_it_is_judged_to_hold() {
+    let mut file = scenario(Some("us-1926"));
+    file.anchor.capacity = Some(kilonewtons(15.0));
+    let why = [Validity::FreeFallBeyondRating { free_fall_m: 5.0, rated_m: 4.0 }];
+    let verdict = |file: &Scenario, kind| {
+        let list = checks(&Rules::of(file).unwrap(), file, &numbers(&[("free_fall_distance", 5.0)]), &why);
+        list.iter().find(|c| c.kind == kind).unwrap().verdict
+    };
+    assert_eq!(verdict(&file, CheckKind::AnchorStrength), Verdict::Short);
+    file.limits.basis = Some("ca-qc".to_owned());
+    assert_eq!(verdict(&file, CheckKind::FreeFall), Verdict::Short);
 }
 
 #[test]

@@ -141,7 +141,9 @@ fn shown_numbers_have_readable_digits_and_a_unit() {
         (0.0361, Length, Metric, "0.0361 m"),
         (1.8288, Length, Us, "6.00 ft"),
         (-0.0, Length, Metric, "0.00 m"),
-        (-1e-17, Length, Metric, "-1.00e-17 m"),
+        (-1e-17, Length, Metric, "0.00 m"),
+        (3.2e-13, Ratio, Metric, "3.20e-13"),
+        (2.5e-6, Length, Metric, "2.50e-6 m"),
         (-0.583, Length, Metric, "-0.583 m"),
         (100.0, Mass, Metric, "100 kg"),
         (99.79, Mass, Metric, "99.8 kg"),
@@ -212,11 +214,11 @@ proptest! {
     }
 
     #[test]
-    fn shown_text_always_keeps_three_digits_of_the_value(value in -1e12_f64..1e12, scale in 0_i32..18) {
+    fn shown_text_always_keeps_three_digits_of_the_value(value in -1e12_f64..1e12, scale in 0_i32..16) {
         let value = value * 10_f64.powi(-scale);
         let text = format_si(value, Dimension::Length, UnitSystem::Metric);
         let back = si(&text, Dimension::Length);
-        prop_assert!((back - value).abs() <= 0.005_f64.mul_add(value.abs(), 0.0), "{} shown as {}", value, text);
+        prop_assert!((back - value).abs() <= 0.005_f64.mul_add(value.abs(), 1e-9), "{} shown as {}", value, text);
     }
 
     #[test]

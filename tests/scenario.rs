@@ -231,6 +231,11 @@ fn each_doubt_is_raised_by_the_statement_it_is_about() {
         ("top = \"4 m\"", "top = \"14 m\"", "above the start"),
         ("basis = \"eu-363\"\n", "", "without a basis"),
         ("[anchor]", "[harness]\nstiffness = \"80 kN/m\"\n[anchor]", ""),
+        (
+            "stiffness = \"60 kN/m\"",
+            "static_elongation = { percent = 0.034, from = \"50 kg\", to = \"150 kg\" }",
+            "of a steel bar",
+        ),
         ("title", "gravity = \"1.62 m/s2\"\ntitle", "gravity is"),
         ("attachment_above_feet = \"1.5 m\"", "attachment_above_feet = \"1.5 m\"\nbody_factor = 1.3", "body factor"),
     ];

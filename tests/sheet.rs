@@ -170,6 +170,27 @@ fn every_verdict_is_told_by_symbol_and_word_without_colour() {
 }
 
 #[test]
+fn every_shipped_scenario_gives_complete_outputs() {
+    let folder = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("scenarios");
+    let mut count = 0;
+    for entry in std::fs::read_dir(folder).unwrap() {
+        let file = std::fs::read_to_string(entry.unwrap().path()).unwrap();
+        let report = reported(&file);
+        for system in [UnitSystem::Metric, UnitSystem::Us] {
+            let page = text(&report, system, Paint::Plain);
+            assert!(page.lines().all(|line| line.width() <= 100), "{page}");
+            assert!(page.contains("FIRST-PASS ESTIMATE") && !page.contains("not a number"), "{page}");
+        }
+        let value: Value = serde_json::from_str(&json(&report, Layout::OneLine)).unwrap();
+        assert_eq!(value["verdict"], report.verdict.word());
+        assert_eq!(value["margins"][0]["verdict"], report.verdict.word(), "the governing one is not the worst");
+        assert!(underfoot::sheet::csv(&report).unwrap().lines().count() < 2500);
+        count += 1;
+    }
+    assert!(count >= 8, "{count}");
+}
+
+#[test]
 fn the_same_file_gives_the_same_bytes() {
     assert_eq!(json(&reported(FILE), Layout::Lines), json(&reported(FILE), Layout::Lines));
 }

@@ -142,7 +142,7 @@ fn taut_again(stretch: &Stretch, horizon: f64) -> Option<f64> {
     let s = stretch.s.value(0.0);
     let c = [e1.c[0] + e2.c[0] + s - x.c[0], -x.c[1], -x.c[2]];
     let gap = super::drift::Drift { c, relax: [e1.relax[0], e2.relax[0]] };
-    let widest = gap.turns(0.0, horizon).into_iter().flatten().filter(|t| t.is_maximum).last();
+    let widest = gap.turns(0.0, horizon).into_iter().flatten().rfind(|t| t.is_maximum);
     let (from, open) = match widest {
         Some(turn) => (turn.time, gap.value(turn.time)),
         None => (0.0, gap.value(0.0)),

@@ -272,7 +272,7 @@ impl<'a> Run<'a> {
         let arrest_distance_m = deepest.map_or(hang_travel_m, |l| l.travel_m);
         let total_j = self.fall_energy_j(arrest_distance_m);
         let energy_residual = if total_j > 0.0 { self.imbalance_j / total_j } else { self.imbalance_j };
-        if !(energy_residual <= BALANCE) {
+        if energy_residual.is_nan() || energy_residual > BALANCE {
             return Err(ArrestError::Energy { residual: energy_residual });
         }
         let highest = deepest.and(self.record.highest);

@@ -237,7 +237,7 @@ impl Wave {
         let mut search = Search { signal, rate, bend, at: from, to, started };
         let wanted_start_above = passage == Passage::Down;
         if (signal.value(from) > 0.0) != wanted_start_above {
-            search.at = search.zero()?;
+            search.zero()?;
         }
         search.zero()
     }

@@ -56,7 +56,7 @@ pub fn warnings(scenario: &Scenario, setup: &Setup, outcome: &Outcome) -> Vec<St
     if outcome.stroke_used_up {
         list.push("The absorber's stroke is used up: from there on only stretch limits the force.".to_owned());
     }
-    if scenario.harness.is_some() && scenario.subject.stretch_allowance.is_some() {
+    if scenario.harness.is_some() && scenario.subject.stretch_allowance.is_some_and(|a| a.si() > 0.0) {
         list.push(
             "Both [harness] and `subject.stretch_allowance` are given: the stretch of the harness is counted twice."
                 .to_owned(),

@@ -22,6 +22,9 @@ pub fn checks(rules: &Rules, scenario: &Scenario, numbers: &Numbers, validity: &
     if !validity.is_empty() {
         list.iter_mut().filter(|c| c.kind.needs_model()).for_each(|c| *c = c.open(Cause::NotValid));
     }
+    accept_either(&mut list, CheckKind::ArrestForce, rules.arrest_force.as_ref(), CheckKind::FreeFall);
+    accept_either(&mut list, CheckKind::FreeFall, rules.free_fall.as_ref(), CheckKind::ArrestForce);
+    accept_either(&mut list, CheckKind::AnchorStrength, rules.anchor_strength.as_ref(), CheckKind::AnchorLoad);
     list
 }
 
@@ -46,8 +49,6 @@ impl Run<'_> {
         self.rule(list, CheckKind::FreeFall, rules.free_fall.as_ref(), self.free_fall());
         self.rule(list, CheckKind::DecelerationDistance, rules.deceleration.as_ref(), self.absorber_travel());
         self.total_fall(list);
-        accept_either(list, CheckKind::ArrestForce, rules.arrest_force.as_ref(), CheckKind::FreeFall);
-        accept_either(list, CheckKind::FreeFall, rules.free_fall.as_ref(), CheckKind::ArrestForce);
     }
 
     fn rule(&self, list: &mut Vec<Check>, kind: CheckKind, ruling: Option<&Ruling>, demand: Option<f64>) {
@@ -121,7 +122,6 @@ impl Run<'_> {
         list.push(judge(CheckKind::AnchorLoad, demand, capacity));
         if let (Some(capacity), Some(ruling)) = (capacity, &rules.anchor_strength) {
             list.push(judge(CheckKind::AnchorStrength, Some(capacity), Some(ruling.si())));
-            accept_either(list, CheckKind::AnchorStrength, Some(ruling), CheckKind::AnchorLoad);
             self.accept_conditional(list, ruling, LimitKind::AnchorStrengthConditional, capacity);
         }
     }

@@ -5,7 +5,7 @@ use super::limit::{Applies, LimitKind, Mark, PublishedLimit};
 use super::rules::{Rules, Ruling};
 use super::verdict::Verdict;
 use crate::estimate::Validity;
-use crate::quantity::{UnitSystem, format_si, format_unit};
+use crate::quantity::{Unit, UnitSystem, format_si, format_unit};
 use crate::scenario::Scenario;
 
 /// A check with its words; notes in the given units.
@@ -131,7 +131,7 @@ impl Words<'_> {
         };
         let from_memory = published.is_some_and(|p| p.mark == Mark::Memory);
         let words = match (own, published) {
-            (None, Some(p)) => format!("{}: {}", self.set_name(), source(p)),
+            (None, Some(p)) => format!("{}: {}{}", self.set_name(), customary(p), source(p)),
             (Some(own), published) => {
                 let value = format_unit(own.value.si(), own.value.unit);
                 let instead = self.replaced(*published);
@@ -274,6 +274,14 @@ impl Words<'_> {
 /// `EN 363 as applied in DGUV Regel 112-198 s.5.1 (published)`.
 fn source(limit: &PublishedLimit) -> String {
     format!("{} ({})", limit.clause, limit.mark.words())
+}
+
+/// `6 ft, `: the source's own number where screens may show another; nothing for metric sources.
+fn customary(limit: &PublishedLimit) -> String {
+    match limit.unit {
+        Unit::Foot | Unit::Inch | Unit::Pound | Unit::PoundForce => format!("{}, ", value_words(limit)),
+        _ => String::new(),
+    }
 }
 
 fn value_words(limit: &PublishedLimit) -> String {

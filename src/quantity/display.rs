@@ -6,6 +6,9 @@ const KEPT_DIGITS: usize = 12;
 /// Significant digits that [`format_si`] shows at least.
 const SHOWN_DIGITS: i32 = 3;
 
+/// Values below this share of a unit come from rounding, not from a fall.
+const ROUNDING: f64 = 1e-9;
+
 /// The unit in which a system shows a dimension (forces in kN or lbf, lengths in m or ft).
 #[must_use]
 pub fn display_unit(dimension: Dimension, system: UnitSystem) -> Unit {
@@ -34,11 +37,13 @@ pub fn display_unit(dimension: Dimension, system: UnitSystem) -> Unit {
 ///
 /// At least three significant digits, and at least as many decimals as the unit is usually read to (centimetres,
 /// tenths of a kilonewton); whole kilograms and pounds without decimals. Below 0.0001 and from a thousand million of the
-/// unit with a power of ten. A value that is not finite reads `not a number`.
+/// unit with a power of ten; below a thousand-millionth of the unit, where only rounding is left, zero (ratios excepted).
+/// A value that is not finite reads `not a number`.
 #[must_use]
 pub fn format_si(value_si: f64, dimension: Dimension, system: UnitSystem) -> String {
     let unit = display_unit(dimension, system);
-    let value = value_si / unit.factor() + 0.0;
+    let value = value_si / unit.factor();
+    let value = if unit != Unit::One && value.abs() < ROUNDING { 0.0 } else { value + 0.0 };
     if !value.is_finite() {
         return "not a number".to_owned();
     }

@@ -9,6 +9,8 @@ const HEAVY_PERSON_KG: f64 = 200.0;
 const LIGHT_PERSON_KG: f64 = 40.0;
 /// Highest attachment above the soles that is not a doubt, m: a dorsal D-ring of a tall person is near 1.6 m.
 const HIGH_ATTACHMENT_M: f64 = 2.0;
+/// Least elongation of a line between two loads that is not a doubt: a wire rope stretches more.
+const LEAST_ELONGATION: f64 = 0.001;
 /// Gravity on the ground differs from the standard by less than this, m/s2.
 const GRAVITY_SPREAD_M_PER_S2: f64 = 0.05;
 /// Standard gravity, m/s2, by definition (3rd CGPM, 1901).
@@ -135,6 +137,13 @@ fn fall(scenario: &Scenario) -> Vec<Doubt> {
         let message = format!("the free fall is more than twice the line's length of `{}`", format_measure(&length));
         let hint = "a line on a fixed point allows at most twice its length; check both numbers";
         found.push(doubt("fall.free_fall", message, "fall factor above 2", hint));
+    }
+    if let StretchLaw::StaticElongation { percent, .. } = &scenario.line.stretch
+        && percent.band.low < LEAST_ELONGATION
+    {
+        let message = format!("a static elongation of `{}` is that of a steel bar", format_measure(percent));
+        let hint = "the number is in percent: write `3.4`, not `0.034`, for 3.4 %";
+        found.push(doubt("line.static_elongation.percent", message, "very small", hint));
     }
     if let StretchLaw::RatedImpact { fall_factor, .. } = &scenario.line.stretch
         && fall_factor.band.high > 2.0

@@ -16,9 +16,11 @@ pub(super) fn read(values: &mut Values, text: &str, path: &str, field: &Field, v
             other => wrong_type(values, value.span(), field, other, "expected text in quotes"),
         };
     };
+    let one_value = path.starts_with("limits.");
     let measure = match value.get_ref() {
-        DeValue::Table(table) if path.starts_with("limits.") => limit(values, text, path, field, table, value.span()),
+        DeValue::Table(table) if one_value => limit(values, text, path, field, table, value.span()),
         DeValue::Table(table) => long_band(values, text, field, dimension, table, value.span()),
+        _ if one_value => single(values, text, field, dimension, value),
         _ => scalar(values, text, field, dimension, value),
     };
     if let Some(measure) = measure

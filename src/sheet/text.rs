@@ -37,6 +37,9 @@ fn head(page: &mut Page, report: &Report) {
     }
     page.wrapped("file   ", &report.file, Tone::Plain);
     let datum = report.scenario.datum.as_deref().unwrap_or("not stated");
+    if let Some(notes) = &report.scenario.notes {
+        page.wrapped("notes  ", notes, Tone::Plain);
+    }
     page.wrapped("datum  ", &format!("elevation 0 is: {datum}"), Tone::Plain);
     page.gap();
 }
@@ -126,23 +129,24 @@ fn group(page: &mut Page, title: &str, report: &Report, system: UnitSystem, belo
     page.heading(title);
     for number in members {
         let cell = pad_left(&number_words(number, system), 16);
-        row(page, "  ", (&number_label(&number.id), 44), &format!("  {cell}"), Tone::Plain);
+        row(page, "  ", (&number_label(&number.id, &report.scenario), 44), &format!("  {cell}"), Tone::Plain);
     }
 }
 
-fn number_label(id: &str) -> String {
-    let label = DEFINITIONS
-        .iter()
-        .find(|d| d.id == stem(id))
-        .map_or_else(|| stem(id).replace('_', " "), |d| d.label.to_owned());
-    id.split_once('.').map_or_else(|| label.clone(), |(_, name)| format!("{label}, {name}"))
+fn number_label(id: &str, scenario: &Scenario) -> String {
+    let known = DEFINITIONS.iter().find(|d| d.id == stem(id));
+    let label = known.map_or_else(|| stem(id).replace('_', " "), |d| d.label.to_owned());
+    let Some((_, obstacle)) = id.split_once('.') else { return label };
+    let name = scenario.obstacles.iter().find(|o| o.id() == obstacle).map_or(obstacle, |o| o.name.as_str());
+    format!("{label}, {name}")
 }
 
 fn number_words(number: &Number, system: UnitSystem) -> String {
-    match &number.value {
-        Value::Text(words) => words.clone(),
-        Value::Number(flag) if number.id == "stroke_used_up" => if *flag == 0.0 { "no" } else { "yes" }.to_owned(),
-        Value::Number(value) => format_si(*value, number.dimension, system),
+    match (&number.value, number.id.as_str()) {
+        (Value::Text(words), _) => words.clone(),
+        (Value::Number(flag), "stroke_used_up") => if *flag == 0.0 { "no" } else { "yes" }.to_owned(),
+        (Value::Number(count), "slack_episodes") => format!("{count:.0}"),
+        (Value::Number(value), _) => format_si(*value, number.dimension, system),
     }
 }
 
