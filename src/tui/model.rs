@@ -121,7 +121,7 @@ pub struct Play {
 
 impl Play {
     /// Seconds of the fall for each second of watching, with their names.
-    pub const SPEEDS: [(f64, &'static str); 8] = [
+    pub const SPEEDS: [(f64, &'static str); 9] = [
         (0.01, "1/100"),
         (0.02, "1/50"),
         (0.05, "1/20"),
@@ -130,6 +130,7 @@ impl Play {
         (0.5, "1/2"),
         (1.0, "1/1"),
         (2.0, "2/1"),
+        (5.0, "5/1"),
     ];
 
     /// Rate and name of the present speed.
