@@ -275,7 +275,8 @@ impl<'a> Run<'a> {
         if energy_residual.is_nan() || energy_residual > BALANCE {
             return Err(ArrestError::Energy { residual: energy_residual });
         }
-        let highest = deepest.and(self.record.highest);
+        let end_s = self.settled_s.unwrap_or(f64::INFINITY);
+        let highest = deepest.and(self.record.highest).filter(|&(time_s, _)| time_s <= end_s);
         let energy = match (deepest, self.account) {
             (Some(_), Some(account)) => account,
             _ => self.account_at_rest(),

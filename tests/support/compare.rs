@@ -54,8 +54,12 @@ pub fn rows(case: &Case, outcome: &Outcome, numbers: &Numbers) -> Vec<Row> {
             1e-3 * size,
         );
     }
-    table.row("time_lowest", outcome.lowest.map(|l| l.time_s), numbers.lowest.and_then(|l| time(l.0)), period);
-    table.row("travel_lowest", outcome.lowest.map(|l| l.travel_m), numbers.lowest.map(|l| l.1), 0.0);
+    // A last turn that misses rest by less than rounding shows is as good as none.
+    let at_rest = |travel: f64| (travel / numbers.hang_travel - 1.0).abs() < 1e-9;
+    if !(numbers.creeps && outcome.lowest.is_some_and(|low| at_rest(low.travel_m))) {
+        table.row("time_lowest", outcome.lowest.map(|l| l.time_s), numbers.lowest.and_then(|l| time(l.0)), period);
+        table.row("travel_lowest", outcome.lowest.map(|l| l.travel_m), numbers.lowest.map(|l| l.1), 0.0);
+    }
     table.row("arrest_distance", Some(outcome.arrest_distance_m), Some(numbers.arrest_distance), 0.0);
     table.row("hang_travel", Some(outcome.hang_travel_m), Some(numbers.hang_travel), 0.0);
     table.row("rebound_rise", outcome.rebound_rise_m, numbers.rebound_rise, 1e-3 * size);

@@ -33,7 +33,7 @@ pub fn numbers(case: &Case, fineness: Fineness, levels: [f64; 2]) -> Numbers {
     let weight = case.mass * case.gravity;
     let deployed = record.end[S];
     let hang_travel = deployed + case.line.law.stretch(weight) + case.other.law.stretch(weight);
-    let deepest = record.lows.iter().copied().reduce(|a, b| if b.1[X] > a.1[X] { b } else { a });
+    let deepest = record.lows.iter().copied().reduce(|a, b| if b.1[X] > a.1[X] * (1.0 + 1e-9) { b } else { a });
     let creeps = deepest.is_none_or(|low| low.1[X] < hang_travel);
     let low = deepest.filter(|_| !creeps);
     let arrest_distance = low.map_or(hang_travel, |low| low.1[X]);
@@ -56,7 +56,7 @@ pub fn numbers(case: &Case, fineness: Fineness, levels: [f64; 2]) -> Numbers {
         time_above: slacks
             .first()
             .copied()
-            .or(settled)
+            .or(settled.map(|settled| settled.max(low.map_or(0.0, |low| low.0))))
             .map(|end| levels.map(|level| time_above(case, fineness, &record, end, level * (1.0 + 1e-9)))),
         settled,
         works: low.map(|low| {
