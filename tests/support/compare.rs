@@ -50,7 +50,7 @@ pub fn rows(case: &Case, outcome: &Outcome, numbers: &Numbers) -> Vec<Row> {
         let end = numbers.settled.unwrap_or(f64::INFINITY).max(numbers.lowest.map_or(0.0, |low| low.0));
         let peaks = [outcome.line_elongation_peak_m, outcome.other_elongation_peak_m];
         for (i, id) in ["line_elongation", "other_elongation"].into_iter().enumerate() {
-            if numbers.record.stretch_peak_time[i] <= end + period {
+            if numbers.record.stretch_peak_time[i] <= end {
                 table.row(id, Some(peaks[i]), Some(numbers.stretch_peak[i]), 1e-3 * size);
             }
         }
