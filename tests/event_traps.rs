@@ -1,4 +1,5 @@
 //! Places where a naive event search goes wrong, one test each.
+#![allow(clippy::expect_used, clippy::panic, reason = "a test fails by panicking")]
 mod support;
 
 use support::{Case, Event, Fineness, Part, Slider, numbers};

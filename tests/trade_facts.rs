@@ -1,4 +1,5 @@
 //! Facts of the trade as properties of every run.
+#![allow(clippy::expect_used, clippy::panic, reason = "a test fails by panicking")]
 mod support;
 
 use proptest::prelude::*;

@@ -56,7 +56,7 @@ pub fn numbers(case: &Case, fineness: Fineness, levels: [f64; 2]) -> Numbers {
         time_above: slacks
             .first()
             .copied()
-            .or(settled.map(|settled| settled.max(low.map_or(0.0, |low| low.0))))
+            .or(settled)
             .map(|end| levels.map(|level| time_above(case, fineness, &record, end, level * (1.0 + 1e-9)))),
         settled,
         works: low.map(|low| {
@@ -68,7 +68,7 @@ pub fn numbers(case: &Case, fineness: Fineness, levels: [f64; 2]) -> Numbers {
     }
 }
 
-fn flow_of<'a>(case: &'a Case, fineness: Fineness, mode: Mode) -> Flow<'a> {
+fn flow_of(case: &Case, fineness: Fineness, mode: Mode) -> Flow<'_> {
     let mut flow = Flow::new(case, fineness.relative_tolerance);
     flow.mode = mode;
     flow

@@ -173,12 +173,9 @@ impl<'a> Run<'a> {
 
     fn enter(&mut self, mode: Mode, event: Event) {
         let view = self.flow.look(&self.state);
-        for i in 0..2 {
-            if mode != Mode::Slack || self.flow.parts()[i].is_damped() {
-                self.state[E[i]] = view.stretch[i];
-            } else {
-                self.state[E[i]] = 0.0;
-            }
+        for (i, slot) in E.into_iter().enumerate() {
+            let keeps = mode != Mode::Slack || self.flow.parts()[i].is_damped();
+            self.state[slot] = if keeps { view.stretch[i] } else { 0.0 };
         }
         self.state[GAP] = 0.0;
         self.flow.mode = mode;
