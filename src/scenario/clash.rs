@@ -1,7 +1,8 @@
 //! Values that are possible alone and impossible together.
-use super::model::{Obstacle, Scenario, StretchLaw};
+use super::line::StretchLaw;
+use super::model::{Obstacle, Scenario};
 use super::{Fault, Places, Severity};
-use crate::quantity::{Dimension, Measure, format_measure};
+use crate::quantity::{Dimension, Measure, format_measure, format_unit};
 
 /// Two values that cannot both be.
 pub(super) struct Clash {
@@ -37,11 +38,13 @@ pub(super) fn clashes(scenario: &Scenario) -> Vec<Clash> {
 fn absorber(scenario: &Scenario) -> Option<Clash> {
     let absorber = scenario.absorber.as_ref()?;
     let onset = absorber.onset_force?;
-    (onset.si() < absorber.deploy_force.si()).then(|| {
+    let [_, first_n, _] = absorber.first_force_n();
+    (onset.si() < first_n).then(|| {
+        let shown = absorber.deploy_force.map_or_else(|| format_unit(first_n, onset.unit), |f| format_measure(&f));
         Clash::new(
             "absorber.onset_force",
-            format!("the onset force is below the deployment force `{}`", format_measure(&absorber.deploy_force)),
-            format!("expected at least {}", format_measure(&absorber.deploy_force)),
+            format!("the onset force is below the deployment force `{shown}`"),
+            format!("expected at least {shown}"),
             "deployment starts at the onset force and goes on at the deployment force, which is not larger",
         )
     })

@@ -1,5 +1,6 @@
 //! What a reviewer should look at though the file can be read.
-use super::model::{DampingLaw, Obstacle, Scenario, StretchLaw, SubjectKind};
+use super::line::{DampingLaw, StretchLaw};
+use super::model::{Obstacle, Scenario, SubjectKind};
 use super::{Fault, Faults, Places, Severity, places};
 use crate::quantity::format_measure;
 
@@ -159,9 +160,10 @@ fn absorber(scenario: &Scenario) -> Vec<Doubt> {
     let Some(absorber) = &scenario.absorber else { return Vec::new() };
     let mut found = Vec::new();
     let weight_n = scenario.subject.mass.band.high * scenario.gravity.si();
-    if absorber.deploy_force.band.low <= weight_n {
-        let message =
-            format!("a deployment force of `{}` does not exceed the weight", format_measure(&absorber.deploy_force));
+    if let Some(force) = absorber.deploy_force
+        && force.band.low <= weight_n
+    {
+        let message = format!("a deployment force of `{}` does not exceed the weight", format_measure(&force));
         let hint = "such an absorber cannot stop the fall before its stroke is used up; check force, mass and units";
         found.push(doubt("absorber.deploy_force", message, "not above the weight", hint));
     }
@@ -179,8 +181,8 @@ fn absorber(scenario: &Scenario) -> Vec<Doubt> {
 
 fn line_strength(scenario: &Scenario) -> Option<Doubt> {
     let (strength, absorber) = scenario.line.strength.zip(scenario.absorber.as_ref())?;
-    let onset = absorber.onset_force.unwrap_or(absorber.deploy_force);
-    (strength.band.low < onset.band.high).then(|| {
+    let onset_n = absorber.onset_force.map_or(absorber.first_force_n()[2], |onset| onset.band.high);
+    (strength.band.low < onset_n).then(|| {
         let message = format!("the line breaks at `{}`, before the absorber starts", format_measure(&strength));
         doubt("line.strength", message, "below the onset force", "check both numbers and their units")
     })

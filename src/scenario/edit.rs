@@ -1,5 +1,5 @@
 //! One value of a text replaced, every other byte kept.
-use super::field::{Field, field_for};
+use super::field::{Field, LISTS, field_for};
 use super::{Places, leaf, path};
 use crate::quantity::{Dimension, Measure, Shape, format_band, format_unit, parse_quantity};
 use toml::de::DeValue;
@@ -26,6 +26,9 @@ pub(super) fn with_value(text: &str, places: &Places, input: &str, value: &str) 
 /// How a value stands in the file, in the manner of the old one.
 fn literal(old: &str, field: &Field, value: &str) -> String {
     let value = value.trim();
+    if field.columns.is_some() && DeValue::parse(value).is_ok_and(|value| value.get_ref().is_array()) {
+        return value.to_owned();
+    }
     let old_measure = old_measure(old, field);
     if let (Some(old_measure), Some(dimension)) = (&old_measure, field.dimension)
         && old_measure.band.is_wide()
@@ -93,8 +96,8 @@ fn inserted(text: &str, field: &Field, input: &str, value: &str) -> Result<Strin
     let mut rest = parts.into_iter();
     while let Some(part) = rest.next() {
         let table = at.as_table_like_mut().ok_or_else(|| format!("there is no place for `{input}`"))?;
-        if part == "obstacle" {
-            at = obstacle(table.get_mut("obstacle"), rest.next()).ok_or_else(|| format!("there is no `{input}`"))?;
+        if LISTS.contains(&part) {
+            at = list_entry(table.get_mut(part), rest.next()).ok_or_else(|| format!("there is no `{input}`"))?;
         } else {
             at = table.entry(part).or_insert_with(|| Item::Table(Table::new()));
         }
@@ -105,8 +108,8 @@ fn inserted(text: &str, field: &Field, input: &str, value: &str) -> Result<Strin
     Ok(if text.contains("\r\n") { edited.replace("\r\n", "\n").replace('\n', "\r\n") } else { edited })
 }
 
-/// The table of one obstacle.
-fn obstacle<'d>(list: Option<&'d mut Item>, number: Option<&str>) -> Option<&'d mut Item> {
+/// The table of one obstacle or face.
+fn list_entry<'d>(list: Option<&'d mut Item>, number: Option<&str>) -> Option<&'d mut Item> {
     let index = number?.parse::<usize>().ok()?.checked_sub(1)?;
     let list: &mut Item = list?;
     let length =

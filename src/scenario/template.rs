@@ -1,5 +1,6 @@
 //! The annotated file that `underfoot new` prints.
-use super::field::{FIELDS, Field, Need};
+use super::field::{Field, Need};
+use super::keys::FIELDS;
 
 /// Optional keys that stand in the new file as keys and not as comments.
 const SHOWN: &[&str] = &[
