@@ -1,7 +1,7 @@
 //! What a reviewer should look at though the file can be read.
 use super::line::{DampingLaw, StretchLaw};
 use super::model::{Obstacle, Scenario, SubjectKind};
-use super::{Fault, Faults, Places, Severity, places};
+use super::{Fault, Faults, Places, Severity, doubt_rigging, places};
 use crate::quantity::format_measure;
 
 /// Heaviest person with tools that is not a doubt, kg: above every published rating of a personal absorber.
@@ -18,7 +18,7 @@ const GRAVITY_SPREAD_M_PER_S2: f64 = 0.05;
 const STANDARD_GRAVITY_M_PER_S2: f64 = 9.806_65;
 
 /// One doubt before it has its place.
-type Doubt = (String, String, &'static str, &'static str);
+pub(super) type Doubt = (String, String, &'static str, &'static str);
 
 /// Doubts about a file's own statements, sorted by place; the numbers of a run are not judged here.
 #[must_use]
@@ -32,6 +32,7 @@ pub fn doubts(file: &str, text: &str, scenario: &Scenario) -> Faults {
     found.extend(fall(scenario));
     found.extend(absorber(scenario));
     found.extend(line_strength(scenario));
+    found.extend(doubt_rigging::doubts(scenario));
     found.extend(harness(scenario));
     found.extend(datum(scenario));
     found.extend(obstacles(scenario));
@@ -49,7 +50,7 @@ fn placed((path, message, expected, hint): Doubt, places: &Places) -> Fault {
     }
 }
 
-fn doubt(path: &str, message: String, expected: &'static str, hint: &'static str) -> Doubt {
+pub(super) fn doubt(path: &str, message: String, expected: &'static str, hint: &'static str) -> Doubt {
     (path.to_owned(), message, expected, hint)
 }
 
@@ -109,8 +110,8 @@ fn gravity(scenario: &Scenario) -> Option<Doubt> {
 fn damping(scenario: &Scenario) -> Option<Doubt> {
     let (path, ratio) = match (&scenario.line.damping, &scenario.line.stretch) {
         (DampingLaw::Ratio(ratio), _) => ("line.damping_ratio", ratio.band.high),
-        (DampingLaw::Damping(damping), StretchLaw::Stiffness(stiffness)) => {
-            let critical = 2.0 * (scenario.subject.mass.si() * stiffness.si()).sqrt();
+        (DampingLaw::Damping(damping), law) => {
+            let critical = 2.0 * (scenario.subject.mass.si() * first_stiffness(law)?).sqrt();
             ("line.damping", damping.band.high / critical)
         }
         _ => return None,
@@ -121,6 +122,15 @@ fn damping(scenario: &Scenario) -> Option<Doubt> {
             "textile and wire lines are far below 1; the force jump at taut grows with it, see `line.series_stiffness`";
         doubt(path, message, "overdamped line", hint)
     })
+}
+
+/// Stiffness of a law that states it, N/m; of a table its first piece.
+fn first_stiffness(law: &StretchLaw) -> Option<f64> {
+    match law {
+        StretchLaw::Stiffness(stiffness) => Some(stiffness.si()),
+        StretchLaw::Curve(rows) => rows.get(1).map(|(elongation_m, force_n)| force_n / elongation_m),
+        _ => None,
+    }
 }
 
 fn fall(scenario: &Scenario) -> Vec<Doubt> {
