@@ -3,7 +3,7 @@ use super::field::{Field, LISTS, field_for};
 use super::{Places, leaf, path};
 use crate::quantity::{Dimension, Measure, Shape, format_band, format_unit, parse_quantity};
 use toml::de::DeValue;
-use toml_edit::{ArrayOfTables, DocumentMut, Item, Table};
+use toml_edit::{ArrayOfTables, DocumentMut, InlineTable, Item, Table};
 
 /// The text with one input written anew; the reader judges the result.
 ///
@@ -95,17 +95,33 @@ fn inserted(text: &str, field: &Field, input: &str, value: &str) -> Result<Strin
     let mut at: &mut Item = document.as_item_mut();
     let mut rest = parts.into_iter();
     while let Some(part) = rest.next() {
+        let braces = at.is_inline_table();
         let table = at.as_table_like_mut().ok_or_else(|| format!("there is no place for `{input}`"))?;
         if LISTS.contains(&part) {
             at = list_entry(table.get_mut(part), rest.next()).ok_or_else(|| format!("there is no `{input}`"))?;
         } else {
-            at = table.entry(part).or_insert_with(|| Item::Table(Table::new()));
+            at = table.entry(part).or_insert_with(|| {
+                if braces { Item::Value(InlineTable::new().into()) } else { Item::Table(Table::new()) }
+            });
         }
     }
-    let table = at.as_table_like_mut().ok_or_else(|| format!("there is no place for `{input}`"))?;
-    table.insert(key, item);
+    insert(at, key, item).ok_or_else(|| format!("there is no place for `{input}`"))?;
     let edited = document.to_string();
     Ok(if text.contains("\r\n") { edited.replace("\r\n", "\n").replace('\n', "\r\n") } else { edited })
+}
+
+/// Adds a key at the end of a table; in braces the blank before the closing one stays there.
+fn insert(at: &mut Item, key: &str, mut item: Item) -> Option<()> {
+    if let (Some(table), Some(value)) = (at.as_inline_table_mut(), item.as_value_mut())
+        && let Some((_, last)) = table.iter_mut().last()
+    {
+        let blank = last.decor().suffix().cloned().unwrap_or_else(|| " ".into());
+        last.decor_mut().set_suffix("");
+        value.decor_mut().set_prefix(" ");
+        value.decor_mut().set_suffix(blank);
+    }
+    at.as_table_like_mut()?.insert(key, item);
+    Some(())
 }
 
 /// The table of one obstacle or face.

@@ -78,6 +78,8 @@ fn fall(text: &str, values: &mut Values) {
         }
     } else if anchor && !values.has("place.standing") {
         missing(text, values, "place.standing", ", `place.anchor` alone gives no free fall");
+    } else if !anchor && word(values, "line.kind") == "retractable" {
+        missing(text, values, "place.anchor", ", a retractable line pays out from there");
     } else if !anchor {
         let span = place_for(text, values, "fall.free_fall");
         let hint = "add `[fall]` with `free_fall = \"1.8 m\"`, or `[place]` with `standing` and `anchor`".to_owned();

@@ -37,7 +37,8 @@ pub(super) fn read(
         return values.error(value.span(), message, "expected a list of pairs", like(field));
     };
     if !(2..=MOST_ROWS).contains(&list.len()) {
-        let message = format!("the {} has {} rows", field.label, list.len());
+        let rows = if list.len() == 1 { "row" } else { "rows" };
+        let message = format!("the {} has {} {rows}", field.label, list.len());
         return values.error(value.span(), message, "expected 2 to 1000 rows", like(field));
     }
     let before = values.faults.len();
