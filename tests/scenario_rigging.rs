@@ -2,8 +2,8 @@
 #![allow(clippy::unwrap_used, clippy::panic, reason = "helpers of tests fail loudly")]
 use std::path::Path;
 use underfoot::scenario::{
-    AnchorKind, Document, FIELDS, LineKind, Scenario, SpanTension, StretchLaw, doubts, inputs, new_file, places, read,
-    with_value,
+    AnchorKind, Change, Document, FIELDS, LineKind, Scenario, SpanTension, StretchLaw, doubts, inputs, kind_changes,
+    new_file, places, read, with_value,
 };
 
 /// A swing from a span over an edge, with everything of it stated.
@@ -328,4 +328,38 @@ fn each_doubt_of_rigging_is_raised_by_the_statement_it_is_about() {
         "[[\"0 m\", \"0.5 kN\"], [\"1 m\", \"0.9 kN\"]]",
     );
     assert!(doubt_messages(&weak).iter().any(|m| m.contains("not above the weight")));
+}
+
+#[test]
+fn every_kind_can_be_changed_into_every_other_with_its_keys() {
+    let kinds = |path: &str| underfoot::scenario::field_for(path).unwrap().words;
+    for text in [FULL, RETRACTABLE] {
+        for path in ["line.kind", "anchor.kind"] {
+            for word in kinds(path) {
+                let document = Document::of_text(Path::new("f.toml"), text.to_owned()).unwrap();
+                let changes = kind_changes(document.places(), path, word);
+                let changed = document
+                    .with_changes(&changes)
+                    .unwrap_or_else(|faults| panic!("{path} = {word}:\n{}", faults.render(false)));
+                assert_eq!(&changed.text()[changed.places().exactly(path).unwrap()], format!("\"{word}\""));
+                for again in kinds(path) {
+                    let changes = kind_changes(changed.places(), path, again);
+                    changed.with_changes(&changes).unwrap_or_else(|faults| panic!("{}", faults.render(false)));
+                }
+            }
+        }
+    }
+}
+
+#[test]
+fn a_change_of_kind_keeps_what_is_not_about_it() {
+    let document = Document::of_text(Path::new("f.toml"), FULL.to_owned()).unwrap();
+    let changed = document.with_changes(&kind_changes(document.places(), "anchor.kind", "fixed")).unwrap();
+    let (before, rest) = FULL.split_once("span = {").unwrap();
+    let expected = before.replace("kind = \"span\"", "kind = \"fixed\"") + rest.split_once("# wire\n").unwrap().1;
+    assert_eq!(changed.text(), expected);
+    let same = kind_changes(document.places(), "anchor.kind", "span");
+    assert_eq!(same, [Change::Set { path: "anchor.kind".into(), value: "span".into() }]);
+    let gone = [Change::Remove { path: "harness.damping".into() }];
+    assert_eq!(document.with_changes(&gone).unwrap_err().faults[0].message, "there is no `harness.damping`");
 }

@@ -21,6 +21,7 @@ pub struct Anchor {
 
 /// Kind of anchor.
 #[derive(Clone, Debug, PartialEq)]
+#[expect(clippy::large_enum_variant, reason = "a file has one anchor")]
 pub enum AnchorKind {
     /// Does not move.
     Fixed,

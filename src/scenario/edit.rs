@@ -1,15 +1,45 @@
 //! One value of a text replaced, every other byte kept.
 use super::field::{Field, LISTS, field_for};
-use super::{Places, leaf, path};
+use super::{Change, Places, leaf, path, places};
 use crate::quantity::{Dimension, Measure, Shape, format_band, format_unit, parse_quantity};
 use toml::de::DeValue;
 use toml_edit::{ArrayOfTables, DocumentMut, InlineTable, Item, Table};
+
+/// The text with all changes made in turn; the reader judges the result.
+///
+/// # Errors
+/// A message when a path has no place in the file.
+pub(super) fn with_changes(text: &str, changes: &[Change]) -> Result<String, String> {
+    changes.iter().try_fold(text.to_owned(), |text, change| match change {
+        Change::Set { path, value } => with_value(&text, &places(&text), path, value),
+        Change::Remove { path } => removed(&text, path),
+    })
+}
+
+/// The text without a key, or a section with all below it; its comment goes with it.
+fn removed(text: &str, path: &str) -> Result<String, String> {
+    let mut document: DocumentMut = text.parse().map_err(|_| format!("there is no place for `{path}`"))?;
+    let mut parts: Vec<&str> = path.split('.').collect();
+    let key = parts.pop().unwrap_or(path);
+    let mut at: &mut Item = document.as_item_mut();
+    for part in parts {
+        at = at.get_mut(part).ok_or_else(|| format!("there is no `{path}`"))?;
+    }
+    let table = at.as_table_like_mut().ok_or_else(|| format!("there is no `{path}`"))?;
+    table.remove(key).ok_or_else(|| format!("there is no `{path}`"))?;
+    Ok(ends_like(text, document.to_string()))
+}
+
+/// The edited text with the line ends of the one before.
+fn ends_like(text: &str, edited: String) -> String {
+    if text.contains("\r\n") { edited.replace("\r\n", "\n").replace('\n', "\r\n") } else { edited }
+}
 
 /// The text with one input written anew; the reader judges the result.
 ///
 /// # Errors
 /// A message when the input has no place in the file.
-pub(super) fn with_value(text: &str, places: &Places, input: &str, value: &str) -> Result<String, String> {
+fn with_value(text: &str, places: &Places, input: &str, value: &str) -> Result<String, String> {
     let field = field_for(input).filter(|field| field.ready).ok_or_else(|| format!("there is no input `{input}`"))?;
     let inner = format!("{input}.value");
     let Some(at) = places.exactly(&inner).or_else(|| places.exactly(input)) else {
@@ -106,8 +136,7 @@ fn inserted(text: &str, field: &Field, input: &str, value: &str) -> Result<Strin
         }
     }
     insert(at, key, item).ok_or_else(|| format!("there is no place for `{input}`"))?;
-    let edited = document.to_string();
-    Ok(if text.contains("\r\n") { edited.replace("\r\n", "\n").replace('\n', "\r\n") } else { edited })
+    Ok(ends_like(text, document.to_string()))
 }
 
 /// Adds a key at the end of a table; in braces the blank before the closing one stays there.

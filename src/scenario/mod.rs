@@ -1,6 +1,7 @@
 //! The scenario file: from TOML text to a checked [`Scenario`], with every fault of the file at once.
 mod anchor;
 mod build;
+mod change;
 mod clash;
 mod diagnostic;
 mod document;
@@ -22,6 +23,7 @@ mod template;
 mod values;
 
 pub use anchor::*;
+pub use change::{Change, kind_changes};
 pub use diagnostic::{Fault, FaultRow, Faults, Severity};
 pub use document::{Document, SaveError};
 pub use doubt::doubts;

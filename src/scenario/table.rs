@@ -34,12 +34,12 @@ pub(super) fn read(
 ) {
     let Some(list) = value.get_ref().as_array() else {
         let message = format!("{} cannot be of type {}", field.label, value.get_ref().type_str());
-        return values.error(value.span(), message, "expected a list of pairs", like(field));
+        return values.error(value.span(), message, "expected a list of pairs", Some(like(field)));
     };
     if !(2..=MOST_ROWS).contains(&list.len()) {
         let rows = if list.len() == 1 { "row" } else { "rows" };
         let message = format!("the {} has {} {rows}", field.label, list.len());
-        return values.error(value.span(), message, "expected 2 to 1000 rows", like(field));
+        return values.error(value.span(), message, "expected 2 to 1000 rows", Some(like(field)));
     }
     let before = values.faults.len();
     let rows: Vec<Row> = list
@@ -52,8 +52,8 @@ pub(super) fn read(
     }
 }
 
-fn like(field: &Field) -> Option<String> {
-    Some(format!("write it like `{} = {}`", field.key(), field.example))
+fn like(field: &Field) -> String {
+    format!("write it like `{} = {}`", field.key(), field.example)
 }
 
 /// One row of two quantities.
@@ -67,7 +67,7 @@ fn pair(
     let cells: Vec<&Value<'_>> = row.get_ref().as_array().map(|cells| cells.iter().collect()).unwrap_or_default();
     let [first, second] = cells.as_slice() else {
         let message = format!("row {number} of the {} is not a pair", field.label);
-        values.error(row.span(), message, "expected two quantities in quotes", like(field));
+        values.error(row.span(), message, "expected two quantities in quotes", Some(like(field)));
         return None;
     };
     let x = cell(values, text, field, columns[0], (number, first));
@@ -86,7 +86,7 @@ fn cell(
 ) -> Option<(f64, Unit)> {
     let Some(written) = value.get_ref().as_str() else {
         let message = format!("row {number} of the {} holds a value without quotes", field.label);
-        values.error(value.span(), message, "expected a quantity with its unit", like(field));
+        values.error(value.span(), message, "expected a quantity with its unit", Some(like(field)));
         return None;
     };
     let most = if dimension == Dimension::Length { LONGEST_M } else { MOST_N };

@@ -153,9 +153,7 @@ impl Values {
 
     /// A word out of a list, or a fault.
     pub fn word(&mut self, path: &str, field: &Field, at: Range<usize>, word: &str) {
-        if field.words.is_empty() {
-            self.words.insert(path.to_owned(), word.to_owned());
-        } else if field.words.contains(&word) {
+        if field.words.is_empty() || field.words.contains(&word) {
             self.words.insert(path.to_owned(), word.to_owned());
         } else {
             let list = field.words.join("`, `");
