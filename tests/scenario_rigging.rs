@@ -239,13 +239,13 @@ fn the_choices_of_a_new_file_read_when_they_are_made() {
     for section in ["[place.edge]", "[anchor.span]", "[anchor.span.absorber]", "[[face]]"] {
         let (before, rest) = text.split_once(&format!("# {section}\n")).unwrap();
         let (keys, after) = rest.split_once("\n\n").unwrap();
-        let made: Vec<&str> = keys.lines().map(|line| line.strip_prefix("# ").unwrap()).collect();
-        let made: String = made
-            .iter()
+        let made: Vec<&str> = keys
+            .lines()
+            .map(|line| line.strip_prefix("# ").unwrap())
             .filter(|line| line.contains(" = ") && !line.starts_with("sag"))
-            .map(|line| format!("{line}\n"))
             .collect();
-        text = format!("{before}{section}\n{made}\n{after}");
+        let made = made.join("\n");
+        text = format!("{before}{section}\n{made}\n\n{after}");
     }
     let s = scenario(&text);
     assert!(matches!(&s.anchor.kind, AnchorKind::Span(span) if span.absorber.is_some()));
