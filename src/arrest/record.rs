@@ -1,5 +1,5 @@
 //! What is read off each stretch: peaks, the lowest point, times above a level.
-use super::mode::{State, Stretch};
+use super::mode::{Mode, State, Stretch};
 use super::outcome::Lowest;
 use super::roots::Passage;
 use super::signal::Signal;
@@ -41,28 +41,16 @@ pub struct Record {
     pub highest: Option<(f64, f64)>,
     /// First slack, s.
     pub first_slack_s: Option<f64>,
-    /// Times slack.
-    pub slack_episodes: u32,
-    /// Time above each level, s.
-    pub above_s: [f64; 2],
 }
 
 impl Record {
     /// Nothing read yet.
     pub const fn new() -> Self {
-        Self {
-            force: Peak::NONE,
-            stretch: [Peak::NONE; 2],
-            lowest: None,
-            highest: None,
-            first_slack_s: None,
-            slack_episodes: 0,
-            above_s: [0.0; 2],
-        }
+        Self { force: Peak::NONE, stretch: [Peak::NONE; 2], lowest: None, highest: None, first_slack_s: None }
     }
 
-    /// Reads peaks and times above the levels off a stretch of known length.
-    pub fn read(&mut self, stretch: &Stretch, levels_n: [f64; 2], previous: &State) {
+    /// Reads the peaks off a stretch of known length.
+    pub fn read(&mut self, stretch: &Stretch, previous: &State) {
         let length = stretch.length_s;
         let (largest, at) = stretch.force.largest(length);
         self.force.offer(largest, stretch.start_s + at);
@@ -71,14 +59,13 @@ impl Record {
             let (largest, at) = signal.largest(length);
             peak.offer(largest, stretch.start_s + at);
         }
-        if self.first_slack_s.is_none() {
-            for (above, level) in self.above_s.iter_mut().zip(levels_n) {
-                let level = level * (1.0 + LARGER);
-                if largest > level {
-                    *above += time_above(&stretch.force, level, length);
-                }
-            }
-        }
+    }
+
+    /// Time of the deepest point of a stretch that is deeper than all before, s from the start of the fall.
+    pub fn new_lowest_s(&self, stretch: &Stretch) -> Option<f64> {
+        let mut deepest = None;
+        self.clone().turnings(stretch, stretch.length_s, |t| deepest = Some(stretch.start_s + t));
+        deepest
     }
 
     /// Reads turning points off the first `until` s of a stretch and calls `on_lowest` for each new lowest one.
@@ -136,6 +123,17 @@ impl Record {
             self.highest = Some((stretch.start_s + t, stretch.x.value(t)));
         }
     }
+}
+
+/// Time from taut to the first slack, or else to `end_s`, that the line force spends strictly above a level.
+pub fn time_above_s(stretches: &[Stretch], level_n: f64, end_s: f64) -> f64 {
+    let level = level_n * (1.0 + LARGER);
+    let taut = stretches.iter().take_while(|s| s.mode != Mode::Slack && s.start_s < end_s);
+    taut.map(|stretch| {
+        let length = stretch.length_s.min(end_s - stretch.start_s);
+        if stretch.force.largest(length).0 > level { time_above(&stretch.force, level, length) } else { 0.0 }
+    })
+    .sum()
 }
 
 /// Time that a signal spends above a level in `0..length`.

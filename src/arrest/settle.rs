@@ -5,16 +5,21 @@ use super::signal::Signal;
 use super::solve::Run;
 
 /// When the run settles, s from the start of the fall, if it does so up to the end of `stretch`; `last` says that no
-/// event ends that stretch.
+/// event ends that stretch. Also the travel that the settled level was taken from, m.
 ///
 /// The settled level is a share of `m g (h + x)` at the deepest turning point, so it is known only once the motion has
 /// turned, or is known never to turn: then `x` is the travel at rest. Stretches before that are looked at again.
-pub fn time(run: &Run, stretch: &Stretch, last: bool) -> Option<f64> {
+pub fn time(run: &Run, stretch: &Stretch, last: bool) -> Option<(f64, f64)> {
     let deepest = deepest(run, stretch, last)?;
-    let level_j = run.settings.settled_share * run.fall_energy_j(deepest);
     let first_look = run.record.lowest.is_none();
     let earlier = if first_look { run.stretches.as_slice() } else { &[] };
-    earlier.iter().chain(std::iter::once(stretch)).find_map(|s| within(run, s, level_j).map(|t| s.start_s + t))
+    Some((first(run, earlier.iter().chain(std::iter::once(stretch)), deepest)?, deepest))
+}
+
+/// When the first of some stretches settles, for a level taken from a travel in m.
+pub fn first<'a>(run: &Run, mut stretches: impl Iterator<Item = &'a Stretch>, travel_m: f64) -> Option<f64> {
+    let level_j = run.settings.settled_share * run.fall_energy_j(travel_m);
+    stretches.find_map(|s| within(run, s, level_j).map(|t| s.start_s + t))
 }
 
 /// When the energy first is below a level in a stretch, s from its start. It never rises while taut or slack.
