@@ -1,7 +1,9 @@
 //! What exerts force: elastic laws, the absorber, the series path, horizontal lifelines, and where a fall starts.
 //! SI throughout, unit in the name.
 pub mod cable;
+pub mod clearance;
 mod elastic;
+pub mod geometry;
 pub mod knots;
 mod path;
 pub mod span;
