@@ -26,7 +26,7 @@ const TRIES: u32 = 40;
 ///
 /// `bounds` (two or more, rising) are the ends of the stretches in which the curve is smooth, with a kink at most between
 /// them; `curve` rises from 0 at the first bound; `area` is its exact integral from there. Knots are placed so that each
-/// piece has the same share of `sqrt(|f''|)`, then moved off the curve by the mean error of their two pieces, so that the
+/// piece has the same share of `sqrt(|f''|)`, at least two pieces a stretch, then moved off the curve by the mean error of their two pieces, so that the
 /// table's area up to the last bound is that of the curve. First and last knot stay on the curve.
 ///
 /// Accuracy: `error <= tolerance` unless 40 rounds of denser knots do not reach it, which [`Fit::error`] then shows.
@@ -83,7 +83,7 @@ fn places(bounds: &[f64], shares: &[Vec<f64>], density: f64) -> Vec<f64> {
     let mut places = vec![bounds[0]];
     for (ends, sums) in bounds.windows(2).zip(shares) {
         let total = sums[sums.len() - 1];
-        let pieces = (total * density).ceil().max(1.0);
+        let pieces = (total * density).ceil().max(2.0);
         let width = (ends[1] - ends[0]) / f64::from(CELLS);
         let mut number = 1.0;
         while number < pieces {
@@ -121,7 +121,7 @@ fn probes(ends: &[f64]) -> impl Iterator<Item = f64> + use<> {
     (1..=PROBES).map(move |i| from + f64::from(i) * step)
 }
 
-/// How far each knot moves down: the mean error of its two pieces, all scaled so that the whole area is right.
+/// How far each knot moves down: the mean error of its two pieces, and what makes the whole area right.
 fn moves(on: &[(f64, f64)], areas: &[f64]) -> Vec<f64> {
     let widths: Vec<f64> = on.windows(2).map(|w| w[1].0 - w[0].0).collect();
     let extra: Vec<f64> =
@@ -130,10 +130,13 @@ fn moves(on: &[(f64, f64)], areas: &[f64]) -> Vec<f64> {
     for i in 1..widths.len() {
         moves[i] = 0.5 * (extra[i - 1] / widths[i - 1] + extra[i] / widths[i]);
     }
-    let taken: f64 = (1..widths.len()).map(|i| moves[i] * 0.5 * (widths[i - 1] + widths[i])).sum();
-    let scale = extra.iter().sum::<f64>() / taken;
-    if (0.5..=2.0).contains(&scale) {
-        moves.iter_mut().for_each(|by| *by *= scale);
+    // What is still missing is taken in proportion to the force, which keeps the knots rising.
+    let reach = |i: usize| 0.5 * (widths[i - 1] + widths[i]);
+    let taken: f64 = (1..widths.len()).map(|i| moves[i] * reach(i)).sum();
+    let lever: f64 = (1..widths.len()).map(|i| on[i].1 * reach(i)).sum();
+    let share = (extra.iter().sum::<f64>() - taken) / lever;
+    for i in 1..widths.len() {
+        moves[i] += share * on[i].1;
     }
     moves
 }

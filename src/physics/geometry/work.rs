@@ -103,7 +103,7 @@ impl Work {
         let d = pivot.offset_m.abs();
         if free_length_m < d && self.positions.edge.is_some() {
             // Only past an edge: the straight way from the anchor is used up before the line bends over it.
-            return Err(self.not_touched(pivot));
+            return Err(self.not_touched(pivot, free_length_m));
         }
         let depth = ((free_length_m - d) * (free_length_m + d)).max(0.0).sqrt();
         let what = match (self.positions.edge.is_some(), d > 0.0) {
@@ -122,9 +122,12 @@ impl Work {
         Ok(pivot.elevation_m - depth)
     }
 
-    fn not_touched(&self, edge: Point) -> GeometryError {
-        let path_m = path_at(self.positions.anchor, self.positions.attachment_m, edge.offset_m);
-        GeometryError::EdgeNotTouched { edge_m: edge.elevation_m, path_m }
+    /// Where the straight line that comes taut first passes the edge.
+    fn not_touched(&self, edge: Point, free_length_m: f64) -> GeometryError {
+        let anchor = self.positions.anchor;
+        let (length, aside) = (free_length_m + anchor.distance_m(edge), anchor.offset_m.abs());
+        let taut = anchor.elevation_m - ((length - aside) * (length + aside)).max(0.0).sqrt();
+        GeometryError::EdgeNotTouched { edge_m: edge.elevation_m, path_m: path_at(anchor, taut, edge.offset_m) }
     }
 
     /// The taut line must bend over the edge.
@@ -132,7 +135,7 @@ impl Work {
         let Some(edge) = self.positions.edge.filter(|_| layout.anchor.offset_m != 0.0) else { return Ok(()) };
         let path_m = path_at(layout.anchor, layout.attachment_taut_m, edge.offset_m);
         if path_m > edge.elevation_m + TOUCH_M {
-            return Err(GeometryError::EdgeNotTouched { edge_m: edge.elevation_m, path_m });
+            return Err(self.not_touched(edge, layout.free_length_m));
         }
         Ok(())
     }
