@@ -1,5 +1,6 @@
 //! Cost of the screen over all shipped scenarios: from the file to the first frame, and from a nudge to its frame, as
 //! ratios to one bare estimate of the same scenario in the same run. A frame has 140 columns and 44 rows.
+#![expect(clippy::expect_used, reason = "a bench that cannot run says so and ends")]
 use crossterm::event::{KeyCode, KeyEvent, KeyModifiers};
 use ratatui::Terminal;
 use ratatui::backend::TestBackend;

@@ -13,6 +13,7 @@ mod path;
 mod read;
 mod rules;
 mod template;
+mod turn;
 mod values;
 
 pub use diagnostic::{Fault, FaultRow, Faults, Severity};
@@ -24,3 +25,4 @@ pub use model::*;
 pub use path::{Input, inputs, with_value};
 pub use read::{Places, places, read, read_with_places};
 pub use template::new_file;
+pub use turn::Turn;
