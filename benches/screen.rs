@@ -10,6 +10,7 @@ use std::time::Instant;
 use underfoot::estimate::estimate;
 use underfoot::quantity::UnitSystem;
 use underfoot::scenario::Document;
+use underfoot::tui::choice::Entry;
 use underfoot::tui::message::{Effect, Message};
 use underfoot::tui::model::{Model, View};
 use underfoot::tui::update::update;
@@ -57,7 +58,10 @@ fn press(model: &mut Model, code: KeyCode) {
 /// Every input raised and lowered in turn, each with its frame; only nudges that were taken count.
 fn nudges(model: &mut Model, screen: &mut Terminal<TestBackend>) -> (f64, f64) {
     let (mut changes, mut frames) = (Vec::new(), Vec::new());
-    for index in 0..model.inputs.len() {
+    for index in 0..model.entries.len() {
+        if matches!(model.entries[index], Entry::Word(_)) {
+            continue;
+        }
         for code in [KeyCode::Right, KeyCode::Left] {
             model.input = index;
             let before = model.generation;

@@ -483,7 +483,7 @@ fn a_file_that_cannot_be_computed_opens_and_can_be_mended() {
 fn the_wheel_walks_the_list_and_nudges_below_it() {
     let mut bench = Bench::roof();
     bench.mouse(MouseEventKind::ScrollDown, 4, 8);
-    assert_eq!(bench.model.input, 1);
+    assert_eq!(bench.model.chosen_path(), Some("subject.attachment_above_feet"));
     bench.choose("line.length");
     let (_, row) = bench.find("line.length =");
     bench.mouse(MouseEventKind::ScrollUp, 4, row);

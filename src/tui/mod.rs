@@ -4,6 +4,7 @@
 //! [`view`](view::view) draws a model. Both are pure, so tests and benches drive them without a terminal.
 //! [`run`] connects them to one.
 pub mod arrival;
+pub mod choice;
 pub mod command;
 pub mod edit;
 pub mod error;
