@@ -140,18 +140,17 @@ impl Swing {
         (self.rest + self.p * c + self.q * s, (self.q - decay * self.p) * c - (decay * self.q + q * self.p) * s)
     }
 
-    /// Times of the first turning point after `from` and the distance between turning points (infinite when there is
-    /// at most one).
-    fn first_turn(&self, from: f64) -> Option<(f64, f64)> {
-        let d = self.derivative();
-        if d.p == 0.0 && d.q == 0.0 {
+    /// Time of the first zero of `p C + q S` after `from`, and the distance between zeros (infinite when there is at
+    /// most one).
+    pub(super) fn first_zero(&self, from: f64) -> Option<(f64, f64)> {
+        let frequency = self.of.frequency;
+        if self.p == 0.0 && self.q == 0.0 {
             return None;
         }
-        let frequency = self.of.frequency;
         if self.of.q > 0.0 {
             let period = std::f64::consts::PI / frequency;
-            // The angle in (0, pi), from a non-negative sine, so that a turn right at the start keeps its digits.
-            let (sine, cosine) = (-d.p * frequency, d.q);
+            // The angle in (0, pi), from a non-negative sine, so that a zero right at the start keeps its digits.
+            let (sine, cosine) = (-self.p * frequency, self.q);
             let angle = if sine < 0.0 { (-sine).atan2(-cosine) } else { sine.atan2(cosine) };
             let mut first = if angle > 0.0 { angle / frequency } else { period };
             if first <= from {
@@ -162,9 +161,14 @@ impl Swing {
             }
             return Some((first, period));
         }
-        let u = -d.p / d.q * frequency;
-        let t = if u < 1e-9 { -d.p / d.q } else { u.atanh() / frequency };
+        let u = -self.p / self.q * frequency;
+        let t = if u < 1e-9 { -self.p / self.q } else { u.atanh() / frequency };
         (t.is_finite() && t > from).then_some((t, f64::INFINITY))
+    }
+
+    /// Times of the first turning point after `from` and the distance between turning points.
+    fn first_turn(&self, from: f64) -> Option<(f64, f64)> {
+        self.derivative().first_zero(from)
     }
 
     /// First maximum after `from` and before `to`: turning points alternate about the rest value.

@@ -1,5 +1,6 @@
 //! What is read off each stretch: peaks, the lowest point, times above a level.
 use super::mode::{Mode, State, Stretch};
+use super::oscillator::Swing;
 use super::outcome::Lowest;
 use super::roots::Passage;
 use super::signal::Signal;
@@ -70,8 +71,8 @@ impl Record {
 
     /// Reads turning points off the first `until` s of a stretch and calls `on_lowest` for each new lowest one.
     pub fn turnings(&mut self, stretch: &Stretch, until: f64, mut on_lowest: impl FnMut(f64)) {
-        if let Signal::Swing(_) = stretch.x {
-            return self.swing_turnings(stretch, until, on_lowest);
+        if let Signal::Swing(x) = &stretch.x {
+            return self.swing_turnings(stretch, x, until, on_lowest);
         }
         let mut from = 0.0;
         while let Some(t) = stretch.v.first_passage(0.0, Passage::Down, from, until) {
@@ -81,20 +82,23 @@ impl Record {
                 self.turned_up(stretch, top);
                 from = top;
             }
-            // A drift turns once.
-            if !matches!(stretch.v, Signal::Wave(_)) || from <= t {
+            let Signal::Wave(x) = &stretch.x else { return };
+            let deepest = self.lowest.map_or(f64::NEG_INFINITY, |l| l.travel_m);
+            if from <= t || x.rest + x.distance_bound(from) <= deepest {
                 return;
             }
         }
     }
 
     /// A swing's turning points are in closed form, and its later lowest points are higher.
-    fn swing_turnings(&mut self, stretch: &Stretch, until: f64, mut on_lowest: impl FnMut(f64)) {
-        let turns_inside = stretch.v.value(0.0) > 0.0 && stretch.v.value(until) <= 0.0;
-        let last = turns_inside.then_some(until);
-        let Some(t) = stretch.x.first_maximum(0.0, until).or(last) else { return };
+    fn swing_turnings(&mut self, stretch: &Stretch, x: &Swing, until: f64, mut on_lowest: impl FnMut(f64)) {
+        // At the very end a speed of zero is a turn only away from rest: a motion that has died away has no speed either.
+        let end = stretch.v.value(until);
+        let turns_last = end < 0.0 || (end == 0.0 && x.value(until) > x.rest);
+        let last = (stretch.v.value(0.0) > 0.0 && turns_last).then_some(until);
+        let Some(t) = x.first_maximum(0.0, until).or(last) else { return };
         self.turned_down(stretch, t, &mut on_lowest);
-        if let Some(top) = stretch.x.scaled(-1.0, 0.0).first_maximum(t, until) {
+        if let Some(top) = x.scaled(-1.0, 0.0).first_maximum(t, until) {
             self.turned_up(stretch, top);
         }
     }

@@ -66,7 +66,7 @@ impl Signal {
         match self {
             Self::Swing(s) => s.first_maximum(from, to),
             Self::Drift(s) => s.turns(from, to).into_iter().flatten().find(|turn| turn.is_maximum).map(|t| t.time),
-            Self::Wave(s) => s.derivative().first_passage(0.0, Passage::Down, from, to),
+            Self::Wave(s) => s.first_maximum(from, to),
         }
     }
 

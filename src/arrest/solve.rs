@@ -6,6 +6,7 @@ use super::next::{End, Slider, TOUCH, moving_force};
 use super::onset::give_back;
 use super::outcome::{ArrestError, Ended, EnergyAccount, Fall, Happening, Outcome, Settings, WorkCount};
 use super::record::{Record, time_above_s};
+use super::roots::take_evaluations;
 use super::settle;
 use super::signal::Signal;
 
@@ -24,6 +25,7 @@ const BALANCE: f64 = 1e-9;
 /// The solution of each mode is in closed form; see the modules `oscillator`, `drift` and `third`.
 pub fn solve(fall: &Fall, settings: &Settings) -> Result<Outcome, ArrestError> {
     fall.check()?;
+    take_evaluations();
     let mut run = Run::new(fall, *settings);
     run.all()?;
     run.outcome()
@@ -307,7 +309,7 @@ impl<'a> Run<'a> {
             ended,
             energy,
             energy_residual,
-            work: WorkCount { modes: self.modes },
+            work: WorkCount { modes: self.modes, evaluations: take_evaluations() },
             happenings: self.happenings,
             motion: Motion {
                 gravity_m_per_s2: fall.gravity_m_per_s2,

@@ -68,10 +68,11 @@ const COUPLED_PHASE: usize = 25;
 fn is_coupled(scenario: &Scenario) -> bool {
     let sprung = match &scenario.anchor.kind {
         AnchorKind::Sprung(spring) => Some(spring),
-        AnchorKind::Fixed => None,
+        AnchorKind::Fixed | AnchorKind::Span(_) => None,
     };
     let others = [sprung, scenario.harness.as_ref()];
-    let is_other_soft = scenario.line.series_stiffness.is_some() || others.iter().any(Option::is_some);
+    let is_span = matches!(scenario.anchor.kind, AnchorKind::Span(_));
+    let is_other_soft = is_span || scenario.line.series_stiffness.is_some() || others.iter().any(Option::is_some);
     let is_other_damped = others.into_iter().flatten().any(|other| other.damping.is_some());
     is_other_soft && (is_other_damped || scenario.line.damping != DampingLaw::None)
 }
