@@ -56,7 +56,7 @@ impl Run<'_> {
         if self.is_rigid() {
             match level {
                 Some(level) if is_impulse(self.state.radial_speed()) => {
-                    self.force.offer(level, self.time_s);
+                    self.touched(level);
                     self.slide();
                 }
                 _ => self.hold(),
@@ -66,7 +66,7 @@ impl Run<'_> {
         let Force::Along(force) = self.law().force else { return };
         let at_once = force.value(self.state.distance(), self.state.radial_speed(), self.state.e);
         if let Some(level) = level.filter(|l| at_once > l * (1.0 + TOUCH)) {
-            self.force.offer(level, self.time_s);
+            self.touched(level);
             self.slide();
         }
     }

@@ -20,22 +20,46 @@ impl Peak {
         }
     }
 
-    /// Takes in all of a polynomial over a part of its unit interval.
-    pub(super) fn scan(&mut self, p: &Poly, span: Span) {
-        self.offer(p[0], span.start_s);
-        if upper_bound(p) > self.must_pass() {
-            crossings(&derivative(p), 0, |turn| {
-                if turn.at > span.share {
-                    return true;
-                }
-                if !turn.rising {
-                    self.offer(value(p, turn.at), span.time(turn.at));
-                }
-                false
-            });
+}
+
+/// The largest value of a signal that goes on from step to step.
+#[derive(Clone, Copy, Debug)]
+pub struct Largest {
+    pub peak: Peak,
+    slope: Carried,
+}
+
+impl Largest {
+    /// No value yet.
+    pub const NONE: Self = Self { peak: Peak::NONE, slope: Carried(0) };
+
+    /// Takes in all of a polynomial over a part of its unit interval. Ends of steps are no peaks; ends of modes may be.
+    pub fn scan(&mut self, p: &Poly, span: Span, mode: Ends) {
+        if mode.begins {
+            self.slope = Carried::default();
+            self.peak.offer(p[0], span.start_s);
         }
-        self.offer(value(p, span.share), span.time(span.share));
+        if upper_bound(p) > self.peak.must_pass() {
+            let peak = &mut self.peak;
+            self.slope.pass(&derivative(p), span.share, |at, rising| {
+                if !rising {
+                    peak.offer(value(p, at), span.time(at));
+                }
+            });
+        } else {
+            self.slope = Carried::default();
+        }
+        if mode.ends {
+            self.peak.offer(value(p, span.share), span.time(span.share));
+        }
     }
+}
+
+/// Whether a step is the first and the last of its mode.
+#[derive(Clone, Copy, Debug)]
+pub struct Ends {
+    pub begins: bool,
+    pub ends: bool,
 }
 
 /// Where a step lies in time and how much of it is in force.

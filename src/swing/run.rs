@@ -2,10 +2,10 @@
 use super::approach;
 use super::event::{End, Lengths, Sight};
 use super::law::{Force, Law, Laws, Pieces};
-use super::outcome::{Ended, Impulse, Lowest, Peak, PlaneOutcome, WorkCount};
+use super::outcome::{Ended, Impulse, Lowest, PlaneOutcome, WorkCount};
 use super::plane::{Plane, Point, Settings, SwingError};
 use super::poly::{Poly, scaled};
-use super::reading::{Carried, Span, time_above};
+use super::reading::{Carried, Ends, Largest, Span, time_above};
 use super::series::{Body, Series, State};
 use super::step::{self, Scales};
 use super::trajectory::{Step, Trajectory};
@@ -58,8 +58,8 @@ pub(super) struct Run<'a> {
     pub pieces: Pieces,
     pub slider: Slider,
     fresh: bool,
-    pub force: Peak,
-    stretch: [Peak; 2],
+    force: Largest,
+    stretch: [Largest; 2],
     above_s: [f64; 2],
     pub first_slack_s: Option<f64>,
     pub impulses: Vec<Impulse>,
@@ -110,8 +110,8 @@ impl<'a> Run<'a> {
             pieces: Pieces::default(),
             slider: Slider { started: false, locked: false },
             fresh: true,
-            force: Peak::NONE,
-            stretch: [Peak::NONE; 2],
+            force: Largest::NONE,
+            stretch: [Largest::NONE; 2],
             above_s: [0.0; 2],
             first_slack_s: None,
             impulses: Vec::new(),
@@ -200,7 +200,8 @@ impl<'a> Run<'a> {
         let end = self.first_end(&law, &series, &lengths);
         let share = end.map_or(1.0, |(at, _)| at);
         let span = Span { start_s: self.time_s, unit_s, share };
-        self.read(&law, &series, &lengths, span);
+        let mode = Ends { begins: self.fresh, ends: end.is_some() || unit_s >= left_s };
+        self.read(&law, &series, &lengths, span, mode);
         let next = series.state(&law, share);
         self.absorber_j += self.absorbed_j(next.s);
         if share > 0.0 {
@@ -248,9 +249,9 @@ impl<'a> Run<'a> {
         Some(if self.slider.started { absorber.force.value(self.state.s) } else { absorber.onset_n })
     }
 
-    fn read(&mut self, law: &Law, series: &Series, lengths: &Lengths, span: Span) {
+    fn read(&mut self, law: &Law, series: &Series, lengths: &Lengths, span: Span, mode: Ends) {
         if law.force != Force::Slack {
-            self.force.scan(&series.force, span);
+            self.force.scan(&series.force, span, mode);
             if self.first_slack_s.is_none() {
                 for (above, level) in self.above_s.iter_mut().zip(self.settings.levels_n) {
                     *above += time_above(&series.force, level, span);
@@ -258,7 +259,7 @@ impl<'a> Run<'a> {
             }
         }
         for (peak, e) in self.stretch.iter_mut().zip(&lengths.e) {
-            peak.scan(e, span);
+            peak.scan(e, span, mode);
         }
         let mut turn = self.turn;
         turn.pass(&self.toward_pivot(&series.vx), span.share, |_, _| {});
@@ -311,6 +312,11 @@ impl<'a> Run<'a> {
         self.account(state, absorbed_j).total_j() + self.plane.weight_n() * state.position[1] + self.lost_j
     }
 
+    /// A force reached for an instant only.
+    pub fn touched(&mut self, force_n: f64) {
+        self.force.peak.offer(force_n, self.time_s);
+    }
+
     pub fn happened(&mut self, what: Happening) {
         self.happenings.push((self.time_s, what));
     }
@@ -347,11 +353,11 @@ impl<'a> Run<'a> {
             taut_at,
             speed_at_taut_m_per_s: self.taut_state.speed(),
             tangential_speed_at_taut_m_per_s: self.taut_state.tangential_speed(),
-            peak_force: self.impulses.is_empty().then_some(self.force),
-            peak_force_without_impulses: self.force,
+            peak_force: self.impulses.is_empty().then_some(self.force.peak),
+            peak_force_without_impulses: self.force.peak,
             impulses: self.impulses,
-            line_elongation_peak_m: self.stretch[0].value.max(0.0),
-            other_elongation_peak_m: self.stretch[1].value.max(0.0),
+            line_elongation_peak_m: self.stretch[0].peak.value.max(0.0),
+            other_elongation_peak_m: self.stretch[1].peak.value.max(0.0),
             deployed_m: state.s,
             stroke_used_up: self.slider.locked,
             time_first_slack_s: self.first_slack_s,
