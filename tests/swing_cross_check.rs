@@ -76,10 +76,10 @@ fn check(count: u64, curves: bool) {
 
 #[test]
 fn solver_and_integrator_agree_on_linear_parts_with_and_without_absorber() {
-    check(50, false);
+    check(300, false);
 }
 
 #[test]
 fn solver_and_integrator_agree_on_curved_lines() {
-    check(10, true);
+    check(100, true);
 }

@@ -138,12 +138,22 @@ impl<F: FnMut(Crossing) -> bool> Search<'_, F> {
             return false;
         }
         if changes == 1 || halvings == 0 {
-            let at = if changes == 1 { monotone_zero(|t| value_slope(self.p, t), lo, b[0], hi, b[ORDER]) } else { hi };
+            let at = if changes == 1 { self.zero(b, lo, hi, first) } else { hi };
             return self.meet(end, at);
         }
         let (left, right) = halves(b);
         let middle = 0.5 * (lo + hi);
         self.within(&left, lo, middle, halvings - 1) || self.within(&right, middle, hi, halvings - 1)
+    }
+}
+
+impl<F> Search<'_, F> {
+    /// The only change of sign in an interval, from the sign `first`. An end that happens to be zero is not the change.
+    fn zero(&self, b: &Poly, lo: f64, hi: f64, first: i8) -> f64 {
+        let hair = f64::from(first) * f64::MIN_POSITIVE;
+        let start = if b[0] == 0.0 { hair } else { b[0] };
+        let end = if b[ORDER] == 0.0 { -hair } else { b[ORDER] };
+        monotone_zero(|t| value_slope(self.p, t), lo, start, hi, end)
     }
 }
 

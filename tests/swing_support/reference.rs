@@ -281,40 +281,35 @@ impl<'a> Run<'a> {
         turns.then(|| root(dt, span - dt, slope))
     }
 
-    /// Takes the step and notes peaks and turning points on the way.
+    /// Takes the step, up to the reversal if that comes first, and notes peaks and turning points on the way.
     fn keep(&mut self, span: f64) {
-        let (first, last) = (self.state, self.at(span));
+        let first = self.state;
+        let inward = -self.setup.offset.signum();
+        let over = inward * first[2] > 0.0 && inward * self.at(span)[2] <= 0.0;
+        let span = if over { root(0.0, span, |t| self.at(t)[2]) } else { span };
+        let last = self.at(span);
         let force = |run: &Self, y: &State| run.look(y).force;
-        let force_top = self.top(span, &force).map(|at| (self.now + at, force(self, &self.at(at))));
-        let end_force = force(self, &last);
+        if let Some(at) = self.top(span, &force) {
+            self.note(self.now + at, force(self, &self.at(at)));
+        }
+        self.note(self.now + span, force(self, &last));
         for i in 0..2 {
             let stretch = |run: &Self, y: &State| run.look(y).stretch[i];
             let most = self.top(span, &stretch).map_or(0.0, |at| stretch(self, &self.at(at)));
             let ends = stretch(self, &last).max(stretch(self, &first));
             self.record.stretch[i] = most.max(ends).max(self.record.stretch[i]);
         }
-        let vertical = |y: &State| y[3];
         if first[3] < 0.0 && last[3] >= 0.0 {
-            let at = root(0.0, span, |t| vertical(&self.at(t)));
+            let at = root(0.0, span, |t| self.at(t)[3]);
             self.note_lowest(self.now + at, self.at(at));
         }
-        let inward = -self.setup.offset.signum();
-        if inward * first[2] > 0.0 && inward * last[2] <= 0.0 {
-            let at = root(0.0, span, |t| self.at(t)[2]);
-            self.record.end = Some((self.now + at, self.at(at)));
-            self.note_lowest(self.now + at, self.at(at));
-            if let Some((time, force)) = force_top.filter(|top| top.0 <= self.now + at) {
-                self.note(time, force);
-            }
-            return;
-        }
-        if let Some((time, force)) = force_top {
-            self.note(time, force);
-        }
-        self.note(self.now + span, end_force);
         self.now += span;
         self.state = last;
         self.record.looks += 1;
+        if over {
+            self.note_lowest(self.now, last);
+            self.record.end = Some((self.now, last));
+        }
     }
 
     fn note_lowest(&mut self, time: f64, state: State) {
