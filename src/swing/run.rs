@@ -13,7 +13,7 @@ use crate::arrest::{self, EnergyAccount, Fall, Happening, Mode, Slider};
 use crate::physics::Group;
 
 /// More steps than any real swing takes.
-const STEPS: u32 = 200_000;
+const STEPS: u32 = 50_000;
 /// Speed along a rigid path that counts as an impulse, m/s.
 const IMPULSE_M_PER_S: f64 = 1e-9;
 /// Largest imbalance of the energy account over the fall energy with which a run counts as computed.
