@@ -1,5 +1,6 @@
 //! Cost of the vertical arrest, as ratios measured in one run: against a general-purpose integrator on the same case
 //! and against the closed form of a single taut phase.
+#![allow(clippy::expect_used, reason = "a bench fails by panicking")]
 #[path = "../tests/support/mod.rs"]
 mod support;
 

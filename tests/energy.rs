@@ -103,7 +103,7 @@ fn the_account_balances_on_seven_thousand_harsh_cases() {
 
 #[test]
 fn the_account_balances_on_three_thousand_physical_cases() {
-    check(3000, |index| physical(12, index, true));
+    check(3000, |index| physical(12, index, false));
 }
 
 #[test]

@@ -1,4 +1,5 @@
 //! Places where a naive event search goes wrong, one test each.
+#![allow(clippy::expect_used, clippy::panic, reason = "a test fails by panicking")]
 mod support;
 
 use support::{Case, Event, Fineness, Part, Slider, numbers};
@@ -115,7 +116,7 @@ fn the_lowest_point_right_after_the_end_of_deployment_is_not_passed_over() {
         let end = times(&outcome, Happening::DeploymentEnd)[0];
         assert!((low.time_s - end).abs() < 1e-6, "case {index}: ends at {end}, lowest at {}", low.time_s);
         let bounces = (1..2000_u32).map(|step| outcome.motion.at(end + f64::from(step) * 1e-3).travel_m);
-        assert!(bounces.fold(0.0, f64::max) < low.travel_m);
+        assert!(bounces.fold(0.0, f64::max) <= low.travel_m * (1.0 + 1e-15));
         assert_close(low.travel_m, outcome.arrest_distance_m, 1e-15);
     }
 }

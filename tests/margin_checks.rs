@@ -37,7 +37,7 @@ fn scenario(basis: Option<&str>) -> Scenario {
             half_width: None,
             body_factor: None,
         },
-        place: Place { standing: Some(metres(12.0)), anchor: None },
+        place: Place { standing: Some(metres(12.0)), ..Place::default() },
         fall: Fall { free_fall: Some(metres(1.8)) },
         line: Line {
             kind: LineKind::Lanyard,
@@ -47,11 +47,16 @@ fn scenario(basis: Option<&str>) -> Scenario {
             series_stiffness: None,
             strength: Some(kilonewtons(25.0)),
             mass_per_length: None,
+            lock_travel: None,
+            grab_slide: None,
+            slack: None,
         },
         absorber: Some(Absorber {
-            deploy_force: kilonewtons(4.0),
+            deploy_force: Some(kilonewtons(4.0)),
+            force_table: None,
             onset_force: None,
-            stroke: metres(1.2),
+            stroke: Some(metres(1.2)),
+            wet_cold_factor: None,
             rated_mass: Some(kilograms(110.0)),
             rated_free_fall: Some(metres(4.0)),
             packed_length: None,
@@ -64,6 +69,7 @@ fn scenario(basis: Option<&str>) -> Scenario {
             extent: None,
             reserve: Some(metres(1.0)),
         }],
+        faces: Vec::new(),
         limits: Limits { basis: basis.map(str::to_owned), own: Vec::new() },
     }
 }

@@ -228,7 +228,7 @@ fn each_doubt_is_raised_by_the_statement_it_is_about() {
         ("strength = \"22 kN\"", "strength = \"3 kN\"", "before the absorber starts"),
         ("datum = \"yard\"\n", "", "what elevation 0 is"),
         ("top = \"0 m\"\nreserve = \"1 m\"", "top = \"0 m\"", "obstacle 2 has no reserve"),
-        ("top = \"4 m\"", "top = \"14 m\"", "above the start"),
+        ("top = \"4 m\"", "top = \"11 m\"", "above the start"),
         ("basis = \"eu-363\"\n", "", "without a basis"),
         ("[anchor]", "[harness]\nstiffness = \"80 kN/m\"\n[anchor]", ""),
         (
@@ -264,7 +264,7 @@ fn more_than_two_hundred_obstacles_and_large_files_are_refused() {
     let many = ROOF.to_owned() + &(0..198).map(obstacle).collect::<String>();
     scenario(&many);
     let faults = read("t", &(many + &obstacle(999))).unwrap_err();
-    assert_eq!(faults.faults[0].message, "more than 200 obstacles");
+    assert_eq!(faults.faults[0].message, "more than 200 obstacles and faces");
     let large = format!("{ROOF}\n# {}", "x".repeat(1 << 20));
     assert!(read("t", &large).unwrap_err().faults[0].message.contains("more than 1 MiB"));
 }

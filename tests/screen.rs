@@ -1,4 +1,5 @@
 //! The screen as a model that takes keys: (model, keys, model).
+#![allow(clippy::unwrap_used, clippy::panic, reason = "helpers of tests fail by panicking")]
 mod screen_support;
 
 use crossterm::event::{KeyCode, KeyEvent, KeyEventKind, KeyModifiers, MouseButton, MouseEventKind};
@@ -380,6 +381,8 @@ fn views_and_panes_are_reached_by_key() {
     bench.keys("2");
     assert_eq!(bench.model.view, View::History);
     bench.keys("v");
+    assert_eq!(bench.model.view, View::Notes);
+    bench.keys("v");
     assert_eq!(bench.model.view, View::Elevation);
     bench.keys("w");
     assert_eq!(bench.model.window, Window::Whole);
@@ -415,12 +418,65 @@ fn dragging_on_the_play_bar_scrubs() {
     let mut bench = Bench::roof();
     let bar = Panes::of(bench.model.size, &bench.model).unwrap().bar();
     let (from, to) = bench.model.window_s();
+    bench.click(bar.x, bar.y);
     for (cell, share) in [(bar.width - 1, 1.0), ((bar.width - 1) / 2, 0.5), (0, 0.0)] {
-        bench.mouse(MouseEventKind::Drag(MouseButton::Left), bar.x + cell, bar.y);
+        bench.mouse(MouseEventKind::Drag(MouseButton::Left), bar.x + cell, bar.y - 3);
         let wanted = from + share * (to - from);
         let one_cell = (to - from) / f64::from(bar.width - 1);
         assert!((bench.model.play.time_s - wanted).abs() <= one_cell, "{} {wanted}", bench.model.play.time_s);
     }
+}
+
+#[test]
+fn dragging_what_was_not_pressed_on_a_time_axis_does_nothing() {
+    let mut bench = Bench::roof();
+    let bar = Panes::of(bench.model.size, &bench.model).unwrap().bar();
+    bench.mouse(MouseEventKind::Drag(MouseButton::Left), bar.x + 9, bar.y);
+    assert_eq!(bench.model.play.time_s, 0.0);
+    bench.click(bar.x + 9, bar.y);
+    let there = bench.model.play.time_s;
+    assert!(there > 0.0);
+    bench.mouse(MouseEventKind::Up(MouseButton::Left), bar.x + 9, bar.y);
+    bench.mouse(MouseEventKind::Drag(MouseButton::Left), bar.x + 20, bar.y);
+    assert_eq!(bench.model.play.time_s, there);
+}
+
+#[test]
+fn warnings_are_announced_beside_the_peak_and_spelt_out_in_the_notes() {
+    let mut bench = Bench::of(&ROOF.replace("damping_ratio = 0.08", "damping_ratio = 1.5"), 140, 44);
+    let warnings = bench.model.answer.current().unwrap().estimate.warnings.clone();
+    assert!(!warnings.is_empty());
+    assert!(bench.frame().contains("warning"), "{}", bench.frame());
+    for (columns, rows) in [(140, 44), (80, 24), (60, 20)] {
+        bench.send(Message::Resize(columns, rows));
+        bench.keys("4");
+        let mut seen = bench.frame();
+        for _ in 0..12 {
+            bench.key(KeyCode::PageDown);
+            seen += &bench.frame();
+        }
+        for word in warnings[0].split(' ').filter(|word| word.len() < 20) {
+            assert!(seen.contains(word), "no `{word}` at {columns}x{rows}");
+        }
+        assert!(seen.contains("Left out: air drag"), "{seen}");
+        for _ in 0..12 {
+            bench.key(KeyCode::PageUp);
+        }
+        assert_eq!(bench.model.notes_row, 0);
+    }
+}
+
+#[test]
+fn a_file_that_cannot_be_computed_opens_and_can_be_mended() {
+    let mut bench = Bench::of(&ROOF.replace("13.5 m", "40 m"), 140, 44);
+    let frame = bench.frame();
+    assert!(frame.contains("? OPEN"), "{frame}");
+    bench.choose("place.anchor");
+    bench.key(KeyCode::Enter);
+    bench.with(KeyCode::Char('u'), KeyModifiers::CONTROL);
+    bench.keys("13.5 m");
+    bench.key(KeyCode::Enter);
+    assert!(bench.model.answer.current().is_some());
 }
 
 #[test]

@@ -1,4 +1,5 @@
 //! The drawings of the screen from values made by hand.
+#![allow(clippy::unwrap_used, clippy::panic, reason = "helpers of tests fail by panicking")]
 use ratatui::Terminal;
 use ratatui::backend::TestBackend;
 use ratatui::layout::Rect;

@@ -1,5 +1,6 @@
 //! The real program in a real terminal: it starts, edits, leaves, and gives the terminal back however it ends.
 #![cfg(unix)]
+#![allow(clippy::unwrap_used, clippy::panic, reason = "helpers of tests fail by panicking")]
 mod screen_support;
 
 use portable_pty::{Child, CommandBuilder, ExitStatus, MasterPty, PtySize, native_pty_system};

@@ -64,7 +64,9 @@ impl Stretch {
     /// State at a time from the start of the stretch.
     #[must_use]
     pub fn state(&self, t: f64) -> State {
-        State { x: self.x.value(t), v: self.v.value(t), e: self.e.map(|e| e.value(t)), s: self.s.value(t) }
+        let pair = if let Signal::Swing(x) = &self.x { Some(x.of.pair(t)) } else { None };
+        let at = |signal: &Signal| signal.value_with(t, pair);
+        State { x: at(&self.x), v: at(&self.v), e: [at(&self.e[0]), at(&self.e[1])], s: at(&self.s) }
     }
 }
 

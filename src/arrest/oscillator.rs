@@ -5,7 +5,6 @@
 //! and `sinh/delta` for `q < 0`. Nothing divides by the difference of the two roots, so no digits are lost near
 //! critical damping.
 use super::roots::{Passage, first_passage};
-use super::signal::Turn;
 
 /// The class of a damped oscillator.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -124,7 +123,12 @@ impl Swing {
     /// Value at `t`.
     #[must_use]
     pub fn value(&self, t: f64) -> f64 {
-        let (c, s) = self.of.pair(t);
+        self.value_of_pair(self.of.pair(t))
+    }
+
+    /// Value where [`Oscillator::pair`] is known.
+    #[must_use]
+    pub fn value_of_pair(&self, (c, s): (f64, f64)) -> f64 {
         self.rest + self.p * c + self.q * s
     }
 
@@ -136,20 +140,19 @@ impl Swing {
         (self.rest + self.p * c + self.q * s, (self.q - decay * self.p) * c - (decay * self.q + q * self.p) * s)
     }
 
-    /// Times of the first turning point after `from` and the distance between turning points (infinite when there is
-    /// at most one).
-    fn first_turn(&self, from: f64) -> Option<(f64, f64)> {
-        let d = self.derivative();
-        if d.p == 0.0 && d.q == 0.0 {
+    /// Time of the first zero of `p C + q S` after `from`, and the distance between zeros (infinite when there is at
+    /// most one).
+    pub(super) fn first_zero(&self, from: f64) -> Option<(f64, f64)> {
+        let frequency = self.of.frequency;
+        if self.p == 0.0 && self.q == 0.0 {
             return None;
         }
-        let frequency = self.of.frequency;
         if self.of.q > 0.0 {
             let period = std::f64::consts::PI / frequency;
-            let mut first = (-d.p * frequency).atan2(d.q) / frequency;
-            if first <= 0.0 {
-                first += period;
-            }
+            // The angle in (0, pi), from a non-negative sine, so that a zero right at the start keeps its digits.
+            let (sine, cosine) = (-self.p * frequency, self.q);
+            let angle = if sine < 0.0 { (-sine).atan2(-cosine) } else { sine.atan2(cosine) };
+            let mut first = if angle > 0.0 { angle / frequency } else { period };
             if first <= from {
                 first += period * ((from - first) / period).floor();
                 while first <= from {
@@ -158,15 +161,22 @@ impl Swing {
             }
             return Some((first, period));
         }
-        let u = -d.p / d.q * frequency;
-        let t = if u < 1e-9 { -d.p / d.q } else { u.atanh() / frequency };
+        let u = -self.p / self.q * frequency;
+        let t = if u < 1e-9 { -self.p / self.q } else { u.atanh() / frequency };
         (t.is_finite() && t > from).then_some((t, f64::INFINITY))
     }
 
-    /// Turning points after `from` and before `to`, in order.
-    pub fn turns(&self, from: f64, to: f64) -> impl Iterator<Item = Turn> + use<> {
-        let swing = *self;
-        self.turn_times(from, to).map(move |time| Turn { time, is_maximum: swing.value(time) > swing.rest })
+    /// Times of the first turning point after `from` and the distance between turning points.
+    fn first_turn(&self, from: f64) -> Option<(f64, f64)> {
+        self.derivative().first_zero(from)
+    }
+
+    /// First maximum after `from` and before `to`: turning points alternate about the rest value.
+    #[must_use]
+    pub fn first_maximum(&self, from: f64, to: f64) -> Option<f64> {
+        let (first, period) = self.first_turn(from)?;
+        let time = if self.value(first) > self.rest { first } else { first + period };
+        (time < to).then_some(time)
     }
 
     fn turn_times(&self, from: f64, to: f64) -> impl Iterator<Item = f64> + use<> {
@@ -197,13 +207,6 @@ impl Swing {
             turns,
             end,
         )
-    }
-
-    /// The largest value from `t` on: there, at the next maximum, or at rest.
-    #[must_use]
-    pub fn first_maximum_bound(&self, t: f64) -> f64 {
-        let next = self.turns(t, f64::INFINITY).take(2).find(|turn| turn.is_maximum);
-        self.value(t).max(self.rest).max(next.map_or(f64::NEG_INFINITY, |turn| self.value(turn.time)))
     }
 
     /// Integral of `w^2` over `0..t` for a swing with rest value 0, relative accuracy about 1e-12.

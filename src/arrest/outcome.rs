@@ -90,6 +90,8 @@ pub enum Happening {
 pub struct WorkCount {
     /// Modes entered.
     pub modes: u32,
+    /// Evaluations of event functions.
+    pub evaluations: u32,
 }
 
 /// Everything one vertical arrest gives. Times run from the start of the fall.

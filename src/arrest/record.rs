@@ -1,5 +1,6 @@
 //! What is read off each stretch: peaks, the lowest point, times above a level.
-use super::mode::{State, Stretch};
+use super::mode::{Mode, State, Stretch};
+use super::oscillator::Swing;
 use super::outcome::Lowest;
 use super::roots::Passage;
 use super::signal::Signal;
@@ -26,22 +27,6 @@ impl Peak {
             *self = Self { value, time_s };
         }
     }
-
-    /// Takes in all of a signal over a stretch.
-    fn scan(&mut self, signal: &Signal, stretch: &Stretch) {
-        let (start, length) = (stretch.start_s, stretch.length_s);
-        self.offer(signal.value(0.0), start);
-        let mut from = 0.0;
-        while signal.upper_bound(from) > self.value + LARGER * self.value.abs() {
-            let Some(top) = signal.first_maximum(from, length) else { break };
-            self.offer(signal.value(top), start + top);
-            if top <= from {
-                break;
-            }
-            from = top;
-        }
-        self.offer(signal.value(length), start + length);
-    }
 }
 
 /// What has been read off so far.
@@ -57,42 +42,38 @@ pub struct Record {
     pub highest: Option<(f64, f64)>,
     /// First slack, s.
     pub first_slack_s: Option<f64>,
-    /// Times slack.
-    pub slack_episodes: u32,
-    /// Time above each level, s.
-    pub above_s: [f64; 2],
 }
 
 impl Record {
     /// Nothing read yet.
     pub const fn new() -> Self {
-        Self {
-            force: Peak::NONE,
-            stretch: [Peak::NONE; 2],
-            lowest: None,
-            highest: None,
-            first_slack_s: None,
-            slack_episodes: 0,
-            above_s: [0.0; 2],
+        Self { force: Peak::NONE, stretch: [Peak::NONE; 2], lowest: None, highest: None, first_slack_s: None }
+    }
+
+    /// Reads the peaks off a stretch of known length.
+    pub fn read(&mut self, stretch: &Stretch, previous: &State) {
+        let length = stretch.length_s;
+        let (largest, at) = stretch.force.largest(length);
+        self.force.offer(largest, stretch.start_s + at);
+        for (peak, (signal, before)) in self.stretch.iter_mut().zip(stretch.e.iter().zip(previous.e)) {
+            peak.offer(before, stretch.start_s);
+            let (largest, at) = signal.largest(length);
+            peak.offer(largest, stretch.start_s + at);
         }
     }
 
-    /// Reads peaks and times above the levels off a stretch of known length.
-    pub fn read(&mut self, stretch: &Stretch, levels_n: [f64; 2], previous: &State) {
-        self.force.scan(&stretch.force, stretch);
-        for (peak, (signal, before)) in self.stretch.iter_mut().zip(stretch.e.iter().zip(previous.e)) {
-            peak.offer(before, stretch.start_s);
-            peak.scan(signal, stretch);
-        }
-        if self.first_slack_s.is_none() {
-            for (above, level) in self.above_s.iter_mut().zip(levels_n) {
-                *above += time_above(&stretch.force, level * (1.0 + LARGER), stretch.length_s);
-            }
-        }
+    /// Time of the deepest point of a stretch that is deeper than all before, s from the start of the fall.
+    pub fn new_lowest_s(&self, stretch: &Stretch) -> Option<f64> {
+        let mut deepest = None;
+        self.clone().turnings(stretch, stretch.length_s, |t| deepest = Some(stretch.start_s + t));
+        deepest
     }
 
     /// Reads turning points off the first `until` s of a stretch and calls `on_lowest` for each new lowest one.
     pub fn turnings(&mut self, stretch: &Stretch, until: f64, mut on_lowest: impl FnMut(f64)) {
+        if let Signal::Swing(x) = &stretch.x {
+            return self.swing_turnings(stretch, x, until, on_lowest);
+        }
         let mut from = 0.0;
         while let Some(t) = stretch.v.first_passage(0.0, Passage::Down, from, until) {
             self.turned_down(stretch, t, &mut on_lowest);
@@ -101,10 +82,24 @@ impl Record {
                 self.turned_up(stretch, top);
                 from = top;
             }
-            // A swing's later lowest points are higher; a drift turns once.
-            if !matches!(stretch.v, Signal::Wave(_)) || from <= t {
+            let Signal::Wave(x) = &stretch.x else { return };
+            let deepest = self.lowest.map_or(f64::NEG_INFINITY, |l| l.travel_m);
+            if from <= t || x.rest + x.distance_bound(from) <= deepest {
                 return;
             }
+        }
+    }
+
+    /// A swing's turning points are in closed form, and its later lowest points are higher.
+    fn swing_turnings(&mut self, stretch: &Stretch, x: &Swing, until: f64, mut on_lowest: impl FnMut(f64)) {
+        // At the very end a speed of zero is a turn only away from rest: a motion that has died away has no speed either.
+        let end = stretch.v.value(until);
+        let turns_last = end < 0.0 || (end == 0.0 && x.value(until) > x.rest);
+        let last = (stretch.v.value(0.0) > 0.0 && turns_last).then_some(until);
+        let Some(t) = x.first_maximum(0.0, until).or(last) else { return };
+        self.turned_down(stretch, t, &mut on_lowest);
+        if let Some(top) = x.scaled(-1.0, 0.0).first_maximum(t, until) {
+            self.turned_up(stretch, top);
         }
     }
 
@@ -134,22 +129,30 @@ impl Record {
     }
 }
 
-/// Time that a signal spends strictly above a level in `0..length`.
+/// Time from taut to the first slack, or else to `end_s`, that the line force spends strictly above a level.
+pub fn time_above_s(stretches: &[Stretch], level_n: f64, end_s: f64) -> f64 {
+    let level = level_n * (1.0 + LARGER);
+    let taut = stretches.iter().take_while(|s| s.mode != Mode::Slack && s.start_s < end_s);
+    taut.map(|stretch| {
+        let length = stretch.length_s.min(end_s - stretch.start_s);
+        if stretch.force.largest(length).0 > level { time_above(&stretch.force, level, length) } else { 0.0 }
+    })
+    .sum()
+}
+
+/// Time that a signal spends above a level in `0..length`.
 fn time_above(signal: &Signal, level: f64, length: f64) -> f64 {
     let mut total = 0.0;
     let mut from = 0.0;
     let mut above = signal.value(0.0) > level;
     loop {
-        if !above && signal.upper_bound(from) <= level {
-            return total;
-        }
         let passage = if above { Passage::Down } else { Passage::Up };
-        let next = signal.first_passage(level, passage, from, length);
+        let next = signal.first_passage(level, passage, from, length).filter(|&t| t > from);
         let to = next.unwrap_or(length);
         if above {
             total += to - from;
         }
-        if next.is_none() || to <= from {
+        if next.is_none() {
             return total;
         }
         above = !above;

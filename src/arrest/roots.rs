@@ -1,4 +1,19 @@
 //! Zeros of functions that are monotone between known points.
+use std::cell::Cell;
+
+thread_local! {
+    static EVALUATIONS: Cell<u32> = const { Cell::new(0) };
+}
+
+/// Evaluations of event functions on this thread since the last call.
+pub(super) fn take_evaluations() -> u32 {
+    EVALUATIONS.replace(0)
+}
+
+/// Counts evaluations of event functions.
+fn count(evaluations: u32) {
+    EVALUATIONS.set(EVALUATIONS.get().saturating_add(evaluations));
+}
 
 /// Which way a function passes a level.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -36,6 +51,7 @@ pub fn monotone_zero(mut f: impl FnMut(f64) -> (f64, f64), a: f64, fa: f64, b: f
     let (mut lo, mut hi) = (a, b);
     let mut t = start_point(a, fa, b, fb);
     for _ in 0..120 {
+        count(1);
         let (value, slope) = f(t);
         if value == 0.0 {
             return t;
@@ -71,6 +87,7 @@ pub fn first_passage(
     let mut a = from;
     let mut fa = f(a).0;
     for b in turns.into_iter().filter(|&t| t > from && t < to).chain(std::iter::once(to)) {
+        count(1);
         let fb = f(b).0;
         if passage.shows(fa, fb) {
             return Some(if fb == 0.0 { b } else { monotone_zero(f, a, fa, b, fb) });

@@ -1,34 +1,49 @@
 //! The first instant at which the energy above the hang position is small.
-use super::mode::Stretch;
+use super::mode::{Mode, Stretch};
 use super::record::Record;
+use super::signal::Signal;
 use super::solve::Run;
 
 /// When the run settles, s from the start of the fall, if it does so up to the end of `stretch`; `last` says that no
-/// event ends that stretch.
+/// event ends that stretch. Also the travel that the settled level was taken from, m.
 ///
 /// The settled level is a share of `m g (h + x)` at the deepest turning point, so it is known only once the motion has
 /// turned, or is known never to turn: then `x` is the travel at rest. Stretches before that are looked at again.
-pub fn time(run: &Run, stretch: &Stretch, last: bool) -> Option<f64> {
+pub fn time(run: &Run, stretch: &Stretch, last: bool) -> Option<(f64, f64)> {
     let deepest = deepest(run, stretch, last)?;
-    let level_j = run.settings.settled_share * run.fall_energy_j(deepest);
     let first_look = run.record.lowest.is_none();
     let earlier = if first_look { run.stretches.as_slice() } else { &[] };
-    earlier.iter().chain(std::iter::once(stretch)).find_map(|s| within(run, s, level_j).map(|t| s.start_s + t))
+    Some((first(run, earlier.iter().chain(std::iter::once(stretch)), deepest)?, deepest))
+}
+
+/// When the first of some stretches settles, for a level taken from a travel in m.
+pub fn first<'a>(run: &Run, mut stretches: impl Iterator<Item = &'a Stretch>, travel_m: f64) -> Option<f64> {
+    let level_j = run.settings.settled_share * run.fall_energy_j(travel_m);
+    stretches.find_map(|s| within(run, s, level_j).map(|t| s.start_s + t))
 }
 
 /// When the energy first is below a level in a stretch, s from its start. It never rises while taut or slack.
 fn within(run: &Run, stretch: &Stretch, level_j: f64) -> Option<f64> {
     // The energy falls nearly as an exponential: its logarithm is nearly straight.
-    let above = |t: f64| (run.fall.energy_above_j(&stretch.state(t)) / level_j).max(f64::MIN_POSITIVE).ln();
-    let start = above(0.0);
-    if start < 0.0 {
-        return Some(0.0);
-    }
-    let end = above(stretch.length_s);
+    let share = |energy_j: f64| (energy_j / level_j).max(f64::MIN_POSITIVE).ln();
+    let end = share(run.fall.energy_above_j(&stretch.state(stretch.length_s)));
     if end >= 0.0 {
         return None;
     }
-    Some(falling_zero(above, start, stretch.length_s, end))
+    let start = share(run.fall.energy_above_j(&stretch.state(0.0)));
+    if start < 0.0 {
+        return Some(0.0);
+    }
+    if let (Signal::Swing(x), Mode::Stuck, true) = (&stretch.x, stretch.mode, run.fall.path.is_linear()) {
+        let energy = |t: f64| {
+            let (travel, speed) = x.value_slope(t);
+            let away = travel - x.rest;
+            0.5 * run.fall.mass_kg * (speed * speed + x.of.stiffness * away * away)
+        };
+        return Some(falling_zero(|t| share(energy(t)), start, stretch.length_s, end));
+    }
+    let energy = |t: f64| run.fall.energy_above_j(&stretch.state(t));
+    Some(falling_zero(|t| share(energy(t)), start, stretch.length_s, end))
 }
 
 fn deepest(run: &Run, stretch: &Stretch, last: bool) -> Option<f64> {
@@ -47,16 +62,17 @@ fn deepest(run: &Run, stretch: &Stretch, last: bool) -> Option<f64> {
 /// # Reference
 /// Dowell and Jarratt, BIT 11 (1971), 168-174.
 fn falling_zero(f: impl Fn(f64) -> f64, mut flo: f64, to: f64, mut fhi: f64) -> f64 {
-    let (mut lo, mut hi) = (0.0, to);
+    let (mut lo, mut hi, mut t) = (0.0, to, 0.0_f64);
     let mut side = 0_i8;
     for _ in 0..200 {
+        let before = t;
         let secant = lo + (hi - lo) * flo / (flo - fhi);
-        let t = if secant > lo && secant < hi { secant } else { 0.5 * (lo + hi) };
-        if hi - lo <= 4.0 * f64::EPSILON * hi || t <= lo || t >= hi {
+        t = if secant > lo && secant < hi { secant } else { 0.5 * (lo + hi) };
+        let value = f(t);
+        if value == 0.0 || (t - before).abs() <= 2.0 * f64::EPSILON * t || t <= lo || t >= hi {
             break;
         }
-        let value = f(t);
-        if value >= 0.0 {
+        if value > 0.0 {
             (lo, flo) = (t, value);
             if side == 1 {
                 fhi *= 0.5;
@@ -69,9 +85,6 @@ fn falling_zero(f: impl Fn(f64) -> f64, mut flo: f64, to: f64, mut fhi: f64) -> 
             }
             side = -1;
         }
-        if value == 0.0 {
-            break;
-        }
     }
-    hi
+    t
 }

@@ -41,6 +41,15 @@ impl Signal {
         }
     }
 
+    /// Value at `t`, where the swing pair of the mode is already known.
+    #[must_use]
+    pub fn value_with(&self, t: f64, pair: Option<(f64, f64)>) -> f64 {
+        match (self, pair) {
+            (Self::Swing(s), Some(pair)) => s.value_of_pair(pair),
+            _ => self.value(t),
+        }
+    }
+
     /// First passage of `level` in `(from, to]`.
     #[must_use]
     pub fn first_passage(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<f64> {
@@ -55,20 +64,42 @@ impl Signal {
     #[must_use]
     pub fn first_maximum(&self, from: f64, to: f64) -> Option<f64> {
         match self {
-            Self::Swing(s) => s.turns(from, to).find(|turn| turn.is_maximum).map(|turn| turn.time),
+            Self::Swing(s) => s.first_maximum(from, to),
             Self::Drift(s) => s.turns(from, to).into_iter().flatten().find(|turn| turn.is_maximum).map(|t| t.time),
-            Self::Wave(s) => s.derivative().first_passage(0.0, Passage::Down, from, to),
+            Self::Wave(s) => s.first_maximum(from, to),
         }
     }
 
-    /// A bound on `w` for all times from `t` on; infinite where the law gives none.
+    /// The largest value over `0..length` and when it is reached.
     #[must_use]
-    pub fn upper_bound(&self, t: f64) -> f64 {
-        match self {
-            Self::Swing(s) => s.first_maximum_bound(t),
-            Self::Drift(_) => f64::INFINITY,
-            Self::Wave(s) => s.rest + s.distance_bound(t),
+    pub fn largest(&self, length: f64) -> (f64, f64) {
+        let mut best = (self.value(0.0), 0.0);
+        let mut offer = |t: f64| {
+            let value = self.value(t);
+            if value > best.0 {
+                best = (value, t);
+            }
+            best.0
+        };
+        let Self::Wave(wave) = self else {
+            // A swing's first maximum is its largest; a drift turns down at most twice.
+            match self.first_maximum(0.0, length) {
+                Some(top) => offer(top),
+                None => offer(length),
+            };
+            if let Self::Drift(drift) = self {
+                drift.turns(0.0, length).into_iter().flatten().for_each(|turn| _ = offer(turn.time));
+                offer(length);
+            }
+            return best;
+        };
+        let (mut from, mut value) = (0.0, offer(length));
+        while wave.rest + wave.distance_bound(from) > value {
+            let Some(top) = self.first_maximum(from, length).filter(|&top| top > from) else { break };
+            value = offer(top);
+            from = top;
         }
+        best
     }
 
     /// `a w + b`.

@@ -5,8 +5,10 @@ use super::motion::Motion;
 use super::next::{End, Slider, TOUCH, moving_force};
 use super::onset::give_back;
 use super::outcome::{ArrestError, Ended, EnergyAccount, Fall, Happening, Outcome, Settings, WorkCount};
-use super::record::Record;
+use super::record::{Record, time_above_s};
+use super::roots::take_evaluations;
 use super::settle;
+use super::signal::Signal;
 
 /// More modes than any real arrest has: 120 s of rebounds ten times a second, with knots.
 const MODES: u32 = 100_000;
@@ -23,6 +25,7 @@ const BALANCE: f64 = 1e-9;
 /// The solution of each mode is in closed form; see the modules `oscillator`, `drift` and `third`.
 pub fn solve(fall: &Fall, settings: &Settings) -> Result<Outcome, ArrestError> {
     fall.check()?;
+    take_evaluations();
     let mut run = Run::new(fall, *settings);
     run.all()?;
     run.outcome()
@@ -47,7 +50,8 @@ pub(super) struct Run<'a> {
     pub stretches: Vec<Stretch>,
     happenings: Vec<(f64, Happening)>,
     ended: Option<Ended>,
-    settled_s: Option<f64>,
+    /// When settled, s, and the travel its level was taken from, m.
+    settled: Option<(f64, f64)>,
     modes: u32,
 }
 
@@ -76,7 +80,7 @@ impl<'a> Run<'a> {
             stretches: Vec::with_capacity(16),
             happenings: Vec::with_capacity(16),
             ended: None,
-            settled_s: None,
+            settled: None,
             modes: 0,
         }
     }
@@ -94,17 +98,20 @@ impl<'a> Run<'a> {
             let horizon = limit_s - self.time_s;
             let end = self.path.first_end(&stretch, pieces, self.slider, horizon);
             stretch.length_s = end.map_or(horizon, |(t, _)| t);
-            self.settled_s = self.settled_s.or_else(|| settle::time(self, &stretch, end.is_none()));
-            // What is settled while the slider still moves goes on until the slider stops.
-            let settled = self.settled_s.filter(|_| self.mode != Mode::Sliding);
             let reach = stretch.length_s;
-            if let Some(time_s) = settled {
+            // Only a third-order mode can come to a deeper point after its first.
+            let deepest_known = self.record.lowest.is_some() && !matches!(stretch.x, Signal::Wave(_));
+            self.settled = self.settled.or_else(|| settle::time(self, &stretch, end.is_none()));
+            // What is settled while the slider still moves goes on until the slider stops.
+            if let Some((time_s, _)) = self.settled.filter(|_| self.mode != Mode::Sliding) {
                 self.ended = Some(Ended::Settled { time_s });
-                stretch.length_s = (time_s - stretch.start_s).clamp(0.0, reach);
+                let lowest_s = if deepest_known { None } else { self.record.new_lowest_s(&stretch) };
+                let needed_s = lowest_s.map_or(time_s, |t| time_s.max(t));
+                stretch.length_s = (needed_s - stretch.start_s).clamp(0.0, reach);
             } else if end.is_none() {
                 self.ended = Some(Ended::TimeLimit);
             }
-            self.pass(&stretch, if self.record.lowest.is_none() { reach } else { stretch.length_s });
+            self.pass(&stretch, if deepest_known { stretch.length_s } else { reach });
             if let (None, Some((_, end))) = (self.ended, end) {
                 self.after(end)?;
             }
@@ -114,7 +121,7 @@ impl<'a> Run<'a> {
 
     /// Takes in one finished stretch; turning points count up to `reach`.
     fn pass(&mut self, stretch: &Stretch, reach: f64) {
-        self.record.read(stretch, self.settings.levels_n, &self.before);
+        self.record.read(stretch, &self.before);
         if self.record.lowest.is_some() {
             self.record.first_highest(stretch, stretch.length_s);
         }
@@ -205,7 +212,6 @@ impl<'a> Run<'a> {
     fn go_slack(&mut self) {
         self.happened(Happening::Slack);
         self.record.first_slack_s.get_or_insert(self.time_s);
-        self.record.slack_episodes += 1;
         let path = &self.fall.path;
         for (e, group) in self.state.e.iter_mut().zip([&path.line, &path.other]) {
             if !group.is_damped() {
@@ -275,7 +281,10 @@ impl<'a> Run<'a> {
         if energy_residual.is_nan() || energy_residual > BALANCE {
             return Err(ArrestError::Energy { residual: energy_residual });
         }
-        let highest = deepest.and(self.record.highest);
+        let ended = self.ended(arrest_distance_m);
+        let end_s = if let Ended::Settled { time_s } = ended { time_s } else { f64::INFINITY };
+        let highest = deepest.and(self.record.highest).filter(|&(time_s, _)| time_s <= end_s);
+        let slack = self.happenings.iter().filter(|(time_s, what)| *what == Happening::Slack && *time_s <= end_s);
         let energy = match (deepest, self.account) {
             (Some(_), Some(account)) => account,
             _ => self.account_at_rest(),
@@ -291,16 +300,16 @@ impl<'a> Run<'a> {
             rebound_rise_m: highest.map(|(_, travel_m)| arrest_distance_m - travel_m),
             time_highest_s: highest.map(|(time_s, _)| time_s),
             time_first_slack_s: self.record.first_slack_s,
-            slack_episodes: self.record.slack_episodes,
+            slack_episodes: u32::try_from(slack.count()).unwrap_or(u32::MAX),
             deployed_m: self.state.s,
             stroke_used_up: self.slider.locked,
             line_elongation_peak_m: self.record.stretch[0].value,
             other_elongation_peak_m: self.record.stretch[1].value,
-            time_above_s: self.record.above_s,
-            ended: self.ended.unwrap_or(Ended::TimeLimit),
+            time_above_s: self.settings.levels_n.map(|level| time_above_s(&self.stretches, level, end_s)),
+            ended,
             energy,
             energy_residual,
-            work: WorkCount { modes: self.modes },
+            work: WorkCount { modes: self.modes, evaluations: take_evaluations() },
             happenings: self.happenings,
             motion: Motion {
                 gravity_m_per_s2: fall.gravity_m_per_s2,
@@ -308,6 +317,16 @@ impl<'a> Run<'a> {
                 stretches: self.stretches,
             },
         })
+    }
+
+    /// How the run ended: a level taken from a turning point that was not the deepest is taken again.
+    fn ended(&self, arrest_distance_m: f64) -> Ended {
+        let Some((time_s, travel_m)) = self.settled else { return Ended::TimeLimit };
+        if (arrest_distance_m - travel_m).abs() <= 1e-12 * arrest_distance_m.abs() {
+            return Ended::Settled { time_s };
+        }
+        let again = settle::first(self, self.stretches.iter(), arrest_distance_m);
+        Ended::Settled { time_s: again.unwrap_or(time_s) }
     }
 
     /// The account at rest, where what is still above the hang position has gone into the dampers.

@@ -3,9 +3,10 @@
 //! The solution is an interpolation of the exponential on the spectrum,
 //! `w = rest + exp(mu t) (p C + q S) + r f(t)`, with the pair `mu +- sqrt(-q)` in the form of [`Oscillator`] and `f` the
 //! divided difference of `exp(s t)` over all three roots. It stays accurate when roots meet.
-use super::oscillator::{Oscillator, decayed_time, waving_integral};
+use super::oscillator::{Oscillator, Swing, decayed_time, waving_integral};
 use super::quadrature::integral_with_waves;
 use super::roots::{Passage, monotone_zero};
+use super::signal::Turn;
 
 /// A real root and a pair (complex or real) of a cubic whose roots have negative real parts.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -79,6 +80,14 @@ impl Spectrum {
             power *= t / f64::from(n);
         }
         sum
+    }
+
+    /// Smallest decay of the spectrum, 1/s.
+    #[must_use]
+    pub fn slowest(&self) -> f64 {
+        let Self { lambda, pair, .. } = self;
+        let slow = if pair.q < 0.0 { pair.stiffness / (pair.decay + pair.frequency) } else { pair.decay };
+        slow.min(-lambda)
     }
 
     /// Largest rate of the spectrum, 1/s.
@@ -192,10 +201,7 @@ impl Wave {
     /// From `|C| <= e^(delta t)`, `|S| <= t e^(delta t)`, `|f| <= t^2/2 e^(nu t)` with the slowest decay `nu`: tight
     /// when the roots meet.
     fn joint_bound(&self, t: f64) -> f64 {
-        let Spectrum { lambda, pair, .. } = self.of;
-        let grow = if pair.q < 0.0 { pair.frequency } else { 0.0 };
-        let slow = if grow > 0.0 { pair.stiffness / (pair.decay + grow) } else { pair.decay };
-        let nu = slow.min(-lambda);
+        let nu = self.of.slowest();
         // t^n exp(-nu t) falls only after n/nu: take its largest value from t on.
         let largest = |n: f64| {
             let at = t.max(n / nu);
@@ -224,82 +230,104 @@ impl Wave {
             + 0.5 * waving_integral(re * re - im * im, 2.0 * re * im, 2.0 * pair.decay, 2.0 * pair.frequency, t)
     }
 
-    /// First passage of `level` in `(from, to]`.
-    ///
-    /// From a point with distance `w > 0` and slope `w'` to the level, and `|w''| <= M` from there on, no zero lies
-    /// before the zero of `w + w' t - M t^2/2`; going there again and again comes to the first zero and never past it.
+    /// First passage of `level` in `(from, to]`, on the stretches between turning points.
     #[must_use]
     pub fn first_passage(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<f64> {
-        let signal = self.scaled(1.0, -level);
-        let rate = signal.derivative();
-        let bend = rate.derivative();
-        let started = signal.distance_bound(0.0);
-        let mut search = Search { signal, rate, bend, at: from, to, started };
-        let wanted_start_above = passage == Passage::Down;
-        if (signal.value(from) > 0.0) != wanted_start_above {
-            search.zero()?;
-        }
-        search.zero()
-    }
-}
-
-struct Search {
-    signal: Wave,
-    rate: Wave,
-    bend: Wave,
-    at: f64,
-    to: f64,
-    started: f64,
-}
-
-impl Search {
-    /// The next zero after `at`, at which the sign has changed.
-    fn zero(&mut self) -> Option<f64> {
-        let start = self.signal.value(self.at);
-        let sign = if start > 0.0 { 1.0 } else { -1.0 };
-        let changed = |w: f64| if sign > 0.0 { w <= 0.0 } else { w > 0.0 };
-        let scale = self.signal.rest.abs() + self.started;
-        let (mut t, mut w) = (self.at, start.abs());
+        let away = |t: f64| self.value(t) - level;
+        let mut turns = Turns::new(self, from, to);
+        let (mut a, mut fa) = (from, away(from));
         loop {
-            if self.gone(sign, t) {
+            if self.never(level, passage, fa, a) {
                 return None;
             }
-            let slope = sign * self.rate.value(t);
-            let bound = self.bend.distance_bound(t);
-            let safe = safe_step(w, slope, bound);
-            // Below the resolution of the numbers a step must still go on.
-            let step = safe.max(1e-9 * (scale / bound).sqrt()).max(4.0 * f64::EPSILON * t);
-            let next = if t + step >= self.to { self.to } else { t + step };
-            let value = self.signal.value(next);
-            if changed(value) {
-                let zero = self.between(t, next);
-                self.at = next;
-                return Some(zero);
+            let turn = turns.next();
+            let b = turn.map_or(turns.at, |turn| turn.time);
+            let fb = away(b);
+            if passage.shows(fa, fb) {
+                return Some(if fb == 0.0 {
+                    b
+                } else {
+                    monotone_zero(|t| (away(t), turns.rate.value(t)), a, fa, b, fb)
+                });
             }
-            if next >= self.to || !value.is_finite() {
-                return None;
-            }
-            (t, w) = (next, value.abs());
+            turn?;
+            (a, fa) = (b, fb);
         }
     }
 
-    /// Whether the sign can never change again, or what is left of the motion is below the numbers' resolution.
-    fn gone(&self, sign: f64, t: f64) -> bool {
-        let left = self.signal.distance_bound(t);
-        sign * self.signal.rest > left || left < 1e-15 * self.started
+    /// Whether no passage can come after `t`, where the distance to the level is `away`.
+    fn never(&self, level: f64, passage: Passage, away: f64, t: f64) -> bool {
+        let bound = self.distance_bound(t);
+        let (top, bottom) = (self.rest + bound, self.rest - bound);
+        match passage {
+            Passage::Up => top < level,
+            Passage::Down => bottom > level || (away <= 0.0 && top < level),
+        }
     }
 
-    fn between(&self, a: f64, b: f64) -> f64 {
-        let (fa, fb) = (self.signal.value(a), self.signal.value(b));
-        if fb == 0.0 {
-            return b;
-        }
-        monotone_zero(|t| (self.signal.value(t), self.rate.value(t)), a, fa, b, fb)
+    /// First maximum in `(from, to]`.
+    #[must_use]
+    pub fn first_maximum(&self, from: f64, to: f64) -> Option<f64> {
+        Turns::new(self, from, to).find(|turn| turn.is_maximum).map(|turn| turn.time)
     }
 }
 
-/// Zero of `w + slope t - bound t^2 / 2` for `w >= 0`.
-fn safe_step(w: f64, slope: f64, bound: f64) -> f64 {
-    let root = (slope * slope + 2.0 * bound * w).sqrt();
-    if slope > 0.0 { (slope + root) / bound } else { 2.0 * w / (root - slope) }
+/// Share of a motion's first size below which it is not looked at: rounding of the other exponentials is near.
+const RESOLUTION: f64 = 1e-14;
+
+/// Turning points of a wave, in order.
+///
+/// `w'' - lambda w'` holds no more of `exp(lambda t)`: it is a swing whose zeros are in closed form, and between two of
+/// them `w' exp(-lambda t)` is monotone, so `w'` has at most one zero there.
+struct Turns {
+    rate: Wave,
+    /// The next zero of the swing and the distance to the one after.
+    bend: Option<(f64, f64)>,
+    at: f64,
+    slope: f64,
+    to: f64,
+    floor: f64,
+}
+
+impl Turns {
+    fn new(wave: &Wave, from: f64, to: f64) -> Self {
+        let rate = wave.derivative();
+        let Spectrum { lambda, pair, .. } = wave.of;
+        let [p, q, r] = rate.a;
+        let shift = pair.decay + lambda;
+        let swing = Swing { of: pair, rest: 0.0, p: q - shift * p, q: r - shift * q - pair.q * p };
+        let floor = RESOLUTION * rate.distance_bound(0.0);
+        Self { rate, bend: swing.first_zero(from), at: from, slope: rate.value(from), to, floor }
+    }
+}
+
+impl Iterator for Turns {
+    type Item = Turn;
+
+    fn next(&mut self) -> Option<Turn> {
+        while self.at < self.to {
+            if self.rate.distance_bound(self.at) < self.floor {
+                return None;
+            }
+            let (a, fa) = (self.at, self.slope);
+            // Looking in at doubling times, too, tells a sign from what rounding leaves of it much later.
+            let look = self.to.min(2.0 * a + 1.0 / self.rate.of.fastest());
+            let b = match self.bend {
+                Some((bend, gap)) if bend < look => {
+                    self.bend = (gap.is_finite()).then_some((bend + gap, gap));
+                    bend
+                }
+                _ => look,
+            };
+            let fb = self.rate.value(b);
+            (self.at, self.slope) = (b, fb);
+            let passage = [Passage::Up, Passage::Down].into_iter().find(|p| p.shows(fa, fb));
+            if let Some(passage) = passage {
+                let bend = self.rate.derivative();
+                let time = monotone_zero(|t| (self.rate.value(t), bend.value(t)), a, fa, b, fb);
+                return Some(Turn { time, is_maximum: passage == Passage::Down });
+            }
+        }
+        None
+    }
 }

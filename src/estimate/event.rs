@@ -65,7 +65,7 @@ impl Event {
                 format!("slack, {} at {speed}", if self.speed_m_per_s < 0.0 { "rises" } else { "falls" })
             }
             EventKind::Highest => format!("highest, {}", beside_taut(self.travel_m, length)),
-            EventKind::Settled => format!("hangs, {}", beside_taut(self.travel_m, length)),
+            EventKind::Settled => format!("settled, {}", beside_taut(self.travel_m, length)),
             EventKind::TimeLimit => "still moving at the time limit".to_owned(),
         }
     }

@@ -3,7 +3,7 @@ use super::EstimateError;
 use crate::arrest::Fall;
 use crate::physics::{Absorber, Group, SeriesPath};
 use crate::quantity::{Dimension, UnitSystem, format_si};
-use crate::scenario::{AnchorKind, DampingLaw, Scenario, StretchLaw, Subject, SubjectKind};
+use crate::scenario::{AnchorKind, DampingLaw, LineKind, Scenario, StretchLaw, Subject, SubjectKind};
 
 /// What is solved, and what of the geometry the results need.
 pub struct Setup {
@@ -19,6 +19,9 @@ impl Setup {
     /// # Errors
     /// When the geometry contradicts itself or a law has no stiffness.
     pub fn of(scenario: &Scenario) -> Result<Self, EstimateError> {
+        if let Some((what, path)) = unsolved(scenario) {
+            return Err(not_solved(what, path));
+        }
         let attachment_start_m = attachment_start(scenario);
         let (other, joined) = other(scenario);
         let path = SeriesPath { line: line(scenario)?, other, absorber: absorber(scenario) };
@@ -31,6 +34,34 @@ impl Setup {
         };
         Ok(Self { fall, attachment_start_m, joined })
     }
+}
+
+fn not_solved(what: &str, path: &'static str) -> EstimateError {
+    EstimateError::Geometry {
+        message: format!("{what} is not solved yet"),
+        hint: "the file can be read and checked; its fall cannot be worked out by this version".to_owned(),
+        path,
+    }
+}
+
+/// What the file states and no solver here works out.
+fn unsolved(scenario: &Scenario) -> Option<(&'static str, &'static str)> {
+    let absorber = scenario.absorber.as_ref();
+    let found = [
+        (scenario.line.kind == LineKind::Retractable, "a retractable line", "line.kind"),
+        (scenario.line.kind == LineKind::Vertical, "a vertical line with a grab", "line.kind"),
+        (
+            scenario.place.anchor_offset.is_some_and(|m| m.si() != 0.0),
+            "an anchor beside the fall line",
+            "place.anchor_offset",
+        ),
+        (scenario.place.edge.is_some(), "a line over an edge", "place.edge"),
+        (matches!(scenario.line.stretch, StretchLaw::Curve(_)), "a force-elongation table", "line.curve"),
+        (absorber.is_some_and(|a| a.force_table.is_some()), "a table of deployment forces", "absorber.force_table"),
+        (absorber.is_some_and(|a| a.wet_cold_factor.is_some()), "a wet and cold factor", "absorber.wet_cold_factor"),
+        (matches!(scenario.anchor.kind, AnchorKind::Span(_)), "a horizontal lifeline", "anchor.kind"),
+    ];
+    found.into_iter().find(|(is, ..)| *is).map(|(_, what, path)| (what, path))
 }
 
 /// From the attachment down to the feet or to the underside, m.
@@ -88,6 +119,7 @@ fn stiffness(scenario: &Scenario) -> Result<f64, EstimateError> {
             force.si() * (force.si() - 2.0 * weight) / (2.0 * weight * fall_factor.si())
         }
         StretchLaw::StaticElongation { percent, from, to } => (force(to) - force(from)) / percent.si(),
+        StretchLaw::Curve(_) => return Err(not_solved("a force-elongation table", "line.curve")),
     };
     let length = scenario.line.length.map(|l| l.si());
     match length.map(|l| modulus / l) {
@@ -124,7 +156,7 @@ fn other(scenario: &Scenario) -> (Group, Option<&'static str>) {
     parts.extend(scenario.line.series_stiffness.map(|k| (k.si(), 0.0)));
     let sprung = match &scenario.anchor.kind {
         AnchorKind::Sprung(compliance) => Some(compliance),
-        AnchorKind::Fixed => None,
+        AnchorKind::Fixed | AnchorKind::Span(_) => None,
     };
     parts.extend(
         [scenario.harness.as_ref(), sprung]
@@ -141,6 +173,6 @@ fn other(scenario: &Scenario) -> (Group, Option<&'static str>) {
 
 fn absorber(scenario: &Scenario) -> Option<Absorber> {
     let absorber = scenario.absorber.as_ref()?;
-    let force = absorber.deploy_force.si();
-    Some(Absorber::constant(force, absorber.onset_force.map_or(force, |f| f.si()), absorber.stroke.si()))
+    let [_, force, _] = absorber.first_force_n();
+    Some(Absorber::constant(force, absorber.onset_force.map_or(force, |f| f.si()), absorber.stroke_m()))
 }

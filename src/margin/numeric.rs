@@ -97,7 +97,7 @@ impl Run<'_> {
 
     fn stroke(&self, list: &mut Vec<Check>) {
         let Some(absorber) = &self.scenario.absorber else { return };
-        let check = judge(CheckKind::Stroke, self.numbers.get("deployed_length"), Some(absorber.stroke.si()));
+        let check = judge(CheckKind::Stroke, self.numbers.get("deployed_length"), Some(absorber.stroke_m()));
         let used_up = self.numbers.get("stroke_used_up").is_some_and(|flag| flag != 0.0);
         list.push(if used_up { check.short(Cause::StrokeUsedUp) } else { check });
     }
@@ -214,7 +214,7 @@ fn static_elongation(scenario: &Scenario) -> Option<f64> {
         StretchLaw::Modulus(modulus) => modulus.si(),
         StretchLaw::Stiffness(stiffness) => stiffness.si() * scenario.line.length?.si(),
         StretchLaw::StaticElongation { percent, from, to } => (force(to) - force(from)) / percent.si(),
-        StretchLaw::RatedImpact { .. } => return None,
+        StretchLaw::RatedImpact { .. } | StretchLaw::Curve(_) => return None,
     };
     Some(STATIC_STEP_KG * gravity / modulus)
 }

@@ -1,6 +1,12 @@
-//! What exerts force: elastic laws, the absorber, the series path. SI throughout, unit in the name.
+//! What exerts force: elastic laws, the absorber, the series path, horizontal lifelines, and where a fall starts.
+//! SI throughout, unit in the name.
+pub mod cable;
+pub mod clearance;
 mod elastic;
+pub mod geometry;
+pub mod knots;
 mod path;
+pub mod span;
 
 pub use elastic::{Elastic, Piece, Table, TableError};
 pub use path::{Absorber, Group, SeriesPath};

@@ -87,3 +87,11 @@ pub struct SeriesPath {
     /// The absorber, if any.
     pub absorber: Option<Absorber>,
 }
+
+impl SeriesPath {
+    /// Whether no elastic part has a knot.
+    #[must_use]
+    pub const fn is_linear(&self) -> bool {
+        !matches!(self.line.elastic, Elastic::Table(_)) && !matches!(self.other.elastic, Elastic::Table(_))
+    }
+}

@@ -1,8 +1,7 @@
 //! From checked values to the scenario.
-use super::model::{
-    Absorber, Anchor, AnchorKind, Compliance, DampingLaw, Fall, LIMIT_KEYS, Limits, Line, LineKind, Obstacle, OwnLimit,
-    Place, Scenario, StretchLaw, Subject, SubjectKind,
-};
+use super::anchor::{Anchor, AnchorKind, Compliance, Span, SpanAbsorber, SpanTension};
+use super::line::{Absorber, DampingLaw, Line, LineKind, StretchLaw};
+use super::model::{Edge, Face, Fall, LIMIT_KEYS, Limits, Obstacle, OwnLimit, Place, Scenario, Subject, SubjectKind};
 use super::values::Values;
 use crate::quantity::{Measure, Unit};
 
@@ -18,13 +17,14 @@ pub(super) fn scenario(values: &mut Values) -> Option<Scenario> {
         datum: word(v, "datum"),
         gravity: m(v, "gravity").unwrap_or(Measure::exact(STANDARD_GRAVITY_M_PER_S2, Unit::MetrePerSecondSquared)),
         subject: subject(v)?,
-        place: Place { standing: m(v, "place.standing"), anchor: m(v, "place.anchor") },
+        place: place(v)?,
         fall: Fall { free_fall: m(v, "fall.free_fall") },
         line: line(v)?,
         absorber: if v.has("absorber") { Some(absorber(v)?) } else { None },
         harness: if v.has("harness") { Some(compliance(v, "harness")?) } else { None },
         anchor: anchor(v)?,
-        obstacles: (1..=v.obstacles).map(|n| obstacle(v, n)).collect::<Option<Vec<_>>>()?,
+        obstacles: (1..=v.count("obstacle")).map(|n| obstacle(v, n)).collect::<Option<Vec<_>>>()?,
+        faces: (1..=v.count("face")).map(|n| face(v, n)).collect::<Option<Vec<_>>>()?,
         limits: limits(v),
     })
 }
@@ -54,12 +54,30 @@ fn subject(v: &Values) -> Option<Subject> {
     })
 }
 
+fn place(v: &Values) -> Option<Place> {
+    let edge = |v| {
+        Some(Edge {
+            offset: m(v, "place.edge.offset")?,
+            elevation: m(v, "place.edge.elevation")?,
+            strength_factor: m(v, "place.edge.strength_factor"),
+        })
+    };
+    Some(Place {
+        standing: m(v, "place.standing"),
+        anchor: m(v, "place.anchor"),
+        anchor_offset: m(v, "place.anchor_offset"),
+        edge: if v.has("place.edge") { Some(edge(v)?) } else { None },
+    })
+}
+
 fn line(v: &Values) -> Option<Line> {
     let kind = match v.words.get("line.kind")?.as_str() {
         "lanyard" => LineKind::Lanyard,
         "rope" => LineKind::Rope,
         "webbing" => LineKind::Webbing,
         "cable" => LineKind::Cable,
+        "retractable" => LineKind::Retractable,
+        "vertical" => LineKind::Vertical,
         _ => return None,
     };
     let damping = match (m(v, "line.damping"), m(v, "line.damping_ratio")) {
@@ -75,6 +93,9 @@ fn line(v: &Values) -> Option<Line> {
         series_stiffness: m(v, "line.series_stiffness"),
         strength: m(v, "line.strength"),
         mass_per_length: m(v, "line.mass_per_length"),
+        lock_travel: m(v, "line.lock_travel"),
+        grab_slide: m(v, "line.grab_slide"),
+        slack: m(v, "line.slack"),
     })
 }
 
@@ -84,6 +105,9 @@ fn stretch(v: &Values) -> Option<StretchLaw> {
     }
     if let Some(modulus) = m(v, "line.modulus") {
         return Some(StretchLaw::Modulus(modulus));
+    }
+    if let Some(curve) = v.tables.get("line.curve") {
+        return Some(StretchLaw::Curve(curve.clone()));
     }
     if v.has("line.rated_impact") {
         return Some(StretchLaw::RatedImpact {
@@ -100,10 +124,17 @@ fn stretch(v: &Values) -> Option<StretchLaw> {
 }
 
 fn absorber(v: &Values) -> Option<Absorber> {
+    let deploy_force = m(v, "absorber.deploy_force");
+    let force_table = v.tables.get("absorber.force_table").cloned();
+    if deploy_force.is_none() && force_table.is_none() {
+        return None;
+    }
     Some(Absorber {
-        deploy_force: m(v, "absorber.deploy_force")?,
+        deploy_force,
+        force_table,
         onset_force: m(v, "absorber.onset_force"),
-        stroke: m(v, "absorber.stroke")?,
+        stroke: m(v, "absorber.stroke"),
+        wet_cold_factor: m(v, "absorber.wet_cold_factor"),
         rated_mass: m(v, "absorber.rated_mass"),
         rated_free_fall: m(v, "absorber.rated_free_fall"),
         packed_length: m(v, "absorber.packed_length"),
@@ -118,9 +149,43 @@ fn compliance(v: &Values, section: &str) -> Option<Compliance> {
 fn anchor(v: &Values) -> Option<Anchor> {
     let kind = match v.words.get("anchor.kind").map_or("fixed", String::as_str) {
         "sprung" => AnchorKind::Sprung(compliance(v, "anchor")?),
+        "span" => AnchorKind::Span(span(v)?),
         _ => AnchorKind::Fixed,
     };
     Some(Anchor { kind, capacity: m(v, "anchor.capacity") })
+}
+
+fn span(v: &Values) -> Option<Span> {
+    let key = |name: &str| m(v, &format!("anchor.span.{name}"));
+    let absorber =
+        || Some(SpanAbsorber { deploy_force: key("absorber.deploy_force")?, stroke: key("absorber.stroke")? });
+    let tension = match (key("pretension"), key("sag")) {
+        (Some(pretension), None) => SpanTension::Pretension(pretension),
+        (None, Some(sag)) => SpanTension::Sag(sag),
+        _ => return None,
+    };
+    Some(Span {
+        length: key("length")?,
+        at: key("at"),
+        tension,
+        modulus: key("modulus")?,
+        support_stiffness: key("support_stiffness"),
+        absorber: if v.has("anchor.span.absorber") { Some(absorber()?) } else { None },
+        workers: key("workers"),
+        spans: key("spans"),
+        level_difference: key("level_difference"),
+        strength: key("strength"),
+    })
+}
+
+fn face(v: &Values, n: usize) -> Option<Face> {
+    let key = |name: &str| format!("face.{n}.{name}");
+    Some(Face {
+        name: word(v, &key("name"))?,
+        offset: m(v, &key("offset"))?,
+        bottom: m(v, &key("bottom"))?,
+        top: m(v, &key("top"))?,
+    })
 }
 
 fn obstacle(v: &Values, n: usize) -> Option<Obstacle> {

@@ -1,6 +1,6 @@
 //! A scenario file being edited: comments, order and layout stay.
 use super::read::read_with_places;
-use super::{Fault, Faults, LoadError, Places, Scenario, Severity, edit, load};
+use super::{Change, Fault, Faults, LoadError, Places, Scenario, Severity, edit, load};
 use sha2::{Digest, Sha256};
 use std::io::Write;
 use std::path::{Path, PathBuf};
@@ -74,8 +74,17 @@ impl Document {
     /// # Errors
     /// The faults the file would have with that value.
     pub fn with_value(&self, input: &str, value: &str) -> Result<Self, Faults> {
+        self.with_changes(&[Change::Set { path: input.to_owned(), value: value.to_owned() }])
+    }
+
+    /// The same file with several keys written anew or taken out at once; the file is judged when all are done, so
+    /// that a kind can be changed together with the keys that belong to it.
+    ///
+    /// # Errors
+    /// The faults the file would have with these changes.
+    pub fn with_changes(&self, changes: &[Change]) -> Result<Self, Faults> {
         let file = self.path.display().to_string();
-        let text = edit::with_value(&self.text, &self.places, input, value).map_err(|message| {
+        let text = edit::with_changes(&self.text, changes).map_err(|message| {
             let hint = Some("choose an input that the file can hold".to_owned());
             let fault =
                 Fault { severity: Severity::Error, span: 0..0, message, expected: "cannot be set".into(), hint };

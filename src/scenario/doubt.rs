@@ -1,6 +1,7 @@
 //! What a reviewer should look at though the file can be read.
-use super::model::{DampingLaw, Obstacle, Scenario, StretchLaw, SubjectKind};
-use super::{Fault, Faults, Places, Severity, places};
+use super::line::{DampingLaw, StretchLaw};
+use super::model::{Obstacle, Scenario, SubjectKind};
+use super::{Fault, Faults, Places, Severity, doubt_rigging, places};
 use crate::quantity::format_measure;
 
 /// Heaviest person with tools that is not a doubt, kg: above every published rating of a personal absorber.
@@ -17,7 +18,7 @@ const GRAVITY_SPREAD_M_PER_S2: f64 = 0.05;
 const STANDARD_GRAVITY_M_PER_S2: f64 = 9.806_65;
 
 /// One doubt before it has its place.
-type Doubt = (String, String, &'static str, &'static str);
+pub(super) type Doubt = (String, String, &'static str, &'static str);
 
 /// Doubts about a file's own statements, sorted by place; the numbers of a run are not judged here.
 #[must_use]
@@ -31,6 +32,7 @@ pub fn doubts(file: &str, text: &str, scenario: &Scenario) -> Faults {
     found.extend(fall(scenario));
     found.extend(absorber(scenario));
     found.extend(line_strength(scenario));
+    found.extend(doubt_rigging::doubts(scenario));
     found.extend(harness(scenario));
     found.extend(datum(scenario));
     found.extend(obstacles(scenario));
@@ -48,7 +50,7 @@ fn placed((path, message, expected, hint): Doubt, places: &Places) -> Fault {
     }
 }
 
-fn doubt(path: &str, message: String, expected: &'static str, hint: &'static str) -> Doubt {
+pub(super) fn doubt(path: &str, message: String, expected: &'static str, hint: &'static str) -> Doubt {
     (path.to_owned(), message, expected, hint)
 }
 
@@ -108,8 +110,8 @@ fn gravity(scenario: &Scenario) -> Option<Doubt> {
 fn damping(scenario: &Scenario) -> Option<Doubt> {
     let (path, ratio) = match (&scenario.line.damping, &scenario.line.stretch) {
         (DampingLaw::Ratio(ratio), _) => ("line.damping_ratio", ratio.band.high),
-        (DampingLaw::Damping(damping), StretchLaw::Stiffness(stiffness)) => {
-            let critical = 2.0 * (scenario.subject.mass.si() * stiffness.si()).sqrt();
+        (DampingLaw::Damping(damping), law) => {
+            let critical = 2.0 * (scenario.subject.mass.si() * first_stiffness(law)?).sqrt();
             ("line.damping", damping.band.high / critical)
         }
         _ => return None,
@@ -120,6 +122,15 @@ fn damping(scenario: &Scenario) -> Option<Doubt> {
             "textile and wire lines are far below 1; the force jump at taut grows with it, see `line.series_stiffness`";
         doubt(path, message, "overdamped line", hint)
     })
+}
+
+/// Stiffness of a law that states it, N/m; of a table its first piece.
+fn first_stiffness(law: &StretchLaw) -> Option<f64> {
+    match law {
+        StretchLaw::Stiffness(stiffness) => Some(stiffness.si()),
+        StretchLaw::Curve(rows) => rows.get(1).map(|(elongation_m, force_n)| force_n / elongation_m),
+        _ => None,
+    }
 }
 
 fn fall(scenario: &Scenario) -> Vec<Doubt> {
@@ -159,9 +170,10 @@ fn absorber(scenario: &Scenario) -> Vec<Doubt> {
     let Some(absorber) = &scenario.absorber else { return Vec::new() };
     let mut found = Vec::new();
     let weight_n = scenario.subject.mass.band.high * scenario.gravity.si();
-    if absorber.deploy_force.band.low <= weight_n {
-        let message =
-            format!("a deployment force of `{}` does not exceed the weight", format_measure(&absorber.deploy_force));
+    if let Some(force) = absorber.deploy_force
+        && force.band.low <= weight_n
+    {
+        let message = format!("a deployment force of `{}` does not exceed the weight", format_measure(&force));
         let hint = "such an absorber cannot stop the fall before its stroke is used up; check force, mass and units";
         found.push(doubt("absorber.deploy_force", message, "not above the weight", hint));
     }
@@ -179,8 +191,8 @@ fn absorber(scenario: &Scenario) -> Vec<Doubt> {
 
 fn line_strength(scenario: &Scenario) -> Option<Doubt> {
     let (strength, absorber) = scenario.line.strength.zip(scenario.absorber.as_ref())?;
-    let onset = absorber.onset_force.unwrap_or(absorber.deploy_force);
-    (strength.band.low < onset.band.high).then(|| {
+    let onset_n = absorber.onset_force.map_or(absorber.first_force_n()[2], |onset| onset.band.high);
+    (strength.band.low < onset_n).then(|| {
         let message = format!("the line breaks at `{}`, before the absorber starts", format_measure(&strength));
         doubt("line.strength", message, "below the onset force", "check both numbers and their units")
     })

@@ -77,7 +77,7 @@ pub(super) fn parse(field: &Field, dimension: Dimension, written: &str) -> Resul
 }
 
 /// The place of a part of a quoted text; the whole value where quotes or escapes hide it.
-fn inner_span(text: &str, value: Range<usize>, written: &str, part: Range<usize>) -> Range<usize> {
+pub(super) fn inner_span(text: &str, value: Range<usize>, written: &str, part: Range<usize>) -> Range<usize> {
     let inside = value.start + 1..value.end.saturating_sub(1);
     match text.get(inside.clone()) {
         Some(raw) if raw == written && !part.is_empty() => inside.start + part.start..inside.start + part.end,

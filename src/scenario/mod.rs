@@ -1,24 +1,35 @@
 //! The scenario file: from TOML text to a checked [`Scenario`], with every fault of the file at once.
+mod anchor;
 mod build;
+mod change;
 mod clash;
 mod diagnostic;
 mod document;
 mod doubt;
+mod doubt_rigging;
 mod edit;
 mod field;
+mod keys;
 mod leaf;
+mod line;
 mod load;
 mod model;
 mod path;
 mod read;
 mod rules;
+mod span_clash;
+mod table;
 mod template;
 mod values;
 
+pub use anchor::*;
+pub use change::{Change, kind_changes};
 pub use diagnostic::{Fault, FaultRow, Faults, Severity};
 pub use document::{Document, SaveError};
 pub use doubt::doubts;
-pub use field::{FIELDS, Field, Need, field_for};
+pub use field::{Field, Need, field_for};
+pub use keys::FIELDS;
+pub use line::*;
 pub use load::{LoadError, Loaded, load};
 pub use model::*;
 pub use path::{Input, inputs, with_value};

@@ -1,4 +1,6 @@
 //! A scenario whose every value has been checked; SI inside, the file's units kept beside.
+use super::anchor::{Anchor, Compliance};
+use super::line::{Absorber, Line};
 use crate::quantity::Measure;
 
 /// Everything a file says.
@@ -28,6 +30,8 @@ pub struct Scenario {
     pub anchor: Anchor,
     /// What must not be touched.
     pub obstacles: Vec<Obstacle>,
+    /// Vertical faces that a swing could strike.
+    pub faces: Vec<Face>,
     /// Limits to check against.
     pub limits: Limits,
 }
@@ -67,6 +71,21 @@ pub struct Place {
     pub standing: Option<Measure>,
     /// Anchor elevation, m.
     pub anchor: Option<Measure>,
+    /// Horizontal offset of the anchor from the fall line, m, right positive; 0 where absent.
+    pub anchor_offset: Option<Measure>,
+    /// The edge that the line runs over, if any.
+    pub edge: Option<Edge>,
+}
+
+/// An edge that the line runs over.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Edge {
+    /// Horizontal offset from the fall line, m, right positive.
+    pub offset: Measure,
+    /// Elevation, m.
+    pub elevation: Measure,
+    /// The user's own number that divides the line's strength at the edge, at least 1; 1 where absent.
+    pub strength_factor: Option<Measure>,
 }
 
 /// The fall, where it is stated and not worked out.
@@ -74,120 +93,6 @@ pub struct Place {
 pub struct Fall {
     /// Free-fall distance, m.
     pub free_fall: Option<Measure>,
-}
-
-/// Kind of line.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum LineKind {
-    /// Lanyard.
-    Lanyard,
-    /// Rope.
-    Rope,
-    /// Webbing.
-    Webbing,
-    /// Wire cable.
-    Cable,
-}
-
-/// The one law of the line's stretch, as the file states it.
-#[derive(Clone, Debug, PartialEq)]
-pub enum StretchLaw {
-    /// Stiffness, N/m.
-    Stiffness(Measure),
-    /// Force per unit strain, N.
-    Modulus(Measure),
-    /// A rated drop: largest force, mass, fall factor.
-    RatedImpact {
-        /// Largest force of the rated drop, N.
-        force: Measure,
-        /// Mass of the rated drop, kg.
-        mass: Measure,
-        /// Fall factor of the rated drop.
-        fall_factor: Measure,
-    },
-    /// Elongation in percent between two loads (forces in N; a mass was turned into its weight).
-    StaticElongation {
-        /// Elongation between the loads, as a ratio (0.05 for 5 %).
-        percent: Measure,
-        /// The smaller load, as written (mass or force).
-        from: Measure,
-        /// The larger load, as written (mass or force).
-        to: Measure,
-    },
-}
-
-/// Damping of the line, as the file states it.
-#[derive(Clone, Debug, PartialEq)]
-pub enum DampingLaw {
-    /// No key: no damping.
-    None,
-    /// Viscous damping, N s/m.
-    Damping(Measure),
-    /// Ratio about the subject's mass and the line's own stiffness.
-    Ratio(Measure),
-}
-
-/// The line.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Line {
-    /// Kind.
-    pub kind: LineKind,
-    /// Length with any packed absorber, m.
-    pub length: Option<Measure>,
-    /// The law of its stretch.
-    pub stretch: StretchLaw,
-    /// Its damping.
-    pub damping: DampingLaw,
-    /// The spring in series of the three-parameter line, N/m.
-    pub series_stiffness: Option<Measure>,
-    /// Breaking strength, N.
-    pub strength: Option<Measure>,
-    /// Mass per length, kg/m; information only.
-    pub mass_per_length: Option<Measure>,
-}
-
-/// Energy absorber.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Absorber {
-    /// Deployment force, N.
-    pub deploy_force: Measure,
-    /// Force at which deployment first starts, N; the deployment force where absent.
-    pub onset_force: Option<Measure>,
-    /// Largest deployed length, m.
-    pub stroke: Measure,
-    /// Largest mass it is rated for, kg.
-    pub rated_mass: Option<Measure>,
-    /// Largest free fall it is rated for, m.
-    pub rated_free_fall: Option<Measure>,
-    /// Length it takes while packed, part of the line's length, m.
-    pub packed_length: Option<Measure>,
-}
-
-/// A spring with its damper.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Compliance {
-    /// Stiffness, N/m.
-    pub stiffness: Measure,
-    /// Damping, N s/m.
-    pub damping: Option<Measure>,
-}
-
-/// What the line hangs from.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Anchor {
-    /// Fixed or sprung.
-    pub kind: AnchorKind,
-    /// What the anchor carries, N.
-    pub capacity: Option<Measure>,
-}
-
-/// Kind of anchor.
-#[derive(Clone, Debug, PartialEq)]
-pub enum AnchorKind {
-    /// Does not move.
-    Fixed,
-    /// Gives on a spring.
-    Sprung(Compliance),
 }
 
 /// A level that must not be touched.
@@ -211,6 +116,27 @@ impl Obstacle {
         self.extent.is_none_or(|(from, to)| from.si() <= half_width && to.si() >= -half_width)
     }
 
+    /// Name as used in ids: lower case, `_` for blanks.
+    #[must_use]
+    pub fn id(&self) -> String {
+        id_of(&self.name)
+    }
+}
+
+/// A vertical face that a swing could strike.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Face {
+    /// Name, unique in the file, obstacles included.
+    pub name: String,
+    /// Horizontal offset from the fall line, m, right positive.
+    pub offset: Measure,
+    /// Elevation of its lower end, m.
+    pub bottom: Measure,
+    /// Elevation of its upper end, m, above the lower one.
+    pub top: Measure,
+}
+
+impl Face {
     /// Name as used in ids: lower case, `_` for blanks.
     #[must_use]
     pub fn id(&self) -> String {

@@ -1,7 +1,10 @@
 //! Addressing an input by its path.
-use super::field::{FIELDS, Field, field_for};
-use super::model::{AnchorKind, DampingLaw, Obstacle, Scenario, StretchLaw};
-use super::{clash, field};
+use super::anchor::{AnchorKind, Compliance, Span, SpanTension};
+use super::clash;
+use super::field::{Field, LISTS, field_for, list_of};
+use super::keys::FIELDS;
+use super::line::{DampingLaw, StretchLaw};
+use super::model::{Face, Obstacle, Place, Scenario};
 use crate::quantity::Measure;
 
 /// One numeric input of a scenario, present in it.
@@ -21,15 +24,17 @@ pub struct Input {
 #[must_use]
 pub fn inputs(scenario: &Scenario) -> Vec<Input> {
     let mut scenario = scenario.clone();
-    let obstacles = scenario.obstacles.len();
+    let counts = [scenario.obstacles.len(), scenario.faces.len()];
     let mut found = Vec::new();
-    let numeric = |field: &&Field| field.dimension.is_some() && !field.path.starts_with(field::OBSTACLE);
+    let numeric = |field: &&Field| field.dimension.is_some() && list_of(field.path).is_none();
     for field in FIELDS.iter().filter(numeric) {
         found.extend(input(&mut scenario, field.path.to_owned(), field));
     }
-    for n in 1..=obstacles {
-        for field in FIELDS.iter().filter(|field| field.path.starts_with(field::OBSTACLE)) {
-            found.extend(input(&mut scenario, field.path.replace('*', &n.to_string()), field));
+    for (list, count) in LISTS.into_iter().zip(counts) {
+        for n in 1..=count {
+            for field in FIELDS.iter().filter(|field| list_of(field.path) == Some(list)) {
+                found.extend(input(&mut scenario, field.path.replace('*', &n.to_string()), field));
+            }
         }
     }
     found
@@ -77,21 +82,38 @@ fn measure_mut<'s>(scenario: &'s mut Scenario, path: &str) -> Option<&'s mut Mea
     match section {
         "" => (key == "gravity").then_some(&mut scenario.gravity),
         "subject" => subject(scenario, key),
-        "place" => match key {
-            "standing" => scenario.place.standing.as_mut(),
-            "anchor" => scenario.place.anchor.as_mut(),
-            _ => None,
-        },
+        "place" => place(&mut scenario.place, key),
         "fall" => scenario.fall.free_fall.as_mut().filter(|_| key == "free_fall"),
         "line" => line(scenario, key),
         "absorber" => absorber(scenario, key),
         "harness" => spring(scenario.harness.as_mut()?, key),
         "anchor" => anchor(scenario, key),
         "obstacle" => {
-            let (number, key) = key.split_once('.')?;
-            let index = number.parse::<usize>().ok()?.checked_sub(1)?;
+            let (index, key) = entry(key)?;
             obstacle(scenario.obstacles.get_mut(index)?, key)
         }
+        "face" => {
+            let (index, key) = entry(key)?;
+            face(scenario.faces.get_mut(index)?, key)
+        }
+        _ => None,
+    }
+}
+
+/// `2.top` as place in a list from 0, and key.
+fn entry(key: &str) -> Option<(usize, &str)> {
+    let (number, key) = key.split_once('.')?;
+    Some((number.parse::<usize>().ok()?.checked_sub(1)?, key))
+}
+
+fn place<'s>(place: &'s mut Place, key: &str) -> Option<&'s mut Measure> {
+    match (key, place.edge.as_mut()) {
+        ("standing", _) => place.standing.as_mut(),
+        ("anchor", _) => place.anchor.as_mut(),
+        ("anchor_offset", _) => place.anchor_offset.as_mut(),
+        ("edge.offset", Some(edge)) => Some(&mut edge.offset),
+        ("edge.elevation", Some(edge)) => Some(&mut edge.elevation),
+        ("edge.strength_factor", Some(edge)) => edge.strength_factor.as_mut(),
         _ => None,
     }
 }
@@ -116,6 +138,9 @@ fn line<'s>(scenario: &'s mut Scenario, key: &str) -> Option<&'s mut Measure> {
         "series_stiffness" => line.series_stiffness.as_mut(),
         "strength" => line.strength.as_mut(),
         "mass_per_length" => line.mass_per_length.as_mut(),
+        "lock_travel" => line.lock_travel.as_mut(),
+        "grab_slide" => line.grab_slide.as_mut(),
+        "slack" => line.slack.as_mut(),
         "damping" | "damping_ratio" => match (&mut line.damping, key) {
             (DampingLaw::Damping(measure), "damping") | (DampingLaw::Ratio(measure), "damping_ratio") => Some(measure),
             _ => None,
@@ -141,9 +166,10 @@ fn stretch<'s>(law: &'s mut StretchLaw, key: &str) -> Option<&'s mut Measure> {
 fn absorber<'s>(scenario: &'s mut Scenario, key: &str) -> Option<&'s mut Measure> {
     let absorber = scenario.absorber.as_mut()?;
     match key {
-        "deploy_force" => Some(&mut absorber.deploy_force),
+        "deploy_force" => absorber.deploy_force.as_mut(),
         "onset_force" => absorber.onset_force.as_mut(),
-        "stroke" => Some(&mut absorber.stroke),
+        "stroke" => absorber.stroke.as_mut(),
+        "wet_cold_factor" => absorber.wet_cold_factor.as_mut(),
         "rated_mass" => absorber.rated_mass.as_mut(),
         "rated_free_fall" => absorber.rated_free_fall.as_mut(),
         "packed_length" => absorber.packed_length.as_mut(),
@@ -151,7 +177,7 @@ fn absorber<'s>(scenario: &'s mut Scenario, key: &str) -> Option<&'s mut Measure
     }
 }
 
-fn spring<'s>(compliance: &'s mut super::Compliance, key: &str) -> Option<&'s mut Measure> {
+fn spring<'s>(compliance: &'s mut Compliance, key: &str) -> Option<&'s mut Measure> {
     match key {
         "stiffness" => Some(&mut compliance.stiffness),
         "damping" => compliance.damping.as_mut(),
@@ -163,7 +189,34 @@ fn anchor<'s>(scenario: &'s mut Scenario, key: &str) -> Option<&'s mut Measure> 
     match (&mut scenario.anchor.kind, key) {
         (_, "capacity") => scenario.anchor.capacity.as_mut(),
         (AnchorKind::Sprung(compliance), key) => spring(compliance, key),
+        (AnchorKind::Span(span), key) => self::span(span, key.strip_prefix("span.")?),
         (AnchorKind::Fixed, _) => None,
+    }
+}
+
+fn span<'s>(span: &'s mut Span, key: &str) -> Option<&'s mut Measure> {
+    match (key, &mut span.tension, &mut span.absorber) {
+        ("length", ..) => Some(&mut span.length),
+        ("at", ..) => span.at.as_mut(),
+        ("pretension", SpanTension::Pretension(measure), _) | ("sag", SpanTension::Sag(measure), _) => Some(measure),
+        ("modulus", ..) => Some(&mut span.modulus),
+        ("support_stiffness", ..) => span.support_stiffness.as_mut(),
+        ("level_difference", ..) => span.level_difference.as_mut(),
+        ("workers", ..) => span.workers.as_mut(),
+        ("spans", ..) => span.spans.as_mut(),
+        ("strength", ..) => span.strength.as_mut(),
+        ("absorber.deploy_force", _, Some(absorber)) => Some(&mut absorber.deploy_force),
+        ("absorber.stroke", _, Some(absorber)) => Some(&mut absorber.stroke),
+        _ => None,
+    }
+}
+
+fn face<'s>(face: &'s mut Face, key: &str) -> Option<&'s mut Measure> {
+    match key {
+        "offset" => Some(&mut face.offset),
+        "bottom" => Some(&mut face.bottom),
+        "top" => Some(&mut face.top),
+        _ => None,
     }
 }
 

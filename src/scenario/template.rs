@@ -1,5 +1,6 @@
 //! The annotated file that `underfoot new` prints.
-use super::field::{FIELDS, Field, Need};
+use super::field::{Field, Need};
+use super::keys::FIELDS;
 
 /// Optional keys that stand in the new file as keys and not as comments.
 const SHOWN: &[&str] = &[
@@ -13,6 +14,8 @@ const SHOWN: &[&str] = &[
     "line.stiffness",
     "line.damping_ratio",
     "line.strength",
+    "absorber.deploy_force",
+    "absorber.stroke",
     "absorber.rated_mass",
     "absorber.rated_free_fall",
     "anchor.capacity",
@@ -21,7 +24,10 @@ const SHOWN: &[&str] = &[
 ];
 
 /// Sections that stand in the new file as comments.
-const OPTIONAL_SECTIONS: &[&str] = &["fall", "harness", "line.rated_impact", "line.static_elongation"];
+const OPTIONAL_SECTIONS: &[&str] = &["place.edge", "fall", "harness", "anchor.span", "anchor.span.absorber", "face.*"];
+
+/// Sections that stand in the new file as one key with a table in braces.
+const IN_ONE_LINE: &[&str] = &["line.rated_impact", "line.static_elongation"];
 
 /// Longest line of the new file; a longer note stands above its key.
 const LONGEST_LINE: usize = 116;
@@ -49,7 +55,8 @@ pub fn new_file() -> String {
 fn header(section: &str) -> String {
     match section {
         "obstacle.*" => "\n[[obstacle]]\n".to_owned(),
-        "line.rated_impact" | "line.static_elongation" => {
+        "face.*" => "\n# [[face]]\n".to_owned(),
+        section if IN_ONE_LINE.contains(&section) => {
             let key = section.trim_start_matches("line.");
             format!("# {key} = {{ {} }}  # instead\n", members(section))
         }
@@ -70,15 +77,19 @@ fn members(section: &str) -> String {
 }
 
 fn key_line(field: &Field, section: &str) -> String {
-    if matches!(section, "line.rated_impact" | "line.static_elongation") {
+    if IN_ONE_LINE.contains(&section) {
         return String::new();
+    }
+    if field.path == "line.kind" {
+        let note = format!("{}: {}", field.doc, field.words.join(", "));
+        return format!("# {note}\n{} = {}\n", field.key(), field.example);
     }
     let shown = SHOWN.contains(&field.path)
         || field.need == Need::Always
         || (field.need == Need::InSection && !OPTIONAL_SECTIONS.contains(&section));
     let mark = if shown { "" } else { "# " };
     let note = match (field.path, field.need) {
-        ("line.kind", _) => ": lanyard, rope, webbing or cable".to_owned(),
+        ("anchor.kind", _) => "; fixed, sprung or span".to_owned(),
         ("fall.free_fall", _) => "; instead of place.anchor".to_owned(),
         ("line.modulus", _) => "; instead of stiffness".to_owned(),
         (_, Need::Default(default)) if default != "none" => format!("; {default} if absent"),

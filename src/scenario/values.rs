@@ -1,14 +1,15 @@
 //! The first pass over a file: every key to its value and place, every fault of a single value.
-use super::field::{FIELDS, Field, LATER_WORDS, field_for};
-use super::{Fault, Severity, leaf};
+use super::field::{Field, LISTS, field_for, list_of, pattern_of};
+use super::keys::FIELDS;
+use super::{Fault, Severity, leaf, table};
 use crate::quantity::Measure;
 use std::collections::BTreeMap;
 use std::ops::Range;
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
-/// More obstacles than a hand-written file has.
-pub(super) const MOST_OBSTACLES: usize = 200;
+/// More obstacles and faces than a hand-written file has.
+const MOST_ENTRIES: usize = 200;
 
 /// What the file holds, by concrete path.
 #[derive(Default)]
@@ -21,8 +22,10 @@ pub(super) struct Values {
     pub whys: BTreeMap<String, String>,
     /// Where each key's value stands, also of refused ones; sections stand at their name.
     pub spans: BTreeMap<String, Range<usize>>,
-    /// How many obstacles there are.
-    pub obstacles: usize,
+    /// Tables that were read, SI.
+    pub tables: BTreeMap<String, Vec<(f64, f64)>>,
+    /// How many obstacles and faces there are, by the name of the list.
+    pub counts: BTreeMap<&'static str, usize>,
     /// What was wrong.
     pub faults: Vec<Fault>,
 }
@@ -40,6 +43,11 @@ impl Values {
         self.spans.contains_key(path)
     }
 
+    /// How many entries a list has.
+    pub fn count(&self, list: &str) -> usize {
+        self.counts.get(list).copied().unwrap_or(0)
+    }
+
     /// Notes an error.
     pub fn error(&mut self, span: Range<usize>, message: String, expected: &str, hint: Option<String>) {
         let expected = expected.to_owned();
@@ -54,7 +62,10 @@ impl Values {
                 (true, Some(field)) if !field.ready => self.later(key.span(), &format!("`{path}`")),
                 (true, Some(field)) => {
                     self.spans.insert(path.clone(), value.span());
-                    leaf::read(self, text, &path, field, value);
+                    match field.columns {
+                        Some(columns) => table::read(self, text, &path, field, columns, value),
+                        None => leaf::read(self, text, &path, field, value),
+                    }
                 }
                 (true, None) if is_section(&path) => self.section(text, &path, key.span(), value),
                 _ => {
@@ -71,13 +82,14 @@ impl Values {
         if value.get_ref().is_table() || value.get_ref().is_array() {
             self.spans.insert(path.to_owned(), at.clone());
         }
-        match (path, value.get_ref()) {
-            ("obstacle", DeValue::Array(list)) if list.iter().all(|entry| entry.get_ref().is_table()) => {
-                self.obstacles(text, list.iter());
+        let list = LISTS.into_iter().find(|list| *list == path);
+        match (list, value.get_ref()) {
+            (Some(list), DeValue::Array(entries)) if entries.iter().all(|entry| entry.get_ref().is_table()) => {
+                self.list(text, list, entries.iter());
             }
-            ("obstacle", _) => {
-                let hint = Some("write each obstacle below a line `[[obstacle]]` of its own".to_owned());
-                self.error(at, "`obstacle` is not a list".into(), "expected [[obstacle]]", hint);
+            (Some(list), _) => {
+                let hint = Some(format!("write each {list} below a line `[[{list}]]` of its own"));
+                self.error(at, format!("`{list}` is not a list"), &format!("expected [[{list}]]"), hint);
             }
             (_, DeValue::Table(table)) => self.walk(text, path, table),
             _ => {
@@ -88,15 +100,20 @@ impl Values {
         }
     }
 
-    fn obstacles<'v, 'i: 'v>(&mut self, text: &str, list: impl Iterator<Item = &'v Spanned<DeValue<'i>>>) {
-        for (index, entry) in list.enumerate() {
-            if index == MOST_OBSTACLES {
-                let hint = Some("keep the obstacles that the subject can reach".to_owned());
-                let message = format!("more than {MOST_OBSTACLES} obstacles");
+    fn list<'v, 'i: 'v>(
+        &mut self,
+        text: &str,
+        list: &'static str,
+        entries: impl Iterator<Item = &'v Spanned<DeValue<'i>>>,
+    ) {
+        for (index, entry) in entries.enumerate() {
+            if self.counts.values().sum::<usize>() == MOST_ENTRIES {
+                let hint = Some("keep the obstacles and faces that the subject can reach".to_owned());
+                let message = format!("more than {MOST_ENTRIES} obstacles and faces");
                 return self.error(entry.span(), message, "one too many", hint);
             }
-            self.obstacles += 1;
-            let path = format!("obstacle.{}", index + 1);
+            *self.counts.entry(list).or_default() += 1;
+            let path = format!("{list}.{}", index + 1);
             self.spans.insert(path.clone(), entry.span());
             if let Some(table) = entry.get_ref().as_table() {
                 self.walk(text, &path, table);
@@ -104,8 +121,8 @@ impl Values {
         }
     }
 
-    /// A key or word that a later version will read.
-    pub fn later(&mut self, span: Range<usize>, what: &str) {
+    /// A key that a later version will read.
+    fn later(&mut self, span: Range<usize>, what: &str) {
         let hint = Some("a later version will read it; take it out or keep it in a comment until then".to_owned());
         self.error(span, format!("{what} is not read by this version"), "not supported yet", hint);
     }
@@ -136,16 +153,11 @@ impl Values {
 
     /// A word out of a list, or a fault.
     pub fn word(&mut self, path: &str, field: &Field, at: Range<usize>, word: &str) {
-        if field.words.is_empty() {
-            self.words.insert(path.to_owned(), word.to_owned());
-        } else if LATER_WORDS.contains(&(field.path, word)) {
-            self.later(at, &format!("`{word}`"));
-        } else if field.words.contains(&word) {
+        if field.words.is_empty() || field.words.contains(&word) {
             self.words.insert(path.to_owned(), word.to_owned());
         } else {
-            let ready = field.words.iter().copied().filter(|word| !LATER_WORDS.contains(&(field.path, *word)));
-            let list = ready.clone().collect::<Vec<_>>().join("`, `");
-            let hint = match nearest(word, ready) {
+            let list = field.words.join("`, `");
+            let hint = match nearest(word, field.words.iter().copied()) {
                 Some(near) => format!("did you mean `{near}`? known: `{list}`"),
                 None => format!("known: `{list}`"),
             };
@@ -168,12 +180,12 @@ fn plain(name: &str) -> bool {
 
 /// True when keys stand below the path.
 fn is_section(path: &str) -> bool {
-    path == "obstacle" || children(path).next().is_some()
+    LISTS.contains(&path) || children(path).next().is_some()
 }
 
 /// The names that may stand directly below a path, each once.
 fn children(prefix: &str) -> impl Iterator<Item = &'static str> {
-    let pattern = if prefix.starts_with("obstacle.") { "obstacle.*".to_owned() } else { prefix.to_owned() };
+    let pattern = if list_of(prefix).is_some() { pattern_of(prefix) } else { prefix.to_owned() };
     let mut last = "";
     FIELDS.iter().filter_map(move |field| {
         let rest =

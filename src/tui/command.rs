@@ -44,6 +44,8 @@ pub enum Command {
     History,
     /// The margins.
     Margins,
+    /// The view Notes.
+    Notes,
     /// The next view.
     NextView,
     /// Play or pause the fall.
@@ -277,6 +279,14 @@ pub const COMMANDS: &[Entry] = &[
         Group::View,
     ),
     entry(Command::Margins, "margins", &[Key::letter('3')], "", "Margins: every check with its limit", Group::View),
+    entry(
+        Command::Notes,
+        "notes",
+        &[Key::letter('4')],
+        "",
+        "Notes: warnings, limits, assumptions and cautions; page-up and page-down scroll",
+        Group::View,
+    ),
     entry(Command::NextView, "next-view", &[Key::letter('v')], "view", "the next view", Group::View),
     entry(
         Command::Window,

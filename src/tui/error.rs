@@ -10,10 +10,12 @@ pub enum ScreenError {
         stream: &'static str,
     },
     /// Ended by a signal.
-    #[error("ended by signal {signal}; unsaved changes are lost")]
+    #[error("ended by signal {signal}{}", if *.unsaved { "; unsaved changes were not written" } else { "" })]
     Signal {
         /// Number of the signal.
         signal: i32,
+        /// Whether there were changes not yet in the file.
+        unsaved: bool,
     },
     /// Interrupted from the keyboard.
     #[error("interrupted")]
@@ -26,7 +28,7 @@ impl ScreenError {
     pub fn exit_code(&self) -> u8 {
         match self {
             Self::NoTerminal { .. } => 2,
-            Self::Signal { signal } => u8::try_from(128 + signal).unwrap_or(130),
+            Self::Signal { signal, .. } => u8::try_from(128 + signal).unwrap_or(130),
             Self::Interrupted => 130,
         }
     }

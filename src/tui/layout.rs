@@ -57,7 +57,7 @@ impl Panes {
         if has_margins_below(size) {
             panes.place_margins(&mut rest, model);
         }
-        panes.place_body(rest, model.view != View::Margins || has_margins_below(size));
+        panes.place_body(rest, matches!(model.view, View::Elevation | View::History));
         Some(panes)
     }
 
@@ -108,7 +108,7 @@ pub const fn has_margins_below(size: Size) -> bool {
 /// Views that have a tab at this size.
 #[must_use]
 pub fn views(size: Size) -> &'static [View] {
-    if has_margins_below(size) { &View::ALL[..2] } else { &View::ALL }
+    if has_margins_below(size) { &[View::Elevation, View::History, View::Notes] } else { &View::ALL }
 }
 
 /// Rows that a text takes when wrapped.

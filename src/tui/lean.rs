@@ -1,7 +1,7 @@
 //! Which way raising an input moves the governing margin, by a small step to both sides.
 use crate::estimate::{Estimate, estimate};
 use crate::margin::{Check, Rules, checks, governing_first};
-use crate::scenario::{Input, Scenario, with_value};
+use crate::scenario::{AnchorKind, DampingLaw, Input, Scenario, with_value};
 use crate::sheet::Report;
 
 /// The arrow beside an input.
@@ -57,7 +57,24 @@ const PHASES_PER_FRAME: usize = 4000;
 /// True when working out the arrows takes longer than a frame may: long undamped motions with many phases.
 #[must_use]
 pub fn is_slow(inputs: &[Input], report: &Report) -> bool {
-    2 * inputs.len() * report.estimate.trace.phases().len() > PHASES_PER_FRAME
+    let each = if is_coupled(&report.scenario) { COUPLED_PHASE } else { 1 };
+    2 * inputs.len() * report.estimate.trace.phases().len() * each > PHASES_PER_FRAME
+}
+
+/// A phase of two groups with a damper between springs takes about so many times as long as one of a single group.
+const COUPLED_PHASE: usize = 25;
+
+/// Line and other parts both stretch, and a damper makes their stretches move on their own.
+fn is_coupled(scenario: &Scenario) -> bool {
+    let sprung = match &scenario.anchor.kind {
+        AnchorKind::Sprung(spring) => Some(spring),
+        AnchorKind::Fixed | AnchorKind::Span(_) => None,
+    };
+    let others = [sprung, scenario.harness.as_ref()];
+    let is_span = matches!(scenario.anchor.kind, AnchorKind::Span(_));
+    let is_other_soft = is_span || scenario.line.series_stiffness.is_some() || others.iter().any(Option::is_some);
+    let is_other_damped = others.into_iter().flatten().any(|other| other.damping.is_some());
+    is_other_soft && (is_other_damped || scenario.line.damping != DampingLaw::None)
 }
 
 /// The arrows of all inputs, in their order.

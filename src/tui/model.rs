@@ -18,11 +18,13 @@ pub enum View {
     History,
     /// Every check; a view of its own only where the margins find no room below.
     Margins,
+    /// What must be read beside the numbers.
+    Notes,
 }
 
 impl View {
     /// All views in the order of the tabs.
-    pub const ALL: [Self; 3] = [Self::Elevation, Self::History, Self::Margins];
+    pub const ALL: [Self; 4] = [Self::Elevation, Self::History, Self::Margins, Self::Notes];
 
     /// The name on the tab.
     #[must_use]
@@ -31,6 +33,7 @@ impl View {
             Self::Elevation => "Elevation",
             Self::History => "History",
             Self::Margins => "Margins",
+            Self::Notes => "Notes",
         }
     }
 }
@@ -86,6 +89,15 @@ pub struct Notice {
     pub is_fault: bool,
 }
 
+/// A time axis that the mouse holds.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Scrubbing {
+    /// The play bar.
+    Bar,
+    /// The plots of History.
+    Plot,
+}
+
 /// The stretch of time that History shows.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
 pub enum Window {
@@ -109,7 +121,7 @@ pub struct Play {
 
 impl Play {
     /// Seconds of the fall for each second of watching, with their names.
-    pub const SPEEDS: [(f64, &'static str); 8] = [
+    pub const SPEEDS: [(f64, &'static str); 9] = [
         (0.01, "1/100"),
         (0.02, "1/50"),
         (0.05, "1/20"),
@@ -118,6 +130,7 @@ impl Play {
         (0.5, "1/2"),
         (1.0, "1/1"),
         (2.0, "2/1"),
+        (5.0, "5/1"),
     ];
 
     /// Rate and name of the present speed.
@@ -188,6 +201,10 @@ pub struct Model {
     pub check: usize,
     /// The large view.
     pub view: View,
+    /// First row shown of the notes.
+    pub notes_row: usize,
+    /// Where the mouse button went down on a time axis and still is.
+    pub scrubbing: Option<Scrubbing>,
     /// Stretch of time in History.
     pub window: Window,
     /// Play head.
@@ -223,6 +240,8 @@ impl Model {
             input: 0,
             check: 0,
             view: View::default(),
+            notes_row: 0,
+            scrubbing: None,
             window: Window::default(),
             play: Play { time_s: 0.0, running: false, speed: 3 },
             mode: Mode::default(),

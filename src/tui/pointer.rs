@@ -3,9 +3,9 @@ use super::command::Command;
 use super::edit::Nudge;
 use super::layout::{Panes, views};
 use super::message::{Effect, Message};
-use super::model::{Mode, Model, Pane, View};
+use super::model::{Mode, Model, Pane, Scrubbing, View};
 use super::panes::{history, inputs, log, margins, tabs};
-use super::update::{show_margins, update, walk};
+use super::update::{scroll_notes, show_margins, update, walk};
 use crossterm::event::{MouseButton, MouseEvent, MouseEventKind};
 use ratatui::layout::{Position, Rect};
 
@@ -18,7 +18,8 @@ pub(super) fn point(model: &mut Model, event: MouseEvent) -> Vec<Effect> {
     let at = Position::new(event.column, event.row);
     match event.kind {
         MouseEventKind::Down(MouseButton::Left) => press(model, &panes, at),
-        MouseEventKind::Drag(MouseButton::Left) => scrub(model, &panes, at),
+        MouseEventKind::Drag(MouseButton::Left) => scrub(model, &panes, at.x),
+        MouseEventKind::Up(_) => model.scrubbing = None,
         MouseEventKind::ScrollUp => return wheel(model, &panes, at, true),
         MouseEventKind::ScrollDown => return wheel(model, &panes, at, false),
         _ => {}
@@ -34,7 +35,7 @@ fn press(model: &mut Model, panes: &Panes, at: Position) {
             model.input = index;
         }
     } else if panes.tabs.contains(at) {
-        if let Some(view) = tabs::view_at(panes.tabs, views(model.size), at.x) {
+        if let Some(view) = tabs::view_at(panes.tabs, views(model.size), model.view, at.x) {
             model.view = view;
         }
     } else if let Some(area) = margins_area(model, panes).filter(|area| area.contains(at)) {
@@ -47,8 +48,17 @@ fn press(model: &mut Model, panes: &Panes, at: Position) {
             model.play.time_s = time;
         }
     } else {
-        scrub(model, panes, at);
+        model.scrubbing = time_axis(model, panes, at);
+        scrub(model, panes, at.x);
     }
+}
+
+/// The time axis under the mouse.
+fn time_axis(model: &Model, panes: &Panes, at: Position) -> Option<Scrubbing> {
+    if panes.bar().contains(at) {
+        return Some(Scrubbing::Bar);
+    }
+    (model.view == View::History && panes.view.contains(at)).then_some(Scrubbing::Plot)
 }
 
 /// Where the margins are listed, below or as the view.
@@ -59,16 +69,17 @@ fn margins_area(model: &Model, panes: &Panes) -> Option<Rect> {
     (model.view == View::Margins).then_some(panes.view)
 }
 
-fn scrub(model: &mut Model, panes: &Panes, at: Position) {
+/// Puts the play head under the mouse on the time axis that it holds, wherever it has been moved to.
+fn scrub(model: &mut Model, panes: &Panes, column: u16) {
     let window = model.window_s();
     let bar = panes.bar();
-    let time = if bar.contains(at) {
-        let share = f64::from(at.x - bar.x) / f64::from(bar.width.saturating_sub(1).max(1));
-        Some(window.0 + share * (window.1 - window.0))
-    } else if model.view == View::History && panes.view.contains(at) {
-        history::time_at(panes.view, at.x, window)
-    } else {
-        None
+    let time = match model.scrubbing {
+        Some(Scrubbing::Bar) => {
+            let share = f64::from(column.saturating_sub(bar.x)) / f64::from(bar.width.saturating_sub(1).max(1));
+            Some(window.0 + share.min(1.0) * (window.1 - window.0))
+        }
+        Some(Scrubbing::Plot) => history::time_at(panes.view, column, window),
+        None => None,
     };
     if let Some(time) = time {
         model.play.running = false;
@@ -86,6 +97,8 @@ fn wheel(model: &mut Model, panes: &Panes, at: Position, up: bool) -> Vec<Effect
     } else if margins_area(model, panes).is_some_and(|area| area.contains(at)) {
         show_margins(model);
         walk(model, row);
+    } else if model.view == View::Notes && panes.view.contains(at) {
+        scroll_notes(model, if up { Command::PageUp } else { Command::PageDown }, 1);
     } else if panes.view.contains(at) || panes.timeline.contains(at) {
         return update(model, Message::Command(if up { Command::StepBack } else { Command::StepOn }));
     }

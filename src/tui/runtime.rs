@@ -29,7 +29,7 @@ pub fn run_loop(guard: &mut Guard, model: &mut Model, signals: &Signals) -> colo
     let mut stale = true;
     loop {
         if let Some(signal) = signals.caught() {
-            return Err(ScreenError::Signal { signal }.into());
+            return Err(ScreenError::Signal { signal, unsaved: model.is_edited() }.into());
         }
         if stale {
             guard.screen().draw(|frame| view(model, frame))?;

@@ -63,12 +63,15 @@ pub fn restore() {
     }
 }
 
-/// Restores before the hook that was installed earlier prints; a panic of another thread does not touch the screen.
+/// Restores before the hook that was installed earlier prints; a panic of another thread prints nothing over the screen,
+/// whoever waits for that thread tells the user.
 fn set_panic_hook(screen_thread: ThreadId) {
     let earlier = std::panic::take_hook();
     std::panic::set_hook(Box::new(move |info| {
         if thread::current().id() == screen_thread {
             restore();
+        } else if TAKEN.load(Ordering::SeqCst) {
+            return;
         }
         earlier(info);
     }));

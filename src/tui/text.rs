@@ -82,6 +82,26 @@ pub fn put_right(buffer: &mut Buffer, area: Rect, row: u16, text: &str, style: S
     put(buffer, area, area.width.saturating_sub(cells(text)), row, text, style);
 }
 
+/// Writes `text` wrapped into `area`; what finds no room is announced by `..` at the end of the last row.
+pub fn put_wrapped(buffer: &mut Buffer, area: Rect, text: &str, style: Style) {
+    let rows = wrap(text, usize::from(area.width));
+    let shown = usize::from(area.height);
+    for (row, line) in (0..area.height).zip(&rows) {
+        let is_cut = usize::from(row) + 1 == shown && rows.len() > shown;
+        let line = if is_cut { with_dots(line, usize::from(area.width)) } else { line.clone() };
+        put(buffer, area, 0, row, &line, style);
+    }
+}
+
+/// The line with ` ..` after it, in place of its last words where there is no room.
+fn with_dots(line: &str, room: usize) -> String {
+    let mut words: Vec<&str> = line.split(' ').collect();
+    while !words.is_empty() && words.join(" ").width() + 3 > room {
+        words.pop();
+    }
+    format!("{} ..", words.join(" "))
+}
+
 /// Moves rows that want to stand at `wanted` (rising) so that each has a row of its own within `0..rows`.
 ///
 /// Rows stay in order and as near to their wish as that allows; those that find no room are `None`.
@@ -120,6 +140,16 @@ mod tests {
             assert!(rows.iter().all(|row| row.width() <= room), "{room}: {rows:?}");
             assert_eq!(rows.concat().replace(' ', ""), text.replace(' ', ""));
         }
+    }
+
+    #[test]
+    fn a_text_too_long_for_its_rows_says_so_and_cuts_no_word() {
+        let area = Rect::new(0, 0, 12, 2);
+        let mut buffer = Buffer::empty(area);
+        put_wrapped(&mut buffer, area, "one two three four five six", Style::new());
+        let rows: Vec<String> =
+            buffer.content.chunks(12).map(|row| row.iter().map(ratatui::buffer::Cell::symbol).collect()).collect();
+        assert_eq!(rows, ["one two     ", "three .."].map(|row| format!("{row:12}")));
     }
 
     #[test]

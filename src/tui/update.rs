@@ -1,9 +1,10 @@
 //! From a message to the next state, and what to do outside.
 use super::command::{Command, command_for};
 use super::edit::Nudge;
-use super::layout::{has_margins_below, views};
+use super::layout::{Panes, has_margins_below, views};
 use super::message::{Effect, Message};
 use super::model::{Exit, Mode, Model, Pane, Play, View, Window};
+use super::panes::notes;
 use super::pointer;
 use crate::quantity::UnitSystem;
 use crate::scenario::Document;
@@ -123,11 +124,13 @@ fn run(model: &mut Model, command: Command) -> Vec<Effect> {
         Command::Restore => model.restore(),
         Command::Undo => model.undo(),
         Command::Redo => model.redo(),
+        Command::PageUp | Command::PageDown if model.view == View::Notes => scroll_notes(model, command, 10),
         Command::Up | Command::Down | Command::PageUp | Command::PageDown => walk(model, command),
         Command::NextPane | Command::PreviousPane => other_pane(model),
         Command::Units | Command::Window => switch(model, command),
         Command::Elevation => model.view = View::Elevation,
         Command::History => model.view = View::History,
+        Command::Notes => model.view = View::Notes,
         Command::Margins => show_margins(model),
         Command::NextView => next_view(model),
         _ => play(model, command),
@@ -172,6 +175,16 @@ pub(super) fn walk(model: &mut Model, command: Command) {
         _ => *chosen + 10,
     };
     *chosen = moved.min(count.saturating_sub(1));
+}
+
+/// Moves the notes by some rows, no further than their end.
+pub(super) fn scroll_notes(model: &mut Model, command: Command, rows: usize) {
+    let most = Panes::of(model.size, model).map_or(0, |panes| notes::last_first(model, panes.view));
+    let moved = match command {
+        Command::PageUp => model.notes_row.saturating_sub(rows),
+        _ => model.notes_row + rows,
+    };
+    model.notes_row = moved.min(most);
 }
 
 fn other_pane(model: &mut Model) {

@@ -4,7 +4,9 @@ use super::model::{Mode, Model, View};
 use super::panes::history::Picture;
 use super::panes::scene::Scene;
 use super::panes::units::Scale;
-use super::panes::{about, elevation, foot, header, help, history, inputs, log, margins, tabs, timeline, verdict};
+use super::panes::{
+    about, elevation, foot, header, help, history, inputs, log, margins, notes, tabs, timeline, verdict,
+};
 use super::text::put;
 use crate::quantity::Dimension;
 use crate::sheet::Report;
@@ -85,6 +87,7 @@ fn draw_view(model: &Model, frame: &mut Frame, panes: &Panes) {
         View::History => history::draw(frame, area, &picture(report, model, area.width), model.theme),
         View::Margins if panes.margins.height == 0 => draw_margins_view(model, frame, area),
         View::Margins => {}
+        View::Notes => notes::draw(frame.buffer_mut(), area, model),
     }
     timeline::draw(frame.buffer_mut(), panes.timeline, panes.bar(), model);
     if model.answer.is_stale() {
@@ -110,12 +113,23 @@ fn draw_margins_view(model: &Model, frame: &mut Frame, area: Rect) {
     margins::draw_basis(frame.buffer_mut(), basis, model);
 }
 
-/// What History draws of a report: two samples for each column of dots.
+/// Two samples for each column of dots, ten for each swing, eight for each phase; at most 6,000, which still fill the
+/// whole height of a motion too quick for the columns.
+fn sample_count(report: &Report, columns: u16, span_s: f64) -> f64 {
+    let omega = report.estimate.numbers.get("natural_frequency").unwrap_or(0.0);
+    let swings = span_s * omega / std::f64::consts::TAU;
+    let phases = u32::try_from(report.estimate.trace.phases().len()).unwrap_or(u32::MAX);
+    let share = span_s / report.estimate.trace.end_s().max(1e-9);
+    let wanted = (10.0 * swings).max(8.0 * f64::from(phases) * share);
+    wanted.max(4.0 * f64::from(columns.max(10))).min(6000.0)
+}
+
+/// What History draws of a report.
 #[must_use]
 pub fn picture(report: &Report, model: &Model, columns: u16) -> Picture {
     let window = model.window_s();
     let estimate = &report.estimate;
-    let step = (window.1 - window.0) / (f64::from(columns.max(10)) * 4.0);
+    let step = (window.1 - window.0) / sample_count(report, columns, window.1 - window.0);
     Picture {
         samples: estimate.trace.samples(window.0, window.1.min(estimate.trace.end_s()), step),
         phases: estimate.trace.phases().to_vec(),

@@ -1,5 +1,6 @@
 //! A file, a model of it, and keys pressed on it.
 #![allow(dead_code, reason = "each test binary uses its own part")]
+#![allow(clippy::unwrap_used, clippy::panic, reason = "helpers of tests fail by panicking")]
 use crossterm::event::{KeyCode, KeyEvent, KeyModifiers, MouseButton, MouseEvent, MouseEventKind};
 use ratatui::Terminal;
 use ratatui::backend::TestBackend;

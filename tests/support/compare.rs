@@ -46,16 +46,21 @@ pub fn rows(case: &Case, outcome: &Outcome, numbers: &Numbers) -> Vec<Row> {
     table.row("peak_force", Some(outcome.peak_force_n), Some(numbers.peak_force), 0.0);
     if !numbers.creeps {
         table.row("time_peak_force", Some(outcome.time_peak_force_s), time(numbers.time_peak), period);
-        table.row("line_elongation", Some(outcome.line_elongation_peak_m), Some(numbers.stretch_peak[0]), 1e-3 * size);
-        table.row(
-            "other_elongation",
-            Some(outcome.other_elongation_peak_m),
-            Some(numbers.stretch_peak[1]),
-            1e-3 * size,
-        );
+        // A stretch that peaks only after the run has settled and stood lowest is no part of it.
+        let end = numbers.settled.unwrap_or(f64::INFINITY).max(numbers.lowest.map_or(0.0, |low| low.0));
+        let peaks = [outcome.line_elongation_peak_m, outcome.other_elongation_peak_m];
+        for (i, id) in ["line_elongation", "other_elongation"].into_iter().enumerate() {
+            if numbers.record.stretch_peak_time[i] <= end {
+                table.row(id, Some(peaks[i]), Some(numbers.stretch_peak[i]), 1e-3 * size);
+            }
+        }
     }
-    table.row("time_lowest", outcome.lowest.map(|l| l.time_s), numbers.lowest.and_then(|l| time(l.0)), period);
-    table.row("travel_lowest", outcome.lowest.map(|l| l.travel_m), numbers.lowest.map(|l| l.1), 0.0);
+    // A last turn that misses rest by less than rounding shows is as good as none.
+    let at_rest = |travel: f64| (travel / numbers.hang_travel - 1.0).abs() < 1e-9;
+    if !(numbers.creeps && outcome.lowest.is_some_and(|low| at_rest(low.travel_m))) {
+        table.row("time_lowest", outcome.lowest.map(|l| l.time_s), numbers.lowest.and_then(|l| time(l.0)), period);
+        table.row("travel_lowest", outcome.lowest.map(|l| l.travel_m), numbers.lowest.map(|l| l.1), 0.0);
+    }
     table.row("arrest_distance", Some(outcome.arrest_distance_m), Some(numbers.arrest_distance), 0.0);
     table.row("hang_travel", Some(outcome.hang_travel_m), Some(numbers.hang_travel), 0.0);
     table.row("rebound_rise", outcome.rebound_rise_m, numbers.rebound_rise, 1e-3 * size);

@@ -184,20 +184,17 @@ impl<'a> Flow<'a> {
             }
             return;
         }
-        match damped[..] {
-            [i] => {
-                view.stretch[i] = total;
-                view.stretch_rate[i] = y[V];
-                view.force = parts[i].law.force(total) + parts[i].damping * y[V];
-            }
-            _ => {
-                let (c1, c2) = (parts[0].damping, parts[1].damping);
-                view.stretch = [y[E[0]], total - y[E[0]]];
-                let (f1, f2) = (parts[0].law.force(view.stretch[0]), parts[1].law.force(view.stretch[1]));
-                let rate = (f2 - f1 + c2 * y[V]) / (c1 + c2);
-                view.stretch_rate = [rate, y[V] - rate];
-                view.force = f1 + c1 * rate;
-            }
+        if let [i] = damped[..] {
+            view.stretch[i] = total;
+            view.stretch_rate[i] = y[V];
+            view.force = parts[i].law.force(total) + parts[i].damping * y[V];
+        } else {
+            let (c1, c2) = (parts[0].damping, parts[1].damping);
+            view.stretch = [y[E[0]], total - y[E[0]]];
+            let (f1, f2) = (parts[0].law.force(view.stretch[0]), parts[1].law.force(view.stretch[1]));
+            let rate = (f2 - f1 + c2 * y[V]) / (c1 + c2);
+            view.stretch_rate = [rate, y[V] - rate];
+            view.force = f1 + c1 * rate;
         }
     }
 

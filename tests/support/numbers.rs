@@ -33,7 +33,7 @@ pub fn numbers(case: &Case, fineness: Fineness, levels: [f64; 2]) -> Numbers {
     let weight = case.mass * case.gravity;
     let deployed = record.end[S];
     let hang_travel = deployed + case.line.law.stretch(weight) + case.other.law.stretch(weight);
-    let deepest = record.lows.iter().copied().reduce(|a, b| if b.1[X] > a.1[X] { b } else { a });
+    let deepest = record.lows.iter().copied().reduce(|a, b| if b.1[X] > a.1[X] * (1.0 + 1e-9) { b } else { a });
     let creeps = deepest.is_none_or(|low| low.1[X] < hang_travel);
     let low = deepest.filter(|_| !creeps);
     let arrest_distance = low.map_or(hang_travel, |low| low.1[X]);
@@ -68,7 +68,7 @@ pub fn numbers(case: &Case, fineness: Fineness, levels: [f64; 2]) -> Numbers {
     }
 }
 
-fn flow_of<'a>(case: &'a Case, fineness: Fineness, mode: Mode) -> Flow<'a> {
+fn flow_of(case: &Case, fineness: Fineness, mode: Mode) -> Flow<'_> {
     let mut flow = Flow::new(case, fineness.relative_tolerance);
     flow.mode = mode;
     flow

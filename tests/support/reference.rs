@@ -54,6 +54,8 @@ pub struct Record {
     /// Every instant at which it turns from up to down: time, travel.
     pub highs: Vec<(f64, f64)>,
     pub stretch_peak: [f64; 2],
+    /// End of the piece that holds each.
+    pub stretch_peak_time: [f64; 2],
     pub end: State,
     pub used_up: bool,
     /// The run went on until nothing of interest was left.
@@ -142,6 +144,7 @@ impl<'a> Run<'a> {
             lows: Vec::new(),
             highs: Vec::new(),
             stretch_peak: [0.0; 2],
+            stretch_peak_time: [0.0; 2],
             end: state,
             used_up: false,
             complete: false,
@@ -170,12 +173,9 @@ impl<'a> Run<'a> {
 
     fn enter(&mut self, mode: Mode, event: Event) {
         let view = self.flow.look(&self.state);
-        for i in 0..2 {
-            if mode != Mode::Slack || self.flow.parts()[i].is_damped() {
-                self.state[E[i]] = view.stretch[i];
-            } else {
-                self.state[E[i]] = 0.0;
-            }
+        for (i, slot) in E.into_iter().enumerate() {
+            let keeps = mode != Mode::Slack || self.flow.parts()[i].is_damped();
+            self.state[slot] = if keeps { view.stretch[i] } else { 0.0 };
         }
         self.state[GAP] = 0.0;
         self.flow.mode = mode;
@@ -337,7 +337,10 @@ impl<'a> Run<'a> {
                 let at = self.root(0.0, span, |_, view| view.stretch_rate[i]);
                 most = most.max(self.at(at).1.stretch[i]);
             }
-            self.record.stretch_peak[i] = self.record.stretch_peak[i].max(most);
+            if most > self.record.stretch_peak[i] * (1.0 + 1e-9) {
+                self.record.stretch_peak[i] = most;
+                self.record.stretch_peak_time[i] = self.now + span;
+            }
         }
         let turned = if self.falling { end[V] <= 0.0 } else { end[V] > 0.0 };
         if turned {
@@ -366,8 +369,11 @@ impl<'a> Run<'a> {
         let view = self.flow.look(&self.state);
         let above = self.flow.energy_above_hang(&self.state, &view);
         let all = self.weight() * (self.flow.case.free_fall + deepest.max(self.state[X]));
-        let turned = !self.record.lows.is_empty() && !self.record.highs.is_empty();
-        let share = if turned { 2e-4 } else { 1e-11 };
-        self.flow.mode != Mode::Sliding && above < share * all
+        let hang: f64 = self.flow.parts().into_iter().map(|part| part.law.stretch(self.weight())).sum();
+        if !self.record.highs.is_empty() && deepest > self.state[S] + hang {
+            return self.flow.mode != Mode::Sliding && above < 2e-4 * all;
+        }
+        let off = (self.state[X] - self.state[S] - hang).abs() + self.state[V].abs() * self.longest;
+        self.flow.mode != Mode::Sliding && off < 1e-10 * self.state[X]
     }
 }

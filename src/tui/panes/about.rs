@@ -3,7 +3,7 @@ use crate::quantity::{Unit, UnitSystem, display_unit, format_measure, format_si}
 use crate::scenario::Input;
 use crate::tui::lean::Lean;
 use crate::tui::model::{Mode, Model};
-use crate::tui::text::{put, wrap};
+use crate::tui::text::{put, put_wrapped};
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 
@@ -17,10 +17,13 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
         }
         _ => (words(input, model), model.theme.plain()),
     };
-    let room = usize::from(area.width.saturating_sub(2));
-    for (row, line) in (1..).zip(wrap(&words, room)) {
-        put(buffer, area, 1, row, &line, style);
-    }
+    let inner = Rect {
+        x: area.x + 1,
+        y: area.y + 1,
+        width: area.width.saturating_sub(2),
+        height: area.height.saturating_sub(1),
+    };
+    put_wrapped(buffer, inner, &words, style);
 }
 
 fn words(input: &Input, model: &Model) -> String {

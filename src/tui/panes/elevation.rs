@@ -227,6 +227,8 @@ struct Label {
     row: u16,
     text: String,
     style: Style,
+    /// The name of a level, which gives way to a dimension where rows are short.
+    is_level: bool,
 }
 
 fn draw_labels(buffer: &mut Buffer, places: &Places, scene: &Scene, rows: &Rows, theme: Theme) {
@@ -234,6 +236,10 @@ fn draw_labels(buffer: &mut Buffer, places: &Places, scene: &Scene, rows: &Rows,
     let string = string_marks(scene);
     draw_string(buffer, places.labels, &string, rows, theme);
     labels.extend(part_labels(scene, &string, rows, places.labels.width.saturating_sub(2), theme));
+    while labels.len() > usize::from(rows.count) {
+        let Some(index) = labels.iter().position(|label| label.is_level) else { break };
+        labels.remove(index);
+    }
     labels.sort_by_key(|label| label.row);
     let wanted: Vec<u16> = labels.iter().map(|label| label.row).collect();
     let area = Rect { x: places.labels.x + 2, width: places.labels.width.saturating_sub(2), ..places.labels };
@@ -248,7 +254,7 @@ fn level_labels(scene: &Scene, rows: &Rows, theme: Theme) -> Vec<Label> {
     let mut labels = Vec::new();
     let mut level = |height_m: f64, row: u16, name: &str| {
         let text = format!("{} {name}", scene.scale.text(height_m));
-        labels.push(Label { row: row.min(rows.count.saturating_sub(1)), text, style: theme.quiet() });
+        labels.push(Label { row: row.min(rows.count.saturating_sub(1)), text, style: theme.quiet(), is_level: true });
     };
     if let Some(anchor) = scene.anchor_m {
         level(anchor, rows.below(anchor).saturating_sub(1), "anchor");
@@ -319,7 +325,12 @@ fn part_labels(scene: &Scene, marks: &[f64], rows: &Rows, room: u16, theme: Them
         let short = format!("{} {}", scene.scale.print(number), part.name);
         let text = if cells(&long) <= room { long } else { short };
         let style = part.verdict.map_or(theme.plain(), |verdict| theme.verdict(verdict));
-        labels.push(Label { row: ((from + to.max(from + 1) - 1) / 2).min(rows.count - 1), text, style });
+        labels.push(Label {
+            row: ((from + to.max(from + 1) - 1) / 2).min(rows.count - 1),
+            text,
+            style,
+            is_level: false,
+        });
     }
     labels
 }

@@ -68,7 +68,7 @@ pub fn draw(frame: &mut Frame, area: Rect, picture: &Picture, theme: Theme) {
 pub fn time_at(area: Rect, column: u16, window_s: (f64, f64)) -> Option<f64> {
     let left = area.x + GUTTER;
     let width = area.width.checked_sub(GUTTER + 1).filter(|&width| width > 0)?;
-    let cell = column.checked_sub(left)?.min(width);
+    let cell = column.saturating_sub(left).min(width);
     Some(window_s.0 + (window_s.1 - window_s.0) * f64::from(cell) / f64::from(width))
 }
 

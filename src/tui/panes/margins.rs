@@ -3,7 +3,7 @@ use crate::margin::{Margin, Rules, Sense, Verdict, checks, margin_of};
 use crate::quantity::{UnitSystem, format_si};
 use crate::sheet::margin_words;
 use crate::tui::model::{Model, Pane};
-use crate::tui::text::{cells, fit, put, put_right, wrap};
+use crate::tui::text::{cells, fit, put, put_right, put_wrapped};
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 use ratatui::style::Style;
@@ -231,11 +231,8 @@ pub fn draw_basis(buffer: &mut Buffer, area: Rect, model: &Model) {
         words = format!("{words} - {note}");
     }
     let inner = Rect { x: area.x + 1, width: area.width.saturating_sub(2), ..area };
-    let lines = wrap(&words, usize::from(inner.width));
     let style = if margin.basis.from_memory { model.theme.play_head() } else { model.theme.quiet() };
-    for (row, line) in (0..area.height).zip(lines) {
-        put(buffer, inner, 0, row, &line, style);
-    }
+    put_wrapped(buffer, inner, &words, style);
 }
 
 /// The note of a check in the units of display.

@@ -8,6 +8,7 @@ pub mod history;
 pub mod inputs;
 pub mod log;
 pub mod margins;
+pub mod notes;
 pub mod plot;
 pub mod scene;
 pub mod tabs;
@@ -15,13 +16,13 @@ pub mod timeline;
 pub mod units;
 pub mod verdict;
 
-/// How many rows of a list stand outside of what is shown: `3 more above, 2 below`.
+/// How many rows of a list stand outside of what is shown: `3 above, 2 below`.
 #[must_use]
 pub(crate) fn more_words(above: usize, below: usize) -> String {
     match (above, below) {
         (0, 0) => String::new(),
         (0, below) => format!("{below} more below"),
         (above, 0) => format!("{above} more above"),
-        (above, below) => format!("{above} more above, {below} below"),
+        (above, below) => format!("{above} above, {below} below"),
     }
 }

@@ -231,7 +231,7 @@ fn parts(report: &Report, marks: &Marks, lowest: Sample, end: Option<&Bar>) -> V
     let mut parts = vec![
         part("free fall", marks.start_m - marks.taut_m),
         part("line stretch", line),
-        part("other stretch", lowest.other_elongation_m),
+        part("other parts", lowest.other_elongation_m),
         part("deployed", lowest.deployed_m),
         part(body, marks.body_m),
         part("allowance", marks.allowance_m),

@@ -12,15 +12,21 @@ pub const fn command(view: View) -> Command {
         View::Elevation => Command::Elevation,
         View::History => Command::History,
         View::Margins => Command::Margins,
+        View::Notes => Command::Notes,
     }
 }
 
-/// The tabs with their first columns; without padding where the row is too short for it.
-fn placed(area: Rect, views: &[View]) -> Vec<(View, String, u16)> {
-    let bare: Vec<String> = views.iter().map(|&view| format!("{} {}", key_name(command(view)), view.title())).collect();
+/// The tabs with their first columns; without padding, then with the key alone, where the row is too short.
+fn placed(area: Rect, views: &[View], chosen: View) -> Vec<(View, String, u16)> {
+    let bare: Vec<String> = views.iter().map(|&view| title(view)).collect();
     let padded: Vec<String> = bare.iter().map(|text| format!(" {text} ")).collect();
     let wide = |texts: &[String]| texts.iter().map(|text| cells(text) + 1).sum::<u16>();
-    let texts = if wide(&padded) <= area.width { padded } else { bare };
+    let short = |&view: &View| if view == chosen { title(view) } else { key_name(command(view)) };
+    let texts = match area.width {
+        width if wide(&padded) <= width => padded,
+        width if wide(&bare) <= width + 1 => bare,
+        _ => views.iter().map(short).collect(),
+    };
     let mut column = area.x;
     let mut tabs = Vec::new();
     for (&view, text) in views.iter().zip(texts) {
@@ -31,9 +37,13 @@ fn placed(area: Rect, views: &[View]) -> Vec<(View, String, u16)> {
     tabs
 }
 
+fn title(view: View) -> String {
+    format!("{} {}", key_name(command(view)), view.title())
+}
+
 /// Draws the tabs.
 pub fn draw(buffer: &mut Buffer, area: Rect, views: &[View], model: &Model) {
-    for (view, text, column) in placed(area, views) {
+    for (view, text, column) in placed(area, views, model.view) {
         let style = if view == model.view { model.theme.chosen(true) } else { model.theme.plain() };
         put(buffer, area, column - area.x, 0, &text, style);
     }
@@ -41,7 +51,7 @@ pub fn draw(buffer: &mut Buffer, area: Rect, views: &[View], model: &Model) {
 
 /// The view whose tab holds a column.
 #[must_use]
-pub fn view_at(area: Rect, views: &[View], column: u16) -> Option<View> {
-    let tabs = placed(area, views);
+pub fn view_at(area: Rect, views: &[View], chosen: View, column: u16) -> Option<View> {
+    let tabs = placed(area, views, chosen);
     tabs.into_iter().find(|(_, text, left)| (*left..left + cells(text)).contains(&column)).map(|(view, ..)| view)
 }

@@ -3,6 +3,7 @@ use crate::estimate::Estimate;
 use crate::margin::Verdict;
 use crate::quantity::{Dimension, UnitSystem, format_si};
 use crate::sheet::{Report, governing_words};
+use crate::tui::command::{Command, key_name};
 use crate::tui::model::Model;
 use crate::tui::text::{put, put_right, width, wrap};
 use ratatui::buffer::Buffer;
@@ -57,9 +58,14 @@ fn head(verdict: Verdict) -> String {
 fn peak(report: &Report, units: UnitSystem) -> String {
     let force = |si: f64| format_si(si, Dimension::Force, units);
     let Some(peak) = report.estimate.numbers.get("arrest_force_peak") else { return String::new() };
+    let warnings = match report.estimate.warnings.len() {
+        0 => String::new(),
+        1 => format!(" (1 warning: key {})", key_name(Command::Notes)),
+        count => format!(" ({count} warnings: key {})", key_name(Command::Notes)),
+    };
     match force_limit(report) {
-        Some(limit) => format!("peak {} of {}", force(peak), force(limit)),
-        None => format!("peak {}, no limit stated", force(peak)),
+        Some(limit) => format!("peak {} of {}{warnings}", force(peak), force(limit)),
+        None => format!("peak {}, no limit stated{warnings}", force(peak)),
     }
 }
 
