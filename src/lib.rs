@@ -10,4 +10,5 @@ pub mod physics;
 pub mod quantity;
 pub mod scenario;
 pub mod sheet;
+pub mod swing;
 pub mod tui;

@@ -339,7 +339,7 @@ impl<'a> Run<'a> {
 }
 
 impl Fall {
-    fn check(&self) -> Result<(), ArrestError> {
+    pub(crate) fn check(&self) -> Result<(), ArrestError> {
         let positive = |what, value: f64| {
             if value > 0.0 && value.is_finite() { Ok(()) } else { Err(ArrestError::Input { what, value }) }
         };
