@@ -170,3 +170,30 @@ fn a_value_goes_back_to_the_files_own_while_a_changed_word_stays() {
     bench.keys("f");
     assert_eq!(bench.model.document.text(), ROOF.replace("\"lanyard\"", "\"rope\""));
 }
+
+#[test]
+fn a_span_asks_for_each_key_it_needs_and_gives_way_to_a_fixed_anchor_whole() {
+    let roof = document(ROOF);
+    let values =
+        [("anchor.span.length", "12 m"), ("anchor.span.modulus", "4000 kN"), ("anchor.span.pretension", "1 kN")];
+    let mut changes = vec![("anchor.kind", "span")];
+    for _ in 0..values.len() {
+        let Turn::Needs(path) = roof.turned(&changes).unwrap() else { panic!("{changes:?} was enough") };
+        changes.push(*values.iter().find(|(known, _)| *known == path).unwrap_or_else(|| panic!("asked for `{path}`")));
+    }
+    let (span, taken_out) = done(roof.turned(&changes).unwrap());
+    assert!(taken_out.is_empty() && matches!(span.scenario().anchor.kind, AnchorKind::Span(_)));
+    let (fixed, taken_out) = done(span.turned(&[("anchor.kind", "fixed")]).unwrap());
+    assert_eq!(taken_out, ["anchor.span"]);
+    assert_eq!(fixed.text(), ROOF);
+}
+
+#[test]
+fn a_retractable_line_takes_the_length_out_and_asks_where_it_locks() {
+    let roof = document(ROOF);
+    let Turn::Needs(path) = roof.turned(&[("line.kind", "retractable")]).unwrap() else { panic!("was enough") };
+    assert_eq!(path, "line.lock_travel");
+    let changes = [("line.kind", "retractable"), ("line.lock_travel", "0.6 m")];
+    let (_, taken_out) = done(roof.turned(&changes).unwrap());
+    assert_eq!(taken_out, ["line.length"]);
+}

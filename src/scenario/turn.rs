@@ -1,6 +1,5 @@
 //! Changing a word that decides which other keys may stand in the file, such as the kind of the anchor.
-use super::{Document, FIELDS, Fault, Faults, Severity, edit, field_for, places, read};
-use toml_edit::{DocumentMut, Item};
+use super::{Change, Document, FIELDS, Fault, Faults, Field, Need, Places, Severity, edit, field_for, places, read};
 
 /// What came of changing a word.
 #[derive(Clone, Debug)]
@@ -35,27 +34,26 @@ impl Document {
     /// The faults the file would have otherwise.
     pub fn turned(&self, changes: &[(&str, &str)]) -> Result<Turn, Faults> {
         let file = self.path().display().to_string();
-        let mut text = self.text().to_owned();
-        for (path, value) in changes {
-            text = edit::with_value(&text, &places(&text), path, value)
-                .map_err(|message| Faults::new(&file, self.text(), vec![fault(message)]))?;
-        }
+        let refuse = |message: String| Faults::new(&file, self.text(), vec![fault(message)]);
+        let set = |&(path, value): &(&str, &str)| Change::Set { path: path.to_owned(), value: value.to_owned() };
+        let changes: Vec<Change> = changes.iter().map(set).collect();
+        let mut text = edit::with_changes(self.text(), &changes).map_err(refuse)?;
         let mut taken_out = Vec::new();
         while taken_out.len() < MOST_KEYS {
             let Err(faults) = read(&file, &text) else {
                 let document = Self::of_text(self.path(), text)?.on_disk_as(self);
                 return Ok(Turn::Done { document: Box::new(document), taken_out });
             };
-            if let Some((path, without)) = without_foreign(&text, &faults) {
-                text = without;
-                taken_out.push(path);
+            if let Some(path) = foreign(&places(&text), &faults) {
+                text = edit::with_changes(&text, &[Change::Remove { path: path.to_owned() }]).map_err(refuse)?;
+                taken_out.push(path.to_owned());
             } else if let Some(path) = faults.faults.iter().find_map(missing) {
                 return Ok(Turn::Needs(path));
             } else {
                 return Err(faults);
             }
         }
-        Err(Faults::new(&file, self.text(), vec![fault(format!("more than {MOST_KEYS} keys do not belong there"))]))
+        Err(refuse(format!("more than {MOST_KEYS} keys do not belong there")))
     }
 }
 
@@ -64,34 +62,24 @@ fn fault(message: String) -> Fault {
     Fault { severity: Severity::Error, span: 0..0, message, expected: "cannot be set".into(), hint }
 }
 
-/// The path of a key that a fault says is missing.
+/// The key that a fault says is missing; of a section the first key that it cannot do without.
 fn missing(fault: &Fault) -> Option<String> {
     let (path, rest) = fault.message.strip_prefix('`')?.split_once('`')?;
-    (rest.starts_with(" is missing") && field_for(path).is_some()).then(|| path.to_owned())
-}
-
-/// The text without the first key that a fault says does not belong there.
-fn without_foreign(text: &str, faults: &Faults) -> Option<(String, String)> {
-    let places = places(text);
-    let foreign = faults.faults.iter().filter(|fault| fault.message.contains("` does not belong to a "));
-    foreign.into_iter().find_map(|fault| {
-        let path = FIELDS
-            .iter()
-            .map(|field| field.path)
-            .find(|path| places.exactly(path).is_some_and(|span| span == fault.span))?;
-        Some((path.to_owned(), without(text, path)?))
-    })
-}
-
-/// The text without one key and the comment on its line.
-fn without(text: &str, path: &str) -> Option<String> {
-    let mut document: DocumentMut = text.parse().ok()?;
-    let mut at: &mut Item = document.as_item_mut();
-    let (section, key) = path.rsplit_once('.')?;
-    for part in section.split('.') {
-        at = at.as_table_like_mut()?.get_mut(part)?;
+    if !rest.starts_with(" is missing") {
+        return None;
     }
-    at.as_table_like_mut()?.remove(key)?;
-    let edited = document.to_string();
-    Some(if text.contains("\r\n") { edited.replace("\r\n", "\n").replace('\n', "\r\n") } else { edited })
+    let inside = |field: &&Field| field.need == Need::InSection && parent(field.path) == Some(path);
+    let field = field_for(path).is_some().then_some(path);
+    field.or_else(|| Some(FIELDS.iter().find(inside)?.path)).map(str::to_owned)
+}
+
+/// The first key or section that a fault says does not belong there.
+fn foreign(places: &Places, faults: &Faults) -> Option<&'static str> {
+    let found = faults.faults.iter().find(|fault| fault.message.contains("` does not belong to a "))?;
+    let mut paths = FIELDS.iter().flat_map(|field| [Some(field.path), parent(field.path)]).flatten();
+    paths.find(|path| places.exactly(path).is_some_and(|span| span == found.span))
+}
+
+fn parent(path: &'static str) -> Option<&'static str> {
+    path.rsplit_once('.').map(|(section, _)| section)
 }
