@@ -97,6 +97,8 @@ pub struct WorkCount {
 /// Everything one vertical arrest gives. Times run from the start of the fall.
 #[derive(Clone, Debug)]
 pub struct Outcome {
+    /// What was solved.
+    pub fall: Fall,
     /// Time when the line first comes taut, s.
     pub time_taut_s: f64,
     /// Speed then, m/s.

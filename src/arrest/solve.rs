@@ -290,6 +290,7 @@ impl<'a> Run<'a> {
             _ => self.account_at_rest(),
         };
         Ok(Outcome {
+            fall: fall.clone(),
             time_taut_s: self.taut_s,
             speed_at_taut_m_per_s: self.speed_m_per_s,
             peak_force_n: self.record.force.value,

@@ -1,9 +1,10 @@
 //! Scenario to physics to arrest to numbers.
-use super::setup::{Setup, body_below_attachment};
-use super::{Event, Numbers, Trace, collect, log, remark};
+use super::setup::{Setup, allowance, body_below_attachment};
+use super::{Event, Numbers, PlaneView, SpanView, Trace, WorkStep, collect, log, planar, remark};
 use crate::arrest::{ArrestError, Outcome, Settings, solve};
+use crate::physics::Layout;
 use crate::quantity::{Dimension, UnitSystem, format_si};
-use crate::scenario::{Scenario, SubjectKind};
+use crate::scenario::Scenario;
 
 /// Everything that one run says.
 #[derive(Clone, Debug)]
@@ -24,6 +25,12 @@ pub struct Estimate {
     pub envelope: Option<Envelope>,
     /// Whether the model is valid for this run.
     pub validity: Vec<Validity>,
+    /// The working of the geometry, step by step.
+    pub working: Vec<WorkStep>,
+    /// Places of a planar run.
+    pub plane: Option<PlaneView>,
+    /// The horizontal lifeline under the largest load.
+    pub span: Option<SpanView>,
 }
 
 /// Why numbers of this run are open rather than judged.
@@ -84,10 +91,6 @@ impl Elevations {
     fn of(scenario: &Scenario, setup: &Setup, outcome: &Outcome) -> Option<Self> {
         let start = setup.attachment_start_m?;
         let body = body_below_attachment(&scenario.subject)?;
-        let allowance = match scenario.subject.kind {
-            SubjectKind::Person => scenario.subject.stretch_allowance.map_or(0.0, |a| a.si()),
-            SubjectKind::Load => 0.0,
-        };
         let taut = start - setup.fall.free_fall_m;
         let length = scenario.line.length.map(|l| l.si());
         Some(Self {
@@ -97,7 +100,7 @@ impl Elevations {
             attachment_taut_m: taut,
             attachment_lowest_m: taut - outcome.arrest_distance_m,
             attachment_rest_m: taut - outcome.hang_travel_m,
-            lowest_point_below_attachment_m: body + allowance,
+            lowest_point_below_attachment_m: body + allowance(&scenario.subject),
             body_below_attachment_m: body,
         })
     }
@@ -160,18 +163,60 @@ impl From<ArrestError> for EstimateError {
 /// See [`EstimateError`].
 pub fn estimate(scenario: &Scenario) -> Result<Estimate, EstimateError> {
     let setup = Setup::of(scenario)?;
-    let outcome = solve(&setup.fall, &Settings::default())?;
-    let elevations = Elevations::of(scenario, &setup, &outcome);
+    match setup.geometry.layout.filter(|_| setup.is_planar()) {
+        Some(layout) => planar_estimate(scenario, &setup, &layout),
+        None => vertical_estimate(scenario, &setup),
+    }
+}
+
+fn vertical_estimate(scenario: &Scenario, setup: &Setup) -> Result<Estimate, EstimateError> {
+    let outcome = match &setup.span {
+        Some(span) => span.solve(&setup.fall)?,
+        None => solve(&setup.fall, &Settings::default())?,
+    };
+    let elevations = Elevations::of(scenario, setup, &outcome);
     Ok(Estimate {
-        numbers: collect::numbers(scenario, &setup, &outcome, elevations.as_ref()),
-        assumptions: remark::assumptions(scenario, &setup),
-        warnings: remark::warnings(scenario, &setup, &outcome),
-        events: log::events(&setup, &outcome),
-        envelope: collect::envelope(&setup, &outcome),
-        validity: validity(scenario, &setup),
+        numbers: collect::numbers(scenario, setup, &outcome, elevations.as_ref()),
+        assumptions: remark::assumptions(scenario, setup),
+        warnings: remark::warnings(scenario, setup, Some(&outcome), outcome.stroke_used_up),
+        events: log::events(setup, &outcome),
+        envelope: collect::envelope(&outcome),
+        validity: validity(scenario, setup),
         elevations,
+        working: working(setup),
+        plane: None,
+        span: setup.span.as_ref().map(|span| span.view(&setup.fall, &outcome)),
         trace: Trace::new(outcome.motion),
     })
+}
+
+fn planar_estimate(scenario: &Scenario, setup: &Setup, layout: &Layout) -> Result<Estimate, EstimateError> {
+    let outcome = planar::solve(scenario, setup, layout)?;
+    let elevations = planar::elevations(scenario, setup, layout, &outcome);
+    let view = planar::view(scenario, layout, &outcome);
+    Ok(Estimate {
+        numbers: planar::numbers(scenario, setup, &outcome, elevations.as_ref(), &view.strikes),
+        assumptions: remark::assumptions(scenario, setup),
+        warnings: remark::warnings(scenario, setup, None, outcome.stroke_used_up),
+        events: planar::events(setup, &outcome, &view.strikes),
+        envelope: None,
+        validity: validity(scenario, setup),
+        elevations,
+        working: working(setup),
+        plane: Some(view),
+        span: None,
+        trace: Trace::planar(outcome.trajectory, outcome.taut_at.elevation_m, &outcome.happenings),
+    })
+}
+
+fn working(setup: &Setup) -> Vec<WorkStep> {
+    let step = |what: &str, value_m: f64| WorkStep { what: what.to_owned(), value_m };
+    let mut steps: Vec<_> = setup.geometry.steps.iter().map(|s| step(s.what, s.value_m)).collect();
+    if let Some(span) = &setup.span {
+        steps.push(step("deflection of the lifeline before it takes any load", span.curve.slack_m()));
+        steps.push(step("free fall: the line's own, and that deflection", setup.fall.free_fall_m));
+    }
+    steps
 }
 
 fn validity(scenario: &Scenario, setup: &Setup) -> Vec<Validity> {

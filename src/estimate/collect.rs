@@ -3,7 +3,7 @@ use super::setup::Setup;
 use super::{Elevations, Envelope, Numbers, Value};
 use crate::arrest::oscillator::{Regime, Swing};
 use crate::arrest::signal::Signal;
-use crate::arrest::{Ended, Fall, Mode, Outcome, Stretch};
+use crate::arrest::{Ended, EnergyAccount, Fall, Mode, Outcome, Stretch};
 use crate::scenario::{Scenario, SubjectKind};
 
 /// Every number that applies, in the order of the definitions.
@@ -11,19 +11,42 @@ pub fn numbers(scenario: &Scenario, setup: &Setup, outcome: &Outcome, elevations
     let mut n = Numbers::default();
     let fall = &setup.fall;
     start(&mut n, scenario, fall, outcome);
-    forces(&mut n, fall, outcome);
+    forces(&mut n, setup, outcome);
     lengths(&mut n, fall, outcome);
     if let Some(elevations) = elevations {
         heights(&mut n, scenario, elevations);
     }
     afterwards(&mut n, outcome);
-    oscillation(&mut n, fall, outcome);
-    n.put("line_work", outcome.energy.line_j);
-    n.put("other_work", outcome.energy.other_j);
-    n.put("absorber_work", outcome.energy.absorber_j);
-    n.put("damper_work", outcome.energy.damper_j);
-    n.put("energy_residual", outcome.energy_residual);
+    span(&mut n, setup, outcome);
+    oscillation(&mut n, setup, outcome);
+    put_energy(&mut n, &outcome.energy, outcome.energy_residual);
     n
+}
+
+/// The energy account at the lowest point.
+pub fn put_energy(n: &mut Numbers, energy: &EnergyAccount, residual: f64) {
+    n.put("line_work", energy.line_j);
+    n.put("other_work", energy.other_j);
+    n.put("absorber_work", energy.absorber_j);
+    n.put("damper_work", energy.damper_j);
+    n.put("energy_residual", residual);
+}
+
+fn span(n: &mut Numbers, setup: &Setup, outcome: &Outcome) {
+    let Some(span) = &setup.span else { return };
+    let peak = span.peak(outcome);
+    n.put("span_tension_peak", peak.tension_n);
+    n.put("span_sag_peak", peak.deflection_m);
+    n.put("span_end_force", peak.tension_n);
+}
+
+/// What the absorber has done, where there is one.
+pub fn absorber(n: &mut Numbers, fall: &Fall, deployed_m: f64, stroke_used_up: bool) {
+    if let Some(absorber) = &fall.path.absorber {
+        n.put("deployed_length", deployed_m);
+        n.put("stroke_left", absorber.stroke_m - deployed_m);
+        n.put("stroke_used_up", f64::from(u8::from(stroke_used_up)));
+    }
 }
 
 fn start(n: &mut Numbers, scenario: &Scenario, fall: &Fall, outcome: &Outcome) {
@@ -34,11 +57,13 @@ fn start(n: &mut Numbers, scenario: &Scenario, fall: &Fall, outcome: &Outcome) {
     n.put("time_taut", outcome.time_taut_s);
 }
 
-fn forces(n: &mut Numbers, fall: &Fall, outcome: &Outcome) {
+fn forces(n: &mut Numbers, setup: &Setup, outcome: &Outcome) {
+    let fall = &setup.fall;
     let weight = fall.weight_n();
     n.put("arrest_force_peak", outcome.peak_force_n);
     n.put("time_peak_force", outcome.time_peak_force_s);
-    n.put("anchor_force_peak", outcome.peak_force_n);
+    let tension = setup.span.as_ref().map(|span| span.peak(outcome).tension_n);
+    n.put("anchor_force_peak", tension.unwrap_or(outcome.peak_force_n));
     n.put("deceleration_peak", (outcome.peak_force_n - weight) / weight);
     let mean = |time_s: f64| outcome.speed_at_taut_m_per_s / (time_s - outcome.time_taut_s) / fall.gravity_m_per_s2;
     n.put_some("deceleration_mean", outcome.lowest.map(|l| mean(l.time_s)));
@@ -49,11 +74,7 @@ fn forces(n: &mut Numbers, fall: &Fall, outcome: &Outcome) {
 fn lengths(n: &mut Numbers, fall: &Fall, outcome: &Outcome) {
     n.put("line_elongation_peak", outcome.line_elongation_peak_m);
     n.put("other_elongation_peak", outcome.other_elongation_peak_m);
-    if let Some(absorber) = &fall.path.absorber {
-        n.put("deployed_length", outcome.deployed_m);
-        n.put("stroke_left", absorber.stroke_m - outcome.deployed_m);
-        n.put("stroke_used_up", f64::from(u8::from(outcome.stroke_used_up)));
-    }
+    absorber(n, fall, outcome.deployed_m, outcome.stroke_used_up);
     n.put("arrest_distance", outcome.arrest_distance_m);
     n.put("total_fall_distance", fall.free_fall_m + outcome.arrest_distance_m);
     n.put("hang_travel", outcome.hang_travel_m);
@@ -83,7 +104,11 @@ fn afterwards(n: &mut Numbers, outcome: &Outcome) {
     }
 }
 
-fn oscillation(n: &mut Numbers, fall: &Fall, outcome: &Outcome) {
+fn oscillation(n: &mut Numbers, setup: &Setup, outcome: &Outcome) {
+    if setup.span.as_ref().is_some_and(super::rigging::Rigging::has_absorber) {
+        return;
+    }
+    let fall = &outcome.fall;
     let Some(hang) = fall.about_hang() else { return };
     let word = match hang.regime {
         Regime::Overdamped => "overdamped",
@@ -96,7 +121,9 @@ fn oscillation(n: &mut Numbers, fall: &Fall, outcome: &Outcome) {
     n.put_some("damped_frequency", hang.damped_frequency);
     let first = outcome.motion.stretches().first().and_then(enveloped);
     // Only while the slider has not moved: then the first taut phase is the only kind of taut phase.
-    if let Some((swing, amplitude)) = first.filter(|_| outcome.deployed_m == 0.0 && hang.damped_frequency.is_some()) {
+    if let Some((swing, amplitude)) =
+        first.filter(|_| fall.path.is_linear() && outcome.deployed_m == 0.0 && hang.damped_frequency.is_some())
+    {
         let decay = swing.of.decay;
         n.put("envelope_amplitude", amplitude);
         n.put("envelope_decay", decay);
@@ -116,7 +143,7 @@ fn enveloped(stretch: &Stretch) -> Option<(Swing, f64)> {
 }
 
 /// The envelope to draw: of the first taut phase, or after a deployment of the last.
-pub fn envelope(setup: &Setup, outcome: &Outcome) -> Option<Envelope> {
+pub fn envelope(outcome: &Outcome) -> Option<Envelope> {
     let stretches = outcome.motion.stretches();
     let stretch = if outcome.deployed_m == 0.0 {
         stretches.first()
@@ -124,7 +151,7 @@ pub fn envelope(setup: &Setup, outcome: &Outcome) -> Option<Envelope> {
         stretches.iter().rev().find(|s| s.mode == Mode::Stuck)
     }?;
     let (swing, amplitude_m) = enveloped(stretch)?;
-    let hang_m = setup.fall.hang_travel_m(outcome.deployed_m);
+    let hang_m = outcome.fall.hang_travel_m(outcome.deployed_m);
     Some(Envelope {
         hang_m,
         amplitude_m,

@@ -26,6 +26,14 @@ pub enum EventKind {
     Settled,
     /// The time limit was hit first.
     TimeLimit,
+    /// The swing meets a vertical face.
+    StrikeFace,
+    /// The swing meets a level obstacle.
+    StrikeLevel,
+    /// The swing turns back: the end of a planar run.
+    TurnsBack,
+    /// The first peak is past and the model does not say what comes after.
+    PeakPassed,
 }
 
 /// One line of the log. Values SI; the words are the same in text, JSON and on the screen.
@@ -66,6 +74,10 @@ impl Event {
             }
             EventKind::Highest => format!("highest, {}", beside_taut(self.travel_m, length)),
             EventKind::Settled => format!("settled, {}", beside_taut(self.travel_m, length)),
+            EventKind::StrikeFace => format!("strikes a face at {speed}"),
+            EventKind::StrikeLevel => format!("strikes a level at {speed}"),
+            EventKind::TurnsBack => "swing turns back".to_owned(),
+            EventKind::PeakPassed => "not followed beyond the first peak".to_owned(),
             EventKind::TimeLimit => "still moving at the time limit".to_owned(),
         }
     }

@@ -8,35 +8,50 @@ const KEPT: usize = 12;
 
 /// What the fall does, in order of time.
 pub fn events(setup: &Setup, outcome: &Outcome) -> Vec<Event> {
-    let mut events = vec![event(EventKind::Start, &outcome.motion.at(0.0))];
-    if setup.fall.free_fall_m > 0.0 {
-        events[0] = event(EventKind::Start, &outcome.motion.falling(0.0));
-    }
-    events.extend(happenings(setup, outcome));
     let at = |kind, time_s: f64| event(kind, &outcome.motion.at(time_s));
+    let start = if setup.fall.free_fall_m > 0.0 {
+        event(EventKind::Start, &outcome.motion.falling(0.0))
+    } else {
+        at(EventKind::Start, 0.0)
+    };
+    let mut events = vec![start];
+    events.extend(happenings(setup, &outcome.happenings, &at));
+    events.retain(|event| event.time_s <= outcome.motion.end_s());
     events.push(Event { force_n: outcome.peak_force_n, ..at(EventKind::PeakForce, outcome.time_peak_force_s) });
     events.extend(outcome.lowest.map(|l| at(EventKind::Lowest, l.time_s)));
     events.extend(outcome.time_highest_s.map(|t| at(EventKind::Highest, t)));
-    events.sort_by(|a, b| a.time_s.total_cmp(&b.time_s));
-    events.truncate(KEPT);
-    events.push(match outcome.ended {
+    let followed = !setup.span.as_ref().is_some_and(super::rigging::Rigging::has_absorber);
+    let end = match outcome.ended {
+        Ended::TimeLimit if !followed => at(EventKind::PeakPassed, outcome.motion.end_s()),
         Ended::Settled { time_s } => at(EventKind::Settled, time_s),
         Ended::TimeLimit => at(EventKind::TimeLimit, outcome.motion.end_s()),
-    });
+    };
+    in_order(events, end)
+}
+
+/// The first dozen events in order of time, and the end of the motion.
+pub fn in_order(mut events: Vec<Event>, end: Event) -> Vec<Event> {
+    events.sort_by(|a, b| a.time_s.total_cmp(&b.time_s));
+    events.truncate(KEPT);
+    events.push(end);
     events
 }
 
-fn happenings(setup: &Setup, outcome: &Outcome) -> impl Iterator<Item = Event> {
+/// The changes of mode as events; the first deployment starts at the onset force.
+pub fn happenings(setup: &Setup, happenings: &[(f64, Happening)], at: &impl Fn(EventKind, f64) -> Event) -> Vec<Event> {
     let onset_n = setup.fall.path.absorber.as_ref().map(|a| a.onset_n);
     let mut started = false;
-    outcome.happenings.iter().map(move |&(time_s, what)| {
-        let now = event(kind(what), &outcome.motion.at(time_s));
-        let first = what == Happening::DeploymentStart && !std::mem::replace(&mut started, true);
-        match onset_n.filter(|_| first) {
-            Some(force_n) => Event { force_n, ..now },
-            None => now,
-        }
-    })
+    happenings
+        .iter()
+        .map(|&(time_s, what)| {
+            let now = at(kind(what), time_s);
+            let first = what == Happening::DeploymentStart && !std::mem::replace(&mut started, true);
+            match onset_n.filter(|_| first) {
+                Some(force_n) => Event { force_n, ..now },
+                None => now,
+            }
+        })
+        .collect()
 }
 
 const fn kind(what: Happening) -> EventKind {

@@ -5,12 +5,16 @@ mod definition;
 mod event;
 mod log;
 mod number;
+mod planar;
 mod remark;
+mod rigging;
 mod setup;
 mod trace;
+mod view;
 
 pub use assess::{Elevations, Envelope, Estimate, EstimateError, Validity, estimate};
 pub use definition::{DEFINITIONS, Definition, definition};
 pub use event::{Event, EventKind};
 pub use number::{Number, Numbers, Value};
-pub use trace::{Mode, Phase, Sample, Trace};
+pub use trace::{Mode, Phase, PlanePoint, Sample, Trace};
+pub use view::{EndLoadView, PlacePoint, PlaneView, SpanView, StrikeView, WorkStep};

@@ -8,11 +8,20 @@ use crate::scenario::{Scenario, SubjectKind};
 /// What the model takes for granted in this run.
 pub fn assumptions(scenario: &Scenario, setup: &Setup) -> Vec<String> {
     let path = &setup.fall.path;
-    let mut list = vec![
+    let falls = if setup.is_planar() {
+        "The subject is a rigid mass without width that falls straight down until taut and then swings in one plane about \
+         the pivot, up to its first turn; the line has no mass and nothing drags in the air."
+    } else {
         "The subject is a rigid mass that falls straight down; the line has no mass and nothing drags in the air."
-            .to_owned(),
-        path_sentence(&path.line, &path.other).to_owned(),
-    ];
+    };
+    let mut list = vec![falls.to_owned(), path_sentence(&path.line, &path.other).to_owned()];
+    if !path.is_linear() {
+        list.push(
+            "A force-elongation table is straight between its rows, and goes on straight beyond the last.".to_owned(),
+        );
+    }
+    list.extend(setup.span.iter().flat_map(super::rigging::Rigging::assumptions));
+    list.extend(setup.geometry.notes.iter().map(|&note| note.to_owned()));
     if path.absorber.is_some() {
         list.push(
             "The absorber slides at its deployment force, never takes anything back, and is rigid at its stroke."
@@ -37,23 +46,27 @@ fn path_sentence(line: &Group, other: &Group) -> &'static str {
 }
 
 /// What the reader must know about these numbers.
-pub fn warnings(scenario: &Scenario, setup: &Setup, outcome: &Outcome) -> Vec<String> {
+///
+/// `vertical` is the outcome of the vertical core; a planar run has none.
+pub fn warnings(scenario: &Scenario, setup: &Setup, vertical: Option<&Outcome>, stroke_used_up: bool) -> Vec<String> {
     let mut list = Vec::new();
-    if contact_jump(setup, outcome) {
+    if vertical.is_some_and(|outcome| contact_jump(setup, outcome)) {
         list.push(
             "The largest force is the jump of the damper at the moment of taut (c v0): an artefact of the two-parameter \
              line. Give `line.series_stiffness` for a three-parameter line without that jump."
                 .to_owned(),
         );
     }
-    if outcome.ended == Ended::TimeLimit {
+    list.extend(setup.span.iter().flat_map(super::rigging::Rigging::warnings));
+    let followed = !setup.span.as_ref().is_some_and(super::rigging::Rigging::has_absorber);
+    if followed && vertical.is_some_and(|outcome| outcome.ended == Ended::TimeLimit) {
         list.push(
             "The motion is not settled at the time limit: settle time and slack episodes are left out. Little or no \
              damping does that."
                 .to_owned(),
         );
     }
-    if outcome.stroke_used_up {
+    if stroke_used_up {
         list.push("The absorber's stroke is used up: from there on only stretch limits the force.".to_owned());
     }
     if scenario.harness.is_some() && scenario.subject.stretch_allowance.is_some_and(|a| a.si() > 0.0) {
@@ -63,7 +76,10 @@ pub fn warnings(scenario: &Scenario, setup: &Setup, outcome: &Outcome) -> Vec<St
         );
     }
     list.extend(heavy(scenario));
-    list.extend(beside(scenario));
+    if !setup.is_planar() {
+        list.extend(beside(scenario));
+        list.extend(faces(scenario));
+    }
     list
 }
 
@@ -92,4 +108,10 @@ fn beside(scenario: &Scenario) -> Option<String> {
         scenario.obstacles.iter().filter(|o| !o.is_below(&scenario.subject)).map(|o| format!("`{}`", o.name)).collect();
     (!names.is_empty())
         .then(|| format!("Beside the fall line and not met by a straight fall, so not judged: {}.", names.join(", ")))
+}
+
+fn faces(scenario: &Scenario) -> Option<String> {
+    let names: Vec<_> = scenario.faces.iter().map(|f| format!("`{}`", f.name)).collect();
+    (!names.is_empty())
+        .then(|| format!("A straight fall does not swing, so faces are not judged: {}.", names.join(", ")))
 }

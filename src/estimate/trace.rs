@@ -1,5 +1,6 @@
 //! The motion over time, exact at any instant.
-use crate::arrest::{self, Instant, Motion};
+use crate::arrest::{self, Happening, Instant, Motion};
+use crate::swing::{self, Trajectory};
 use std::sync::Arc;
 
 /// What the line is doing.
@@ -67,6 +68,21 @@ pub struct Sample {
     pub deployed_m: f64,
     /// Mode.
     pub mode: Mode,
+    /// Where it is beside the fall line; planar runs only.
+    pub plane: Option<PlanePoint>,
+}
+
+/// The place of the attachment in a planar run.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct PlanePoint {
+    /// Horizontal offset from the fall line, m, right positive.
+    pub offset_m: f64,
+    /// Elevation above the file's datum, m.
+    pub elevation_m: f64,
+    /// Speed along its path, m/s.
+    pub speed_m_per_s: f64,
+    /// Angle of the line from the plumb line through the pivot, rad, positive to the right.
+    pub angle_rad: f64,
 }
 
 impl From<Instant> for Sample {
@@ -80,15 +96,23 @@ impl From<Instant> for Sample {
             other_elongation_m: i.elongation_m[1],
             deployed_m: i.deployed_m,
             mode: Mode::of(i.mode),
+            plane: None,
         }
     }
 }
 
-/// The whole motion from the start of the fall until settled or the time limit. Cheap to clone.
+/// The whole motion from the start of the fall until its end. Cheap to clone.
 #[derive(Clone, Debug)]
 pub struct Trace {
-    motion: Arc<Motion>,
+    source: Source,
     phases: Arc<[Phase]>,
+}
+
+#[derive(Clone, Debug)]
+enum Source {
+    Vertical(Arc<Motion>),
+    /// With the elevation at taut, m.
+    Planar(Arc<Trajectory>, f64),
 }
 
 impl Trace {
@@ -101,7 +125,21 @@ impl Trace {
             mode: Mode::of(Some(stretch.mode)),
         });
         let phases = falling.into_iter().chain(rest).collect();
-        Self { motion: Arc::new(motion), phases }
+        Self { source: Source::Vertical(Arc::new(motion)), phases }
+    }
+
+    pub(super) fn planar(trajectory: Trajectory, taut_elevation_m: f64, happenings: &[(f64, Happening)]) -> Self {
+        let end_s = trajectory.end_s();
+        let mut phases = Vec::new();
+        let mut from = (0.0, Mode::Falling);
+        let ends = happenings.iter().map(|&(time_s, what)| (time_s, mode_after(what)));
+        for (time_s, mode) in ends.chain([(end_s, Mode::Falling)]) {
+            if time_s > from.0 {
+                phases.push(Phase { from_s: from.0, to_s: time_s, mode: from.1 });
+            }
+            from = (time_s, mode);
+        }
+        Self { source: Source::Planar(Arc::new(trajectory), taut_elevation_m), phases: phases.into() }
     }
 
     /// Phases in order; they touch each other.
@@ -113,38 +151,78 @@ impl Trace {
     /// End of the motion, s from the start of the fall.
     #[must_use]
     pub fn end_s(&self) -> f64 {
-        self.motion.end_s()
+        match &self.source {
+            Source::Vertical(motion) => motion.end_s(),
+            Source::Planar(trajectory, _) => trajectory.end_s(),
+        }
     }
 
     /// The exact state at a time, clamped to `0..=end_s`.
     #[must_use]
     pub fn at(&self, time_s: f64) -> Sample {
-        self.motion.at(time_s).into()
+        match &self.source {
+            Source::Vertical(motion) => motion.at(time_s).into(),
+            Source::Planar(trajectory, taut_m) => planar_sample(&trajectory.at(time_s), *taut_m),
+        }
     }
 
     /// Samples with at most `step_s` between them and every phase boundary on both sides.
     #[must_use]
     pub fn samples(&self, from_s: f64, to_s: f64, step_s: f64) -> Vec<Sample> {
         let mut samples = Vec::new();
-        let offset = usize::from(self.phases.len() > self.motion.stretches().len());
         for (index, phase) in self.phases.iter().enumerate() {
             let (from, to) = (phase.from_s.max(from_s), phase.to_s.min(to_s));
-            if from > to {
-                continue;
-            }
-            for time in steps(from, to, step_s) {
-                samples.push(match index.checked_sub(offset).map(|n| &self.motion.stretches()[n]) {
-                    Some(stretch) => Motion::within(stretch, time).into(),
-                    None => Sample { mode: Mode::Falling, force_n: 0.0, ..self.before_taut(time) },
-                });
+            if from <= to {
+                samples.extend(steps(from, to, step_s).map(|time_s| self.within(index, time_s)));
             }
         }
         samples
     }
 
-    /// The state in the free fall, up to and including the moment of taut.
-    fn before_taut(&self, time_s: f64) -> Sample {
-        self.motion.falling(time_s).into()
+    /// The state at a time of one phase, also at its very end.
+    fn within(&self, index: usize, time_s: f64) -> Sample {
+        let phase = self.phases[index];
+        let motion = match &self.source {
+            Source::Vertical(motion) => motion,
+            Source::Planar(..) => {
+                // Just inside the phase: the trajectory counts a boundary to the phase after it.
+                let inside = time_s.min(phase.to_s.next_down()).max(phase.from_s);
+                return Sample { time_s, mode: phase.mode, ..self.at(inside) };
+            }
+        };
+        let offset = self.phases.len() - motion.stretches().len();
+        match index.checked_sub(offset).map(|n| &motion.stretches()[n]) {
+            Some(stretch) => Motion::within(stretch, time_s).into(),
+            None => motion.falling(time_s).into(),
+        }
+    }
+}
+
+const fn mode_after(what: Happening) -> Mode {
+    match what {
+        Happening::Taut | Happening::DeploymentEnd | Happening::StrokeUsedUp => Mode::Taut,
+        Happening::DeploymentStart => Mode::Deploying,
+        Happening::Slack => Mode::Slack,
+    }
+}
+
+fn planar_sample(i: &swing::Instant, taut_elevation_m: f64) -> Sample {
+    let [across, up] = i.velocity_m_per_s;
+    Sample {
+        time_s: i.time_s,
+        travel_m: taut_elevation_m - i.at.elevation_m,
+        speed_m_per_s: -up,
+        force_n: i.force_n,
+        line_elongation_m: i.elongation_m[0],
+        other_elongation_m: i.elongation_m[1],
+        deployed_m: i.deployed_m,
+        mode: Mode::of(i.mode),
+        plane: Some(PlanePoint {
+            offset_m: i.at.offset_m,
+            elevation_m: i.at.elevation_m,
+            speed_m_per_s: across.hypot(up),
+            angle_rad: i.angle_rad,
+        }),
     }
 }
 

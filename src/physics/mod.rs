@@ -9,4 +9,9 @@ mod path;
 pub mod span;
 
 pub use elastic::{Elastic, Piece, Table, TableError};
+pub use geometry::{
+    Course, Geometry, GeometryError, Layout, Point, Positions, Step as GeometryStep, hanging, retractable, secondary,
+    stated, vertical_lifeline,
+};
 pub use path::{Absorber, Group, SeriesPath};
+pub use span::{EndLoad, InlineAbsorber, Loading, Span, SpanCurve, SpanError, Tightness};

@@ -1,0 +1,228 @@
+//! The horizontal lifeline: its curve as a part of the path, and what it feels at the peak.
+use super::{EndLoadView, EstimateError, SpanView};
+use crate::arrest::{Ended, Fall, Outcome, Settings, solve};
+use crate::physics::{Course, Elastic, InlineAbsorber, SpanCurve, SpanError, Tightness, knots};
+use crate::quantity::{Dimension, UnitSystem, format_si};
+use crate::scenario::{Span, SpanTension};
+
+/// Largest error of the force table as a share of the largest force.
+const SHARE: f64 = 1e-3;
+
+/// Passes that fit the table to the largest force of the run before it counts as out of reach.
+const PASSES: usize = 12;
+
+/// A lifeline as it is rigged.
+pub struct Rigging {
+    /// Static curve.
+    pub curve: SpanCurve,
+    /// The span of the file, SI.
+    span: crate::physics::Span,
+    has_absorber: bool,
+}
+
+/// Numbers of the lifeline at the peak.
+pub struct SpanPeak {
+    /// Largest cable tension, N.
+    pub tension_n: f64,
+    /// Deflection then, from the chord, m.
+    pub deflection_m: f64,
+    /// Length the in-line absorber has deployed, m.
+    pub deployed_m: f64,
+}
+
+impl Rigging {
+    /// # Errors
+    /// When the span contradicts itself or does not go with the rest.
+    pub fn new(span: &Span, fall: &Fall, course: Course) -> Result<Self, EstimateError> {
+        if course == Course::Planar {
+            return Err(refused(
+                "a horizontal lifeline with its line beside the fall line is not solved",
+                "leave out `place.anchor_offset` and `place.edge`, or judge the lifeline on its own",
+                "anchor.kind",
+            ));
+        }
+        if fall.path.other.is_damped() {
+            return Err(refused(
+                "damping of the harness beside a horizontal lifeline is not solved",
+                "leave out `harness.damping`: without it the estimate is on the far side",
+                "harness.damping",
+            ));
+        }
+        let whole = |m: Option<crate::quantity::Measure>| m.map_or(1.0, |m| m.si().round());
+        #[expect(
+            clippy::cast_possible_truncation,
+            clippy::cast_sign_loss,
+            reason = "a whole number from 1, checked by the reader"
+        )]
+        let count = |m| whole(m).clamp(1.0, 1000.0) as u32;
+        let given = crate::physics::Span {
+            length_m: span.length.si(),
+            level_difference_m: span.level_difference.map_or(0.0, |d| d.si()),
+            at_m: span.at_m(),
+            tightness: match &span.tension {
+                SpanTension::Pretension(force) => Tightness::Pretension { force_n: force.si() },
+                SpanTension::Sag(sag) => Tightness::Sag { mid_m: sag.si() },
+            },
+            modulus_n: span.modulus.si(),
+            support_stiffness_n_per_m: span.support_stiffness.map(|k| k.si()),
+            absorber: span
+                .absorber
+                .as_ref()
+                .map(|a| InlineAbsorber { force_n: a.deploy_force.si(), stroke_m: a.stroke.si() }),
+            workers: count(span.workers),
+            spans: count(span.spans),
+        };
+        let curve = SpanCurve::new(&given).map_err(|e| clash(&e))?;
+        Ok(Self { curve, span: given, has_absorber: span.absorber.is_some() })
+    }
+
+    /// Solves the fall with the span in its path. The table of the span is fitted to the largest force of the run, which
+    /// is known only after the run: it is done again until the table reaches it, and once more with the table ending
+    /// there.
+    ///
+    /// # Errors
+    /// As the solver, and when the span's law does not rise.
+    pub fn solve(&self, fall: &Fall) -> Result<Outcome, EstimateError> {
+        let (mass, gravity) = (fall.mass_kg, fall.gravity_m_per_s2);
+        let deepest = self.curve.rigid_line_deflection_m(mass, gravity, fall.free_fall_m);
+        let mut largest_n = self.curve.line_force_n(deepest).max(2.0 * fall.weight_n());
+        let mut outcome = self.pass(fall, largest_n)?;
+        for _ in 0..PASSES {
+            let inside = outcome.peak_force_n <= largest_n;
+            if inside && outcome.peak_force_n > 0.9 * largest_n {
+                return Ok(outcome);
+            }
+            largest_n = outcome.peak_force_n * if inside { 1.001 } else { 1.25 };
+            outcome = self.pass(fall, largest_n)?;
+        }
+        Err(EstimateError::Numerical { message: "the span's table does not settle on the largest force".to_owned() })
+    }
+
+    fn pass(&self, fall: &Fall, largest_n: f64) -> Result<Outcome, EstimateError> {
+        let fit = if self.has_absorber {
+            self.curve.envelope_table(largest_n, SHARE)
+        } else {
+            self.curve.table(largest_n, SHARE)
+        };
+        let table = fit.map_err(|e| clash(&e))?.table;
+        let table = match fall.path.other.elastic {
+            Elastic::Linear { stiffness_n_per_m } => {
+                knots::with_spring(&table, stiffness_n_per_m).map_err(|e| clash(&SpanError::from(e)))?
+            }
+            _ => table,
+        };
+        let mut loaded = fall.clone();
+        loaded.path.other.elastic = Elastic::Table(table);
+        let mut outcome = solve(&loaded, &Settings::default())?;
+        if self.has_absorber {
+            self.only_first_peak(fall, &mut outcome);
+        }
+        Ok(outcome)
+    }
+
+    /// Leaves out what an envelope table cannot say: everything after the first peak. Rest is that of the cable with the
+    /// length its absorber has given.
+    fn only_first_peak(&self, without_span: &Fall, outcome: &mut Outcome) {
+        outcome.ended = Ended::TimeLimit;
+        outcome.rebound_rise_m = None;
+        outcome.time_highest_s = None;
+        outcome.time_first_slack_s = None;
+        outcome.slack_episodes = 0;
+        let held = self.curve.with_deployed(self.peak(outcome).deployed_m);
+        let sag = held.deflection_m(without_span.weight_n() * f64::from(self.span.workers)) - self.curve.slack_m();
+        outcome.hang_travel_m = without_span.hang_travel_m(outcome.deployed_m) + sag;
+        if let Some(lowest) = outcome.lowest {
+            outcome.motion.end_at(lowest.time_s);
+        }
+    }
+
+    /// Whether an absorber is in line with the cable.
+    pub const fn has_absorber(&self) -> bool {
+        self.has_absorber
+    }
+
+    /// Tension and deflection under the largest line force of a run.
+    pub fn peak(&self, outcome: &Outcome) -> SpanPeak {
+        let load = outcome.peak_force_n * f64::from(self.span.workers);
+        if !self.has_absorber {
+            let deflection_m = self.curve.deflection_m(load);
+            return SpanPeak { tension_n: self.curve.tension_n(deflection_m), deflection_m, deployed_m: 0.0 };
+        }
+        let deflection_m = self.curve.loading_deflection_m(load);
+        let loading = self.curve.loading(deflection_m);
+        SpanPeak { tension_n: loading.tension_n, deflection_m, deployed_m: loading.deployed_m }
+    }
+
+    /// For screens and sheets.
+    pub fn view(&self, fall: &Fall, outcome: &Outcome) -> SpanView {
+        let peak = self.peak(outcome);
+        let held = self.curve.with_deployed(peak.deployed_m);
+        let weight = fall.weight_n() * f64::from(self.span.workers);
+        let end_loads = held
+            .end_loads(peak.deflection_m)
+            .map(|load| EndLoadView { force_n: load.force_n, below_horizontal_deg: load.below_horizontal_deg });
+        SpanView {
+            length_m: self.span.length_m,
+            at_m: self.span.at_m,
+            level_difference_m: self.span.level_difference_m,
+            slack_m: self.curve.slack_m(),
+            peak_deflection_m: peak.deflection_m,
+            rest_deflection_m: held.deflection_m(weight),
+            peak_tension_n: peak.tension_n,
+            amplification: held.amplification(peak.deflection_m),
+            end_loads,
+            deployed_m: self.has_absorber.then_some(peak.deployed_m),
+        }
+    }
+
+    /// What the reader must know about a run with this span.
+    pub fn warnings(&self) -> Vec<String> {
+        let mut list = Vec::new();
+        if self.has_absorber {
+            list.push(
+                "The absorber in line with the lifeline is followed to the first peak only: what comes after (rebound, \
+                 slack, settling) is left out."
+                    .to_owned(),
+            );
+        }
+        if self.span.workers > 1 {
+            list.push(format!(
+                "{} workers fall together as equal masses at the same place of the span.",
+                self.span.workers
+            ));
+        }
+        list
+    }
+
+    /// Sentences that the model takes for granted.
+    pub fn assumptions(&self) -> Vec<String> {
+        let mut list = vec![
+            "The lifeline is a massless elastic cable between its supports; its law is a table within 0.1 % of the largest \
+             force."
+                .to_owned(),
+        ];
+        if (self.span.at_m - 0.5 * self.span.length_m).abs() > 1e-9 * self.span.length_m {
+            list.push(
+                "The load stays at its place on the span and moves straight down; off the middle that is not in \
+                 horizontal balance, and in truth it slides towards the middle."
+                    .to_owned(),
+            );
+        }
+        if self.span.spans > 1 {
+            list.push("The cable runs through the intermediate supports without friction.".to_owned());
+        }
+        let slack = format_si(self.curve.slack_m(), Dimension::Length, UnitSystem::Metric);
+        list.push(format!(
+            "The lifeline hangs {slack} below its chord at the load before it takes any: part of the free fall."
+        ));
+        list
+    }
+}
+
+fn clash(error: &SpanError) -> EstimateError {
+    refused(&error.to_string(), "check `anchor.span`", "anchor.span")
+}
+
+fn refused(message: &str, hint: &str, path: &'static str) -> EstimateError {
+    EstimateError::Geometry { message: message.to_owned(), hint: hint.to_owned(), path }
+}
