@@ -1,4 +1,5 @@
 //! Planar arrests against values from outside the project, each with its source and mark as in `check_values.rs`.
+#![allow(clippy::expect_used, clippy::panic, reason = "a test fails by panicking")]
 mod support;
 
 use support::printed::assert_printed;
@@ -32,12 +33,18 @@ fn swing(plane: &Plane) -> PlaneOutcome {
 // George Mason Univ. page on large-angle pendulum periods [P]: L 1 m, g 9.81.
 #[test]
 fn a_rigid_line_swings_with_the_published_pendulum_periods() {
-    for (degrees, printed) in [(10.0_f64, "2.009892627298600"), (40.0, "2.068937851893589"), (80.0, "2.281885924019639")] {
+    for (degrees, printed) in
+        [(10.0_f64, "2.009892627298600"), (40.0, "2.068937851893589"), (80.0, "2.281885924019639")]
+    {
         let (sin, cos) = degrees.to_radians().sin_cos();
         let outcome = swing(&Plane { gravity_m_per_s2: 9.81, ..plane(80.0, 1.0, (sin, -cos), Group::rigid()) });
         assert_eq!(outcome.ended, Ended::Reversal);
         assert!((outcome.angle_at_end_rad.to_degrees() + degrees).abs() < 1e-9);
-        assert!((outcome.end_s * 2.0 - printed.parse::<f64>().expect("a number")).abs() < 1e-12, "{}", outcome.end_s * 2.0);
+        assert!(
+            (outcome.end_s * 2.0 - printed.parse::<f64>().expect("a number")).abs() < 1e-12,
+            "{}",
+            outcome.end_s * 2.0
+        );
     }
 }
 

@@ -1,4 +1,5 @@
 //! The planar solver over a thousand planes at and beyond the edges, and its energy account.
+#![allow(clippy::expect_used, clippy::panic, reason = "a test fails by panicking")]
 mod support;
 mod swing_support;
 

@@ -22,7 +22,7 @@ pub mod third;
 pub use hang::Hang;
 pub use mode::{Mode, State, Stretch};
 pub use motion::{Instant, Motion};
-pub use outcome::{ArrestError, Ended, EnergyAccount, Fall, Happening, Lowest, Outcome, Settings, WorkCount};
 pub(crate) use next::Slider;
 pub(crate) use onset::give_back;
+pub use outcome::{ArrestError, Ended, EnergyAccount, Fall, Happening, Lowest, Outcome, Settings, WorkCount};
 pub use solve::solve;

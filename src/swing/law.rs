@@ -25,12 +25,7 @@ impl Affine {
     }
 
     fn times(self, factor: f64) -> Self {
-        Self {
-            one: factor * self.one,
-            rho: factor * self.rho,
-            rate: factor * self.rate,
-            a: self.a.map(|a| factor * a),
-        }
+        Self { one: factor * self.one, rho: factor * self.rho, rate: factor * self.rate, a: self.a.map(|a| factor * a) }
     }
 
     fn plus(self, other: Self) -> Self {

@@ -87,7 +87,7 @@ impl Default for Settings {
 #[derive(Clone, Debug, PartialEq, thiserror::Error)]
 pub enum SwingError {
     /// An input is out of range.
-    #[error("{what} is `{value}`")]
+    #[error("{what} is `{value}`: give a number in its range")]
     Input {
         /// Which input.
         what: &'static str,
@@ -95,7 +95,9 @@ pub enum SwingError {
         value: f64,
     },
     /// The attachment starts farther from the pivot than the line reaches.
-    #[error("the attachment is `{distance_m}` m from the pivot but the line reaches only `{length_m}` m")]
+    #[error(
+        "the attachment is `{distance_m}` m from the pivot but the line reaches only `{length_m}` m: lengthen the line or move the anchor"
+    )]
     LineTooShort {
         /// Distance from the pivot to the start, m.
         distance_m: f64,
@@ -106,13 +108,15 @@ pub enum SwingError {
     #[error(transparent)]
     Path(#[from] ArrestError),
     /// The account does not balance.
-    #[error("the energy account is off by {residual:e} of the fall energy")]
+    #[error("the energy account is off by `{residual:e}` of the fall energy: the numbers of this run do not count")]
     Energy {
         /// The imbalance.
         residual: f64,
     },
     /// More steps than the run may take: some part of the path relaxes far faster than the swing.
-    #[error("more than {steps} steps up to {time_s} s: a part of the line path is far faster than the swing")]
+    #[error(
+        "more than `{steps}` steps up to `{time_s}` s: a part of the line path is far faster than the swing; take its damper out or make it rigid"
+    )]
     TooManySteps {
         /// The bound.
         steps: u32,

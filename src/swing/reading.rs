@@ -19,7 +19,6 @@ impl Peak {
             *self = Self { value, time_s };
         }
     }
-
 }
 
 /// The largest value of a signal that goes on from step to step.

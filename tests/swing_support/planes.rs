@@ -45,7 +45,8 @@ fn setup(mut case: Case, length: f64, share: f64) -> Setup {
 pub fn physical_plane(seed: u64, index: u64, curves: bool) -> Setup {
     let case = physical(seed, index, curves);
     let mut random = stream(seed ^ 0x5157, index);
-    let length = if random.random_bool(0.15) { random.random_range(20.0..60.0) } else { random.random_range(1.0..20.0) };
+    let length =
+        if random.random_bool(0.15) { random.random_range(20.0..60.0) } else { random.random_range(1.0..20.0) };
     let side = if random.random_bool(0.5) { 1.0 } else { -1.0 };
     setup(case, length, side * random.random_range(0.02..0.95))
 }

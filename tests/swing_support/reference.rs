@@ -74,6 +74,13 @@ pub fn run(setup: &Setup, relative_tolerance: f64, look: f64, time_limit: f64) -
     run.record
 }
 
+/// The state so long after taut in the taut mode, in one integration without a look.
+pub fn one_go(setup: &Setup, relative_tolerance: f64, span: f64) -> State {
+    let mut run = Run::new(setup, relative_tolerance, 1.0);
+    run.flow.mode = Mode::Stuck;
+    run.at(span)
+}
+
 impl<'a> Run<'a> {
     fn new(setup: &'a Setup, relative_tolerance: f64, look: f64) -> Self {
         let flow = Flow::new(&setup.case, relative_tolerance);
@@ -104,7 +111,11 @@ impl<'a> Run<'a> {
     fn limit(&self) -> f64 {
         match &self.setup.case.slider {
             Some(slider) if !self.locked => {
-                if self.begun { self.flow.slider_force(self.state[6]) } else { slider.onset }
+                if self.begun {
+                    self.flow.slider_force(self.state[6])
+                } else {
+                    slider.onset
+                }
             }
             _ => f64::INFINITY,
         }
@@ -215,9 +226,8 @@ impl<'a> Run<'a> {
             Mode::Stuck => self.while_stuck(span, &view),
             Mode::Sliding => self.while_sliding(span, &last, &view),
             Mode::Slack => {
-                let gap = |y: &State, view: &View| {
-                    radius(y) - self.setup.length - y[6] - view.stretch[0] - view.stretch[1]
-                };
+                let gap =
+                    |y: &State, view: &View| radius(y) - self.setup.length - y[6] - view.stretch[0] - view.stretch[1];
                 let met = gap(&last, &view) >= 0.0;
                 (met.then_some(Next::Taut), if met { self.root_after(span, gap) } else { span })
             }
