@@ -7,7 +7,7 @@ use super::series::State;
 use crate::arrest::{EnergyAccount, Mode};
 
 /// Largest imbalance of the energy account over the fall energy with which a run counts as computed.
-const BALANCE: f64 = 1e-7;
+const BALANCE: f64 = 1e-8;
 
 /// Heights below this share of the line's length are rounding against its length and are not judged finer.
 const LEAST_HEIGHT: f64 = 1e-6;

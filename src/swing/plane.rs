@@ -73,13 +73,15 @@ pub struct Settings {
     pub time_limit_s: f64,
     /// Truncation error allowed in a step, relative to the weight and to the length, in `1e-15..=1e-6`.
     pub tolerance: f64,
+    /// Most steps before the run is refused; a practical swing takes 10 to 6000.
+    pub most_steps: u32,
     /// Force levels whose time above is measured, N.
     pub levels_n: [f64; 2],
 }
 
 impl Default for Settings {
     fn default() -> Self {
-        Self { time_limit_s: 120.0, tolerance: 1e-12, levels_n: [4000.0, 6000.0] }
+        Self { time_limit_s: 120.0, tolerance: 1e-14, most_steps: 50_000, levels_n: [4000.0, 6000.0] }
     }
 }
 
