@@ -1,4 +1,5 @@
 //! Picks the command line or the screen.
+use std::io::Write;
 use std::path::Path;
 use std::process::ExitCode;
 use underfoot::cli::{self, Next};
@@ -19,14 +20,19 @@ fn screen(path: &Path, units: UnitSystem) -> color_eyre::Result<ExitCode> {
     let Err(report) = tui::run(path, units) else { return Ok(ExitCode::SUCCESS) };
     if let Some(error) = report.downcast_ref::<ScreenError>() {
         if !error.is_silent() {
-            eprintln!("underfoot: {error}");
+            say(&format!("underfoot: {error}"));
         }
         return Ok(ExitCode::from(error.exit_code()));
     }
     match report.downcast_ref::<LoadError>() {
-        Some(LoadError::Refused(faults)) => eprintln!("{}", faults.render(false)),
-        Some(error) => eprintln!("underfoot: {error}"),
+        Some(LoadError::Refused(faults)) => say(&faults.render(false)),
+        Some(error) => say(&format!("underfoot: {error}")),
         None => return Err(report),
     }
     Ok(ExitCode::from(2))
+}
+
+/// A line to standard error, which may be a terminal that has gone away.
+fn say(words: &str) {
+    let _ = writeln!(std::io::stderr(), "{words}");
 }

@@ -483,7 +483,7 @@ fn a_file_that_cannot_be_computed_opens_and_can_be_mended() {
 fn the_wheel_walks_the_list_and_nudges_below_it() {
     let mut bench = Bench::roof();
     bench.mouse(MouseEventKind::ScrollDown, 4, 8);
-    assert_eq!(bench.model.input, 1);
+    assert_eq!(bench.model.chosen_path(), Some("subject.attachment_above_feet"));
     bench.choose("line.length");
     let (_, row) = bench.find("line.length =");
     bench.mouse(MouseEventKind::ScrollUp, 4, row);
@@ -508,7 +508,7 @@ fn a_file_without_elevations_is_drawn_from_the_taut_position() {
     let bench = Bench::of(LOAD, 140, 44);
     let frame = bench.frame();
     assert!(frame.contains("past taut"), "{frame}");
-    assert!(frame.contains("0.20 m free fall"), "{frame}");
+    assert!(frame.contains("0.200 m free fall"), "{frame}");
 }
 
 #[test]
@@ -563,4 +563,14 @@ fn no_key_and_no_size_makes_the_screen_panic() {
         bench.send(Message::Resize(columns, rows));
         bench.frame();
     }
+}
+
+#[test]
+fn sentence_log_and_drawing_show_the_same_digits() {
+    let bench = Bench::roof();
+    let frame = bench.frame();
+    for text in ["feet stop 0.807 m above", "0.807 m clearance", "0.526 m deployed"] {
+        assert!(frame.contains(text), "no `{text}` in\n{frame}");
+    }
+    assert_eq!(frame.matches("0.526 m deployed").count(), 2, "log and drawing\n{frame}");
 }

@@ -175,8 +175,8 @@ fn history_names_its_axes_its_levels_and_its_modes() {
         "(m)",
         "line force (kN), peak 3.72 kN",
         "limit 6.00 kN",
-        "hangs at 0.30 m",
-        "lowest 0.93 m",
+        "rest 0.300 m",
+        "lowest 0.930 m",
         "= taut",
         "~ slack",
     ] {
@@ -201,4 +201,14 @@ fn tick_labels_under_a_plot_never_touch() {
             assert!(labels.windows(2).all(|pair| pair[0] < pair[1]), "{width} {span}: {text}");
         }
     }
+}
+
+#[test]
+fn levels_and_reserves_show_the_digits_of_sentences_and_parts_add_up_to_the_millimetre() {
+    let rows = draw_scene(&roof(0.417, UnitSystem::Metric), 110, 40).join("\n");
+    for text in ["0.417 m clearance of 1.00 m", "13.50 m anchor", "1.800 m free fall"] {
+        assert!(rows.contains(text), "no `{text}` in\n{rows}");
+    }
+    let rows = draw_scene(&roof(0.80772, UnitSystem::Us), 110, 40).join("\n");
+    assert!(rows.contains("2.65 ft clearance of 3.28 ft"), "{rows}");
 }

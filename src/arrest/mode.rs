@@ -252,30 +252,33 @@ impl<'a> Path<'a> {
         };
         let c = c1 + c2;
         let of = Spectrum::in_series(m, (k1, c1), (k2, c2));
-        // Derivatives at the start, in turn: stretch of part 1, of part 2, speed, force.
         let w = self.weight();
-        let e1 = (f2 - f1 + c2 * state.v) / c;
-        let e2 = state.v - e1;
-        let force = f1 + c1 * e1;
-        let dv = (w - force) / m;
-        let ee1 = (k2 * e2 - k1 * e1 + c2 * dv) / c;
-        let ee2 = dv - ee1;
-        let d_force = k1 * e1 + c1 * ee1;
-        let ddv = -d_force / m;
-        let eee1 = (k2 * ee2 - k1 * ee1 + c2 * ddv) / c;
-        let dd_force = k1 * ee1 + c1 * eee1;
+        let (lambda, v) = (of.lambda, state.v);
         let away = [(f1 - w) / k1, (f2 - w) / k2];
         let x_away = away[0] + away[1];
-        let wave = |rest: f64, jet: [f64; 3]| Signal::Wave(Wave::new(of, rest, jet));
-        let x = wave(state.x - x_away, [x_away, state.v, dv]);
-        let v = wave(0.0, [state.v, dv, ddv]);
-        let t = wave(w, [force - w, d_force, dd_force]);
-        let first = wave(a.e - away[0], [away[0], e1, ee1]);
+        let e1 = (f2 - f1 + c2 * v) / c;
+        let e2 = v - e1;
+        let dv = (w - f1 - c1 * e1) / m;
+        let ee1 = (k2 * e2 - k1 * e1 + c2 * dv) / c;
+        let ddv = -(k1 * e1 + c1 * ee1) / m;
+        // With (D + K/C) e1 = (k2 x + c2 v) / C and K/C + lambda = off, large terms of a fast root never meet.
+        let off = 2.0 * of.pair.decay - c1 * c2 / (m * c);
+        let (without_e1, without_e2) =
+            ((k2 * x_away + c2 * v) / c - off * away[0], (k1 * x_away + c1 * v) / c - off * away[1]);
+        let (without_de1, without_de2) = ((k2 * v + c2 * dv) / c - off * e1, (k1 * v + c1 * dv) / c - off * e2);
+        let without_dde1 = (k2 * dv + c2 * ddv) / c - off * ee1;
+        let without_t = [k1 * without_e1 + c1 * without_de1, k1 * without_de1 + c1 * without_dde1];
+        let without_v = [dv - lambda * v, -without_t[0] / m];
+        let wave = |rest: f64, away: f64, without: [f64; 2]| Signal::Wave(Wave::new(of, rest, away, without));
+        let x = wave(state.x - x_away, x_away, [v - lambda * x_away, without_v[0]]);
+        let t = wave(w, -m * dv, without_t);
+        let first = wave(a.e - away[0], away[0], [without_e1, without_de1]);
+        let v = wave(0.0, v, without_v);
         let along = |k: f64, start: f64| t.scaled(1.0 / k, start - f2 / k);
         let (second, s) = match slider {
             Some((slope, _)) if b.piece.is_some() => (along(b.slope(), b.e), along(slope, state.s)),
             Some((slope, _)) => (Signal::constant(0.0), along(slope, state.s)),
-            None => (wave(b.e - away[1], [away[1], e2, ee2]), Signal::constant(state.s)),
+            None => (wave(b.e - away[1], away[1], [without_e2, without_de2]), Signal::constant(state.s)),
         };
         let e = if damped == 0 { [first, second] } else { [second, first] };
         Stretch { s, ..Self::taut(mode, x, v, t, e, state) }

@@ -1,8 +1,8 @@
 //! Third-order modes: a damped and an undamped part in series, or two damped parts.
 //!
-//! The solution is an interpolation of the exponential on the spectrum,
-//! `w = rest + exp(mu t) (p C + q S) + r f(t)`, with the pair `mu +- sqrt(-q)` in the form of [`Oscillator`] and `f` the
-//! divided difference of `exp(s t)` over all three roots. It stays accurate when roots meet.
+//! Where the real root `lambda` is far from the pair, `w = rest + exp(mu t) (p C + q S) + r exp(lambda t)`, with the pair
+//! `mu +- sqrt(-q)` in the form of [`Oscillator`]. Where roots meet that divides by next to nothing, and the last term is
+//! `r f(t)` with `f` the divided difference of `exp(s t)` over all three roots.
 use super::oscillator::{Oscillator, Swing, decayed_time, waving_integral};
 use super::quadrature::integral_with_waves;
 use super::roots::{Passage, monotone_zero};
@@ -17,6 +17,8 @@ pub struct Spectrum {
     pub pair: Oscillator,
     /// `(lambda - mu)^2 + q`: product of the distances from `lambda` to the pair.
     pub apart: f64,
+    /// Whether `lambda` is far from the pair.
+    pub far: bool,
 }
 
 impl Spectrum {
@@ -55,12 +57,16 @@ impl Spectrum {
         let decay = 0.5 * p;
         let q = r - decay * decay;
         let pair = Oscillator { decay, q, frequency: q.abs().sqrt(), stiffness: r };
-        Self { lambda, pair, apart: (lambda + decay).powi(2) + q }
+        let apart = (lambda + decay).powi(2) + q;
+        Self { lambda, pair, apart, far: apart > 0.1 * (lambda * lambda + r) }
     }
 
-    /// `exp(mu t) C`, `exp(mu t) S` and the divided difference `f` at `t`.
+    /// `exp(mu t) C`, `exp(mu t) S` and the third function at `t`.
     fn basis(&self, t: f64) -> (f64, f64, f64) {
         let (c, s) = self.pair.pair(t);
+        if self.far {
+            return (c, s, (self.lambda * t).exp());
+        }
         let d = -self.pair.decay - self.lambda;
         if (d.abs() + self.pair.frequency) * t < 0.5 {
             return (c, s, (self.lambda * t).exp() * self.divided_series(d, t));
@@ -146,12 +152,19 @@ pub struct Wave {
 }
 
 impl Wave {
-    /// From the distance to rest and the first two derivatives at `t = 0`.
+    /// From the distance to rest at `t = 0`, and the values there of `w' - lambda w` (about rest) and
+    /// `w'' - lambda w'`, which hold no more of `exp(lambda t)`.
     #[must_use]
-    pub fn new(of: Spectrum, rest: f64, jet: [f64; 3]) -> Self {
-        let [w, w1, w2] = jet;
-        let decay = of.pair.decay;
-        Self { of, rest, a: [w, w1 + decay * w, w2 + 2.0 * decay * w1 + of.pair.stiffness * w] }
+    pub fn new(of: Spectrum, rest: f64, away: f64, without: [f64; 2]) -> Self {
+        let Spectrum { lambda, pair, apart, far } = of;
+        let shift = pair.decay + lambda;
+        let (p, q) = (without[0], without[1] + pair.decay * without[0]);
+        if far {
+            let (cosine, sine) = (-(shift * p + q) / apart, (pair.q * p - shift * q) / apart);
+            return Self { of, rest, a: [cosine, sine, away - cosine] };
+        }
+        let second = p + shift * away;
+        Self { of, rest, a: [away, second, q + shift * second + pair.q * away] }
     }
 
     /// Value at `t`.
@@ -167,8 +180,23 @@ impl Wave {
         let Spectrum { lambda, pair, .. } = self.of;
         let [p, q, r] = self.a;
         // (e^mu C)' = mu e^mu C - q e^mu S; (e^mu S)' = e^mu C + mu e^mu S; f' = lambda f + e^mu S.
-        let a = [q - pair.decay * p, r - pair.decay * q - pair.q * p, lambda * r];
+        let a = [q - pair.decay * p, self.coupled() - pair.decay * q - pair.q * p, lambda * r];
         Self { of: self.of, rest: 0.0, a }
+    }
+
+    /// What the third function adds to `S` when differentiated.
+    fn coupled(&self) -> f64 {
+        if self.of.far { 0.0 } else { self.a[2] }
+    }
+
+    /// Coefficients of the three exponentials on their own: of `exp(lambda t)`, `C` and `S`.
+    fn split(&self) -> (f64, f64, f64) {
+        let [p, q, r] = self.a;
+        if self.of.far {
+            return (r, p, q);
+        }
+        let alone = r / self.of.apart;
+        (alone, p - alone, q - alone * (self.of.pair.decay + self.of.lambda))
     }
 
     /// `a w + b`.
@@ -180,15 +208,13 @@ impl Wave {
     /// A bound on `|w - rest|` for all times from `t` on.
     #[must_use]
     pub fn distance_bound(&self, t: f64) -> f64 {
-        self.split_bound(t).min(self.joint_bound(t))
+        if self.of.far { self.split_bound(t) } else { self.split_bound(t).min(self.joint_bound(t)) }
     }
 
     /// From the three exponentials one by one: tight when the roots are apart.
     fn split_bound(&self, t: f64) -> f64 {
-        let Spectrum { lambda, pair, apart } = self.of;
-        let alone = self.a[2] / apart;
-        let d = -pair.decay - lambda;
-        let (p, q) = (self.a[0] - alone, self.a[1] + alone * d);
+        let Spectrum { lambda, pair, .. } = self.of;
+        let (alone, p, q) = self.split();
         let own = alone.abs() * (lambda * t).exp();
         if pair.q > 0.0 {
             return own + (-pair.decay * t).exp() * p.hypot(q / pair.frequency);
@@ -214,15 +240,13 @@ impl Wave {
     /// Integral of `w^2` over `0..t` for a wave with rest value 0, relative accuracy about 1e-12.
     #[must_use]
     pub fn square_integral(&self, t: f64) -> f64 {
-        let Spectrum { lambda, pair, apart } = self.of;
-        let d = -pair.decay - lambda;
-        let far = apart > 0.1 * (lambda * lambda + pair.stiffness);
+        let Spectrum { lambda, pair, far, .. } = self.of;
         if !(far && pair.q > 0.0 && pair.frequency > 0.3 * pair.decay) {
             let wave = if pair.q > 0.0 { pair.frequency } else { 0.0 };
             return integral_with_waves(|time| self.value(time).powi(2), t, self.of.fastest(), wave);
         }
-        let alone = self.a[2] / apart;
-        let (re, im) = (self.a[0] - alone, -(self.a[1] + alone * d) / pair.frequency);
+        let (alone, p, q) = self.split();
+        let (re, im) = (p, -q / pair.frequency);
         let steady = 0.5 * re.hypot(im).powi(2) * decayed_time(2.0 * pair.decay, t);
         alone * alone * decayed_time(-2.0 * lambda, t)
             + 2.0 * alone * waving_integral(re, im, pair.decay - lambda, pair.frequency, t)
@@ -293,9 +317,9 @@ impl Turns {
     fn new(wave: &Wave, from: f64, to: f64) -> Self {
         let rate = wave.derivative();
         let Spectrum { lambda, pair, .. } = wave.of;
-        let [p, q, r] = rate.a;
+        let [p, q, _] = rate.a;
         let shift = pair.decay + lambda;
-        let swing = Swing { of: pair, rest: 0.0, p: q - shift * p, q: r - shift * q - pair.q * p };
+        let swing = Swing { of: pair, rest: 0.0, p: q - shift * p, q: rate.coupled() - shift * q - pair.q * p };
         let floor = RESOLUTION * rate.distance_bound(0.0);
         Self { rate, bend: swing.first_zero(from), at: from, slope: rate.value(from), to, floor }
     }

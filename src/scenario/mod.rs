@@ -20,6 +20,7 @@ mod rules;
 mod span_clash;
 mod table;
 mod template;
+mod turn;
 mod values;
 
 pub use anchor::*;
@@ -35,3 +36,4 @@ pub use model::*;
 pub use path::{Input, inputs, with_value};
 pub use read::{Places, places, read, read_with_places};
 pub use template::new_file;
+pub use turn::Turn;

@@ -1,7 +1,8 @@
 //! Changing inputs: nudging, typing, undo, back to the file's value.
+use super::choice::{Entry, borrowed};
 use super::model::{Mode, Model, Typing};
-use crate::quantity::{Dimension, Measure, Unit, format_measure, parse_measure};
-use crate::scenario::{Document, Faults, Input, Severity, inputs};
+use crate::quantity::{Measure, Unit, format_measure, parse_measure};
+use crate::scenario::{Document, Faults, Input, Severity, Turn, field_for, inputs};
 use crate::sheet::ticks::floor_log10;
 
 /// Direction and size of a nudge.
@@ -18,6 +19,10 @@ pub enum Nudge {
 }
 
 impl Nudge {
+    pub(super) const fn is_down(self) -> bool {
+        matches!(self, Self::Lower | Self::LowerMuch)
+    }
+
     const fn steps(self) -> f64 {
         match self {
             Self::Raise => 1.0,
@@ -60,8 +65,11 @@ pub fn nudged(input: &Input, nudge: Nudge) -> Measure {
 }
 
 impl Model {
-    /// Moves the chosen input by a step.
+    /// Moves the chosen number by a step, or goes on to the next word.
     pub fn nudge(&mut self, nudge: Nudge) {
+        if let Some(choice) = self.chosen_word().cloned() {
+            return self.turn(&choice, nudge);
+        }
         let Some(input) = self.chosen().cloned() else { return };
         let measure = nudged(&input, nudge);
         if measure == input.measure {
@@ -88,6 +96,9 @@ impl Model {
 
     /// Back to the value that the file holds for the chosen input, in the file's own words.
     pub fn restore(&mut self) {
+        if let Some(choice) = self.chosen_word().cloned() {
+            return self.restore_word(&choice);
+        }
         let Some(input) = self.chosen().cloned() else { return };
         let stored = inputs(self.saved.scenario());
         let Some(own) = stored.iter().find(|stored| stored.path == input.path) else {
@@ -97,26 +108,35 @@ impl Model {
             return self.say(format!("`{}` is at the file's value", input.path));
         }
         match self.rebuilt_without(&input.path, &stored) {
-            Ok(document) => {
+            Ok(Turn::Done { document, .. }) => {
                 self.notice = None;
-                self.take(document);
+                self.take(*document);
             }
+            Ok(Turn::Needs(path)) => self.complain(format!("the file's value needs `{path}`")),
             Err(faults) => self.complain(first_fault(&faults)),
         }
     }
 
     /// The file's text with every change but that of one input.
-    fn rebuilt_without(&self, path: &str, stored: &[Input]) -> Result<Document, Box<Faults>> {
-        let mut document = self.saved.clone();
+    fn rebuilt_without(&self, path: &str, stored: &[Input]) -> Result<Turn, Box<Faults>> {
+        let mut changes = Vec::new();
+        for entry in &self.entries {
+            if let Entry::Word(choice) = entry
+                && let Some(word) = self.document.word(choice.path)
+                && self.saved.word(choice.path).as_ref() != Some(&word)
+            {
+                changes.push((choice.path.to_owned(), word));
+            }
+        }
         for input in self.inputs.iter().filter(|input| input.path != path) {
             let own = stored.iter().find(|stored| stored.path == input.path);
             if own.is_none_or(|own| own.measure != input.measure) {
                 let ends_moved = own.is_none_or(|own| !same_ends(&own.measure, &input.measure));
                 let text = if ends_moved { format_measure(&input.measure) } else { value_text(&input.measure) };
-                document = document.with_value(&input.path, &text)?;
+                changes.push((input.path.clone(), text));
             }
         }
-        Ok(document)
+        Ok(self.saved.turned(&borrowed(&changes))?)
     }
 
     /// Takes back the last change.
@@ -150,34 +170,34 @@ impl Model {
 
     /// Opens the line in which a value is typed, with the present value in it.
     pub fn start_typing(&mut self) {
-        let Some(input) = self.chosen() else { return };
-        let text = tui_input::Input::new(format_measure(&input.measure));
+        let Some(path) = self.chosen_path().map(str::to_owned) else { return };
+        let word = self.chosen_word().map(|choice| choice.word.clone());
+        let number = self.chosen().map(|input| format_measure(&input.measure));
+        let text = tui_input::Input::new(word.or(number).unwrap_or_default());
         self.notice = None;
-        self.mode = Mode::Typing(Typing { text, fault: None });
+        self.mode = Mode::Typing(Typing { path, text, ..Typing::default() });
     }
 
-    /// Takes the typed text, or shows in place what is wrong with it.
+    /// Takes the typed text, asks for what it needs, or shows in place what is wrong with it.
     pub fn finish_typing(&mut self) {
         let Mode::Typing(typing) = &self.mode else { return };
-        let text = typing.text.value().trim().to_owned();
-        let Some(input) = self.chosen().cloned() else { return };
-        let fault = fault_of(&text, input.field.dimension).or_else(|| {
-            let refused = self.document.with_value(&input.path, &text).err();
-            refused.map(|faults| first_fault(&faults))
-        });
-        if fault.is_some() {
-            return self.set_fault(fault);
+        let (path, text) = (typing.path.clone(), typing.text.value().trim().to_owned());
+        let mut changes = typing.before.clone();
+        if let Some(fault) = fault_of(&text, &path) {
+            return self.set_fault(Some(fault));
         }
-        self.mode = Mode::Commands;
-        self.write(&input.path, &text);
+        changes.push((path, text));
+        match self.document.turned(&borrowed(&changes)) {
+            Ok(turn) => self.settle_turn(turn, changes),
+            Err(faults) => self.set_fault(Some(first_fault(&faults))),
+        }
     }
 
     /// Judges the text as it stands, for the message below it.
     pub fn judge_typing(&mut self) {
         let Mode::Typing(typing) = &self.mode else { return };
-        let text = typing.text.value().to_owned();
-        let dimension = self.chosen().and_then(|input| input.field.dimension);
-        self.set_fault(fault_of(&text, dimension));
+        let fault = fault_of(typing.text.value(), &typing.path);
+        self.set_fault(fault);
     }
 
     fn set_fault(&mut self, words: Option<String>) {
@@ -187,8 +207,9 @@ impl Model {
     }
 }
 
-fn fault_of(text: &str, dimension: Option<Dimension>) -> Option<String> {
-    let fault = parse_measure(text.trim(), dimension?).err()?;
+/// What is wrong with the text of a number by itself.
+fn fault_of(text: &str, path: &str) -> Option<String> {
+    let fault = parse_measure(text.trim(), field_for(path)?.dimension?).err()?;
     Some(format!("{fault}; {}", fault.hint()))
 }
 

@@ -17,18 +17,25 @@ pub enum ScreenError {
         /// Whether there were changes not yet in the file.
         unsaved: bool,
     },
+    /// The terminal went away.
+    #[error("the terminal went away{}", if *.unsaved { "; unsaved changes were not written" } else { "" })]
+    HungUp {
+        /// Whether there were changes not yet in the file.
+        unsaved: bool,
+    },
     /// Interrupted from the keyboard.
     #[error("interrupted")]
     Interrupted,
 }
 
 impl ScreenError {
-    /// The exit status: 2 without a terminal, 130 interrupted, 128 and the number for another signal.
+    /// The exit status: 2 without a terminal, 129 when it went away, 130 interrupted, 128 and the number for another signal.
     #[must_use]
     pub fn exit_code(&self) -> u8 {
         match self {
             Self::NoTerminal { .. } => 2,
             Self::Signal { signal, .. } => u8::try_from(128 + signal).unwrap_or(130),
+            Self::HungUp { .. } => 129,
             Self::Interrupted => 130,
         }
     }

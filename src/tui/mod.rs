@@ -3,6 +3,8 @@
 //! [`update`](update::update) takes a message to the next [`Model`](model::Model) and says what to do outside;
 //! [`view`](view::view) draws a model. Both are pure, so tests and benches drive them without a terminal.
 //! [`run`] connects them to one.
+pub mod arrival;
+pub mod choice;
 pub mod command;
 pub mod edit;
 pub mod error;
@@ -13,6 +15,7 @@ pub mod model;
 pub mod panes;
 mod pointer;
 pub mod runtime;
+pub mod signals;
 pub mod terminal;
 pub mod text;
 pub mod theme;
@@ -34,20 +37,21 @@ use std::path::Path;
 ///
 /// # Errors
 /// [`crate::scenario::LoadError`] when the file cannot be read or has faults; [`ScreenError`] when there is no
-/// terminal, a signal came or the user interrupted; an I/O error when the terminal fails.
+/// terminal, it went away, a signal came or the user interrupted; an I/O error when the terminal fails.
 pub fn run(path: &Path, units: UnitSystem) -> color_eyre::Result<()> {
     let document = Document::open(path)?;
     need_terminal()?;
     let theme = theme::Theme::for_no_color(std::env::var_os("NO_COLOR").as_deref());
     // With NO_COLOR the terminal library would drop reverse video together with colours; the theme uses none.
     crossterm::style::force_color_output(true);
-    let signals = runtime::Signals::listen()?;
+    let inbox = arrival::Inbox::new();
+    let _signals = signals::Signals::listen(inbox.sender())?;
     let mut model = model::Model::new(document, units);
     model.theme = theme;
     let (width, height) = crossterm::terminal::size()?;
     let _ = update::update(&mut model, message::Message::Resize(width, height));
     let mut guard = terminal::Guard::take()?;
-    runtime::run_loop(&mut guard, &mut model, &signals)
+    runtime::run_loop(&mut guard, &mut model, &inbox)
 }
 
 fn need_terminal() -> Result<(), ScreenError> {

@@ -1,4 +1,5 @@
 //! The state of the screen.
+use super::choice::{Entry, entries};
 use super::lean::{Lean, is_slow, leans};
 use super::theme::Theme;
 use super::worker::Job;
@@ -63,8 +64,12 @@ pub enum Mode {
 }
 
 /// A value being typed.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Default)]
 pub struct Typing {
+    /// The input it is for: the chosen one, or one that a changed word needs.
+    pub path: String,
+    /// Changes that wait for this value.
+    pub before: Vec<(String, String)>,
     /// The text with its cursor.
     pub text: tui_input::Input,
     /// What is wrong with it, with a hint.
@@ -185,6 +190,8 @@ pub struct Model {
     pub size: Size,
     /// The inputs of the document, in file order; those of no section last.
     pub inputs: Vec<Input>,
+    /// The rows of the inputs: numbers and words.
+    pub entries: Vec<Entry>,
     /// Which way raising each input moves the governing margin; same order as the inputs.
     pub leans: Vec<Lean>,
     /// Report and fault.
@@ -195,7 +202,7 @@ pub struct Model {
     pub job: Option<Box<Job>>,
     /// Which pane the keys go to.
     pub pane: Pane,
-    /// The chosen input.
+    /// The chosen row of the inputs.
     pub input: usize,
     /// The chosen check.
     pub check: usize,
@@ -232,6 +239,7 @@ impl Model {
             theme: Theme::default(),
             size: Size::new(80, 24),
             inputs: Vec::new(),
+            entries: Vec::new(),
             leans: Vec::new(),
             answer: Answer { report: None, fault: None },
             generation: 0,
@@ -250,6 +258,8 @@ impl Model {
             document,
         };
         model.recompute();
+        let is_number = |entry: &Entry| matches!(entry, Entry::Number(_));
+        model.input = model.entries.iter().position(is_number).unwrap_or(0);
         model
     }
 
@@ -263,12 +273,6 @@ impl Model {
     #[must_use]
     pub fn is_edited(&self) -> bool {
         self.document.text() != self.saved.text()
-    }
-
-    /// The chosen input.
-    #[must_use]
-    pub fn chosen(&self) -> Option<&Input> {
-        self.inputs.get(self.input)
     }
 
     /// End of the motion on show, s.
@@ -310,12 +314,11 @@ impl Model {
 
     /// Solves the present document; a failure keeps the last report, marked as stale by the fault.
     pub fn recompute(&mut self) {
-        let chosen = self.chosen().map(|input| input.path.clone());
+        let chosen = self.chosen_path().map(str::to_owned);
         self.inputs = sections_first(inputs(self.document.scenario()));
-        if let Some(index) = chosen.and_then(|path| self.inputs.iter().position(|input| input.path == path)) {
-            self.input = index;
-        }
-        self.input = self.input.min(self.inputs.len().saturating_sub(1));
+        self.entries = entries(&self.document, &self.inputs);
+        let at = |path: String| self.entries.iter().position(|entry| self.path_of(entry) == path);
+        self.input = chosen.and_then(at).unwrap_or(self.input).min(self.entries.len().saturating_sub(1));
         let file = self.document.path().display().to_string();
         match report(&file, self.document.text(), self.document.scenario()) {
             Ok(report) => self.answer = Answer { report: Some(report), fault: None },

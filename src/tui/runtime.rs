@@ -1,6 +1,9 @@
-//! The loop: events in, frames out, effects carried out.
+//! The loop: arrivals in, frames out, effects carried out.
+//!
+//! The loop waits on a channel and nowhere else. Keys, signals and worked-out arrows are put into it by threads of their
+//! own, so that nothing that holds one of them up keeps the loop from noticing that the terminal went away.
+use super::arrival::{Arrival, Inbox, hung_up, read_events};
 use super::error::ScreenError;
-use super::lean::Lean;
 use super::message::{Effect, Message};
 use super::model::{Exit, Model};
 use super::terminal::Guard;
@@ -9,35 +12,32 @@ use super::view::view;
 use super::watch::Watch;
 use super::worker::Worker;
 use crate::scenario::{Document, LoadError};
-use crossterm::event::{self, Event, KeyEventKind};
 use std::path::Path;
 use std::time::{Duration, Instant};
 
-/// Wait for an event while the fall plays: about thirty frames a second.
+/// Wait for an arrival while the fall plays: about thirty frames a second.
 const PLAYING: Duration = Duration::from_millis(33);
-/// Wait for an event otherwise: how soon a signal is noticed.
+/// Wait for an arrival otherwise: how soon a terminal that went away is noticed.
 const WAITING: Duration = Duration::from_millis(100);
 
-/// Runs until the user leaves or a signal comes.
+/// Runs until the user leaves, a signal comes or the terminal goes away.
 ///
 /// # Errors
-/// When the terminal fails, a signal came or the user interrupted.
-pub fn run_loop(guard: &mut Guard, model: &mut Model, signals: &Signals) -> color_eyre::Result<()> {
+/// When the terminal fails or goes away, a signal came or the user interrupted.
+pub fn run_loop(guard: &mut Guard, model: &mut Model, inbox: &Inbox) -> color_eyre::Result<()> {
     let mut watch = Watch::of(model.document.path());
-    let worker = Worker::start()?;
+    let worker = Worker::start(inbox.sender())?;
+    read_events(inbox.sender())?;
     let mut before = Instant::now();
     let mut stale = true;
     loop {
-        if let Some(signal) = signals.caught() {
-            return Err(ScreenError::Signal { signal, unsaved: model.is_edited() }.into());
+        if hung_up() {
+            return Err(gone(model).into());
         }
         if stale {
-            guard.screen().draw(|frame| view(model, frame))?;
-            std::io::Write::flush(guard.screen().backend_mut())?;
+            draw(guard, model)?;
         }
-        let is_waited_for = model.play.running || model.leans.contains(&Lean::Pending);
-        let mut messages = wait(if is_waited_for { PLAYING } else { WAITING })?;
-        messages.extend(worker.answers());
+        let mut messages = messages(inbox.wait(if model.play.running { PLAYING } else { WAITING }), model)?;
         let now = Instant::now();
         if model.play.running {
             messages.push(Message::Tick(now - before));
@@ -55,31 +55,40 @@ pub fn run_loop(guard: &mut Guard, model: &mut Model, signals: &Signals) -> colo
     }
 }
 
-fn leave(exit: Exit) -> color_eyre::Result<()> {
-    match exit {
-        Exit::Done => Ok(()),
-        Exit::Interrupted => Err(ScreenError::Interrupted.into()),
-    }
+/// One frame; a write that fails because the terminal went away says so.
+fn draw(guard: &mut Guard, model: &Model) -> color_eyre::Result<()> {
+    let drawn = guard.screen().draw(|frame| view(model, frame)).map(|_| ());
+    let drawn = drawn.and_then(|()| std::io::Write::flush(guard.screen().backend_mut()));
+    drawn.map_err(|error| if hung_up() { gone(model).into() } else { error.into() })
 }
 
-/// Everything that has arrived, at least after the given time.
-fn wait(longest: Duration) -> std::io::Result<Vec<Message>> {
+fn gone(model: &Model) -> ScreenError {
+    ScreenError::HungUp { unsaved: model.is_edited() }
+}
+
+/// The messages among the arrivals.
+///
+/// # Errors
+/// An arrival that ends the screen.
+fn messages(arrivals: Vec<Arrival>, model: &Model) -> color_eyre::Result<Vec<Message>> {
     let mut messages = Vec::new();
-    let mut patience = longest;
-    while messages.len() < 64 && event::poll(patience)? {
-        messages.extend(translate(event::read()?));
-        patience = Duration::ZERO;
+    for arrival in arrivals {
+        match arrival {
+            Arrival::Message(message) => messages.push(message),
+            Arrival::Signal(signal) => {
+                return Err(ScreenError::Signal { signal, unsaved: model.is_edited() }.into());
+            }
+            Arrival::InputFailed(_) if hung_up() => return Err(gone(model).into()),
+            Arrival::InputFailed(error) => return Err(error.into()),
+        }
     }
     Ok(messages)
 }
 
-fn translate(event: Event) -> Option<Message> {
-    match event {
-        Event::Key(key) if key.kind == KeyEventKind::Press => Some(Message::Key(key)),
-        Event::Mouse(mouse) if mouse.kind != event::MouseEventKind::Moved => Some(Message::Mouse(mouse)),
-        Event::Paste(text) => Some(Message::Paste(text)),
-        Event::Resize(width, height) => Some(Message::Resize(width, height)),
-        _ => None,
+fn leave(exit: Exit) -> color_eyre::Result<()> {
+    match exit {
+        Exit::Done => Ok(()),
+        Exit::Interrupted => Err(ScreenError::Interrupted.into()),
     }
 }
 
@@ -131,49 +140,4 @@ fn reload(path: &Path) -> Result<Box<Document>, String> {
         }
         LoadError::Unreadable { .. } => error.to_string(),
     })
-}
-
-/// Signals that end the screen, noted by their handlers and looked at by the loop.
-#[derive(Debug)]
-pub struct Signals {
-    #[cfg(unix)]
-    flags: Vec<(i32, std::sync::Arc<std::sync::atomic::AtomicBool>)>,
-}
-
-impl Signals {
-    /// Listens to SIGINT, SIGTERM and SIGHUP.
-    ///
-    /// # Errors
-    /// When the system refuses a handler.
-    #[cfg(unix)]
-    pub fn listen() -> std::io::Result<Self> {
-        use signal_hook::consts::{SIGHUP, SIGINT, SIGTERM};
-        let mut flags = Vec::new();
-        for signal in [SIGINT, SIGTERM, SIGHUP] {
-            let flag = std::sync::Arc::new(std::sync::atomic::AtomicBool::new(false));
-            signal_hook::flag::register(signal, std::sync::Arc::clone(&flag))?;
-            flags.push((signal, flag));
-        }
-        Ok(Self { flags })
-    }
-
-    /// No signals here.
-    ///
-    /// # Errors
-    /// Never.
-    #[cfg(not(unix))]
-    pub fn listen() -> std::io::Result<Self> {
-        Ok(Self {})
-    }
-
-    #[cfg(unix)]
-    fn caught(&self) -> Option<i32> {
-        let caught = self.flags.iter().find(|(_, flag)| flag.load(std::sync::atomic::Ordering::SeqCst));
-        caught.map(|&(signal, _)| signal)
-    }
-
-    #[cfg(not(unix))]
-    fn caught(&self) -> Option<i32> {
-        None
-    }
 }

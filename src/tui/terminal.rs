@@ -6,6 +6,7 @@ use crossterm::terminal::{EnterAlternateScreen, LeaveAlternateScreen, disable_ra
 use ratatui::Terminal;
 use ratatui::backend::CrosstermBackend;
 use std::io::{self, BufWriter, Stdout, stdout};
+use std::mem::ManuallyDrop;
 use std::sync::atomic::{AtomicBool, Ordering};
 use std::thread::{self, ThreadId};
 
@@ -15,9 +16,12 @@ pub type Screen = Terminal<CrosstermBackend<BufWriter<Stdout>>>;
 static TAKEN: AtomicBool = AtomicBool::new(false);
 
 /// Holds the terminal; gives it back when dropped.
+///
+/// The drawing library would show the cursor on its own when dropped, and panic where the terminal and with it standard
+/// error have gone away; [`restore`] does that step, so its drop is left out.
 #[derive(Debug)]
 pub struct Guard {
-    screen: Screen,
+    screen: ManuallyDrop<Screen>,
 }
 
 impl Guard {
@@ -33,7 +37,7 @@ impl Guard {
             Terminal::new(CrosstermBackend::new(BufWriter::with_capacity(1 << 16, stdout())))
         });
         match entered {
-            Ok(screen) => Ok(Self { screen }),
+            Ok(screen) => Ok(Self { screen: ManuallyDrop::new(screen) }),
             Err(error) => {
                 restore();
                 Err(error)
@@ -42,7 +46,7 @@ impl Guard {
     }
 
     /// The terminal.
-    pub const fn screen(&mut self) -> &mut Screen {
+    pub fn screen(&mut self) -> &mut Screen {
         &mut self.screen
     }
 }
@@ -59,6 +63,13 @@ pub fn restore() {
         let _ = execute!(stdout(), DisableBracketedPaste);
         let _ = execute!(stdout(), DisableMouseCapture);
         let _ = execute!(stdout(), LeaveAlternateScreen, Show);
+        let _ = disable_raw_mode();
+    }
+}
+
+/// Gives line editing and echo back, which needs no output; the first step where output may be held up.
+pub fn restore_input() {
+    if TAKEN.load(Ordering::SeqCst) {
         let _ = disable_raw_mode();
     }
 }

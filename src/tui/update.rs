@@ -165,7 +165,7 @@ fn switch(model: &mut Model, command: Command) {
 pub(super) fn walk(model: &mut Model, command: Command) {
     let checks = model.answer.report.as_ref().map_or(0, |report| report.margins.len());
     let (chosen, count) = match model.pane {
-        Pane::Inputs => (&mut model.input, model.inputs.len()),
+        Pane::Inputs => (&mut model.input, model.entries.len()),
         Pane::Margins => (&mut model.check, checks),
     };
     let moved = match command {

@@ -1,10 +1,11 @@
 //! Work that must not hold up a frame: one thread, the newest job wins, answers carry their generation.
+use super::arrival::Arrival;
 use super::lean::{Lean, leans};
 use super::message::Message;
 use crate::scenario::{Input, Scenario};
 use crate::sheet::Report;
 use std::panic::{AssertUnwindSafe, catch_unwind};
-use std::sync::mpsc::{Receiver, Sender, channel};
+use std::sync::mpsc::{Sender, channel};
 use std::thread;
 
 /// The arrows of one state of the inputs.
@@ -36,41 +37,34 @@ impl Job {
     }
 }
 
-/// The thread and its two channels.
+/// The thread and the channel to it.
 #[derive(Debug)]
 pub struct Worker {
     jobs: Sender<Job>,
-    answers: Receiver<Message>,
 }
 
 impl Worker {
-    /// Starts the thread; it ends when this is dropped.
+    /// Starts the thread, which sends its answers to `outbox`; it ends when this is dropped.
     ///
     /// # Errors
     /// When the system gives no thread.
-    pub fn start() -> std::io::Result<Self> {
+    pub fn start(outbox: Sender<Arrival>) -> std::io::Result<Self> {
         let (jobs, inbox) = channel::<Job>();
-        let (outbox, answers) = channel();
         thread::Builder::new().name("arrows".to_owned()).spawn(move || {
             while let Ok(mut job) = inbox.recv() {
                 while let Ok(newer) = inbox.try_recv() {
                     job = newer;
                 }
-                if outbox.send(job.answer_or_unknown()).is_err() {
+                if outbox.send(Arrival::Message(job.answer_or_unknown())).is_err() {
                     break;
                 }
             }
         })?;
-        Ok(Self { jobs, answers })
+        Ok(Self { jobs })
     }
 
     /// Hands a job over; a worker that is gone leaves the arrows blank.
     pub fn give(&self, job: Job) {
         let _ = self.jobs.send(job);
-    }
-
-    /// Answers that have arrived.
-    pub fn answers(&self) -> impl Iterator<Item = Message> {
-        self.answers.try_iter()
     }
 }

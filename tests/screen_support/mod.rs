@@ -128,15 +128,15 @@ impl Bench {
 
     /// Walks to an input with the down key.
     pub fn choose(&mut self, path: &str) {
-        let at = self.model.inputs.iter().position(|input| input.path == path);
+        let at = self.model.entries.iter().position(|entry| self.model.path_of(entry) == path);
         let at = at.unwrap_or_else(|| panic!("no input `{path}`"));
-        for _ in 0..self.model.inputs.len() {
+        for _ in 0..self.model.entries.len() {
             self.key(KeyCode::Up);
         }
         for _ in 0..at {
             self.key(KeyCode::Down);
         }
-        assert_eq!(self.model.chosen().unwrap().path, path);
+        assert_eq!(self.model.chosen_path(), Some(path));
     }
 
     /// The present value of an input, SI.

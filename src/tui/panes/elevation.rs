@@ -323,7 +323,8 @@ fn part_labels(scene: &Scene, marks: &[f64], rows: &Rows, room: u16, theme: Them
         let (from, to) = (rows.below(pair[0].max(pair[1])), rows.below(pair[0].min(pair[1])));
         let long = format!("{} {}{}", scene.scale.print(number), part.name, wanted(scene, part));
         let short = format!("{} {}", scene.scale.print(number), part.name);
-        let text = if cells(&long) <= room { long } else { short };
+        let brief = format!("{} {}", scene.scale.print(number), part.name.rsplit(' ').next().unwrap_or_default());
+        let text = [long, short].into_iter().find(|text| cells(text) <= room).unwrap_or(brief);
         let style = part.verdict.map_or(theme.plain(), |verdict| theme.verdict(verdict));
         labels.push(Label {
             row: ((from + to.max(from + 1) - 1) / 2).min(rows.count - 1),

@@ -34,6 +34,9 @@ fn words(model: &Model) -> (String, Style) {
         }
         (Mode::Typing(typing), _) => match &typing.fault {
             Some(fault) => (fault.clone(), theme.fault()),
+            None if !typing.before.is_empty() => {
+                (format!("{}; enter takes it, esc leaves all as it was", super::about::wanted(typing)), theme.heading())
+            }
             None => ("enter takes the value, esc leaves it".to_owned(), theme.plain()),
         },
         (_, Some(notice)) if notice.is_fault => (notice.words.clone(), theme.fault()),

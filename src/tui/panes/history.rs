@@ -112,7 +112,7 @@ fn travel_plot(picture: &Picture, theme: Theme, columns: u16) -> Plot {
         style: theme.plain(),
     };
     let lowest = picture.lowest_m.map(|at| level(at, "lowest"));
-    let hang = picture.hang_m.map(|at| level(at, "hangs at"));
+    let hang = picture.hang_m.map(|at| level(at, "rest"));
     Plot {
         title: travel_title(picture, !bounds.is_empty(), columns),
         across: picture.window_s,

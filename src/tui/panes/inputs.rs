@@ -2,6 +2,7 @@
 use super::units::bare;
 use crate::quantity::Measure;
 use crate::scenario::Input;
+use crate::tui::choice::Entry;
 use crate::tui::edit::value_text;
 use crate::tui::lean::Lean;
 use crate::tui::model::{Mode, Model, Pane};
@@ -14,7 +15,7 @@ use ratatui::style::Style;
 #[derive(Clone, Debug, PartialEq, Eq)]
 enum Row {
     Section(String),
-    Input(usize),
+    Entry(usize),
 }
 
 /// `obstacle.2` and `top` of `obstacle.2.top`.
@@ -35,30 +36,30 @@ fn section_title(section: &str, model: &Model) -> String {
 fn rows(model: &Model) -> Vec<Row> {
     let mut rows = Vec::new();
     let mut last = "";
-    for (index, input) in model.inputs.iter().enumerate() {
-        let (section, _) = split(&input.path);
+    for (index, entry) in model.entries.iter().enumerate() {
+        let (section, _) = split(model.path_of(entry));
         if section != last {
             rows.push(Row::Section(section_title(section, model)));
             last = section;
         }
-        rows.push(Row::Input(index));
+        rows.push(Row::Entry(index));
     }
     rows
 }
 
 fn first_shown(rows: &[Row], model: &Model, shown: usize) -> usize {
-    let at = rows.iter().position(|row| *row == Row::Input(model.input)).unwrap_or(0);
+    let at = rows.iter().position(|row| *row == Row::Entry(model.input)).unwrap_or(0);
     crate::tui::layout::scroll(at, rows.len(), shown)
 }
 
-/// The input in a terminal row.
+/// The entry in a terminal row.
 #[must_use]
 pub fn input_at(model: &Model, area: Rect, row: u16) -> Option<usize> {
     let line = usize::from(row.checked_sub(area.y + 1)?);
     let rows = rows(model);
     let first = first_shown(&rows, model, usize::from(area.height.saturating_sub(1)));
     match rows.get(first + line) {
-        Some(Row::Input(index)) => Some(*index),
+        Some(Row::Entry(index)) => Some(*index),
         _ => None,
     }
 }
@@ -76,7 +77,7 @@ struct Columns {
 impl Columns {
     fn of(model: &Model, total: u16) -> Self {
         let widest = |texts: Vec<String>| texts.iter().map(|text| cells(text)).max().unwrap_or(0);
-        let value = widest(model.inputs.iter().map(|input| value_text(&input.measure)).collect()).clamp(8, MOST_VALUE);
+        let value = widest(model.entries.iter().map(|entry| entry_text(model, entry)).collect()).clamp(8, MOST_VALUE);
         let band = widest(model.inputs.iter().map(band_text).collect());
         let rest = total.saturating_sub(1 + value + 3);
         let band = if band > 0 && rest >= band + 1 + 20 { band + 1 } else { 0 };
@@ -101,8 +102,8 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
             Row::Section(title) => {
                 put(buffer, area, 1, line, &fit(title, usize::from(area.width.saturating_sub(2))), model.theme.quiet());
             }
-            Row::Input(index) => {
-                draw_input(buffer, Rect { y: area.y + line, height: 1, ..area }, model, *index, &columns);
+            Row::Entry(index) => {
+                draw_entry(buffer, Rect { y: area.y + line, height: 1, ..area }, model, *index, &columns);
             }
         }
     }
@@ -117,8 +118,16 @@ fn draw_scroll_marks(buffer: &mut Buffer, area: Rect, model: &Model, (first, sho
     }
 }
 
-fn draw_input(buffer: &mut Buffer, row: Rect, model: &Model, index: usize, columns: &Columns) {
-    let input = &model.inputs[index];
+/// The value of a number, or the word.
+fn entry_text(model: &Model, entry: &Entry) -> String {
+    match entry {
+        Entry::Number(index) => model.inputs.get(*index).map_or_else(String::new, |input| value_text(&input.measure)),
+        Entry::Word(choice) => choice.word.clone(),
+    }
+}
+
+fn draw_entry(buffer: &mut Buffer, row: Rect, model: &Model, index: usize, columns: &Columns) {
+    let Some(entry) = model.entries.get(index) else { return };
     let is_chosen = index == model.input;
     let style = if is_chosen { model.theme.chosen(model.pane == Pane::Inputs) } else { model.theme.plain() };
     if is_chosen {
@@ -126,23 +135,24 @@ fn draw_input(buffer: &mut Buffer, row: Rect, model: &Model, index: usize, colum
         put(buffer, row, 0, 0, ">", style);
     }
     if let (true, Mode::Typing(typing)) = (is_chosen, &model.mode) {
-        draw_label(buffer, row, input, columns.label.saturating_sub(1), style);
+        draw_label(buffer, row, &typing.path, columns.label.saturating_sub(1), style);
         let field = Rect { x: row.x + columns.label, width: row.width - columns.label, ..row };
         return draw_typing(buffer, field, model, typing);
     }
-    let text = value_text(&input.measure);
+    let text = entry_text(model, entry);
     let values = Rect { width: 1 + columns.label + columns.value, ..row };
     put_right(buffer, values, 0, &text, style);
-    draw_label(buffer, row, input, values.width.saturating_sub(cells(&text) + 1), style);
+    draw_label(buffer, row, model.path_of(entry), values.width.saturating_sub(cells(&text) + 1), style);
+    let Entry::Number(index) = *entry else { return };
     let band = Rect { x: values.right(), width: columns.band, ..row };
-    put_right(buffer, band, 0, &band_text(input), style);
+    put_right(buffer, band, 0, &model.inputs.get(index).map_or_else(String::new, band_text), style);
     let lean = model.leans.get(index).copied().unwrap_or(Lean::Unknown);
     put_right(buffer, row, 0, &format!("{} ", lean.symbol()), style);
 }
 
 /// The key in words, left of column `end`.
-fn draw_label(buffer: &mut Buffer, row: Rect, input: &Input, end: u16, style: Style) {
-    let label = split(&input.path).1.replace('_', " ");
+fn draw_label(buffer: &mut Buffer, row: Rect, path: &str, end: u16, style: Style) {
+    let label = split(path).1.replace('_', " ");
     put(buffer, row, 2, 0, &fit(&label, usize::from(end.saturating_sub(2))), style);
 }
 

@@ -1,5 +1,5 @@
 //! Numbers of a drawing in one unit: axis labels, dimensions and level names agree.
-use crate::quantity::{Dimension, Unit, UnitSystem, display_unit, format_unit};
+use crate::quantity::{Dimension, Unit, UnitSystem, display_unit, format_si, format_unit};
 use crate::sheet::ticks::fixed;
 
 /// One display unit with a fixed number of decimals.
@@ -9,20 +9,24 @@ pub struct Scale {
     pub factor: f64,
     /// Symbol of the display unit.
     pub symbol: &'static str,
-    /// Decimals of every number.
+    /// Decimals of numbers that are to add up.
     pub decimals: usize,
+    dimension: Dimension,
+    units: UnitSystem,
 }
 
 impl Scale {
-    /// The scale of a dimension: lengths and speeds to a hundredth, kilonewtons to a hundredth, the rest whole.
+    /// The scale of a dimension: metres to a thousandth, as the sentences show lengths below a metre; feet, speeds and
+    /// kilonewtons to a hundredth, the rest whole.
     #[must_use]
     pub fn of(dimension: Dimension, units: UnitSystem) -> Self {
         let unit = display_unit(dimension, units);
         let decimals = match unit {
             Unit::Newton | Unit::PoundForce | Unit::Kilogram | Unit::Pound => 0,
+            Unit::Metre => 3,
             _ => 2,
         };
-        Self { factor: unit.factor(), symbol: unit.symbol(), decimals }
+        Self { factor: unit.factor(), symbol: unit.symbol(), decimals, dimension, units }
     }
 
     /// The value in display units.
@@ -38,13 +42,13 @@ impl Scale {
         (self.shown(si) * tens).round() / tens
     }
 
-    /// Number and unit.
+    /// Number and unit with the digits that sentences, log and margins show.
     #[must_use]
     pub fn text(&self, si: f64) -> String {
-        self.print(self.shown(si))
+        format_si(si, self.dimension, self.units)
     }
 
-    /// A number that is already in display units, with the unit.
+    /// A number that is already in display units and is to add up with others, with the unit.
     #[must_use]
     pub fn print(&self, shown: f64) -> String {
         format!("{} {}", fixed(shown, self.decimals), self.symbol)
