@@ -1,5 +1,6 @@
 //! Cost of the planar arrest: absolute, and as ratios measured in one run against a general-purpose integrator of order
-//! eight that takes the same swing with no search for events at all.
+//! eight, once with its looks for events and once, on a swing without events, in one go.
+#![allow(clippy::expect_used, reason = "a bench fails by panicking")]
 #[path = "../tests/support/mod.rs"]
 mod support;
 #[path = "../tests/swing_support/mod.rs"]
@@ -9,7 +10,7 @@ use std::hint::black_box;
 use std::time::Instant;
 use support::{Case, Part, Slider};
 use swing_support::Setup;
-use swing_support::reference::run;
+use swing_support::reference::{one_go, run};
 use underfoot::swing::{Settings, solve};
 
 /// Longest time for a swing up to its reversal, s.
@@ -49,7 +50,27 @@ fn report(name: &str, setup: &Setup) -> bool {
     solver < GOAL_S
 }
 
+/// A taut elastic swing without any event, which the integrator may take in one go to the same accuracy.
+fn report_without_events() {
+    let setup = Setup { case: Case::on(100.0, 0.0, Part::spring(2e4)), offset: 3.0, length: 5.0 };
+    let plane = setup.plane();
+    let settings = Settings::default();
+    let outcome = solve(&plane, &settings).expect("a solved swing");
+    assert!(outcome.time_first_slack_s.is_none(), "no event was wanted");
+    let end = outcome.trajectory.at(outcome.end_s).at;
+    let go = || one_go(black_box(&setup), 1e-12, outcome.end_s);
+    let off = (go()[0] - end.offset_m).abs().max((go()[1] - end.elevation_m).abs());
+    let (solver, integrator) = (seconds(50, || solve(black_box(&plane), &settings)), seconds(20, go));
+    println!(
+        "taut swing, no events: {:.3} ms against {:.3} ms in one go at 1e-12, {:.1} times as long, {off:.1e} m apart",
+        solver * 1e3,
+        integrator * 1e3,
+        integrator / solver
+    );
+}
+
 fn main() {
+    report_without_events();
     let on = |case: Case, offset: f64, length: f64| Setup { case, offset, length };
     let absorber = Slider::constant(4e3, 4.4e3, 1.75);
     let lanyard = Case::on(100.0, 2.0, Part::damped(6e4, 800.0));

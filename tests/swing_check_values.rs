@@ -1,4 +1,5 @@
 //! Planar arrests against values from outside the project, each with its source and mark as in `check_values.rs`.
+#![allow(clippy::expect_used, clippy::panic, reason = "a test fails by panicking")]
 mod support;
 
 use support::printed::assert_printed;

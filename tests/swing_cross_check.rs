@@ -1,4 +1,5 @@
 //! The planar solver against a general-purpose integrator with event location of its own.
+#![allow(clippy::expect_used, clippy::panic, reason = "a test fails by panicking")]
 mod support;
 mod swing_support;
 

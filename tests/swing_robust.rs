@@ -1,4 +1,5 @@
 //! The planar solver over a thousand planes at and beyond the edges, and its energy account.
+#![allow(clippy::expect_used, clippy::panic, reason = "a test fails by panicking")]
 mod support;
 mod swing_support;
 
@@ -43,7 +44,8 @@ fn approach(approach: &Approach) -> Vec<f64> {
 
 #[test]
 fn a_thousand_random_planes_give_finite_numbers_or_a_named_refusal() {
-    let settings = Settings { time_limit_s: 5.0, ..Settings::default() };
+    // The edges reach far beyond practice: parts a million times as stiff as others. Those are refused early.
+    let settings = Settings { time_limit_s: 5.0, most_steps: 4000, ..Settings::default() };
     let (mut solved, mut too_fast, mut worst, mut most) = (0, 0, 0.0_f64, 0);
     for index in 0..1000 {
         let plane = wild_plane(11, index);
@@ -60,7 +62,7 @@ fn a_thousand_random_planes_give_finite_numbers_or_a_named_refusal() {
         }
     }
     println!("{solved} solved, {too_fast} too fast, worst residual {worst:.1e}, at most {most} steps");
-    assert!(solved > 900, "{solved} solved");
+    assert!(solved > 800, "{solved} solved");
 }
 
 #[test]
@@ -75,8 +77,8 @@ fn the_energy_account_closes_on_every_swing_of_practical_size() {
         let weight = setup.case.mass * setup.case.gravity;
         let height = setup.case.free_fall + outcome.swing_drop_m;
         let off = (low.total_j() - weight * height).abs() / (weight * height);
-        assert!(off < 1e-8, "{index}: account at the lowest point off by {off:e}");
+        assert!(off < 1e-10, "{index}: account at the lowest point off by {off:e}");
     }
     println!("worst residual {worst:.1e}, at most {most} steps");
-    assert!(worst < 1e-8, "{worst:e}");
+    assert!(worst < 1e-10, "{worst:e}");
 }

@@ -5,6 +5,7 @@
 //! their derivatives are known at any instant, and events are zeros of polynomials, isolated without sampling.
 mod approach;
 mod change;
+mod close;
 mod event;
 mod law;
 mod outcome;

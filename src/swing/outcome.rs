@@ -130,7 +130,8 @@ pub struct PlaneOutcome {
     pub faces: Vec<Approach>,
     /// The account at the lowest point.
     pub energy: EnergyAccount,
-    /// Largest imbalance of the account over the run, as a share of `m g` times the height lost to the lowest point.
+    /// Largest imbalance of the account over the run, as a share of `m g` times the height lost to the lowest point (at
+    /// least a millionth of the free length).
     pub energy_residual: f64,
     /// Work done by the solver.
     pub work: WorkCount,

@@ -73,13 +73,15 @@ pub struct Settings {
     pub time_limit_s: f64,
     /// Truncation error allowed in a step, relative to the weight and to the length, in `1e-15..=1e-6`.
     pub tolerance: f64,
+    /// Most steps before the run is refused; a practical swing takes 10 to 6000.
+    pub most_steps: u32,
     /// Force levels whose time above is measured, N.
     pub levels_n: [f64; 2],
 }
 
 impl Default for Settings {
     fn default() -> Self {
-        Self { time_limit_s: 120.0, tolerance: 1e-12, levels_n: [4000.0, 6000.0] }
+        Self { time_limit_s: 120.0, tolerance: 1e-14, most_steps: 50_000, levels_n: [4000.0, 6000.0] }
     }
 }
 
@@ -87,7 +89,7 @@ impl Default for Settings {
 #[derive(Clone, Debug, PartialEq, thiserror::Error)]
 pub enum SwingError {
     /// An input is out of range.
-    #[error("{what} is `{value}`")]
+    #[error("{what} is `{value}`: give a number in its range")]
     Input {
         /// Which input.
         what: &'static str,
@@ -95,7 +97,9 @@ pub enum SwingError {
         value: f64,
     },
     /// The attachment starts farther from the pivot than the line reaches.
-    #[error("the attachment is `{distance_m}` m from the pivot but the line reaches only `{length_m}` m")]
+    #[error(
+        "the attachment is `{distance_m}` m from the pivot but the line reaches only `{length_m}` m: lengthen the line or move the anchor"
+    )]
     LineTooShort {
         /// Distance from the pivot to the start, m.
         distance_m: f64,
@@ -106,13 +110,15 @@ pub enum SwingError {
     #[error(transparent)]
     Path(#[from] ArrestError),
     /// The account does not balance.
-    #[error("the energy account is off by {residual:e} of the fall energy")]
+    #[error("the energy account is off by `{residual:e}` of the fall energy: the numbers of this run do not count")]
     Energy {
         /// The imbalance.
         residual: f64,
     },
     /// More steps than the run may take: some part of the path relaxes far faster than the swing.
-    #[error("more than {steps} steps up to {time_s} s: a part of the line path is far faster than the swing")]
+    #[error(
+        "more than `{steps}` steps up to `{time_s}` s: a part of the line path is far faster than the swing; take its damper out or make it rigid"
+    )]
     TooManySteps {
         /// The bound.
         steps: u32,

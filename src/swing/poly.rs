@@ -171,16 +171,27 @@ fn changes(b: &Poly) -> (u32, i8, i8) {
     (count, first, last)
 }
 
+/// Binomial coefficients of the degree.
+const BINOMIALS: Poly = {
+    let mut row = [0.0; LEN];
+    row[0] = 1.0;
+    let mut n = 0;
+    while n < ORDER {
+        let mut i = n + 1;
+        while i > 0 {
+            row[i] += row[i - 1];
+            i -= 1;
+        }
+        n += 1;
+    }
+    row
+};
+
 /// Coefficients in the Bernstein basis of `0..=1`.
 fn bernstein(p: &Poly) -> Poly {
     let mut b = *p;
-    let mut binomial = 1.0;
-    let (mut above, mut below) = (f64::from(ORDER as u32), 1.0);
-    for c in &mut b {
+    for (c, binomial) in b.iter_mut().zip(&BINOMIALS) {
         *c /= binomial;
-        binomial *= above / below;
-        above -= 1.0;
-        below += 1.0;
     }
     for k in 1..LEN {
         for j in (k..LEN).rev() {
@@ -190,10 +201,11 @@ fn bernstein(p: &Poly) -> Poly {
     b
 }
 
+/// The same polynomial in the Bernstein bases of both halves (de Casteljau).
 fn halves(b: &Poly) -> (Poly, Poly) {
     let (mut left, mut right) = (*b, *b);
-    for k in 0..LEN {
-        left[k] = right[0];
+    for (k, c) in left.iter_mut().enumerate() {
+        *c = right[0];
         for j in 0..ORDER - k {
             right[j] = 0.5 * (right[j] + right[j + 1]);
         }

@@ -133,17 +133,15 @@ impl Series {
             y.z[k + 1] = y.vz[k] / factor;
             y.next_distance(k);
             y.force[k] = y.force_at(law, body, k, factor);
-            pull[k] = match law.force {
-                Force::Held(radius) => y.force[k] / (body.mass * radius),
-                _ => {
-                    let before = product(&pull, &y.rho, k);
-                    (y.force[k] / body.mass - before) / y.rho[0]
-                }
+            pull[k] = if let Force::Held(radius) = law.force {
+                y.force[k] / (body.mass * radius)
+            } else {
+                (y.force[k] / body.mass - product(&pull, &y.rho, k)) / y.rho[0]
             };
-            for i in 0..2 {
+            for (i, rate) in rates.iter_mut().enumerate() {
                 y.a[i][k + 1] = law.drift[i].coefficient(k, factor, &y.rho, &y.a) / factor;
                 if law.damping[i] > 0.0 {
-                    rates[i][k] = law.e_rate[i].coefficient(k, factor, &y.rho, &y.a);
+                    rate[k] = law.e_rate[i].coefficient(k, factor, &y.rho, &y.a);
                 }
             }
             y.vx[k + 1] = -product(&pull, &y.x, k) / factor;

@@ -74,6 +74,13 @@ pub fn run(setup: &Setup, relative_tolerance: f64, look: f64, time_limit: f64) -
     run.record
 }
 
+/// The state so long after taut in the taut mode, in one integration without a look.
+pub fn one_go(setup: &Setup, relative_tolerance: f64, span: f64) -> State {
+    let mut run = Run::new(setup, relative_tolerance, 1.0);
+    run.flow.mode = Mode::Stuck;
+    run.at(span)
+}
+
 impl<'a> Run<'a> {
     fn new(setup: &'a Setup, relative_tolerance: f64, look: f64) -> Self {
         let flow = Flow::new(&setup.case, relative_tolerance);
