@@ -190,6 +190,147 @@ fn every_shipped_scenario_gives_complete_outputs() {
     assert!(count >= 8, "{count}");
 }
 
+/// The file's lanyard on an anchor beside the fall line, a wall in the way of its swing.
+fn swinging() -> Report {
+    let file = FILE.replace("anchor = \"13.5 m\"", "anchor = \"14 m\"\nanchor_offset = \"1.2 m\"");
+    reported(&format!(
+        "{file}\n[[face]]\nname = \"North wall\"\noffset = \"1.5 m\"\nbottom = \"0 m\"\ntop = \"14 m\"\n"
+    ))
+}
+
+fn spanned() -> Report {
+    let span = "kind = \"span\"\ncapacity = \"25 kN\"\n[anchor.span]\nlength = \"12 m\"\nat = \"4 m\"\nsag = \"0.3 m\"\nmodulus = \"4000 kN\"";
+    reported(&FILE.replace("capacity = \"25 kN\"", span))
+}
+
+#[test]
+fn the_working_is_told_step_by_step_and_ends_at_the_free_fall() {
+    for report in [reported(FILE), swinging(), spanned()] {
+        let page = text(&report, UnitSystem::Metric, Paint::Plain);
+        let value: Value = serde_json::from_str(&json(&report, Layout::Lines)).unwrap();
+        let steps = value["working"]["steps"].as_array().unwrap();
+        let last = steps.last().unwrap();
+        assert!(last["what"].as_str().unwrap().starts_with("free fall"), "{last}");
+        let free_fall = value["numbers"]["free_fall_distance"]["value"].as_f64().unwrap();
+        assert!((last["value"].as_f64().unwrap() - free_fall).abs() < 1e-12, "{last} is not {free_fall}");
+        let joined = page.split_whitespace().collect::<Vec<_>>().join(" ");
+        for step in steps {
+            assert!(joined.contains(step["what"].as_str().unwrap()), "{step} is not on {page}");
+        }
+    }
+}
+
+#[test]
+fn both_sums_of_space_name_their_datum_and_end_at_the_same_elevation() {
+    let reports = [reported(FILE), swinging(), spanned(), reported(&FILE.replace("reserve = \"1 m\"", ""))];
+    for (report, reserve) in reports.iter().zip([1.0, 1.0, 1.0, 0.0]) {
+        let value: Value = serde_json::from_str(&json(report, Layout::Lines)).unwrap();
+        let sums = value["working"]["clearance_sums"].as_array().unwrap();
+        let e = report.estimate.elevations.unwrap();
+        let ends: Vec<f64> = [e.anchor_m.unwrap(), e.standing_m]
+            .iter()
+            .zip(sums)
+            .map(|(datum, sum)| datum - sum["total"]["value"].as_f64().unwrap())
+            .collect();
+        assert_eq!([&sums[0]["datum"], &sums[1]["datum"]], ["below the anchor", "below the standing surface"]);
+        let lowest = report.estimate.numbers.get("lowest_foot").unwrap();
+        for end in ends {
+            assert!((lowest - reserve - end).abs() < 1e-9, "{end} is not {lowest} less {reserve}");
+        }
+    }
+    let page = text(&reports[0], UnitSystem::Metric, Paint::Plain);
+    assert!(page.contains("measured below the anchor") && page.contains("measured below the standing surface"));
+    let without = FILE
+        .replace("standing = \"12.0 m\"\nanchor = \"13.5 m\"", "")
+        .replace("[place]", "[fall]\nfree_fall = \"1 m\"");
+    let value: Value = serde_json::from_str(&json(&reported(&without), Layout::Lines)).unwrap();
+    assert_eq!(value["working"]["clearance_sums"].as_array().unwrap().len(), 0);
+}
+
+#[test]
+fn a_swing_shows_its_places_its_strike_and_the_name_of_the_face() {
+    let report = swinging();
+    let page = text(&report, UnitSystem::Metric, Paint::Plain);
+    for words in ["attachment at the lowest point", "x strikes the face North wall at", "closest approach, North wall"]
+    {
+        assert!(page.contains(words), "{words}: {page}");
+    }
+    assert!(page.lines().all(|line| line.width() <= 100));
+    let value: Value = serde_json::from_str(&json(&report, Layout::Lines)).unwrap();
+    let strike = &value["swing"]["strikes"][0];
+    assert_eq!((&strike["name"], &strike["kind"]), (&"North wall".into(), &"face".into()));
+    assert_eq!(strike["speed"]["value"], value["numbers"]["strike_speed"]["value"]);
+    assert!(value.get("span").is_none());
+    let straight: Value = serde_json::from_str(&json(&reported(FILE), Layout::Lines)).unwrap();
+    assert!(straight.get("swing").is_none() && straight.get("span").is_none());
+}
+
+#[test]
+fn a_lifeline_shows_tension_sag_and_both_end_loads_with_direction() {
+    let report = spanned();
+    let page = text(&report, UnitSystem::Metric, Paint::Plain);
+    for words in ["load of the left support", "load of the right support", "deg below level", "largest cable tension"] {
+        assert!(page.contains(words), "{words}: {page}");
+    }
+    let value: Value = serde_json::from_str(&json(&report, Layout::Lines)).unwrap();
+    let span = &value["span"];
+    assert_eq!(span["peak_tension"]["value"], value["numbers"]["span_tension_peak"]["value"]);
+    assert_eq!(span["at"]["value"], 4.0);
+    let angle = |side: &str| span[side]["below_horizontal_deg"].as_f64().unwrap();
+    assert!(angle("left_end_load") > angle("right_end_load"), "the nearer support is pulled down more steeply");
+    assert!(span.get("deployed_length").is_none());
+}
+
+#[test]
+fn the_trace_of_a_swing_has_columns_for_its_plane_and_that_of_a_straight_fall_has_not() {
+    let report = swinging();
+    let csv = underfoot::sheet::csv(&report).unwrap();
+    let mut lines = csv.lines();
+    assert_eq!(
+        lines.next().unwrap(),
+        "time_s,travel_m,speed_m_per_s,line_force_n,mode,deployed_m,offset_m,elevation_m,swing_angle_deg,\
+         path_speed_m_per_s,caution"
+    );
+    let cell = |line: &str, n: usize| line.split(',').nth(n).unwrap().parse::<f64>().unwrap();
+    let first = lines.next().unwrap();
+    assert_eq!((cell(first, 6), cell(first, 7)), (0.0, 13.5));
+    let degrees = (-1.2_f64).atan2(0.5).to_degrees();
+    assert!((cell(first, 8) - degrees).abs() < 1e-9, "{first}");
+    let fastest = lines.map(|line| cell(line, 9)).fold(0.0, f64::max);
+    assert!(fastest > report.estimate.numbers.get("speed_at_taut").unwrap());
+    let straight = underfoot::sheet::csv(&reported(FILE)).unwrap();
+    assert_eq!(straight.lines().next().unwrap(), "time_s,travel_m,speed_m_per_s,line_force_n,mode,deployed_m,caution");
+}
+
+#[test]
+fn notes_follow_the_units_of_the_page() {
+    let report = swinging();
+    let metric = text(&report, UnitSystem::Metric, Paint::Plain);
+    let us = text(&report, UnitSystem::Us, Paint::Plain);
+    let note = |page: &str| {
+        let joined = page.split_whitespace().collect::<Vec<_>>().join(" ");
+        joined
+            .split("note first strike of this run at ")
+            .nth(1)
+            .unwrap()
+            .split(", the speed")
+            .next()
+            .unwrap()
+            .to_owned()
+    };
+    assert!(note(&metric).ends_with(" m/s") && note(&us).ends_with(" ft/s"), "{} {}", note(&metric), note(&us));
+    let without_notes =
+        |list: &[Margin]| -> Vec<Margin> { list.iter().map(|m| Margin { note: None, ..m.clone() }).collect() };
+    assert_eq!(without_notes(&report.margins_in(UnitSystem::Us)), without_notes(&report.margins));
+}
+
+#[test]
+fn counts_are_whole_numbers() {
+    let page = text(&reported(FILE), UnitSystem::Metric, Paint::Plain);
+    let row = page.lines().find(|line| line.trim_start().starts_with("slack episodes")).unwrap();
+    assert!(row.split_whitespace().last().unwrap().parse::<u32>().is_ok(), "{row}");
+}
+
 #[test]
 fn the_same_file_gives_the_same_bytes() {
     assert_eq!(json(&reported(FILE), Layout::Lines), json(&reported(FILE), Layout::Lines));

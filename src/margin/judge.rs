@@ -151,6 +151,8 @@ pub enum Cause {
     OnTheLimit,
     /// The swing is never where it could meet it: it holds without a number.
     OutOfReach,
+    /// The attachment never comes past the face, what hangs below it may.
+    BelowAttachment,
     /// A straight fall is not judged against what lies beside it.
     Beside,
 }

@@ -1,5 +1,5 @@
 //! Checks of a fall that swings: how far to the side, and what it meets.
-use super::judge::{Check, CheckKind, Impact, judge};
+use super::judge::{Cause, Check, CheckKind, Impact, judge};
 use super::numeric::Run;
 use super::verdict::Verdict;
 use crate::scenario::{LineKind, Scenario};
@@ -45,9 +45,25 @@ impl Run<'_> {
         let check = judge(kind, gap_m, Some(0.0));
         match check.verdict {
             Verdict::Short => Check { impact: self.impact(), ..check },
-            _ if gap_m.is_none() && self.tells_reach() => check.out_of_reach(),
+            _ if gap_m.is_none() && self.tells_reach() => match kind {
+                CheckKind::FaceStrike(i) if self.legs_may_meet(i) => check.open(Cause::BelowAttachment),
+                _ => check.out_of_reach(),
+            },
             _ => check,
         }
+    }
+
+    /// Whether a face that the attachment never passes is within reach of what hangs below the attachment.
+    fn legs_may_meet(&self, face: usize) -> bool {
+        let Some(face) = self.scenario.faces.get(face) else { return false };
+        let number = |id| self.numbers.get(id);
+        let lowest = number("lowest_foot").or_else(|| number("lowest_underside")).unwrap_or(f64::NEG_INFINITY);
+        let half_width = self.scenario.subject.half_width.map_or(0.0, |w| w.si());
+        let reach = number("swing_offset_peak").map_or(f64::INFINITY, |offset| offset + half_width);
+        let start = self.scenario.place.standing.map_or(f64::INFINITY, |standing| standing.si());
+        // Above the feet at their lowest, below the feet at the start: they come past its height.
+        let at_height = face.top.si() >= lowest && face.bottom.si() <= start.max(lowest);
+        at_height && face.offset.si().abs() <= reach
     }
 
     fn impact(&self) -> Option<Impact> {

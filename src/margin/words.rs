@@ -72,9 +72,8 @@ impl Words<'_> {
     fn basis(&self, check: &Check) -> Basis {
         match check.kind {
             CheckKind::Clearance(i) => self.reserve_basis(i),
-            CheckKind::LevelStrike(_) | CheckKind::FaceStrike(_) => {
-                Basis { words: "a swing must not meet it: any space left counts".to_owned(), from_memory: false }
-            }
+            CheckKind::LevelStrike(_) => must_not_meet(""),
+            CheckKind::FaceStrike(_) => must_not_meet(" at the height of the attachment"),
             CheckKind::Stroke => from_file("absorber.stroke"),
             CheckKind::RatedMass => from_file("absorber.rated_mass"),
             CheckKind::RatedFreeFall => from_file("absorber.rated_free_fall"),
@@ -202,6 +201,11 @@ impl Words<'_> {
                 "the stroke is used up: the absorber is locked and the force rises beyond it".to_owned()
             }
             Cause::OutOfReach => "the body is never above or beside it, up to the first turn of the swing".to_owned(),
+            Cause::BelowAttachment => {
+                "a strike is judged at the height of the attachment, which never comes past it: what hangs below may \
+                 meet it"
+                    .to_owned()
+            }
             Cause::Beside => "beside the fall line and not met by a straight fall, so not judged".to_owned(),
             Cause::OnTheLimit => "the value must stay below the limit; it is on it".to_owned(),
         })
@@ -264,6 +268,10 @@ fn value_words(limit: &PublishedLimit) -> String {
         LimitKind::TotalFallPastTwiceLength => format!("twice the length plus {value}"),
         _ => value,
     }
+}
+
+fn must_not_meet(where_judged: &str) -> Basis {
+    Basis { words: format!("a swing must not meet it: any space left{where_judged} counts"), from_memory: false }
 }
 
 fn from_file(key: &str) -> Basis {

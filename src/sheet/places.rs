@@ -6,7 +6,7 @@ use crate::quantity::{Dimension, UnitSystem, format_si};
 use serde_json::{Value, json};
 
 /// Columns of the words.
-const WORDS: usize = 54;
+const WORDS: usize = 62;
 
 /// The lifeline under the largest load, where there is one.
 pub fn span(page: &mut Page, estimate: &Estimate, system: UnitSystem) {

@@ -81,8 +81,9 @@ fn sums(scenario: &Scenario, elevations: Option<&Elevations>) -> Vec<Sum> {
 }
 
 fn after_taut(scenario: &Scenario) -> String {
-    let absorber = if scenario.absorber.is_some() { " and deployed absorber" } else { "" };
-    format!("from taut down to the lowest point: stretch{absorber}, and any swing")
+    let absorber = if scenario.absorber.is_some() { ", absorber" } else { "" };
+    let swing = if scenario.place.anchor_offset.is_some() || scenario.place.edge.is_some() { ", swing" } else { "" };
+    format!("from taut down to the lowest point: stretch{absorber}{swing}")
 }
 
 const fn body(kind: SubjectKind) -> &'static str {
