@@ -2,13 +2,21 @@
 use std::io::Write;
 use std::path::Path;
 use std::process::ExitCode;
-use underfoot::cli::{self, Next};
+use underfoot::cli::{self, Code, Next};
 use underfoot::quantity::UnitSystem;
 use underfoot::scenario::LoadError;
 use underfoot::tui::{self, ScreenError};
 
 fn main() -> color_eyre::Result<ExitCode> {
     color_eyre::install()?;
+    // The hook has told of a panic already; to the shell it is one more run that could not be computed.
+    std::panic::catch_unwind(start).unwrap_or_else(|_| Ok(ExitCode::from(NOT_COMPUTED)))
+}
+
+/// Exit code of a run that could not be computed.
+const NOT_COMPUTED: u8 = Code::NotComputed.number();
+
+fn start() -> color_eyre::Result<ExitCode> {
     match cli::parse_and_run(std::env::args_os()) {
         Next::Exit(code) => Ok(ExitCode::from(code.number())),
         Next::View { path, units } => screen(&path, units),

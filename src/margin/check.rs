@@ -66,7 +66,15 @@ pub struct UnknownBasis {
 /// # Errors
 /// When the scenario names an unknown set.
 pub fn margins(scenario: &Scenario, estimate: &Estimate) -> Result<Vec<Margin>, UnknownBasis> {
-    margins_from(scenario, &estimate.numbers, &estimate.validity)
+    margins_in(scenario, estimate, UnitSystem::Metric)
+}
+
+/// As [`margins`], with the notes in the given units.
+///
+/// # Errors
+/// When the scenario names an unknown set.
+pub fn margins_in(scenario: &Scenario, estimate: &Estimate, system: UnitSystem) -> Result<Vec<Margin>, UnknownBasis> {
+    worded(scenario, &estimate.numbers, &estimate.validity, system)
 }
 
 /// As [`margins`], from the numbers of a run and the reasons why its model is not valid (none when it is).
@@ -78,10 +86,19 @@ pub fn margins_from(
     numbers: &Numbers,
     validity: &[Validity],
 ) -> Result<Vec<Margin>, UnknownBasis> {
+    worded(scenario, numbers, validity, UnitSystem::Metric)
+}
+
+fn worded(
+    scenario: &Scenario,
+    numbers: &Numbers,
+    validity: &[Validity],
+    system: UnitSystem,
+) -> Result<Vec<Margin>, UnknownBasis> {
     let rules = Rules::of(scenario)?;
     let mut list = checks(&rules, scenario, numbers, validity);
     list.sort_by(governing_first);
-    Ok(list.iter().map(|check| margin_of(&rules, scenario, validity, check, UnitSystem::Metric)).collect())
+    Ok(list.iter().map(|check| margin_of(&rules, scenario, validity, check, system)).collect())
 }
 
 /// The order of checks: worst verdict first; within one verdict what the run gives before what only compares two

@@ -8,6 +8,14 @@ use crate::quantity::Dimension;
 pub enum CheckKind {
     /// Clearance to an obstacle, by its place in the file from 0.
     Clearance(usize),
+    /// A swing that meets a level, by the obstacle's place in the file from 0.
+    LevelStrike(usize),
+    /// A swing that meets a face, by its place in the file from 0.
+    FaceStrike(usize),
+    /// Distance swung to the side.
+    SwingDistance,
+    /// Angle swung to the side.
+    SwingAngle,
     /// Force on the body or lifting eye.
     ArrestForce,
     /// Stroke of the absorber.
@@ -22,6 +30,20 @@ pub enum CheckKind {
     AnchorLoad,
     /// The capacity stated against the strength the set asks for.
     AnchorStrength,
+    /// Factor times the largest load of an end support of a horizontal lifeline against its capacity.
+    SpanEndLoad,
+    /// Factor times the largest tension of a horizontal lifeline against its strength.
+    SpanTension,
+    /// Span of a prescribed horizontal lifeline.
+    SpanLength,
+    /// Slack of a prescribed horizontal lifeline, as a share of its span.
+    SpanSlack,
+    /// Workers on a prescribed horizontal lifeline.
+    SpanWorkers,
+    /// Strength of the end anchors of a prescribed horizontal lifeline.
+    SpanAnchorStrength,
+    /// Diameter of the cable of a prescribed horizontal lifeline.
+    SpanCableDiameter,
     /// Factor times the largest line force against the strength stated.
     LineLoad,
     /// The strength stated against the strength the set asks for.
@@ -46,24 +68,42 @@ impl CheckKind {
     pub const fn dimension(self) -> Dimension {
         match self {
             Self::Clearance(_)
+            | Self::LevelStrike(_)
+            | Self::FaceStrike(_)
+            | Self::SwingDistance
+            | Self::SpanLength
+            | Self::SpanCableDiameter
             | Self::Stroke
             | Self::FreeFall
             | Self::DecelerationDistance
             | Self::TotalFall
             | Self::RatedFreeFall
             | Self::LanyardLength => Dimension::Length,
-            Self::ArrestForce | Self::AnchorLoad | Self::AnchorStrength | Self::LineLoad | Self::LineStrength => {
-                Dimension::Force
-            }
+            Self::ArrestForce
+            | Self::AnchorLoad
+            | Self::AnchorStrength
+            | Self::SpanEndLoad
+            | Self::SpanTension
+            | Self::SpanAnchorStrength
+            | Self::LineLoad
+            | Self::LineStrength => Dimension::Force,
+            Self::SwingAngle => Dimension::Angle,
             Self::RatedMass | Self::SubjectMass => Dimension::Mass,
-            Self::StaticElongation | Self::DynamicElongation => Dimension::Ratio,
+            Self::StaticElongation | Self::DynamicElongation | Self::SpanSlack | Self::SpanWorkers => Dimension::Ratio,
         }
     }
     /// Which side is good.
     #[must_use]
     pub const fn sense(self) -> Sense {
         match self {
-            Self::Clearance(_) | Self::AnchorStrength | Self::LineStrength => Sense::AtLeast,
+            Self::Clearance(_)
+            | Self::LevelStrike(_)
+            | Self::FaceStrike(_)
+            | Self::AnchorStrength
+            | Self::SpanSlack
+            | Self::SpanAnchorStrength
+            | Self::SpanCableDiameter
+            | Self::LineStrength => Sense::AtLeast,
             _ => Sense::AtMost,
         }
     }
@@ -73,6 +113,12 @@ impl CheckKind {
         matches!(
             self,
             Self::Clearance(_)
+                | Self::LevelStrike(_)
+                | Self::FaceStrike(_)
+                | Self::SwingDistance
+                | Self::SwingAngle
+                | Self::SpanEndLoad
+                | Self::SpanTension
                 | Self::ArrestForce
                 | Self::Stroke
                 | Self::DecelerationDistance
@@ -103,6 +149,19 @@ pub enum Cause {
     StrokeUsedUp,
     /// The limit itself is not allowed, and the demand is on it.
     OnTheLimit,
+    /// The swing is never where it could meet it: it holds without a number.
+    OutOfReach,
+    /// A straight fall is not judged against what lies beside it.
+    Beside,
+}
+
+/// How hard the first strike of a swing is.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Impact {
+    /// Speed, m/s.
+    pub speed_m_per_s: f64,
+    /// Height of a straight fall with that speed, m.
+    pub drop_equivalent_m: f64,
 }
 
 /// One check in numbers, SI.
@@ -120,19 +179,29 @@ pub struct Check {
     pub verdict: Verdict,
     /// Why, where the numbers alone do not tell.
     pub cause: Option<Cause>,
+    /// The first strike of the run, beside a check of a strike that is short.
+    pub impact: Option<Impact>,
 }
 
 impl Check {
     /// Room left as a share of the limit (of one SI unit where the limit is zero); the measure by which checks
-    /// of one verdict are ordered. A check without a margin counts as the smallest.
+    /// of one verdict are ordered. A check without a margin counts as the smallest, out of reach as the largest.
     #[must_use]
     pub fn relative(&self) -> f64 {
+        if self.cause == Some(Cause::OutOfReach) {
+            return f64::INFINITY;
+        }
         let scale = self.limit.map(f64::abs).filter(|l| *l > 0.0).unwrap_or(1.0);
         self.margin.map(|m| m / scale).filter(|r| !r.is_nan()).unwrap_or(f64::NEG_INFINITY)
     }
     pub(super) fn open(mut self, cause: Cause) -> Self {
         self.verdict = Verdict::Open;
         self.cause = Some(cause);
+        self
+    }
+    pub(super) fn out_of_reach(mut self) -> Self {
+        self.verdict = Verdict::Holds;
+        self.cause = Some(Cause::OutOfReach);
         self
     }
     pub(super) fn short(mut self, cause: Cause) -> Self {
@@ -150,7 +219,7 @@ const ROUNDING: f64 = 1e-12;
 /// Judges one pair of numbers. A margin of exactly zero holds; what is not a number never does.
 #[must_use]
 pub fn judge(kind: CheckKind, demand: Option<f64>, limit: Option<f64>) -> Check {
-    let check = Check { kind, demand, limit, margin: None, verdict: Verdict::Open, cause: None };
+    let check = Check { kind, demand, limit, margin: None, verdict: Verdict::Open, cause: None, impact: None };
     match (demand, limit) {
         (None, _) => check.open(Cause::NoNumber),
         (_, None) => check.open(Cause::NotStated),

@@ -57,6 +57,8 @@ pub enum LimitKind {
     AnchorFactor,
     /// Least static strength of the line.
     LineStrength,
+    /// Least static strength of a line that limits the free fall to 2 ft.
+    LineStrengthShortFall,
     /// Factor on the largest line force.
     LineFactor,
     /// Factor on the largest tension of a horizontal lifeline.

@@ -2,10 +2,11 @@
 use super::judge::{Cause, Check, CheckKind, ROUNDING_SHARE, judge};
 use super::limit::{LimitKind, WrittenFor};
 use super::rules::{Rules, Ruling};
+use super::sideways::swings;
+use super::stretch::static_elongation;
 use super::verdict::Verdict;
 use crate::estimate::{Numbers, Validity};
-use crate::quantity::Dimension;
-use crate::scenario::{LineKind, Scenario, StretchLaw};
+use crate::scenario::{AnchorKind, LineKind, Scenario};
 
 /// Every check that applies to the numbers of one run, not yet sorted by verdict.
 ///
@@ -16,6 +17,7 @@ pub fn checks(rules: &Rules, scenario: &Scenario, numbers: &Numbers, validity: &
     let mut list = Vec::with_capacity(rules.clearance_ids.len() + 12);
     run.clearances(&mut list);
     run.fall(&mut list);
+    run.sideways(&mut list);
     run.anchor(&mut list);
     run.line(&mut list);
     run.ratings(&mut list);
@@ -25,20 +27,28 @@ pub fn checks(rules: &Rules, scenario: &Scenario, numbers: &Numbers, validity: &
     accept_either(&mut list, CheckKind::ArrestForce, rules.arrest_force.as_ref(), CheckKind::FreeFall);
     accept_either(&mut list, CheckKind::FreeFall, rules.free_fall.as_ref(), CheckKind::ArrestForce);
     accept_either(&mut list, CheckKind::AnchorStrength, rules.anchor_strength.as_ref(), CheckKind::AnchorLoad);
+    accept_either(&mut list, CheckKind::SwingDistance, rules.swing_distance.as_ref(), CheckKind::SwingAngle);
+    accept_either(&mut list, CheckKind::SwingAngle, rules.swing_angle.as_ref(), CheckKind::SwingDistance);
     list
 }
 
-struct Run<'a> {
-    rules: &'a Rules,
-    scenario: &'a Scenario,
-    numbers: &'a Numbers,
+pub(super) struct Run<'a> {
+    pub(super) rules: &'a Rules,
+    pub(super) scenario: &'a Scenario,
+    pub(super) numbers: &'a Numbers,
 }
 
 impl Run<'_> {
     fn clearances(&self, list: &mut Vec<Check>) {
         for (i, (id, obstacle)) in self.rules.clearance_ids.iter().zip(&self.scenario.obstacles).enumerate() {
             let reserve = obstacle.reserve.map_or(0.0, |r| r.si());
-            list.push(judge(CheckKind::Clearance(i), self.numbers.get(id), Some(reserve)));
+            let check = judge(CheckKind::Clearance(i), self.numbers.get(id), Some(reserve));
+            let beside = || !obstacle.is_below(&self.scenario.subject) && !swings(self.scenario);
+            list.push(match check.demand {
+                None if self.tells_reach() => check.out_of_reach(),
+                None if beside() => check.open(Cause::Beside),
+                _ => check,
+            });
         }
     }
 
@@ -51,7 +61,7 @@ impl Run<'_> {
         self.total_fall(list);
     }
 
-    fn rule(&self, list: &mut Vec<Check>, kind: CheckKind, ruling: Option<&Ruling>, demand: Option<f64>) {
+    pub(super) fn rule(&self, list: &mut Vec<Check>, kind: CheckKind, ruling: Option<&Ruling>, demand: Option<f64>) {
         let Some(ruling) = ruling else { return };
         let check = judge(kind, demand, Some(ruling.si()));
         list.push(self.within_set(strict(check, ruling), ruling));
@@ -92,7 +102,10 @@ impl Run<'_> {
     }
 
     fn absorber_travel(&self) -> Option<f64> {
-        self.numbers.get(if self.scenario.absorber.is_some() { "deployed_length" } else { "arrest_distance" })
+        if self.scenario.absorber.is_some() {
+            return self.numbers.get("deployed_length");
+        }
+        self.numbers.get("arrest_distance").or_else(|| self.numbers.get("swing_drop"))
     }
 
     fn stroke(&self, list: &mut Vec<Check>) {
@@ -107,12 +120,17 @@ impl Run<'_> {
         let twice_length = self.scenario.line.length.map(|l| 2.0 * l.si());
         let limit =
             if ruling.is_past_twice_length() { twice_length.map(|l| l + ruling.si()) } else { Some(ruling.si()) };
-        list.push(judge(CheckKind::TotalFall, self.numbers.get("total_fall_distance"), limit));
+        let swung = || Some(self.free_fall()? + self.numbers.get("swing_drop")?);
+        let demand = self.numbers.get("total_fall_distance").or_else(swung);
+        list.push(judge(CheckKind::TotalFall, demand, limit));
     }
 
     fn anchor(&self, list: &mut Vec<Check>) {
         let capacity = self.scenario.anchor.capacity.map(|c| c.si());
         let rules = self.rules;
+        if let (AnchorKind::Span(span), Some(span_rules)) = (&self.scenario.anchor.kind, &rules.span) {
+            return self.span(list, span, span_rules);
+        }
         let asked = rules.set.is_some() || rules.anchor_factor.is_some() || rules.anchor_strength.is_some();
         if capacity.is_none() && !asked {
             return;
@@ -127,7 +145,7 @@ impl Run<'_> {
     }
 
     /// Short by the value that is judged, but enough for another condition of the same set: open.
-    fn accept_conditional(&self, list: &mut [Check], ruling: &Ruling, kind: LimitKind, stated: f64) {
+    pub(super) fn accept_conditional(&self, list: &mut [Check], ruling: &Ruling, kind: LimitKind, stated: f64) {
         let either = ruling.judged_by_set().is_some_and(|p| p.or == Some(kind));
         let enough = || self.rules.least_conditional(kind).is_some_and(|least| stated >= least);
         if let Some(last) = list.last_mut()
@@ -143,20 +161,25 @@ impl Run<'_> {
         let rules = self.rules;
         let factor = rules.line_factor.as_ref().map_or(1.0, Ruling::si);
         let demand = self.numbers.get("arrest_force_peak").map(|f| factor * f);
-        match (self.scenario.line.strength.map(|s| s.si()), &rules.line_strength) {
-            (Some(strength), ruling) => {
-                list.push(judge(CheckKind::LineLoad, demand, Some(strength)));
-                if let Some(ruling) = ruling {
-                    list.push(judge(CheckKind::LineStrength, Some(strength), Some(ruling.si())));
-                    self.accept_conditional(list, ruling, LimitKind::LineStrength, strength);
-                }
-            }
-            (None, Some(ruling)) => {
-                list.push(judge(CheckKind::LineStrength, None, Some(ruling.si())).open(Cause::NotStated));
-            }
-            (None, None) if rules.line_factor.is_some() => list.push(judge(CheckKind::LineLoad, demand, None)),
-            (None, None) => {}
+        let stated = self.scenario.line.strength.map(|s| s.si());
+        let ruling = self.line_strength();
+        if stated.is_some() || (ruling.is_none() && rules.line_factor.is_some()) {
+            let left = stated.map(|strength| strength / edge_factor(self.scenario));
+            list.push(judge(CheckKind::LineLoad, demand, left));
         }
+        let Some(ruling) = ruling else { return };
+        let check = judge(CheckKind::LineStrength, stated, Some(ruling.si()));
+        list.push(if stated.is_none() { check.open(Cause::NotStated) } else { check });
+        if let Some(strength) = stated {
+            self.accept_conditional(list, ruling, LimitKind::LineStrength, strength);
+        }
+    }
+
+    /// The strength a set asks of the line; a smaller one may hold where the line lets nobody fall far.
+    fn line_strength(&self) -> Option<&Ruling> {
+        let near = self.free_fall().is_some_and(|fall| fall <= SHORT_FALL_M * (1.0 + ROUNDING_SHARE));
+        let short_fall = self.rules.short_fall_line_strength.as_ref().filter(|r| near && r.published.is_some());
+        short_fall.or(self.rules.line_strength.as_ref())
     }
 
     fn ratings(&self, list: &mut Vec<Check>) {
@@ -185,6 +208,8 @@ fn accept_either(list: &mut [Check], kind: CheckKind, ruling: Option<&Ruling>, o
     let wanted = match other {
         CheckKind::FreeFall => LimitKind::FreeFall,
         CheckKind::ArrestForce => LimitKind::ArrestForce,
+        CheckKind::SwingDistance => LimitKind::SwingDistance,
+        CheckKind::SwingAngle => LimitKind::SwingAngle,
         _ => LimitKind::AnchorFactor,
     };
     let either = ruling.and_then(Ruling::judged_by_set).is_some_and(|p| p.or == Some(wanted));
@@ -200,21 +225,10 @@ fn strict(check: Check, ruling: &Ruling) -> Check {
     if ruling.is_strict() && check.margin == Some(0.0) { check.short(Cause::OnTheLimit) } else { check }
 }
 
-/// The step of the static test that the published limit names: from 50 kg to 150 kg.
-const STATIC_STEP_KG: f64 = 100.0;
+/// Free fall up to which 29 CFR 1926.502(d)(12) asks less of a self-retracting line: 2 ft, m.
+const SHORT_FALL_M: f64 = 2.0 * 0.3048;
 
-/// Elongation from 50 kg to 150 kg as a share of the length, for laws that are linear in strain.
-fn static_elongation(scenario: &Scenario) -> Option<f64> {
-    let gravity = scenario.gravity.si();
-    let force = |m: &crate::quantity::Measure| match m.dimension() {
-        Dimension::Mass => m.si() * gravity,
-        _ => m.si(),
-    };
-    let modulus = match &scenario.line.stretch {
-        StretchLaw::Modulus(modulus) => modulus.si(),
-        StretchLaw::Stiffness(stiffness) => stiffness.si() * scenario.line.length?.si(),
-        StretchLaw::StaticElongation { percent, from, to } => (force(to) - force(from)) / percent.si(),
-        StretchLaw::RatedImpact { .. } | StretchLaw::Curve(_) => return None,
-    };
-    Some(STATIC_STEP_KG * gravity / modulus)
+/// The file's own number that divides the line's strength at an edge; 1 without one.
+pub(super) fn edge_factor(scenario: &Scenario) -> f64 {
+    scenario.place.edge.as_ref().and_then(|edge| edge.strength_factor).map_or(1.0, |factor| factor.si())
 }

@@ -1,7 +1,8 @@
 //! Which limits hold for a scenario: the set it names, what it states itself, and for what each was written.
 use super::check::UnknownBasis;
 use super::limit::{Applies, Bound, LimitKind, LimitSet, PublishedLimit, limit_set, limit_sets};
-use crate::scenario::{LineKind, OwnLimit, Scenario, SubjectKind};
+use super::span::SpanRules;
+use crate::scenario::{AnchorKind, Face, LineKind, Obstacle, OwnLimit, Scenario, SubjectKind};
 
 /// One limit as it is judged: the file's own value before the published one.
 #[derive(Clone, Debug, PartialEq)]
@@ -52,11 +53,16 @@ pub struct Rules {
     pub(super) anchor_strength: Option<Ruling>,
     pub(super) anchor_factor: Option<Ruling>,
     pub(super) line_strength: Option<Ruling>,
+    pub(super) short_fall_line_strength: Option<Ruling>,
     pub(super) line_factor: Option<Ruling>,
     pub(super) subject_mass: Option<Ruling>,
     pub(super) static_elongation: Option<Ruling>,
     pub(super) dynamic_elongation: Option<Ruling>,
     pub(super) reserve: Option<Ruling>,
+    pub(super) swing_distance: Option<Ruling>,
+    pub(super) swing_angle: Option<Ruling>,
+    pub(super) span: Option<SpanRules>,
+    pub(super) approach_ids: Vec<String>,
 }
 
 impl Rules {
@@ -79,11 +85,16 @@ impl Rules {
             anchor_strength: find("anchor_strength", &[LimitKind::AnchorStrength]),
             anchor_factor: find("anchor_factor", &[LimitKind::AnchorFactor]),
             line_strength: find("line_strength", &[LimitKind::LineStrength]),
+            short_fall_line_strength: find("line_strength", &[LimitKind::LineStrengthShortFall]),
             line_factor: find("line_factor", &[LimitKind::LineFactor]),
             subject_mass: find("subject_mass", &[LimitKind::SubjectMass]),
             static_elongation: find("", &[LimitKind::StaticElongation]),
             dynamic_elongation: find("", &[LimitKind::DynamicElongation]),
             reserve: find("", &[LimitKind::Reserve]),
+            swing_distance: find("", &[LimitKind::SwingDistance]),
+            swing_angle: find("", &[LimitKind::SwingAngle]),
+            span: is_span(scenario).then(|| SpanRules::of(&find)),
+            approach_ids: approach_ids(scenario),
         })
     }
     /// The smallest value of a kind in the set that is judged, SI, whatever it applies to.
@@ -91,6 +102,16 @@ impl Rules {
         let set = self.set.filter(|_| self.set_judges)?;
         set.of_kind(kind).map(PublishedLimit::si).reduce(f64::min)
     }
+}
+
+/// Ids of the numbers of the closest approach: obstacles, then faces, in file order.
+fn approach_ids(scenario: &Scenario) -> Vec<String> {
+    let names = scenario.obstacles.iter().map(Obstacle::id).chain(scenario.faces.iter().map(Face::id));
+    names.map(|name| format!("closest_approach.{name}")).collect()
+}
+
+const fn is_span(scenario: &Scenario) -> bool {
+    matches!(scenario.anchor.kind, AnchorKind::Span(_))
 }
 
 fn named_set(basis: Option<&str>) -> Result<Option<&'static LimitSet>, UnknownBasis> {
@@ -146,19 +167,17 @@ fn applies(to: Applies, scenario: &Scenario) -> bool {
     let kind = scenario.line.kind;
     let absorber = scenario.absorber.is_some();
     match to {
-        Applies::Every => true,
+        // The length of a swing is known after the run only: the check looks whether there is one.
+        Applies::Every | Applies::Swing => true,
         Applies::Absorber => absorber,
         Applies::LanyardWithAbsorber => absorber && kind == LineKind::Lanyard,
-        Applies::Textile => kind != LineKind::Cable,
+        Applies::Textile => matches!(kind, LineKind::Lanyard | LineKind::Rope | LineKind::Webbing),
         Applies::Metal => kind == LineKind::Cable,
         Applies::SingleRope => kind == LineKind::Rope,
-        Applies::HalfOrTwinRope
-        | Applies::Retractable
-        | Applies::Guided
-        | Applies::WireSpan
-        | Applies::FibreSpan
-        | Applies::Span
-        | Applies::Swing
-        | Applies::Elsewhere => false,
+        Applies::Retractable => kind == LineKind::Retractable,
+        Applies::Guided => kind == LineKind::Vertical,
+        // The file does not tell the material of the cable: both are looked at.
+        Applies::WireSpan | Applies::FibreSpan | Applies::Span => is_span(scenario),
+        Applies::HalfOrTwinRope | Applies::Elsewhere => false,
     }
 }

@@ -80,9 +80,10 @@ fn refusal(page: &mut Page, audited: &Audited, why: &str) {
 }
 
 fn judged(page: &mut Page, report: &Report, doubts: &Faults, system: UnitSystem, colour: bool) {
-    verdict_line(page, &report.scenario, &report.margins, report.verdict, system);
-    margin_table(page, &report.margins, system);
-    for margin in &report.margins {
+    let margins = report.margins_in(system);
+    verdict_line(page, &report.scenario, &margins, report.verdict, system);
+    margin_table(page, &margins, system);
+    for margin in &margins {
         page.wrapped("    ", &format!("{}: {}", margin.label, margin.basis.words), Tone::Faint);
         if let Some(note) = &margin.note {
             page.wrapped("      note: ", note, Tone::Plain);

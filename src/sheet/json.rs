@@ -1,4 +1,6 @@
 //! One report as JSON, SI units.
+use super::places::{span_object, swing_object};
+use super::working::working_object;
 use super::{CAUTIONS, Report};
 use crate::estimate::{Event, Number, Value as NumberValue};
 use crate::margin::{Margin, Sense};
@@ -32,7 +34,7 @@ pub fn print(value: &Value, layout: Layout) -> String {
 /// The whole report as a JSON object.
 #[must_use]
 pub fn object(report: &Report) -> Value {
-    json!({
+    let mut object = json!({
         "file": report.file,
         "title": report.scenario.title,
         "datum": report.scenario.datum,
@@ -46,7 +48,15 @@ pub fn object(report: &Report) -> Value {
         "margins": report.margins.iter().map(margin).collect::<Vec<_>>(),
         "numbers": report.estimate.numbers.iter().map(number).collect::<Map<_, _>>(),
         "events": report.estimate.events.iter().map(event).collect::<Vec<_>>(),
-    })
+        "working": working_object(report),
+    });
+    if let Some(view) = &report.estimate.span {
+        object["span"] = span_object(view);
+    }
+    if let Some(view) = &report.estimate.plane {
+        object["swing"] = swing_object(view);
+    }
+    object
 }
 
 /// One check as a JSON object.

@@ -5,10 +5,12 @@ mod csv;
 mod json;
 mod limits;
 mod page;
+mod places;
 mod report;
 mod text;
 pub mod ticks;
 mod words;
+mod working;
 
 pub use audit::{Audited, Finding, audit_head, audit_json, audit_text, tally};
 pub use caution::{CAUTION_LINE, CAUTIONS, EQUIPMENT_CAUTIONS, LEFT_OUT};

@@ -1,6 +1,7 @@
 //! Everything an output needs about one file.
 use crate::estimate::{Estimate, EstimateError, estimate};
-use crate::margin::{Margin, Rules, UnknownBasis, Verdict, margins, remarks, worst};
+use crate::margin::{Margin, Rules, UnknownBasis, Verdict, margins, margins_in, remarks, worst};
+use crate::quantity::UnitSystem;
 use crate::scenario::Scenario;
 use sha2::{Digest, Sha256};
 use std::fmt::Write;
@@ -22,6 +23,19 @@ pub struct Report {
     pub verdict: Verdict,
     /// Sentences about the limits as a whole: what the set was written for, what is not judged.
     pub limit_remarks: Vec<String>,
+}
+
+impl Report {
+    /// The checks with their notes in the given units; all else as in `margins`.
+    #[must_use]
+    pub fn margins_in(&self, system: UnitSystem) -> Vec<Margin> {
+        let noted = margins_in(&self.scenario, &self.estimate, system).unwrap_or_default();
+        let note = |margin: &Margin| {
+            let same = noted.iter().find(|n| n.id == margin.id && n.verdict == margin.verdict);
+            same.map_or_else(|| margin.note.clone(), |n| n.note.clone())
+        };
+        self.margins.iter().map(|margin| Margin { note: note(margin), ..margin.clone() }).collect()
+    }
 }
 
 /// Why there is no report.

@@ -1,10 +1,12 @@
 //! One report as text for a screen of 100 columns.
 use super::page::{Page, Paint, Tone, pad, pad_left};
-use super::words::governing_words;
+use super::places::{span, swing};
+use super::words::{governing_words, margin_value, place_name};
+use super::working::{clearance_sums, working};
 use super::{CAUTION_LINE, CAUTIONS, Report};
 use crate::estimate::{DEFINITIONS, Number, Value};
 use crate::margin::{Margin, Sense, Verdict};
-use crate::quantity::{Dimension, UnitSystem, format_si};
+use crate::quantity::{UnitSystem, format_si};
 use crate::scenario::Scenario;
 use unicode_width::UnicodeWidthStr;
 
@@ -12,13 +14,18 @@ use unicode_width::UnicodeWidthStr;
 #[must_use]
 pub fn text(report: &Report, system: UnitSystem, paint: Paint) -> String {
     let mut page = Page::new(paint);
+    let margins = report.margins_in(system);
     head(&mut page, report);
-    verdict_line(&mut page, &report.scenario, &report.margins, report.verdict, system);
+    verdict_line(&mut page, &report.scenario, &margins, report.verdict, system);
     events(&mut page, report, system);
+    working(&mut page, &report.estimate, system);
+    clearance_sums(&mut page, report, system);
+    span(&mut page, &report.estimate, system);
+    swing(&mut page, &report.estimate, system);
     numbers(&mut page, report, system);
     page.heading("margins (governing first)");
-    margin_table(&mut page, &report.margins, system);
-    margin_bases(&mut page, &report.margins);
+    margin_table(&mut page, &margins, system);
+    margin_bases(&mut page, &margins);
     sentences(&mut page, "limits", &report.limit_remarks);
     sentences(&mut page, "assumptions", &report.estimate.assumptions);
     sentences(&mut page, "warnings", &report.estimate.warnings);
@@ -91,6 +98,19 @@ const GROUPS: &[(&str, &[&str])] = &[
             "rebound_rise",
         ],
     ),
+    ("horizontal lifeline, largest", &["span_tension_peak", "span_sag_peak", "span_end_force"]),
+    (
+        "swing",
+        &[
+            "swing_drop",
+            "swing_speed_lowest",
+            "swing_angle_peak",
+            "swing_offset_peak",
+            "strike_speed",
+            "strike_drop_equivalent",
+            "closest_approach",
+        ],
+    ),
     ("elevations and clearance", &["lowest_attachment", "lowest_foot", "lowest_underside", "clearance", "margin"]),
     ("times", &["time_taut", "time_peak_force", "time_lowest", "time_first_slack", "settle_time", "slack_episodes"]),
     (
@@ -136,9 +156,8 @@ fn group(page: &mut Page, title: &str, report: &Report, system: UnitSystem, belo
 fn number_label(id: &str, scenario: &Scenario) -> String {
     let known = DEFINITIONS.iter().find(|d| d.id == stem(id));
     let label = known.map_or_else(|| stem(id).replace('_', " "), |d| d.label.to_owned());
-    let Some((_, obstacle)) = id.split_once('.') else { return label };
-    let name = scenario.obstacles.iter().find(|o| o.id() == obstacle).map_or(obstacle, |o| o.name.as_str());
-    format!("{label}, {name}")
+    let Some((_, place)) = id.split_once('.') else { return label };
+    format!("{label}, {}", place_name(scenario, place))
 }
 
 fn number_words(number: &Number, system: UnitSystem) -> String {
@@ -165,7 +184,7 @@ pub(super) fn margin_table(page: &mut Page, margins: &[Margin], system: UnitSyst
 }
 
 /// A row with its label in a column; a label that is too wide for it stands above its cells.
-fn row(page: &mut Page, lead: &str, (label, width): (&str, usize), cells: &str, tone: Tone) {
+pub(super) fn row(page: &mut Page, lead: &str, (label, width): (&str, usize), cells: &str, tone: Tone) {
     if label.width() <= width {
         page.line(&format!("{lead}{}{cells}", pad(label, width)), tone);
     } else {
@@ -175,19 +194,18 @@ fn row(page: &mut Page, lead: &str, (label, width): (&str, usize), cells: &str, 
 }
 
 fn margin_cells(margin: &Margin, system: UnitSystem) -> String {
-    let show = |value: Option<f64>| value.map_or_else(|| "-".to_owned(), |v| format_si(v, margin.dimension, system));
+    let show = |value: Option<f64>| value.map_or_else(|| "-".to_owned(), |v| margin_value(margin, v, system));
     let sign = match margin.sense {
         Sense::AtMost => "<=",
         Sense::AtLeast => ">=",
     };
     let limit = margin.limit.map_or_else(|| "-".to_owned(), |l| format!("{sign} {}", show(Some(l))));
-    let room = margin.margin.map_or_else(|| "-".to_owned(), |m| signed(m, margin.dimension, system));
+    let room = margin.margin.map_or_else(|| "-".to_owned(), |m| signed(m, &margin_value(margin, m, system)));
     [show(margin.demand), limit, room].map(|cell| pad_left(&cell, 15)).concat()
 }
 
-fn signed(value: f64, dimension: Dimension, system: UnitSystem) -> String {
-    let words = format_si(value, dimension, system);
-    if value > 0.0 { format!("+{words}") } else { words }
+fn signed(value: f64, words: &str) -> String {
+    if value > 0.0 { format!("+{words}") } else { words.to_owned() }
 }
 
 fn margin_bases(page: &mut Page, margins: &[Margin]) {

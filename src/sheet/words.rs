@@ -17,6 +17,10 @@ pub fn governing_words(scenario: &Scenario, margins: &[Margin], system: UnitSyst
 #[must_use]
 pub fn margin_words(scenario: &Scenario, margin: &Margin, system: UnitSystem) -> String {
     match (margin.verdict, margin.demand, margin.limit, margin.margin) {
+        (Verdict::Holds, None, ..) => {
+            let why = margin.note.as_deref().unwrap_or("never in reach");
+            format!("{} holds: {why}", margin.label)
+        }
         (Verdict::Open, ..) | (_, None, ..) | (_, _, None, _) | (.., None) => open_words(margin),
         (_, Some(demand), Some(limit), Some(room)) => judged_words(scenario, margin, [demand, limit, room], system),
     }
@@ -29,7 +33,10 @@ fn open_words(margin: &Margin) -> String {
 
 fn judged_words(scenario: &Scenario, margin: &Margin, numbers: [f64; 3], system: UnitSystem) -> String {
     let [demand, limit, room] = numbers;
-    let show = |value: f64| format_si(value, margin.dimension, system);
+    let show = |value: f64| margin_value(margin, value, system);
+    if let Some(name) = margin.id.strip_prefix("swing_strike.") {
+        return strike_words(place_name(scenario, name), demand, &show(demand.abs()), margin.note.as_deref());
+    }
     let room_words = room_words(room, margin.verdict, &show(room.abs()));
     if let Some(obstacle) = obstacle_of(scenario, margin) {
         let lowest = lowest_part(scenario.subject.kind);
@@ -54,6 +61,28 @@ fn judged_words(scenario: &Scenario, margin: &Margin, numbers: [f64; 3], system:
         Sense::AtLeast => "wanted",
     };
     format!("{} {} of {} {allowed} ({room_words})", margin.label, show(demand), show(limit))
+}
+
+/// A demand, limit or room of a check with its unit; a number of people without decimals.
+pub(super) fn margin_value(margin: &Margin, value: f64, system: UnitSystem) -> String {
+    if margin.id == "span_workers" { format!("{value:.0}") } else { format_si(value, margin.dimension, system) }
+}
+
+fn strike_words(name: &str, gap_m: f64, gap: &str, note: Option<&str>) -> String {
+    let name = with_article(name);
+    let note = note.map(|n| format!("; {n}")).unwrap_or_default();
+    if gap_m < 0.0 {
+        format!("the swing strikes {name}: it would go {gap} past it{note}")
+    } else {
+        format!("the swing passes {name} with {gap} left{note}")
+    }
+}
+
+/// The name of a face or obstacle by its id.
+pub(super) fn place_name<'a>(scenario: &'a Scenario, id: &'a str) -> &'a str {
+    let obstacles = scenario.obstacles.iter().map(|o| (o.id(), o.name.as_str()));
+    let faces = scenario.faces.iter().map(|f| (f.id(), f.name.as_str()));
+    obstacles.chain(faces).find(|(known, _)| known == id).map_or(id, |(_, name)| name)
 }
 
 fn passes(demand: f64, show: &dyn Fn(f64) -> String) -> String {

@@ -35,7 +35,7 @@ pub const US_1926: LimitSet = LimitSet {
             .remark("under the supervision of a qualified person"),
         least(K::LineStrength, "strength of a lanyard or vertical lifeline", (5000.0, Unit::PoundForce), ("29 CFR 1926.502(d)(9)", Secondary)),
         least(
-            K::LineStrength,
+            K::LineStrengthShortFall,
             "strength of a self-retracting line that limits the free fall to 2 ft",
             (3000.0, Unit::PoundForce),
             ("29 CFR 1926.502(d)(12)", Secondary),
@@ -108,8 +108,13 @@ pub const CA_QC: LimitSet = LimitSet {
             .remark("or twice the arrest force, certified by an engineer"),
         factor(K::AnchorFactor, "certified anchor: factor on the arrest force", 2.0, (QC_ANCHOR, Published)),
         most(K::SwingDistance, "sideways swing, distance", (3.0, Unit::Metre), (QC_ANCHOR, Published))
-            .only(Applies::Swing),
-        most(K::SwingAngle, "sideways swing, angle", (22.0, Unit::Degree), (QC_ANCHOR, Published)).only(Applies::Swing),
+            .only(Applies::Swing)
+            .or(K::SwingAngle)
+            .remark("this, or a sideways swing of at most 22 deg"),
+        most(K::SwingAngle, "sideways swing, angle", (22.0, Unit::Degree), (QC_ANCHOR, Published))
+            .only(Applies::Swing)
+            .or(K::SwingDistance)
+            .remark("this, or a sideways swing of at most 3 m"),
         least(
             K::SpanCableDiameter,
             "prescribed horizontal lifeline: steel cable diameter",

@@ -44,6 +44,7 @@ pub const SG_WSH: LimitSet = LimitSet {
             (WSH, Published),
         )
         .only(Applies::FibreSpan)
-        .remark("deflection added to the clearance in full"),
+        .or(K::SpanFactor)
+        .remark("2 for a lifeline of wire; the deflection counts in full in the clearance"),
     ],
 };
