@@ -135,6 +135,7 @@ fn sample(time_s: f64) -> Sample {
         other_elongation_m: 0.0,
         deployed_m: 0.0,
         mode,
+        plane: None,
     }
 }
 
