@@ -315,12 +315,12 @@ fn a_straight_fall_has_no_checks_of_a_swing() {
 }
 
 #[test]
-fn an_obstacle_beside_a_straight_fall_is_open_and_says_why() {
+fn an_obstacle_beside_a_straight_fall_is_not_met_and_says_why() {
     let text = SWING
         .replace("anchor_offset = \"2 m\"\n", "")
         .replace("top = \"0 m\"", "top = \"0 m\"\nfrom = \"3 m\"\nto = \"5 m\"");
     let check = one(&scenario(&text, ""), &[], "clearance.yard");
-    assert_eq!(check.verdict, Verdict::Open);
+    assert_eq!(check.verdict, Verdict::Holds);
     assert!(check.note.unwrap().contains("beside the fall line"));
 }
 

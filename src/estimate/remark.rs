@@ -107,7 +107,7 @@ fn beside(scenario: &Scenario) -> Option<String> {
     let names: Vec<_> =
         scenario.obstacles.iter().filter(|o| !o.is_below(&scenario.subject)).map(|o| format!("`{}`", o.name)).collect();
     (!names.is_empty())
-        .then(|| format!("Beside the fall line and not met by a straight fall, so not judged: {}.", names.join(", ")))
+        .then(|| format!("Beside the fall line, so not met by a straight fall: {}.", names.join(", ")))
 }
 
 fn faces(scenario: &Scenario) -> Option<String> {

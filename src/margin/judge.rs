@@ -153,7 +153,7 @@ pub enum Cause {
     OutOfReach,
     /// The attachment never comes past the face, what hangs below it may.
     BelowAttachment,
-    /// A straight fall is not judged against what lies beside it.
+    /// A straight fall does not meet what lies beside it.
     Beside,
 }
 
@@ -190,7 +190,7 @@ impl Check {
     /// of one verdict are ordered. A check without a margin counts as the smallest, out of reach as the largest.
     #[must_use]
     pub fn relative(&self) -> f64 {
-        if self.cause == Some(Cause::OutOfReach) {
+        if matches!(self.cause, Some(Cause::OutOfReach | Cause::Beside)) {
             return f64::INFINITY;
         }
         let scale = self.limit.map(f64::abs).filter(|l| *l > 0.0).unwrap_or(1.0);
@@ -201,9 +201,10 @@ impl Check {
         self.cause = Some(cause);
         self
     }
-    pub(super) fn out_of_reach(mut self) -> Self {
+    /// Holds without a number, since the body never comes there.
+    pub(super) fn not_met(mut self, cause: Cause) -> Self {
         self.verdict = Verdict::Holds;
-        self.cause = Some(Cause::OutOfReach);
+        self.cause = Some(cause);
         self
     }
     pub(super) fn short(mut self, cause: Cause) -> Self {

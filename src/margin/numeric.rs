@@ -45,8 +45,8 @@ impl Run<'_> {
             let check = judge(CheckKind::Clearance(i), self.numbers.get(id), Some(reserve));
             let beside = || !obstacle.is_below(&self.scenario.subject) && !swings(self.scenario);
             list.push(match check.demand {
-                None if self.tells_reach() => check.out_of_reach(),
-                None if beside() => check.open(Cause::Beside),
+                None if self.tells_reach() => check.not_met(Cause::OutOfReach),
+                None if beside() => check.not_met(Cause::Beside),
                 _ => check,
             });
         }

@@ -47,7 +47,7 @@ impl Run<'_> {
             Verdict::Short => Check { impact: self.impact(), ..check },
             _ if gap_m.is_none() && self.tells_reach() => match kind {
                 CheckKind::FaceStrike(i) if self.legs_may_meet(i) => check.open(Cause::BelowAttachment),
-                _ => check.out_of_reach(),
+                _ => check.not_met(Cause::OutOfReach),
             },
             _ => check,
         }

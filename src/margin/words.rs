@@ -206,7 +206,7 @@ impl Words<'_> {
                  meet it"
                     .to_owned()
             }
-            Cause::Beside => "beside the fall line and not met by a straight fall, so not judged".to_owned(),
+            Cause::Beside => "beside the fall line: a straight fall does not meet it".to_owned(),
             Cause::OnTheLimit => "the value must stay below the limit; it is on it".to_owned(),
         })
     }
