@@ -61,7 +61,13 @@ fn roof(clearance_m: f64, units: UnitSystem) -> Scene {
         ],
         parts,
         string_end: Some("plant-room roof".to_owned()),
-        bars: vec![Bar { name: "plant-room roof".to_owned(), top_m: top, reserve_m: 1.0, verdict: Verdict::Short }],
+        bars: vec![Bar {
+            name: "plant-room roof".to_owned(),
+            top_m: top,
+            reserve_m: 1.0,
+            verdict: Verdict::Short,
+            extent_m: None,
+        }],
         scale: Scale::of(Dimension::Length, units),
     }
 }

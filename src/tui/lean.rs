@@ -57,11 +57,12 @@ const PHASES_PER_FRAME: usize = 4000;
 /// True when working out the arrows takes longer than a frame may: long undamped motions with many phases.
 #[must_use]
 pub fn is_slow(inputs: &[Input], report: &Report) -> bool {
-    let each = if is_coupled(&report.scenario) { COUPLED_PHASE } else { 1 };
+    let each = if report.estimate.plane.is_some() || is_coupled(&report.scenario) { COUPLED_PHASE } else { 1 };
     2 * inputs.len() * report.estimate.trace.phases().len() * each > PHASES_PER_FRAME
 }
 
-/// A phase of two groups with a damper between springs takes about so many times as long as one of a single group.
+/// A phase of two groups with a damper between springs, or one of a swing, takes about so many times as long as one of a
+/// single group.
 const COUPLED_PHASE: usize = 25;
 
 /// Line and other parts both stretch, and a damper makes their stretches move on their own.

@@ -3,9 +3,10 @@ use super::layout::{LEAST_HEIGHT, LEAST_WIDTH, Panes, views};
 use super::model::{Mode, Model, View};
 use super::panes::history::Picture;
 use super::panes::scene::Scene;
+use super::panes::side::Side;
 use super::panes::units::Scale;
 use super::panes::{
-    about, elevation, foot, header, help, history, inputs, log, margins, notes, tabs, timeline, verdict,
+    about, elevation, foot, header, help, history, inputs, log, margins, notes, side_view, tabs, timeline, verdict,
 };
 use super::text::put;
 use crate::quantity::Dimension;
@@ -82,7 +83,10 @@ fn draw_view(model: &Model, frame: &mut Frame, panes: &Panes) {
     match model.view {
         View::Elevation => {
             let scene = Scene::of(report, model.play.time_s, model.units);
-            elevation::draw(frame.buffer_mut(), area, &scene, model.theme);
+            match Side::of(report, &scene, model.play.time_s) {
+                Some(side) => side_view::draw(frame.buffer_mut(), area, &scene, &side, model.theme),
+                None => elevation::draw(frame.buffer_mut(), area, &scene, model.theme),
+            }
         }
         View::History => history::draw(frame, area, &picture(report, model, area.width), model.theme),
         View::Margins if panes.margins.height == 0 => draw_margins_view(model, frame, area),

@@ -52,6 +52,8 @@ pub struct Bar {
     pub reserve_m: f64,
     /// The verdict on its clearance.
     pub verdict: Verdict,
+    /// Horizontal extent, m from the fall line; everywhere where absent.
+    pub extent_m: Option<(f64, f64)>,
 }
 
 /// Everything Elevation draws.
@@ -209,33 +211,50 @@ fn bars(report: &Report) -> Vec<Bar> {
         top_m: obstacle.top.si(),
         reserve_m: obstacle.reserve.map_or(0.0, |reserve| reserve.si()),
         verdict: verdict(&obstacle.id()),
+        extent_m: obstacle.extent.map(|(from, to)| (from.si(), to.si())),
     };
     report.scenario.obstacles.iter().map(bar).collect()
 }
 
-/// The obstacle with the least room, as the margins order them.
+/// The obstacle with the least room, as the margins order them. A swing has none where the smallest gap is not the one
+/// below its lowest point, which is where the string runs.
 fn nearest(report: &Report, bars: &[Bar]) -> Option<usize> {
+    least_room(report, bars).filter(|&index| is_below_lowest(report, index))
+}
+
+fn is_below_lowest(report: &Report, index: usize) -> bool {
+    let (Some(_), Some(levels)) = (&report.estimate.plane, &report.estimate.elevations) else { return true };
+    let Some(obstacle) = report.scenario.obstacles.get(index) else { return false };
+    let clearance = report.estimate.numbers.get(&format!("clearance.{}", obstacle.id()));
+    clearance.is_some_and(|gap| (levels.lowest_point_m() - obstacle.top.si() - gap).abs() < TOO_SHORT_M)
+}
+
+fn least_room(report: &Report, bars: &[Bar]) -> Option<usize> {
     let ids: Vec<String> = report.scenario.obstacles.iter().map(|o| format!("clearance.{}", o.id())).collect();
     let first = report.margins.iter().find_map(|margin| ids.iter().position(|id| *id == margin.id));
     first.filter(|&index| index < bars.len()).or_else(|| (!bars.is_empty()).then_some(0))
 }
 
+/// What lies between taut and the lowest point: stretch and deployed length, or all of a swing's drop in one.
+fn below_taut(report: &Report, marks: &Marks, lowest: Sample) -> Vec<(&'static str, f64)> {
+    let drop = marks.taut_m - marks.lowest_m;
+    if report.estimate.plane.is_some() {
+        return vec![("swing drop", drop)];
+    }
+    let other = if report.estimate.span.is_some() { "more sag" } else { "other parts" };
+    let line = drop - lowest.other_elongation_m - lowest.deployed_m;
+    vec![("line stretch", line), (other, lowest.other_elongation_m), ("deployed", lowest.deployed_m)]
+}
+
 fn parts(report: &Report, marks: &Marks, lowest: Sample, end: Option<&Bar>) -> Vec<Part> {
     let part = |name: &str, length_m: f64| Part { name: name.to_owned(), length_m, verdict: None };
-    let stretch = marks.taut_m - marks.lowest_m;
-    let line = stretch - lowest.other_elongation_m - lowest.deployed_m;
     let body = match report.scenario.subject.kind {
         SubjectKind::Person => "to feet",
         SubjectKind::Load => "to underside",
     };
-    let mut parts = vec![
-        part("free fall", marks.start_m - marks.taut_m),
-        part("line stretch", line),
-        part("other parts", lowest.other_elongation_m),
-        part("deployed", lowest.deployed_m),
-        part(body, marks.body_m),
-        part("allowance", marks.allowance_m),
-    ];
+    let mut parts = vec![part("free fall", marks.start_m - marks.taut_m)];
+    parts.extend(below_taut(report, marks, lowest).into_iter().map(|(name, length_m)| part(name, length_m)));
+    parts.extend([part(body, marks.body_m), part("allowance", marks.allowance_m)]);
     parts.retain(|part| part.length_m.abs() > TOO_SHORT_M);
     if let Some(bar) = end {
         let foot = marks.lowest_m - marks.body_m - marks.allowance_m;
