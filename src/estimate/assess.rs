@@ -169,11 +169,47 @@ pub fn estimate(scenario: &Scenario) -> Result<Estimate, EstimateError> {
     }
 }
 
-fn vertical_estimate(scenario: &Scenario, setup: &Setup) -> Result<Estimate, EstimateError> {
-    let outcome = match &setup.span {
-        Some(span) => span.solve(&setup.fall)?,
-        None => solve(&setup.fall, &Settings::default())?,
+/// The numbers of a run without words, events and drawings: what a study of many runs needs.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Figures {
+    /// Numbers by id.
+    pub numbers: Numbers,
+    /// Whether the model is valid for this run.
+    pub validity: Vec<Validity>,
+}
+
+/// Solves a scenario at its typical values for its numbers alone; they equal those of [`estimate`].
+///
+/// # Errors
+/// See [`EstimateError`].
+pub fn figures(scenario: &Scenario) -> Result<Figures, EstimateError> {
+    let setup = Setup::of(scenario)?;
+    let validity = validity(scenario, &setup);
+    let numbers = match setup.geometry.layout.filter(|_| setup.is_planar()) {
+        Some(layout) => {
+            let outcome = planar::solve(scenario, &setup, &layout)?;
+            let elevations = planar::elevations(scenario, &setup, &layout, &outcome);
+            let strikes = planar::strikes(scenario, &outcome);
+            planar::numbers(scenario, &setup, &outcome, elevations.as_ref(), &strikes)
+        }
+        None => {
+            let outcome = solve_vertical(&setup)?;
+            let elevations = Elevations::of(scenario, &setup, &outcome);
+            collect::numbers(scenario, &setup, &outcome, elevations.as_ref())
+        }
     };
+    Ok(Figures { numbers, validity })
+}
+
+fn solve_vertical(setup: &Setup) -> Result<Outcome, EstimateError> {
+    match &setup.span {
+        Some(span) => span.solve(&setup.fall),
+        None => Ok(solve(&setup.fall, &Settings::default())?),
+    }
+}
+
+fn vertical_estimate(scenario: &Scenario, setup: &Setup) -> Result<Estimate, EstimateError> {
+    let outcome = solve_vertical(setup)?;
     let elevations = Elevations::of(scenario, setup, &outcome);
     Ok(Estimate {
         numbers: collect::numbers(scenario, setup, &outcome, elevations.as_ref()),

@@ -12,7 +12,7 @@ mod setup;
 mod trace;
 mod view;
 
-pub use assess::{Elevations, Envelope, Estimate, EstimateError, Validity, estimate};
+pub use assess::{Elevations, Envelope, Estimate, EstimateError, Figures, Validity, estimate, figures};
 pub use definition::{DEFINITIONS, Definition, definition};
 pub use event::{Event, EventKind};
 pub use number::{Number, Numbers, Value};

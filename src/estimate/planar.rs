@@ -158,7 +158,8 @@ pub fn view(scenario: &Scenario, layout: &Layout, outcome: &PlaneOutcome) -> Pla
     }
 }
 
-fn strikes(scenario: &Scenario, outcome: &PlaneOutcome) -> Vec<StrikeView> {
+/// Every strike, the first one first.
+pub fn strikes(scenario: &Scenario, outcome: &PlaneOutcome) -> Vec<StrikeView> {
     let levels = scenario.obstacles.iter().map(|o| (&o.name, false)).zip(&outcome.levels);
     let faces = scenario.faces.iter().map(|f| (&f.name, true)).zip(&outcome.faces);
     let strike = |((name, is_face), approach): ((&String, bool), &Approach)| {

@@ -106,8 +106,7 @@ fn heavy(scenario: &Scenario) -> Option<String> {
 fn beside(scenario: &Scenario) -> Option<String> {
     let names: Vec<_> =
         scenario.obstacles.iter().filter(|o| !o.is_below(&scenario.subject)).map(|o| format!("`{}`", o.name)).collect();
-    (!names.is_empty())
-        .then(|| format!("Beside the fall line, so not met by a straight fall: {}.", names.join(", ")))
+    (!names.is_empty()).then(|| format!("Beside the fall line, so not met by a straight fall: {}.", names.join(", ")))
 }
 
 fn faces(scenario: &Scenario) -> Option<String> {
