@@ -208,3 +208,12 @@ fn the_ledger_shows_every_number_of_the_run() {
     }
     assert!(seen.contains("closest approach, wall"), "names stand with their numbers");
 }
+
+#[test]
+fn no_clearance_is_shown_above_a_level_beside_the_fall_line() {
+    let plumb = SWING.replace("anchor_offset = \"2 m\"\n", "");
+    let beside = frame(&plumb, 140, 44, "");
+    assert!(beside.contains("down to the lowest point") && !beside.contains("down to canopy"), "{beside}");
+    let below = frame(&plumb.replace("from = \"1 m\"", "from = \"-1 m\""), 140, 44, "");
+    assert!(below.contains("down to canopy"), "{below}");
+}
