@@ -1,7 +1,7 @@
 //! The choices of a new file: made one by one, each gives a file that reads, solves and is judged.
 #![allow(clippy::unwrap_used, clippy::panic, reason = "helpers of tests fail loudly")]
-use underfoot::estimate::{Estimate, estimate};
-use underfoot::margin::margins;
+use underfoot::estimate::{Estimate, Validity, estimate};
+use underfoot::margin::{Verdict, margins};
 use underfoot::scenario::{FIELDS, Scenario, new_file, read};
 
 /// The section that a header opens, made or still a comment: `place.edge` of `# [place.edge]`.
@@ -23,7 +23,7 @@ fn made(keys: &[&str], out: &[&str]) -> String {
     let mut lines: Vec<String> = Vec::new();
     for line in new_file().lines() {
         if let Some(name) = opened(line) {
-            section = name.to_owned();
+            name.clone_into(&mut section);
             let wanted = keys.iter().any(|key| key.rsplit_once('.').is_some_and(|(own, _)| own == name));
             lines.push(if wanted { line.trim_start_matches("# ").to_owned() } else { line.to_owned() });
             continue;
@@ -189,4 +189,22 @@ fn a_limit_over_a_published_set_asks_for_its_reason() {
     let text = made(&["limits.arrest_force"], &[]);
     assert!(read("new.toml", &text).unwrap_err().faults[0].message.contains("without a reason"));
     solved(&text.replacen("why = \"\"", "why = \"the harness's maker says so\"", 1));
+}
+
+#[test]
+fn a_line_stretched_beyond_its_table_is_open_and_not_judged_as_if_the_table_went_on() {
+    let text = made(&["line.curve"], &["line.stiffness", "line.damping_ratio"]);
+    let short = text.replacen(", [\"0.3 m\", \"12 kN\"]", "", 1);
+    assert_ne!(text, short);
+    let scenario = scenario(&short);
+    let run = estimate(&scenario).unwrap();
+    // Undamped: 4 kN on 30 kN/m.
+    assert!((run.numbers.get("line_elongation_peak").unwrap() - 4.0 / 30.0).abs() < 1e-9);
+    let [Validity::LineBeyondTable { elongation_m, last_m }] = run.validity[..] else {
+        panic!("{:?}", run.validity);
+    };
+    assert!((elongation_m - 4.0 / 30.0).abs() < 1e-9 && last_m == 0.1);
+    let forces: Vec<_> = margins(&scenario, &run).unwrap().into_iter().filter(|m| m.id == "arrest_force").collect();
+    assert_eq!(forces[0].verdict, Verdict::Open);
+    assert!(forces[0].note.as_ref().is_some_and(|note| note.contains("0.133 m is beyond the 0.100 m")), "{forces:?}");
 }
