@@ -98,7 +98,7 @@ pub enum SwingError {
     },
     /// The attachment starts farther from the pivot than the line reaches.
     #[error(
-        "the attachment is `{distance_m}` m from the pivot but the line reaches only `{length_m}` m: lengthen the line or move the anchor"
+        "the attachment is `{distance_m:.3}` m from the pivot but the line reaches only `{length_m:.3}` m: lengthen the line or move the anchor"
     )]
     LineTooShort {
         /// Distance from the pivot to the start, m.
