@@ -133,7 +133,9 @@ pub enum GeometryError {
         distance_m: f64,
     },
     /// The line does not reach from the anchor to the edge.
-    #[error("the line of `{length_m:.3}` m is shorter than the distance of `{distance_m:.3}` m from the anchor to the edge")]
+    #[error(
+        "the line of `{length_m:.3}` m is shorter than the distance of `{distance_m:.3}` m from the anchor to the edge"
+    )]
     EdgeOutOfReach {
         /// Line, m.
         length_m: f64,
@@ -161,7 +163,9 @@ pub enum GeometryError {
         path_m: f64,
     },
     /// The line comes taut above the edge without touching it.
-    #[error("the edge at elevation `{edge_m:.3}` m is not touched: the taut line passes above it, there at `{path_m:.3}` m")]
+    #[error(
+        "the edge at elevation `{edge_m:.3}` m is not touched: the taut line passes above it, there at `{path_m:.3}` m"
+    )]
     EdgeNotTouched {
         /// Elevation of the edge, m.
         edge_m: f64,
