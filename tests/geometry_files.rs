@@ -94,13 +94,21 @@ fn an_edge_out_of_the_lines_reach_is_refused() {
 
 #[test]
 fn an_edge_on_the_far_side_of_the_fall_line_is_refused() {
-    refused(&edge("-1 m", "11 m"), &["edge at offset `-1.000` m is not between the anchor at offset `3.000` m"], "edge =");
+    refused(
+        &edge("-1 m", "11 m"),
+        &["edge at offset `-1.000` m is not between the anchor at offset `3.000` m"],
+        "edge =",
+    );
 }
 
 #[test]
 fn an_edge_that_the_taut_line_passes_above_is_refused() {
     // The line of 4 m is taut on the fall line at 12.5 - sqrt(7) = 9.854; at 1 m its way is at 10.736.
-    refused(&edge("1 m", "10.5 m"), &["the edge at elevation `10.500` m is not touched", "there at `10.736` m"], "edge =");
+    refused(
+        &edge("1 m", "10.5 m"),
+        &["the edge at elevation `10.500` m is not touched", "there at `10.736` m"],
+        "edge =",
+    );
 }
 
 #[test]
