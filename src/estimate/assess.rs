@@ -185,18 +185,15 @@ pub struct Figures {
 pub fn figures(scenario: &Scenario) -> Result<Figures, EstimateError> {
     let setup = Setup::of(scenario)?;
     let validity = validity(scenario, &setup);
-    let numbers = match setup.geometry.layout.filter(|_| setup.is_planar()) {
-        Some(layout) => {
-            let outcome = planar::solve(scenario, &setup, &layout)?;
-            let elevations = planar::elevations(scenario, &setup, &layout, &outcome);
-            let strikes = planar::strikes(scenario, &outcome);
-            planar::numbers(scenario, &setup, &outcome, elevations.as_ref(), &strikes)
-        }
-        None => {
-            let outcome = solve_vertical(&setup)?;
-            let elevations = Elevations::of(scenario, &setup, &outcome);
-            collect::numbers(scenario, &setup, &outcome, elevations.as_ref())
-        }
+    let numbers = if let Some(layout) = setup.geometry.layout.filter(|_| setup.is_planar()) {
+        let outcome = planar::solve(scenario, &setup, &layout)?;
+        let elevations = planar::elevations(scenario, &setup, &layout, &outcome);
+        let strikes = planar::strikes(scenario, &outcome);
+        planar::numbers(scenario, &setup, &outcome, elevations.as_ref(), &strikes)
+    } else {
+        let outcome = solve_vertical(&setup)?;
+        let elevations = Elevations::of(scenario, &setup, &outcome);
+        collect::numbers(scenario, &setup, &outcome, elevations.as_ref())
     };
     Ok(Figures { numbers, validity })
 }
