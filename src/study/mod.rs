@@ -1,4 +1,13 @@
 //! Many runs of one scenario: what its bands do to the checks, and which input matters.
+mod band;
 mod evaluate;
+mod joe_kuo;
+mod sample;
+mod sobol;
+mod worst;
 
+pub use band::{NORMAL_WIDTH, Quantile};
 pub use evaluate::{Evaluator, Failure, Run, StudyError};
+pub use sample::Sampler;
+pub use sobol::{MOST_DIMENSIONS, MOST_POINTS, Sobol};
+pub use worst::{MOST_CORNER_BANDS, Place, Stand, Worst, WorstFound, worst_found};
