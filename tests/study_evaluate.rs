@@ -1,4 +1,5 @@
 //! One run of a study gives what a run of the changed file gives.
+#![allow(clippy::unwrap_used, clippy::panic, reason = "a test stops at what it cannot have")]
 use std::path::Path;
 use underfoot::estimate::estimate;
 use underfoot::margin::{Verdict, margins};

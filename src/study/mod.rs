@@ -4,10 +4,12 @@ mod evaluate;
 mod joe_kuo;
 mod sample;
 mod sobol;
+mod spread;
 mod worst;
 
 pub use band::{NORMAL_WIDTH, Quantile};
 pub use evaluate::{Evaluator, Failure, Run, StudyError};
 pub use sample::Sampler;
 pub use sobol::{MOST_DIMENSIONS, MOST_POINTS, Sobol};
+pub use spread::{BARS, BATCH, CheckSpread, KEY_NUMBERS, NumberSpread, QUANTILE_SHARES, Share, Spread, spread};
 pub use worst::{MOST_CORNER_BANDS, Place, Stand, Worst, WorstFound, worst_found};

@@ -81,7 +81,7 @@ pub struct WorstFound {
 
 /// Searches the box of all wide bands for the smallest margin of each check.
 ///
-/// Tries every corner where at most [`MOST_CORNER_BANDS`] inputs are wide, and points spread over the inside; then
+/// Tries every corner where at most [`MOST_CORNER_BANDS`] inputs are wide, the typical values and points spread over the inside; then
 /// refines each check from the worst corner and the worst inner point by a coordinate search with halving steps. Exact
 /// where the margin rises or falls with each input throughout; else the worst found, no more.
 ///
@@ -171,8 +171,14 @@ impl Search<'_> {
         let sobol = Sobol::scrambled(bands, INSIDE_SEED);
         let inside = INSIDE_RUNS[usize::from(!all_corners)];
         let mut points: Vec<Vec<f64>> = (0..corners).map(corner).collect();
+        points.push(self.wide.iter().map(|&input| self.typical_share(input)).collect());
         points.extend((0..inside).map(|index| sobol.point(index)));
         Starts { points, corners }
+    }
+
+    fn typical_share(&self, input: usize) -> f64 {
+        let band = self.evaluator.inputs()[input].measure.band;
+        (band.typical - band.low) / (band.high - band.low)
     }
 
     fn value(&self, d: usize, share: f64) -> f64 {
@@ -242,9 +248,8 @@ impl Search<'_> {
     fn stands(&self, found: &Found, tally: &mut Tally) -> Result<Vec<Stand>, StudyError> {
         let mut stands = Vec::with_capacity(self.wide.len());
         for (d, &input) in self.wide.iter().enumerate() {
-            let band = self.evaluator.inputs()[input].measure.band;
             let mut point = found.point.clone();
-            point[d] = (band.typical - band.low) / (band.high - band.low);
+            point[d] = self.typical_share(input);
             let other = tally.judge(&self.run(&point)?, &point);
             let same = other.is_some_and(|other| other.check == found.check);
             let share = found.point[d];
