@@ -86,7 +86,7 @@ fn a_line_taut_upwards_at_the_start_still_falls_past_its_anchor() {
 fn a_line_shorter_than_the_distance_is_refused_with_both_lengths() {
     let refused = hanging(&from(6.0, at(3.0, 10.0)), 4.9).unwrap_err();
     assert_eq!(refused, GeometryError::LineTooShort { length_m: 4.9, distance_m: 5.0 });
-    assert!(refused.to_string().contains("`4.9` m") && refused.to_string().contains("`5` m"));
+    assert!(refused.to_string().contains("`4.900` m") && refused.to_string().contains("`5.000` m"));
 }
 
 // Anchor 4 m behind the edge, edge 0.6 m before the fall line: 6 m - 4 m = 2 m past the edge.

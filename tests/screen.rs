@@ -383,6 +383,8 @@ fn views_and_panes_are_reached_by_key() {
     bench.keys("v");
     assert_eq!(bench.model.view, View::Notes);
     bench.keys("v");
+    assert_eq!(bench.model.view, View::Ledger);
+    bench.keys("v");
     assert_eq!(bench.model.view, View::Elevation);
     bench.keys("w");
     assert_eq!(bench.model.window, Window::Whole);

@@ -163,6 +163,7 @@ fn picture() -> Picture {
         now_s: 0.9,
         length: Scale::of(Dimension::Length, UnitSystem::Metric),
         force: Scale::of(Dimension::Force, UnitSystem::Metric),
+        swing: None,
     }
 }
 

@@ -184,7 +184,9 @@ fn every_shipped_scenario_gives_complete_outputs() {
         let value: Value = serde_json::from_str(&json(&report, Layout::OneLine)).unwrap();
         assert_eq!(value["verdict"], report.verdict.word());
         assert_eq!(value["margins"][0]["verdict"], report.verdict.word(), "the governing one is not the worst");
-        assert!(underfoot::sheet::csv(&report).unwrap().lines().count() < 2500);
+        // 2000 rows, the head, and each phase with both its borders; a knot of a table is a border too.
+        let borders = 2 * report.estimate.trace.phases().len();
+        assert!(underfoot::sheet::csv(&report).unwrap().lines().count() <= 2001 + borders);
         count += 1;
     }
     assert!(count >= 8, "{count}");

@@ -65,6 +65,16 @@ impl Motion {
         }
     }
 
+    /// The state at a time, clamped to the motion; at a change of mode, just before it.
+    #[must_use]
+    pub fn just_before(&self, time_s: f64) -> Instant {
+        let time_s = time_s.clamp(0.0, self.end_s());
+        match self.stretches.partition_point(|s| s.start_s < time_s) {
+            0 => self.falling(time_s),
+            n => Self::within(&self.stretches[n - 1], time_s),
+        }
+    }
+
     /// The state at a time within one stretch.
     #[must_use]
     pub fn within(stretch: &Stretch, time_s: f64) -> Instant {

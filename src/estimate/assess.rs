@@ -4,7 +4,7 @@ use super::{Event, Numbers, PlaneView, SpanView, Trace, WorkStep, collect, log, 
 use crate::arrest::{ArrestError, Outcome, Settings, solve};
 use crate::physics::Layout;
 use crate::quantity::{Dimension, UnitSystem, format_si};
-use crate::scenario::Scenario;
+use crate::scenario::{Scenario, StretchLaw};
 
 /// Everything that one run says.
 #[derive(Clone, Debug)]
@@ -43,6 +43,13 @@ pub enum Validity {
         /// Rating of the absorber.
         rated_m: f64,
     },
+    /// Line stretched beyond the last row of its force-elongation table, both m.
+    LineBeyondTable {
+        /// Largest elongation of this run.
+        elongation_m: f64,
+        /// Elongation of the last row.
+        last_m: f64,
+    },
 }
 
 impl Validity {
@@ -55,6 +62,11 @@ impl Validity {
                 "free fall of {} is beyond the {} that the absorber is rated for",
                 length(*free_fall_m),
                 length(*rated_m)
+            ),
+            Self::LineBeyondTable { elongation_m, last_m } => format!(
+                "line elongation of {} is beyond the {} where the line's table ends",
+                length(*elongation_m),
+                length(*last_m)
             ),
         }
     }
@@ -184,7 +196,6 @@ pub struct Figures {
 /// See [`EstimateError`].
 pub fn figures(scenario: &Scenario) -> Result<Figures, EstimateError> {
     let setup = Setup::of(scenario)?;
-    let validity = validity(scenario, &setup);
     let numbers = if let Some(layout) = setup.geometry.layout.filter(|_| setup.is_planar()) {
         let outcome = planar::solve(scenario, &setup, &layout)?;
         let elevations = planar::elevations(scenario, &setup, &layout, &outcome);
@@ -195,6 +206,7 @@ pub fn figures(scenario: &Scenario) -> Result<Figures, EstimateError> {
         let elevations = Elevations::of(scenario, &setup, &outcome);
         collect::numbers(scenario, &setup, &outcome, elevations.as_ref())
     };
+    let validity = validity(scenario, &setup, &numbers);
     Ok(Figures { numbers, validity })
 }
 
@@ -208,13 +220,14 @@ fn solve_vertical(setup: &Setup) -> Result<Outcome, EstimateError> {
 fn vertical_estimate(scenario: &Scenario, setup: &Setup) -> Result<Estimate, EstimateError> {
     let outcome = solve_vertical(setup)?;
     let elevations = Elevations::of(scenario, setup, &outcome);
+    let numbers = collect::numbers(scenario, setup, &outcome, elevations.as_ref());
     Ok(Estimate {
-        numbers: collect::numbers(scenario, setup, &outcome, elevations.as_ref()),
         assumptions: remark::assumptions(scenario, setup),
         warnings: remark::warnings(scenario, setup, Some(&outcome), outcome.stroke_used_up),
         events: log::events(setup, &outcome),
         envelope: collect::envelope(&outcome),
-        validity: validity(scenario, setup),
+        validity: validity(scenario, setup, &numbers),
+        numbers,
         elevations,
         working: working(setup),
         plane: None,
@@ -227,13 +240,14 @@ fn planar_estimate(scenario: &Scenario, setup: &Setup, layout: &Layout) -> Resul
     let outcome = planar::solve(scenario, setup, layout)?;
     let elevations = planar::elevations(scenario, setup, layout, &outcome);
     let view = planar::view(scenario, layout, &outcome);
+    let numbers = planar::numbers(scenario, setup, &outcome, elevations.as_ref(), &view.strikes);
     Ok(Estimate {
-        numbers: planar::numbers(scenario, setup, &outcome, elevations.as_ref(), &view.strikes),
         assumptions: remark::assumptions(scenario, setup),
         warnings: remark::warnings(scenario, setup, None, outcome.stroke_used_up),
         events: planar::events(setup, &outcome, &view.strikes),
         envelope: None,
-        validity: validity(scenario, setup),
+        validity: validity(scenario, setup, &numbers),
+        numbers,
         elevations,
         working: working(setup),
         plane: Some(view),
@@ -252,12 +266,21 @@ fn working(setup: &Setup) -> Vec<WorkStep> {
     steps
 }
 
-fn validity(scenario: &Scenario, setup: &Setup) -> Vec<Validity> {
+fn validity(scenario: &Scenario, setup: &Setup, numbers: &Numbers) -> Vec<Validity> {
+    // Rounding of decimal inputs is no more of a fall or a stretch.
+    let beyond = |value: f64, most: f64| value > most * (1.0 + 1e-9);
     let rated = scenario.absorber.as_ref().and_then(|a| a.rated_free_fall).map(|r| r.si());
     let free_fall_m = setup.fall.free_fall_m;
-    rated
-        .filter(|&rated_m| free_fall_m > rated_m * (1.0 + 1e-12))
-        .map(|rated_m| Validity::FreeFallBeyondRating { free_fall_m, rated_m })
-        .into_iter()
-        .collect()
+    let rating = rated
+        .filter(|&rated_m| beyond(free_fall_m, rated_m))
+        .map(|rated_m| Validity::FreeFallBeyondRating { free_fall_m, rated_m });
+    let last = match &scenario.line.stretch {
+        StretchLaw::Curve(rows) => rows.last().map(|row| row.0),
+        _ => None,
+    };
+    let table = last
+        .zip(numbers.get("line_elongation_peak"))
+        .filter(|&(last_m, elongation_m)| beyond(elongation_m, last_m))
+        .map(|(last_m, elongation_m)| Validity::LineBeyondTable { elongation_m, last_m });
+    rating.into_iter().chain(table).collect()
 }

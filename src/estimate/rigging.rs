@@ -1,7 +1,7 @@
 //! The horizontal lifeline: its curve as a part of the path, and what it feels at the peak.
 use super::{EndLoadView, EstimateError, SpanView};
 use crate::arrest::{Ended, Fall, Outcome, Settings, solve};
-use crate::physics::{Course, Elastic, InlineAbsorber, SpanCurve, SpanError, Tightness, knots};
+use crate::physics::{Elastic, Geometry, InlineAbsorber, SpanCurve, SpanError, Tightness, knots};
 use crate::quantity::{Dimension, UnitSystem, format_si};
 use crate::scenario::{Span, SpanTension};
 
@@ -33,8 +33,9 @@ pub struct SpanPeak {
 impl Rigging {
     /// # Errors
     /// When the span contradicts itself or does not go with the rest.
-    pub fn new(span: &Span, fall: &Fall, course: Course) -> Result<Self, EstimateError> {
-        if course == Course::Planar {
+    pub fn new(span: &Span, fall: &Fall, geometry: &Geometry) -> Result<Self, EstimateError> {
+        // Also where the line runs over an edge on the fall line: the fall is straight, the pull on the span is not.
+        if geometry.layout.is_some_and(|layout| layout.anchor.offset_m != 0.0 || layout.pivot.offset_m != 0.0) {
             return Err(refused(
                 "a horizontal lifeline with its line beside the fall line is not solved",
                 "leave out `place.anchor_offset` and `place.edge`, or judge the lifeline on its own",

@@ -39,7 +39,7 @@ impl Setup {
             path,
         };
         let span = match &scenario.anchor.kind {
-            AnchorKind::Span(span) => Some(Rigging::new(span, &fall, geometry.course())?),
+            AnchorKind::Span(span) => Some(Rigging::new(span, &fall, &geometry)?),
             AnchorKind::Fixed | AnchorKind::Sprung(_) => None,
         };
         fall.free_fall_m += span.as_ref().map_or(0.0, |s| s.curve.slack_m());

@@ -124,8 +124,15 @@ impl Trace {
             to_s: stretch.start_s + stretch.length_s,
             mode: Mode::of(Some(stretch.mode)),
         });
-        let phases = falling.into_iter().chain(rest).collect();
-        Self { source: Source::Vertical(Arc::new(motion)), phases }
+        let mut phases: Vec<Phase> = Vec::new();
+        for phase in falling.into_iter().chain(rest) {
+            // A knot of a table ends a stretch of the solution, not what the line is doing.
+            match phases.last_mut().filter(|last| last.mode == phase.mode) {
+                Some(last) => last.to_s = phase.to_s,
+                None => phases.push(phase),
+            }
+        }
+        Self { source: Source::Vertical(Arc::new(motion)), phases: phases.into() }
     }
 
     pub(super) fn planar(trajectory: Trajectory, taut_elevation_m: f64, happenings: &[(f64, Happening)]) -> Self {
@@ -190,11 +197,10 @@ impl Trace {
                 return Sample { time_s, mode: phase.mode, ..self.at(inside) };
             }
         };
-        let offset = self.phases.len() - motion.stretches().len();
-        match index.checked_sub(offset).map(|n| &motion.stretches()[n]) {
-            Some(stretch) => Motion::within(stretch, time_s).into(),
-            None => motion.falling(time_s).into(),
+        if phase.mode == Mode::Falling {
+            return motion.falling(time_s).into();
         }
+        if time_s < phase.to_s { motion.at(time_s).into() } else { motion.just_before(time_s).into() }
     }
 }
 

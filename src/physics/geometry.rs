@@ -115,7 +115,7 @@ impl Geometry {
 #[derive(Clone, Copy, Debug, PartialEq, thiserror::Error)]
 pub enum GeometryError {
     /// An input is out of range.
-    #[error("{what} is `{value_m}` m")]
+    #[error("{what} is `{value_m:.3}` m")]
     Input {
         /// Which input.
         what: &'static str,
@@ -124,7 +124,7 @@ pub enum GeometryError {
     },
     /// The line does not reach from the anchor to the attachment.
     #[error(
-        "the line of `{length_m}` m is shorter than the distance of `{distance_m}` m from the anchor to the attachment"
+        "the line of `{length_m:.3}` m is shorter than the distance of `{distance_m:.3}` m from the anchor to the attachment"
     )]
     LineTooShort {
         /// Line, m.
@@ -133,7 +133,9 @@ pub enum GeometryError {
         distance_m: f64,
     },
     /// The line does not reach from the anchor to the edge.
-    #[error("the line of `{length_m}` m is shorter than the distance of `{distance_m}` m from the anchor to the edge")]
+    #[error(
+        "the line of `{length_m:.3}` m is shorter than the distance of `{distance_m:.3}` m from the anchor to the edge"
+    )]
     EdgeOutOfReach {
         /// Line, m.
         length_m: f64,
@@ -142,7 +144,7 @@ pub enum GeometryError {
     },
     /// The edge is not between the anchor and the fall line.
     #[error(
-        "the edge at offset `{edge_m}` m is not between the anchor at offset `{anchor_m}` m and the fall line at 0"
+        "the edge at offset `{edge_m:.3}` m is not between the anchor at offset `{anchor_m:.3}` m and the fall line at 0"
     )]
     EdgeNotBetween {
         /// Offset of the edge, m.
@@ -152,7 +154,7 @@ pub enum GeometryError {
     },
     /// The edge is above the straight line from the anchor to the attachment at the start.
     #[error(
-        "the edge at elevation `{edge_m}` m is above the straight way from the anchor to the attachment, there at `{path_m}` m"
+        "the edge at elevation `{edge_m:.3}` m is above the straight way from the anchor to the attachment, there at `{path_m:.3}` m"
     )]
     EdgeAbovePath {
         /// Elevation of the edge, m.
@@ -161,7 +163,9 @@ pub enum GeometryError {
         path_m: f64,
     },
     /// The line comes taut above the edge without touching it.
-    #[error("the edge at elevation `{edge_m}` m is not touched: the taut line passes above it, there at `{path_m}` m")]
+    #[error(
+        "the edge at elevation `{edge_m:.3}` m is not touched: the taut line passes above it, there at `{path_m:.3}` m"
+    )]
     EdgeNotTouched {
         /// Elevation of the edge, m.
         edge_m: f64,

@@ -87,7 +87,7 @@ pub enum SpanError {
         value: f64,
     },
     /// The load does not hang between the supports.
-    #[error("the load at `{at_m}` m from the left support is not inside the span of `{length_m}` m")]
+    #[error("the load at `{at_m:.3}` m from the left support is not inside the span of `{length_m:.3}` m")]
     LoadOutside {
         /// Place of the load, m.
         at_m: f64,
@@ -95,7 +95,7 @@ pub enum SpanError {
         length_m: f64,
     },
     /// A sag no lifeline has.
-    #[error("the unloaded sag of `{sag_m}` m is larger than the span of `{length_m}` m")]
+    #[error("the unloaded sag of `{sag_m:.3}` m is larger than the span of `{length_m:.3}` m")]
     SagTooLarge {
         /// Sag, m.
         sag_m: f64,

@@ -91,12 +91,12 @@ pub const FIELDS: &[Field] = &[
         "anchor offset",
         "horizontal distance of the anchor from the fall line, right positive",
         OFFSET,
-        "\"0 m\"",
+        "\"0.6 m\"",
     )
     .needed(Default("0 m")),
-    quantity("place.edge.offset", "edge offset", "offset of an edge that the line runs over", OFFSET, "\"1 m\"")
+    quantity("place.edge.offset", "edge offset", "offset of an edge that the line runs over", OFFSET, "\"0.3 m\"")
         .needed(InSection),
-    quantity("place.edge.elevation", "edge elevation", "elevation of that edge", ELEVATION, "\"10 m\"")
+    quantity("place.edge.elevation", "edge elevation", "elevation of that edge", ELEVATION, "\"11.3 m\"")
         .needed(InSection),
     quantity(
         "place.edge.strength_factor",
@@ -167,7 +167,7 @@ pub const FIELDS: &[Field] = &[
         "force-elongation table",
         "pairs of elongation and force from zero, both rising; instead of stiffness",
         [Length, Force],
-        "[[\"0 m\", \"0 kN\"], [\"0.1 m\", \"3 kN\"]]",
+        "[[\"0 m\", \"0 kN\"], [\"0.1 m\", \"3 kN\"], [\"0.3 m\", \"12 kN\"]]",
     )
     .needed(Sometimes),
     quantity("line.damping", "line damping", "viscous damping of the line", VISCOUS, "\"400 N s/m\""),

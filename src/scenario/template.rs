@@ -90,6 +90,7 @@ fn key_line(field: &Field, section: &str) -> String {
     let mark = if shown { "" } else { "# " };
     let note = match (field.path, field.need) {
         ("anchor.kind", _) => "; fixed, sprung or span".to_owned(),
+        ("place.edge.offset", _) => "; between place.anchor_offset and 0".to_owned(),
         ("fall.free_fall", _) => "; instead of place.anchor".to_owned(),
         ("line.modulus", _) => "; instead of stiffness".to_owned(),
         (_, Need::Default(default)) if default != "none" => format!("; {default} if absent"),

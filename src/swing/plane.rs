@@ -98,7 +98,7 @@ pub enum SwingError {
     },
     /// The attachment starts farther from the pivot than the line reaches.
     #[error(
-        "the attachment is `{distance_m}` m from the pivot but the line reaches only `{length_m}` m: lengthen the line or move the anchor"
+        "the attachment is `{distance_m:.3}` m from the pivot but the line reaches only `{length_m:.3}` m: lengthen the line or move the anchor"
     )]
     LineTooShort {
         /// Distance from the pivot to the start, m.
@@ -143,12 +143,14 @@ impl Plane {
 
     /// Straight fall until the line is taut, m: `z0 - z_taut` with `z_taut = -sqrt(L^2 - d^2)` below the pivot.
     ///
+    /// Above an edge the line does not bend over it yet: there only the offset must be within the free length.
+    ///
     /// # Errors
     /// [`SwingError::LineTooShort`] when the start is out of reach.
     pub fn free_fall_m(&self) -> Result<f64, SwingError> {
         let [d, z] = self.start_from_pivot();
         let length_m = self.free_length_m;
-        let distance_m = d.hypot(z);
+        let distance_m = if z > 0.0 { d.abs() } else { d.hypot(z) };
         if distance_m > length_m + TAUT_WITHIN_M {
             return Err(SwingError::LineTooShort { distance_m, length_m });
         }

@@ -1,5 +1,6 @@
 //! The table of commands: dispatch, key line and help screen all read it.
-use crossterm::event::{KeyCode, KeyEvent, KeyModifiers};
+use super::key::Key;
+use crossterm::event::{KeyCode, KeyEvent};
 
 /// What the user can ask for.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -46,6 +47,8 @@ pub enum Command {
     Margins,
     /// The view Notes.
     Notes,
+    /// The view Ledger.
+    Ledger,
     /// The next view.
     NextView,
     /// Play or pause the fall.
@@ -68,65 +71,14 @@ pub enum Command {
     ToEnd,
     /// The stretch of time shown.
     Window,
+    /// The other curves of History.
+    Curves,
     /// Help.
     Help,
     /// Leave.
     Quit,
     /// Leave at once, as after an interrupt.
     Interrupt,
-}
-
-/// A key with its modifiers; shift is written out only where the key itself does not change with it.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
-pub struct Key {
-    code: KeyCode,
-    modifiers: KeyModifiers,
-}
-
-impl Key {
-    const fn plain(code: KeyCode) -> Self {
-        Self { code, modifiers: KeyModifiers::NONE }
-    }
-
-    const fn letter(letter: char) -> Self {
-        Self::plain(KeyCode::Char(letter))
-    }
-
-    const fn shift(code: KeyCode) -> Self {
-        Self { code, modifiers: KeyModifiers::SHIFT }
-    }
-
-    const fn ctrl(letter: char) -> Self {
-        Self { code: KeyCode::Char(letter), modifiers: KeyModifiers::CONTROL }
-    }
-
-    /// The key of an event, in the form the table uses.
-    #[must_use]
-    pub fn of(event: KeyEvent) -> Self {
-        let relevant = KeyModifiers::SHIFT | KeyModifiers::CONTROL | KeyModifiers::ALT;
-        let mut modifiers = event.modifiers & relevant;
-        if matches!(event.code, KeyCode::Char(_) | KeyCode::BackTab) {
-            modifiers -= KeyModifiers::SHIFT;
-        }
-        Self { code: event.code, modifiers }
-    }
-
-    /// The name on the key line and in help: `shift-right`, `ctrl-s`, `space`.
-    #[must_use]
-    pub fn name(self) -> String {
-        let code = match self.code {
-            KeyCode::Char(' ') => "space".to_owned(),
-            KeyCode::Char(letter) => letter.to_string(),
-            KeyCode::BackTab => "shift-tab".to_owned(),
-            KeyCode::PageUp => "page-up".to_owned(),
-            KeyCode::PageDown => "page-down".to_owned(),
-            KeyCode::F(number) => format!("F{number}"),
-            other => format!("{other:?}").to_lowercase(),
-        };
-        let ctrl = if self.modifiers.contains(KeyModifiers::CONTROL) { "ctrl-" } else { "" };
-        let shift = if self.modifiers.contains(KeyModifiers::SHIFT) { "shift-" } else { "" };
-        format!("{ctrl}{shift}{code}")
-    }
 }
 
 /// Headings of the help screen.
@@ -287,6 +239,14 @@ pub const COMMANDS: &[Entry] = &[
         "Notes: warnings, limits, assumptions and cautions; page-up and page-down scroll",
         Group::View,
     ),
+    entry(
+        Command::Ledger,
+        "ledger",
+        &[Key::letter('5')],
+        "",
+        "Ledger: the energy account, every number with its definition, and the working; page-up and page-down scroll",
+        Group::View,
+    ),
     entry(Command::NextView, "next-view", &[Key::letter('v')], "view", "the next view", Group::View),
     entry(
         Command::Window,
@@ -294,6 +254,14 @@ pub const COMMANDS: &[Entry] = &[
         &[Key::letter('w')],
         "",
         "History shows the first catch or the whole motion",
+        Group::View,
+    ),
+    entry(
+        Command::Curves,
+        "curves",
+        &[Key::letter('c')],
+        "",
+        "History of a swing shows travel and force, or angle and speed, where there is no room for all",
         Group::View,
     ),
     entry(Command::Units, "units", &[Key::letter('m')], "units", "metric or US units", Group::View),
@@ -346,6 +314,7 @@ pub fn key_name(command: Command) -> String {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crossterm::event::KeyModifiers;
     use std::collections::HashSet;
 
     #[test]

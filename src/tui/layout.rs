@@ -108,7 +108,7 @@ pub const fn has_margins_below(size: Size) -> bool {
 /// Views that have a tab at this size.
 #[must_use]
 pub fn views(size: Size) -> &'static [View] {
-    if has_margins_below(size) { &[View::Elevation, View::History, View::Notes] } else { &View::ALL }
+    if has_margins_below(size) { &[View::Elevation, View::History, View::Notes, View::Ledger] } else { &View::ALL }
 }
 
 /// Rows that a text takes when wrapped.

@@ -1,6 +1,7 @@
 //! The state of the screen.
 use super::choice::{Entry, entries};
 use super::lean::{Lean, is_slow, leans};
+pub use super::play::{Curves, Play, Scrubbing, Window};
 use super::theme::Theme;
 use super::worker::Job;
 use crate::quantity::UnitSystem;
@@ -21,11 +22,13 @@ pub enum View {
     Margins,
     /// What must be read beside the numbers.
     Notes,
+    /// The energy account and every number with its definition.
+    Ledger,
 }
 
 impl View {
     /// All views in the order of the tabs.
-    pub const ALL: [Self; 4] = [Self::Elevation, Self::History, Self::Margins, Self::Notes];
+    pub const ALL: [Self; 5] = [Self::Elevation, Self::History, Self::Margins, Self::Notes, Self::Ledger];
 
     /// The name on the tab.
     #[must_use]
@@ -35,6 +38,7 @@ impl View {
             Self::History => "History",
             Self::Margins => "Margins",
             Self::Notes => "Notes",
+            Self::Ledger => "Ledger",
         }
     }
 }
@@ -92,57 +96,6 @@ pub struct Notice {
     pub words: String,
     /// Whether something went wrong.
     pub is_fault: bool,
-}
-
-/// A time axis that the mouse holds.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Scrubbing {
-    /// The play bar.
-    Bar,
-    /// The plots of History.
-    Plot,
-}
-
-/// The stretch of time that History shows.
-#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
-pub enum Window {
-    /// From the start to a while after the lowest point.
-    #[default]
-    FirstCatch,
-    /// The whole motion.
-    Whole,
-}
-
-/// The play head.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Play {
-    /// Where it is, s from the start of the fall.
-    pub time_s: f64,
-    /// Whether it runs.
-    pub running: bool,
-    /// Index into [`Play::SPEEDS`].
-    pub speed: usize,
-}
-
-impl Play {
-    /// Seconds of the fall for each second of watching, with their names.
-    pub const SPEEDS: [(f64, &'static str); 9] = [
-        (0.01, "1/100"),
-        (0.02, "1/50"),
-        (0.05, "1/20"),
-        (0.1, "1/10"),
-        (0.2, "1/5"),
-        (0.5, "1/2"),
-        (1.0, "1/1"),
-        (2.0, "2/1"),
-        (5.0, "5/1"),
-    ];
-
-    /// Rate and name of the present speed.
-    #[must_use]
-    pub fn rate(&self) -> (f64, &'static str) {
-        Self::SPEEDS[self.speed.min(Self::SPEEDS.len() - 1)]
-    }
 }
 
 /// The answer to the present inputs.
@@ -210,10 +163,14 @@ pub struct Model {
     pub view: View,
     /// First row shown of the notes.
     pub notes_row: usize,
+    /// First row shown of the ledger.
+    pub ledger_row: usize,
     /// Where the mouse button went down on a time axis and still is.
     pub scrubbing: Option<Scrubbing>,
     /// Stretch of time in History.
     pub window: Window,
+    /// Curves in History.
+    pub curves: Curves,
     /// Play head.
     pub play: Play,
     /// What keys mean.
@@ -249,8 +206,10 @@ impl Model {
             check: 0,
             view: View::default(),
             notes_row: 0,
+            ledger_row: 0,
             scrubbing: None,
             window: Window::default(),
+            curves: Curves::default(),
             play: Play { time_s: 0.0, running: false, speed: 3 },
             mode: Mode::default(),
             notice: None,

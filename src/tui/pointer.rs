@@ -5,7 +5,7 @@ use super::layout::{Panes, views};
 use super::message::{Effect, Message};
 use super::model::{Mode, Model, Pane, Scrubbing, View};
 use super::panes::{history, inputs, log, margins, tabs};
-use super::update::{scroll_notes, show_margins, update, walk};
+use super::update::{is_text, scroll_text, show_margins, update, walk};
 use crossterm::event::{MouseButton, MouseEvent, MouseEventKind};
 use ratatui::layout::{Position, Rect};
 
@@ -97,8 +97,8 @@ fn wheel(model: &mut Model, panes: &Panes, at: Position, up: bool) -> Vec<Effect
     } else if margins_area(model, panes).is_some_and(|area| area.contains(at)) {
         show_margins(model);
         walk(model, row);
-    } else if model.view == View::Notes && panes.view.contains(at) {
-        scroll_notes(model, if up { Command::PageUp } else { Command::PageDown }, 1);
+    } else if is_text(model.view) && panes.view.contains(at) {
+        scroll_text(model, if up { Command::PageUp } else { Command::PageDown }, 1);
     } else if panes.view.contains(at) || panes.timeline.contains(at) {
         return update(model, Message::Command(if up { Command::StepBack } else { Command::StepOn }));
     }

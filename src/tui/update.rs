@@ -4,7 +4,8 @@ use super::edit::Nudge;
 use super::layout::{Panes, has_margins_below, views};
 use super::message::{Effect, Message};
 use super::model::{Exit, Mode, Model, Pane, Play, View, Window};
-use super::panes::notes;
+use super::panes::{ledger, notes};
+use super::play::Curves;
 use super::pointer;
 use crate::quantity::UnitSystem;
 use crate::scenario::Document;
@@ -124,13 +125,14 @@ fn run(model: &mut Model, command: Command) -> Vec<Effect> {
         Command::Restore => model.restore(),
         Command::Undo => model.undo(),
         Command::Redo => model.redo(),
-        Command::PageUp | Command::PageDown if model.view == View::Notes => scroll_notes(model, command, 10),
+        Command::PageUp | Command::PageDown if is_text(model.view) => scroll_text(model, command, 10),
         Command::Up | Command::Down | Command::PageUp | Command::PageDown => walk(model, command),
         Command::NextPane | Command::PreviousPane => other_pane(model),
-        Command::Units | Command::Window => switch(model, command),
+        Command::Units | Command::Window | Command::Curves => switch(model, command),
         Command::Elevation => model.view = View::Elevation,
         Command::History => model.view = View::History,
         Command::Notes => model.view = View::Notes,
+        Command::Ledger => model.view = View::Ledger,
         Command::Margins => show_margins(model),
         Command::NextView => next_view(model),
         _ => play(model, command),
@@ -148,16 +150,25 @@ fn side_key(model: &mut Model, command: Command) {
 }
 
 fn switch(model: &mut Model, command: Command) {
-    if command == Command::Units {
-        model.units = match model.units {
-            UnitSystem::Metric => UnitSystem::Us,
-            UnitSystem::Us => UnitSystem::Metric,
-        };
-    } else {
-        model.window = match model.window {
-            Window::FirstCatch => Window::Whole,
-            Window::Whole => Window::FirstCatch,
-        };
+    match command {
+        Command::Units => {
+            model.units = match model.units {
+                UnitSystem::Metric => UnitSystem::Us,
+                UnitSystem::Us => UnitSystem::Metric,
+            };
+        }
+        Command::Curves => {
+            model.curves = match model.curves {
+                Curves::TravelForce => Curves::AngleSpeed,
+                Curves::AngleSpeed => Curves::TravelForce,
+            };
+        }
+        _ => {
+            model.window = match model.window {
+                Window::FirstCatch => Window::Whole,
+                Window::Whole => Window::FirstCatch,
+            };
+        }
     }
 }
 
@@ -177,14 +188,19 @@ pub(super) fn walk(model: &mut Model, command: Command) {
     *chosen = moved.min(count.saturating_sub(1));
 }
 
-/// Moves the notes by some rows, no further than their end.
-pub(super) fn scroll_notes(model: &mut Model, command: Command, rows: usize) {
-    let most = Panes::of(model.size, model).map_or(0, |panes| notes::last_first(model, panes.view));
-    let moved = match command {
-        Command::PageUp => model.notes_row.saturating_sub(rows),
-        _ => model.notes_row + rows,
-    };
-    model.notes_row = moved.min(most);
+/// Whether a view is a text that scrolls.
+pub(super) const fn is_text(view: View) -> bool {
+    matches!(view, View::Notes | View::Ledger)
+}
+
+/// Moves the text on show by some rows, no further than its end.
+pub(super) fn scroll_text(model: &mut Model, command: Command, rows: usize) {
+    let Some(area) = Panes::of(model.size, model).map(|panes| panes.view) else { return };
+    let most =
+        if model.view == View::Ledger { ledger::last_first(model, area) } else { notes::last_first(model, area) };
+    let first = if model.view == View::Ledger { &mut model.ledger_row } else { &mut model.notes_row };
+    let moved = if command == Command::PageUp { first.saturating_sub(rows) } else { *first + rows };
+    *first = moved.min(most);
 }
 
 fn other_pane(model: &mut Model) {

@@ -1,12 +1,13 @@
 //! Draws the whole screen from the model.
 use super::layout::{LEAST_HEIGHT, LEAST_WIDTH, Panes, views};
 use super::model::{Mode, Model, View};
-use super::panes::history::Picture;
+use super::panes::history::{Picture, SwingPicture};
 use super::panes::scene::Scene;
 use super::panes::side::Side;
 use super::panes::units::Scale;
 use super::panes::{
-    about, elevation, foot, header, help, history, inputs, log, margins, notes, side_view, tabs, timeline, verdict,
+    about, elevation, foot, header, help, history, inputs, ledger, log, margins, notes, side_view, tabs, timeline,
+    verdict,
 };
 use super::text::put;
 use crate::quantity::Dimension;
@@ -92,6 +93,7 @@ fn draw_view(model: &Model, frame: &mut Frame, panes: &Panes) {
         View::Margins if panes.margins.height == 0 => draw_margins_view(model, frame, area),
         View::Margins => {}
         View::Notes => notes::draw(frame.buffer_mut(), area, model),
+        View::Ledger => ledger::draw(frame.buffer_mut(), area, model),
     }
     timeline::draw(frame.buffer_mut(), panes.timeline, panes.bar(), model);
     if model.answer.is_stale() {
@@ -146,5 +148,19 @@ pub fn picture(report: &Report, model: &Model, columns: u16) -> Picture {
         now_s: model.play.time_s,
         length: Scale::of(Dimension::Length, model.units),
         force: Scale::of(Dimension::Force, model.units),
+        swing: estimate.plane.is_some().then(|| swing(report, model)),
+    }
+}
+
+fn swing(report: &Report, model: &Model) -> SwingPicture {
+    let number = |id: &str| report.estimate.numbers.get(id).unwrap_or(0.0);
+    let limit = report.margins.iter().find(|margin| margin.dimension == Dimension::Angle);
+    SwingPicture {
+        curves: model.curves,
+        limit_rad: limit.and_then(|margin| margin.limit),
+        peak_rad: number("swing_angle_peak"),
+        lowest_m_per_s: number("swing_speed_lowest"),
+        angle: Scale::of(Dimension::Angle, model.units),
+        speed: Scale::of(Dimension::Speed, model.units),
     }
 }

@@ -1,7 +1,10 @@
-//! The view History: travel with its envelope and line force over time, with the modes below.
+//! The view History: travel with its envelope and line force over time, of a swing angle and speed too, with the modes
+//! below.
 use super::plot::{Curve, GUTTER, Grows, Level, Plot, Stroke, draw_foot, place};
 use super::units::Scale;
 use crate::estimate::{Envelope, Mode, Phase, Sample};
+use crate::tui::command::{Command, key_name};
+use crate::tui::play::Curves;
 use crate::tui::text::{cells, put};
 use crate::tui::theme::Theme;
 use ratatui::Frame;
@@ -32,7 +35,29 @@ pub struct Picture {
     pub length: Scale,
     /// Scale of the force axis.
     pub force: Scale,
+    /// What a swing shows beside travel and force.
+    pub swing: Option<SwingPicture>,
 }
+
+/// What a swing shows beside travel and force.
+#[derive(Clone, Debug)]
+pub struct SwingPicture {
+    /// Curves shown where there is no room for all.
+    pub curves: Curves,
+    /// Limit on the angle to either side, rad.
+    pub limit_rad: Option<f64>,
+    /// Largest angle after taut, rad.
+    pub peak_rad: f64,
+    /// Speed at the lowest point, m/s.
+    pub lowest_m_per_s: f64,
+    /// Scale of the angle axis.
+    pub angle: Scale,
+    /// Scale of the speed axis.
+    pub speed: Scale,
+}
+
+/// Rows that a plot should have where all four of a swing are shown.
+const EACH: u16 = 6;
 
 /// The symbol that fills a mode's part of the strip; each mode has one of its own.
 #[must_use]
@@ -45,22 +70,38 @@ pub const fn mode_symbol(mode: Mode) -> &'static str {
     }
 }
 
-/// Draws the two plots, the strip of modes and the time axis.
+/// Draws the plots, the strip of modes and the time axis.
 pub fn draw(frame: &mut Frame, area: Rect, picture: &Picture, theme: Theme) {
     if area.height < 9 || area.width < GUTTER + 12 {
         put(frame.buffer_mut(), area, 0, 0, "no room to draw", theme.quiet());
         return;
     }
-    let plots = area.height - 3;
-    let upper = plots.div_ceil(2);
-    let travel = Rect { height: upper, ..area };
-    let force = Rect { y: area.y + upper, height: plots - upper, ..area };
-    travel_plot(picture, theme, area.width).draw(frame, travel);
-    force_plot(picture, theme).draw(frame, force);
-    let strip = Rect { y: force.bottom(), height: 1, ..area };
+    let room = area.height - 3;
+    let plots = plots(picture, theme, area.width, room);
+    let count = u16::try_from(plots.len()).unwrap_or(1).max(1);
+    let mut top = area.y;
+    for (plot, index) in plots.iter().zip(0..) {
+        let height = room / count + u16::from(index < room % count);
+        plot.draw(frame, Rect { y: top, height, ..area });
+        top += height;
+    }
+    let strip = Rect { y: area.y + room, height: 1, ..area };
     draw_modes(frame, strip, picture, theme);
     draw_foot(frame, Rect { y: strip.y + 1, ..strip }, picture.window_s, "s", theme.quiet());
-    draw_legend(frame, Rect { y: strip.y + 2, ..strip }, picture, theme);
+    let hidden = picture.swing.as_ref().filter(|_| count < 4).map(|swing| swing.curves);
+    draw_legend(frame, Rect { y: strip.y + 2, ..strip }, picture, hidden, theme);
+}
+
+/// Two plots, or all four of a swing where there is room.
+fn plots(picture: &Picture, theme: Theme, columns: u16, rows: u16) -> Vec<Plot> {
+    let first = [travel_plot(picture, theme, columns), force_plot(picture, theme)];
+    let Some(swing) = &picture.swing else { return first.into() };
+    let second = [angle_plot(picture, swing, theme, columns), speed_plot(picture, swing, theme, columns)];
+    match swing.curves {
+        _ if rows >= 4 * EACH => first.into_iter().chain(second).collect(),
+        Curves::TravelForce => first.into(),
+        Curves::AngleSpeed => second.into(),
+    }
 }
 
 /// The cell column of a time in an area drawn by [`draw`], and back.
@@ -163,6 +204,50 @@ fn force_plot(picture: &Picture, theme: Theme) -> Plot {
     }
 }
 
+/// A plot of one curve that grows upwards.
+fn single(picture: &Picture, theme: Theme, title: String, points: Vec<(f64, f64)>, levels: Vec<Level>) -> Plot {
+    let along = range(points.iter().map(|point| point.1).chain(levels.iter().map(|level| level.at)));
+    Plot {
+        title,
+        across: picture.window_s,
+        along,
+        grows: Grows::Up,
+        curves: vec![Curve { points, stroke: Stroke::Solid, color: theme.curve() }],
+        levels,
+        head: Some(picture.now_s),
+        head_style: theme.play_head(),
+        tick_style: theme.quiet(),
+        title_style: theme.heading(),
+    }
+}
+
+fn angle_plot(picture: &Picture, swing: &SwingPicture, theme: Theme, columns: u16) -> Plot {
+    let scale = &swing.angle;
+    let point = |sample: &Sample| sample.plane.map(|plane| (sample.time_s, scale.shown(plane.angle_rad)));
+    let level = |at: f64| Level {
+        at: scale.shown(at),
+        name: format!("limit {}", scale.text(at.abs())),
+        color: theme.limit(),
+        style: theme.plain(),
+    };
+    let short = format!("angle from plumb ({})", scale.symbol);
+    let long = format!("angle of the line from plumb ({}), peak {}", scale.symbol, scale.text(swing.peak_rad));
+    let title = if cells(&long) <= columns { long } else { short };
+    let levels = swing.limit_rad.into_iter().flat_map(|limit| [level(limit), level(-limit)]).collect();
+    single(picture, theme, title, picture.samples.iter().filter_map(point).collect(), levels)
+}
+
+fn speed_plot(picture: &Picture, swing: &SwingPicture, theme: Theme, columns: u16) -> Plot {
+    let scale = &swing.speed;
+    let point = |sample: &Sample| sample.plane.map(|plane| (sample.time_s, scale.shown(plane.speed_m_per_s)));
+    let short = format!("speed ({})", scale.symbol);
+    let long = format!("speed along the path ({}), {} lowest", scale.symbol, scale.text(swing.lowest_m_per_s));
+    let title = if cells(&long) <= columns { long } else { short };
+    let mut plot = single(picture, theme, title, picture.samples.iter().filter_map(point).collect(), Vec::new());
+    plot.along.0 = 0.0;
+    plot
+}
+
 /// One row: each phase filled with its symbol, and its word where there is room.
 fn draw_modes(frame: &mut Frame, area: Rect, picture: &Picture, theme: Theme) {
     let field = Rect { x: area.x + GUTTER, width: area.width.saturating_sub(GUTTER), ..area };
@@ -181,7 +266,16 @@ fn draw_modes(frame: &mut Frame, area: Rect, picture: &Picture, theme: Theme) {
     }
 }
 
-fn draw_legend(frame: &mut Frame, area: Rect, picture: &Picture, theme: Theme) {
+/// The key that shows the curves that found no room.
+fn curves_hint(shown: Curves) -> String {
+    let others = match shown {
+        Curves::TravelForce => "angle, speed",
+        Curves::AngleSpeed => "travel, force",
+    };
+    format!("   {} {others}", key_name(Command::Curves))
+}
+
+fn draw_legend(frame: &mut Frame, area: Rect, picture: &Picture, hidden: Option<Curves>, theme: Theme) {
     let mut modes: Vec<Mode> = Vec::new();
     for phase in &picture.phases {
         if !modes.contains(&phase.mode) {
@@ -191,7 +285,9 @@ fn draw_legend(frame: &mut Frame, area: Rect, picture: &Picture, theme: Theme) {
     let words: Vec<String> = modes.iter().map(|&mode| format!("{} {}", mode_symbol(mode), mode.word())).collect();
     let all = words.join("  ");
     let later = words.iter().skip(1).cloned().collect::<Vec<_>>().join("  ");
-    let choices = [format!("time from the start of the fall (s)   {all}"), all, later.clone()];
+    let hint = hidden.map_or_else(String::new, curves_hint);
+    let choices =
+        [format!("time from the start of the fall (s)   {all}{hint}"), format!("{all}{hint}"), all, later.clone()];
     let text = choices.into_iter().find(|text| cells(text) <= area.width).unwrap_or(later);
     put(frame.buffer_mut(), area, 0, 0, &text, theme.quiet());
 }

@@ -23,14 +23,17 @@ fn split(path: &str) -> (&str, &str) {
     path.rsplit_once('.').unwrap_or(("general", path))
 }
 
+/// The section in words, with the name of its obstacle or face.
 fn section_title(section: &str, model: &Model) -> String {
     let words = section.replace(['.', '_'], " ");
-    let index = section.strip_prefix("obstacle.").and_then(|number| number.parse::<usize>().ok());
-    let obstacles = &model.document.scenario().obstacles;
-    match index.and_then(|number| obstacles.get(number.checked_sub(1)?)) {
-        Some(obstacle) => format!("{words}  {}", obstacle.name.trim()),
-        None => words,
-    }
+    let scenario = model.document.scenario();
+    let index = |number: &str| number.parse::<usize>().ok()?.checked_sub(1);
+    let name = match section.split_once('.') {
+        Some(("obstacle", number)) => index(number).and_then(|at| Some(&scenario.obstacles.get(at)?.name)),
+        Some(("face", number)) => index(number).and_then(|at| Some(&scenario.faces.get(at)?.name)),
+        _ => None,
+    };
+    name.map_or_else(|| words.clone(), |name| format!("{words}  {}", name.trim()))
 }
 
 fn rows(model: &Model) -> Vec<Row> {

@@ -1,7 +1,7 @@
 //! The view Notes: what must be read beside the numbers.
 use crate::sheet::CAUTIONS;
 use crate::tui::model::Model;
-use crate::tui::text::{put, wrap};
+use crate::tui::text::wrap;
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 use ratatui::style::Style;
@@ -25,7 +25,7 @@ fn rows(model: &Model, width: u16) -> Vec<(u16, String, Style)> {
     for (title, sentences, style) in parts.into_iter().filter(|(_, sentences, _)| !sentences.is_empty()) {
         rows.push((0, title.to_owned(), theme.heading()));
         for sentence in sentences {
-            let lines = wrap(sentence, usize::from(width.saturating_sub(INDENT + 2)));
+            let lines = wrap(sentence, usize::from(width.saturating_sub(2 * INDENT + 2)));
             for (index, line) in lines.into_iter().enumerate() {
                 let mark = if index == 0 { "- " } else { "  " };
                 rows.push((INDENT, format!("{mark}{line}"), style));
@@ -43,15 +43,6 @@ pub fn last_first(model: &Model, area: Rect) -> usize {
 
 /// Draws the sentences from the row that the model is scrolled to.
 pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
-    let rows = rows(model, area.width.saturating_sub(INDENT));
-    let shown = usize::from(area.height.saturating_sub(1));
-    let first = model.notes_row.min(rows.len().saturating_sub(shown));
-    let below = rows.len().saturating_sub(first + shown);
-    put(buffer, area, 0, 0, "Notes", model.theme.heading());
-    let more = super::more_words(first, below);
-    let words = if more.is_empty() { more } else { format!("{more} (page-up, page-down)") };
-    put(buffer, area, 7, 0, &words, model.theme.quiet());
-    for (line, (indent, text, style)) in (1..area.height).zip(rows.iter().skip(first)) {
-        put(buffer, area, *indent, line, text, *style);
-    }
+    let rows = rows(model, area.width);
+    super::draw_text(buffer, area, "Notes", &rows, model.notes_row, model.theme);
 }

@@ -216,15 +216,17 @@ fn bars(report: &Report) -> Vec<Bar> {
     report.scenario.obstacles.iter().map(bar).collect()
 }
 
-/// The obstacle with the least room, as the margins order them. A swing has none where the smallest gap is not the one
-/// below its lowest point, which is where the string runs.
+/// The obstacle with the least room, as the margins order them. None where it lies beside the fall line, or where the
+/// smallest gap of a swing is not the one below its lowest point, which is where the string runs.
 fn nearest(report: &Report, bars: &[Bar]) -> Option<usize> {
     least_room(report, bars).filter(|&index| is_below_lowest(report, index))
 }
 
 fn is_below_lowest(report: &Report, index: usize) -> bool {
-    let (Some(_), Some(levels)) = (&report.estimate.plane, &report.estimate.elevations) else { return true };
     let Some(obstacle) = report.scenario.obstacles.get(index) else { return false };
+    let (Some(_), Some(levels)) = (&report.estimate.plane, &report.estimate.elevations) else {
+        return obstacle.is_below(&report.scenario.subject);
+    };
     let clearance = report.estimate.numbers.get(&format!("clearance.{}", obstacle.id()));
     clearance.is_some_and(|gap| (levels.lowest_point_m() - obstacle.top.si() - gap).abs() < TOO_SHORT_M)
 }

@@ -1,5 +1,5 @@
 //! The verdict in a sentence.
-use crate::estimate::Estimate;
+use crate::estimate::{Estimate, EventKind};
 use crate::margin::Verdict;
 use crate::quantity::{Dimension, UnitSystem, format_si};
 use crate::sheet::{Report, governing_words};
@@ -75,8 +75,15 @@ pub fn force_limit(report: &Report) -> Option<f64> {
     report.margins.iter().find(|margin| margin.id == "arrest_force")?.limit
 }
 
-/// The regime and the end of the run in a few words.
+/// The end of the run in a few words.
 #[must_use]
 pub fn ending(estimate: &Estimate) -> &'static str {
-    if estimate.numbers.get("settle_time").is_some() { "settled" } else { "not settled" }
+    let last = estimate.events.iter().rev().map(|event| event.kind);
+    let mut told = last.filter_map(|kind| match kind {
+        EventKind::TurnsBack => Some("turns back"),
+        EventKind::PeakPassed => Some("first peak"),
+        _ => None,
+    });
+    let settled = if estimate.numbers.get("settle_time").is_some() { "settled" } else { "not settled" };
+    told.next().unwrap_or(settled)
 }
