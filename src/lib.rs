@@ -10,5 +10,6 @@ pub mod physics;
 pub mod quantity;
 pub mod scenario;
 pub mod sheet;
+pub mod study;
 pub mod swing;
 pub mod tui;

@@ -52,13 +52,24 @@ fn input(scenario: &mut Scenario, path: String, field: &'static Field) -> Option
 /// with the other values (an onset force below the deployment force).
 #[must_use]
 pub fn with_value(scenario: &Scenario, path: &str, value_si: f64) -> Option<Scenario> {
-    let field = field_for(path)?;
-    if !(value_si >= field.least && value_si <= field.most) {
-        return None;
-    }
+    with_values(scenario, &[(path, value_si)])
+}
+
+/// The scenario with the typical values of several inputs replaced at once, each as in [`with_value`].
+///
+/// `None` when the scenario lacks one of the inputs, a value is outside its field's range, or the values cannot be
+/// together; only all of them together are judged, whatever their order.
+#[must_use]
+pub fn with_values(scenario: &Scenario, values: &[(&str, f64)]) -> Option<Scenario> {
     let mut changed = scenario.clone();
-    let measure = measure_mut(&mut changed, path)?;
-    *measure = moved(measure, value_si);
+    for &(path, value_si) in values {
+        let field = field_for(path)?;
+        if !(value_si >= field.least && value_si <= field.most) {
+            return None;
+        }
+        let measure = measure_mut(&mut changed, path)?;
+        *measure = moved(measure, value_si);
+    }
     clash::clashes(&changed).is_empty().then_some(changed)
 }
 
