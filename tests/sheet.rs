@@ -387,3 +387,13 @@ fn the_count_names_every_verdict_that_occurs() {
     assert_eq!(tally(&["open"]), "1 file: 1 open");
     assert_eq!(tally(&[]), "0 files: none judged");
 }
+
+#[test]
+fn the_limits_list_typical_cables_with_the_state_of_their_source() {
+    let page = underfoot::sheet::limits_text(Paint::Plain);
+    let tail = page.split("typical stiffness of cables").nth(1).unwrap();
+    let tail = tail.split_whitespace().collect::<Vec<_>>().join(" ");
+    assert!(tail.contains("steel wire rope, 7x7") && tail.contains("metallic area"), "{tail}");
+    assert!(tail.contains("polyamide rope") && tail.contains("nominal area"), "{tail}");
+    assert!(tail.matches("from memory, unverified").count() >= 6, "{tail}");
+}

@@ -1,5 +1,6 @@
 //! From a scenario to every number of the arrest, with units, definitions and provenance.
 mod assess;
+mod cables;
 mod collect;
 mod definition;
 mod event;
@@ -13,6 +14,7 @@ mod trace;
 mod view;
 
 pub use assess::{Elevations, Envelope, Estimate, EstimateError, Figures, Validity, estimate, figures};
+pub use cables::typical_cables;
 pub use definition::{DEFINITIONS, Definition, definition};
 pub use event::{Event, EventKind};
 pub use number::{Number, Numbers, Value};

@@ -3,6 +3,7 @@ use super::json::{Layout, print};
 use super::page::{Page, Paint, Tone, pad};
 use super::text::sentences;
 use super::{CAUTION_LINE, CAUTIONS, EQUIPMENT_CAUTIONS};
+use crate::estimate::typical_cables;
 use crate::margin::{Bound, Disagreement, LimitSet, PublishedLimit, disagreements, limit_sets};
 use crate::quantity::{UnitSystem, display_unit, format_si};
 use serde_json::{Value, json};
@@ -23,6 +24,8 @@ pub fn limits_text(paint: Paint) -> String {
     for disagreement in disagreements() {
         one_disagreement(&mut page, disagreement);
     }
+    // The figure of the maker goes before any of these; the sentences say where each comes from.
+    sentences(&mut page, "typical stiffness of cables", &typical_cables());
     sentences(&mut page, "cautions", CAUTIONS);
     sentences(&mut page, "cautions about equipment", EQUIPMENT_CAUTIONS);
     page.finish()
@@ -72,6 +75,7 @@ pub fn limits_json() -> String {
         "cautions": CAUTIONS.iter().chain(EQUIPMENT_CAUTIONS).collect::<Vec<_>>(),
         "sets": limit_sets().iter().map(set_object).collect::<Vec<_>>(),
         "disagreements": disagreements().iter().map(disagreement_object).collect::<Vec<_>>(),
+        "typical_cables": typical_cables(),
     });
     print(&value, Layout::Lines)
 }
