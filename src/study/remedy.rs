@@ -135,8 +135,7 @@ impl Search<'_> {
         let (today, field) = (self.today(), self.input.field);
         let around = self.is_place() || today == 0.0;
         let reach = if self.input.field.dimension == Some(Dimension::Length) { REACH_M } else { 1.0 };
-        let (low, high) =
-            if around { (today - reach, today + reach) } else { (today / MULTIPLE, today * MULTIPLE) };
+        let (low, high) = if around { (today - reach, today + reach) } else { (today / MULTIPLE, today * MULTIPLE) };
         (low.max(field.least), high.min(field.most))
     }
 
