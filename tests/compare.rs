@@ -61,12 +61,16 @@ fn a_check_that_is_no_longer_made_is_told_and_ends_with_1() {
 
 #[test]
 fn a_change_of_words_and_of_own_limits_is_told() {
-    let other = shipped().replace("kind = \"lanyard\"", "kind = \"webbing\"") + "arrest_force = \"5 kN\"\n";
+    let other = shipped().replace("kind = \"lanyard\"", "kind = \"webbing\"")
+        + "arrest_force = { value = \"5 kN\", why = \"site rule\" }\n";
     let folder = tempfile::tempdir().unwrap();
     let (a, b) = (write(&folder, "a.toml", &shipped()), write(&folder, "b.toml", &other));
     let run = cargo_bin_cmd!("underfoot").arg("compare").args([a, b]).output().unwrap();
     let text = String::from_utf8(run.stdout).unwrap();
-    assert!(text.contains("lanyard -> webbing") && text.contains("not stated -> 5 kN"), "{text}");
+    assert!(
+        text.contains("lanyard -> webbing") && text.contains("limits.arrest_force") && text.contains("site rule"),
+        "{text}"
+    );
 }
 
 #[test]

@@ -39,7 +39,8 @@ fn remedy_line(page: &mut Page, remedy: &Remedy) {
     let unit = input.measure.unit;
     let today = format_measure(&input.measure);
     let words = if let Some(way) = &remedy.way {
-        format!("{today} -> {} ({:.1} % change){}", way.written, way.relative * 100.0, others(way))
+        let of = if way.of_range { "the range searched" } else { "today's value" };
+        format!("{today} -> {} (changes by {:.1} % of {of}){}", way.written, way.relative * 100.0, others(way))
     } else {
         let (low, high) = (format_unit(remedy.range.0, unit), format_unit(remedy.range.1, unit));
         format!("{today}: none within its range, {low} to {high}")
@@ -79,6 +80,7 @@ fn remedy_json(remedy: &Remedy) -> Value {
         "value": way.map(|w| w.value),
         "written": way.map(|w| w.written.clone()),
         "relative_change": way.map(|w| w.relative),
+        "relative_to": way.map(|w| if w.of_range { "range" } else { "today" }),
         "ways": way.map_or(0, |w| w.ways),
     })
 }

@@ -82,7 +82,7 @@ fn crossing_line(page: &mut Page, evaluator: &Evaluator, found: &Variation, at: 
 }
 
 /// Every row with all its numbers that are numbers, and margin and verdict of each check, SI units. Changes of verdict
-/// stand as rows of their own kind: `crossing`.
+/// stand as rows of their own kind, `crossing`, and so does a run that failed, with its reason.
 ///
 /// # Errors
 /// When the writer refuses a record, which a buffer in memory does not.
@@ -97,6 +97,9 @@ pub fn vary_csv(evaluator: &Evaluator, found: &Variation) -> Result<String, csv:
         writer.write_record(record)
     };
     for row in &found.rows {
+        if let Some(failure) = &row.run.failure {
+            line("failed", row.value, &failure.to_string(), String::new(), Some(Verdict::Open))?;
+        }
         for number in row.run.numbers.iter() {
             if let Some(value) = row.run.numbers.get(&number.id) {
                 line("number", row.value, &number.id, value.to_string(), None)?;
