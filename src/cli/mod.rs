@@ -6,6 +6,7 @@ mod new;
 mod options;
 mod output;
 mod run;
+mod study;
 
 pub use exit::Code;
 
@@ -47,6 +48,9 @@ fn dispatch(arguments: Arguments) -> Next {
         (Some(Command::View(view)), _) | (None, Some(view)) => screen(view),
         (Some(Command::Run(args)), _) => Next::Exit(run::run(&args)),
         (Some(Command::Audit(args)), _) => Next::Exit(audit::audit(&args)),
+        (Some(Command::Compare(args)), _) => Next::Exit(study::compare(&args)),
+        (Some(Command::Vary(args)), _) => Next::Exit(study::vary_one(&args)),
+        (Some(Command::Remedy(args)), _) => Next::Exit(study::remedy(&args)),
         (Some(Command::Limits(args)), _) => Next::Exit(new::limits(&args)),
         (Some(Command::New(args)), _) => Next::Exit(new::new(&args)),
         (None, None) => {

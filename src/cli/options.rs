@@ -7,6 +7,14 @@ use std::path::PathBuf;
 const EXIT_CODES: &str = "Exit codes: 0 every check holds; 1 a check is thin, short or open; 2 the input is wrong; \
                           3 it could not be computed; 130 interrupted.";
 
+const VARY_CODES: &str = "Exit codes: 0 every check holds in every row; 1 a check is short or open in a row; 2 the \
+                          input is wrong; 3 it could not be computed.";
+const REMEDY_CODES: &str = "Exit codes: 0 every check holds today, at the typical values; 1 a check is short or open \
+                            today; 2 the input is wrong; 3 it could not be computed.";
+const COMPARE_CODES: &str = "Exit codes: 0 no check of the second file is worse than in the first; 1 one is worse, does \
+                             not hold where the first has none, or is no longer made; 2 the input is wrong; 3 it could \
+                             not be computed.";
+
 /// First-pass estimate of fall arrest and suspended lines: clearance, force and margin.
 #[derive(Debug, Parser)]
 #[command(name = "underfoot", version, about, before_help = CAUTION_LINE, after_help = EXIT_CODES)]
@@ -32,6 +40,15 @@ pub enum Command {
     /// Review files and folders: faults, doubtful inputs, margins, one verdict a file
     #[command(before_help = CAUTION_LINE)]
     Audit(AuditArgs),
+    /// Run one input across a range: numbers, verdicts, and where a verdict changes
+    #[command(before_help = CAUTION_LINE, after_help = VARY_CODES)]
+    Vary(VaryArgs),
+    /// For each input alone, the nearest value at which every check holds: arithmetic, to be confirmed
+    #[command(before_help = CAUTION_LINE, after_help = REMEDY_CODES)]
+    Remedy(RemedyArgs),
+    /// Tell what differs between two files: inputs, numbers, verdicts
+    #[command(before_help = CAUTION_LINE, after_help = COMPARE_CODES)]
+    Compare(CompareArgs),
     /// List the built-in published limits with clause, year and how each value was confirmed
     #[command(before_help = CAUTION_LINE)]
     Limits(LimitsArgs),
@@ -115,4 +132,64 @@ pub struct NewArgs {
     /// Write to this file, which must not exist yet
     #[arg(short, long, value_name = "FILE")]
     pub output: Option<PathBuf>,
+}
+
+/// Arguments of `compare`.
+#[derive(Args, Clone, Debug)]
+pub struct CompareArgs {
+    /// Scenario file
+    #[arg(value_name = "A")]
+    pub first: PathBuf,
+    /// Scenario file that is judged against it
+    #[arg(value_name = "B")]
+    pub second: PathBuf,
+    /// JSON, SI units
+    #[arg(long)]
+    pub json: bool,
+    /// Units shown in text
+    #[arg(long, value_enum, default_value_t)]
+    pub units: Units,
+}
+
+/// Most rows of a table.
+const MOST_ROWS: u64 = 10_000;
+
+/// Arguments of `vary`.
+#[derive(Args, Clone, Debug)]
+pub struct VaryArgs {
+    /// Scenario file
+    pub file: PathBuf,
+    /// Path of the input, such as `line.length` or `obstacle.1.top`
+    #[arg(long, value_name = "PATH")]
+    pub over: String,
+    /// Smallest value with its unit [default: low end of its band, half of an exact value]
+    #[arg(long, value_name = "VALUE", allow_hyphen_values = true)]
+    pub from: Option<String>,
+    /// Largest value with its unit [default: high end of its band, double of an exact value]
+    #[arg(long, value_name = "VALUE", allow_hyphen_values = true)]
+    pub to: Option<String>,
+    /// Rows of the table, both ends included
+    #[arg(long, default_value = "21", value_parser = row_count)]
+    pub steps: usize,
+    /// CSV with every number and margin, one a line, SI units
+    #[arg(long)]
+    pub csv: bool,
+    /// Units shown in text
+    #[arg(long, value_enum, default_value_t)]
+    pub units: Units,
+}
+
+fn row_count(text: &str) -> Result<usize, String> {
+    let fits = text.parse::<u64>().ok().filter(|rows| (2..=MOST_ROWS).contains(rows));
+    fits.and_then(|rows| usize::try_from(rows).ok()).ok_or_else(|| format!("expected 2 to {MOST_ROWS} rows"))
+}
+
+/// Arguments of `remedy`.
+#[derive(Args, Clone, Debug)]
+pub struct RemedyArgs {
+    /// Scenario file
+    pub file: PathBuf,
+    /// JSON, SI units
+    #[arg(long)]
+    pub json: bool,
 }

@@ -1,23 +1,29 @@
 //! Results to bytes: text, JSON and CSV. Pure functions.
 mod audit;
 mod caution;
+mod compare;
 mod csv;
 mod json;
 mod limits;
 mod page;
 mod places;
+mod remedy;
 mod report;
 mod text;
 pub mod ticks;
+mod vary;
 mod words;
 mod working;
 
 pub use audit::{Audited, Finding, audit_head, audit_json, audit_text, tally};
 pub use caution::{CAUTION_LINE, CAUTIONS, EQUIPMENT_CAUTIONS, LEFT_OUT};
+pub use compare::{compare_object, compare_text, comparison};
 pub use csv::csv;
 pub use json::{Layout, json, margin as margin_object, object, print};
 pub use limits::{limits_json, limits_text};
 pub use page::{Paint, clean};
+pub use remedy::{REMEDY_CAUTION, remedy_object, remedy_text};
 pub use report::{Report, ReportError, report, sha256_hex};
 pub use text::text;
+pub use vary::{vary_csv, vary_text};
 pub use words::{governing_words, margin_words};

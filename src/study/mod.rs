@@ -15,7 +15,7 @@ pub use band::{NORMAL_WIDTH, Quantile};
 pub use compare::{Comparison, InputChange, NumberChange, SAME_SHARE, Side, VerdictChange, compare};
 pub use evaluate::{Evaluator, Failure, Run, StudyError};
 pub use rank::{Bar, Importance, Part, Ranking, Target, bars, importance, importance_of};
-pub use remedy::{ADJUSTABLE, MULTIPLE, REACH_M, Remedies, Remedy, Way, remedies};
+pub use remedy::{ADJUSTABLE, MASS_MULTIPLE, MULTIPLE, REACH_M, Remedies, Remedy, Way, remedies};
 pub use sample::Sampler;
 pub use sobol::{MOST_DIMENSIONS, MOST_POINTS, Sobol};
 pub use spread::{BARS, BATCH, CheckSpread, KEY_NUMBERS, NumberSpread, QUANTILE_SHARES, Share, Spread, spread};

@@ -28,6 +28,8 @@ pub const ADJUSTABLE: &[&str] = &[
 
 /// Inputs are searched from a fifth to five times of today's value.
 pub const MULTIPLE: f64 = 5.0;
+/// The mass of the subject is searched from half to double: tools can be left behind, a person cannot be chosen.
+pub const MASS_MULTIPLE: f64 = 2.0;
 /// Elevations and offsets, whose zero is arbitrary, are searched this far up and down, m.
 pub const REACH_M: f64 = 10.0;
 /// Cells of the search on each side of today's value.
@@ -46,6 +48,8 @@ pub struct Way {
     pub written: String,
     /// Change over today's value, its amount; over the range searched where today's zero is arbitrary.
     pub relative: f64,
+    /// True where the change is a share of the range searched, not of today's value.
+    pub of_range: bool,
     /// In how many separate stretches of the range every check holds.
     pub ways: usize,
 }
@@ -135,8 +139,8 @@ impl Search<'_> {
         let (today, field) = (self.today(), self.input.field);
         let around = self.is_place() || today == 0.0;
         let reach = if self.input.field.dimension == Some(Dimension::Length) { REACH_M } else { 1.0 };
-        let (low, high) =
-            if around { (today - reach, today + reach) } else { (today / MULTIPLE, today * MULTIPLE) };
+        let multiple = if self.input.path == "subject.mass" { MASS_MULTIPLE } else { MULTIPLE };
+        let (low, high) = if around { (today - reach, today + reach) } else { (today / multiple, today * multiple) };
         (low.max(field.least), high.min(field.most))
     }
 
@@ -172,8 +176,9 @@ impl Search<'_> {
             *(if self.holds(middle)? { &mut good } else { &mut short }) = middle;
         }
         let (value, written) = self.rounded(good)?;
-        let scale = if self.is_place() || self.today() == 0.0 { range.1 - range.0 } else { self.today().abs() };
-        Ok(Way { value, written, relative: (value - self.today()).abs() / scale, ways })
+        let of_range = self.is_place() || self.today() == 0.0;
+        let scale = if of_range { range.1 - range.0 } else { self.today().abs() };
+        Ok(Way { value, written, relative: (value - self.today()).abs() / scale, of_range, ways })
     }
 
     /// The value as the file would state it: few digits, rounded away from today's value, and checked as it reads.
