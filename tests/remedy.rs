@@ -98,3 +98,18 @@ fn json_carries_values_units_and_the_caution() {
     let anchor = object["remedies"].as_array().unwrap().iter().find(|r| r["path"] == "place.anchor").unwrap();
     assert!(anchor["value"].as_f64().unwrap() > 5.0 && anchor["unit"] == "m", "{anchor}");
 }
+
+#[test]
+fn the_number_of_ways_is_that_of_an_even_scan() {
+    let evaluator = Evaluator::new(shipped().scenario()).unwrap();
+    for remedy in remedies(&evaluator).unwrap().list {
+        let index = evaluator.index_of(&remedy.input.path).unwrap();
+        let (low, high) = remedy.range;
+        let holds: Vec<bool> = (0..=3000)
+            .map(|i| low + (high - low) * f64::from(i) / 3000.0)
+            .map(|value| word(&evaluator.at(&[(index, value)]).unwrap()) == Verdict::Holds)
+            .collect();
+        let stretches = usize::from(holds[0]) + holds.windows(2).filter(|pair| !pair[0] && pair[1]).count();
+        assert_eq!(remedy.way.map_or(0, |way| way.ways), stretches, "{}", remedy.input.path);
+    }
+}

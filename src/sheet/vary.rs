@@ -38,7 +38,8 @@ pub fn vary_text(
     if found.crossings.is_empty() {
         page.line("  nowhere in this range", Tone::Plain);
     }
-    found.crossings.iter().for_each(|crossing| crossing_line(&mut page, evaluator, found, crossing, system));
+    let alike = |a: &Crossing, b: &Crossing| shared(a) == shared(b);
+    found.crossings.chunk_by(alike).for_each(|group| crossing_lines(&mut page, evaluator, found, group, system));
     page.wrapped("  ", "two changes of one check closer than a four-hundredth of the range can be missed", Tone::Faint);
     page.heading("cautions");
     for words in CAUTIONS {
@@ -72,11 +73,20 @@ fn governing(evaluator: &Evaluator, row: &Row, system: UnitSystem) -> Option<Mar
     first.map(|check| evaluator.margin(&row.run, check, system))
 }
 
-fn crossing_line(page: &mut Page, evaluator: &Evaluator, found: &Variation, at: &Crossing, system: UnitSystem) {
-    let nearest = found.rows.iter().find_map(|row| row.run.check(at.kind).map(|check| (row, check)));
-    let label = nearest.map_or(String::new(), |(row, check)| evaluator.margin(&row.run, check, system).label);
+/// What checks have in common that change at one place for one reason, such as a run that fails.
+fn shared(at: &Crossing) -> (u64, Verdict, Verdict, bool) {
+    (at.value.to_bits(), at.below, at.above, at.through_zero)
+}
+
+fn crossing_lines(page: &mut Page, evaluator: &Evaluator, found: &Variation, group: &[Crossing], system: UnitSystem) {
+    let Some(at) = group.first() else { return };
+    let label = |at: &Crossing| {
+        let nearest = found.rows.iter().find_map(|row| row.run.check(at.kind).map(|check| (row, check)));
+        nearest.map_or(String::new(), |(row, check)| evaluator.margin(&row.run, check, system).label)
+    };
+    let labels = group.iter().map(label).collect::<Vec<_>>().join("; ");
     let how = if at.through_zero { "through zero margin" } else { "by a jump" };
-    let words = format!("{label}: {} below, {} above, {how}", at.below.word(), at.above.word());
+    let words = format!("{labels}: {} below, {} above, {how}", at.below.word(), at.above.word());
     let value = pad_left(&shown(evaluator, found, at.value, system), 14);
     page.wrapped(&format!("{value}  "), &words, Tone::Plain);
 }
