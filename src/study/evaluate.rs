@@ -1,8 +1,10 @@
 //! One run of a study: some inputs replaced, every number and every check of it, no words.
+use super::meter::Meter;
 use crate::estimate::{EstimateError, Numbers, Validity, figures};
 use crate::margin::{Check, CheckKind, Margin, Rules, UnknownBasis, checks, judge, margin_of};
 use crate::quantity::UnitSystem;
 use crate::scenario::{Input, Scenario, inputs, with_values};
+use std::sync::Arc;
 
 /// Why a study could not be made.
 #[derive(Clone, Debug, PartialEq, thiserror::Error)]
@@ -40,6 +42,9 @@ pub enum StudyError {
         /// How many can be sampled.
         most: usize,
     },
+    /// Somebody broke it off, see [`Meter::drop_study`].
+    #[error("stopped before it was done")]
+    Stopped,
     /// A count that gives no answer.
     #[error("`{count}` samples are outside of `{least}` to `{most}`")]
     Samples {
@@ -92,6 +97,8 @@ pub struct Evaluator {
     inputs: Vec<Input>,
     /// Kinds of checks that apply whatever the numbers are, for runs that fail.
     kinds: Vec<CheckKind>,
+    /// Counts its runs and may refuse them.
+    meter: Option<Arc<Meter>>,
 }
 
 impl Evaluator {
@@ -109,7 +116,13 @@ impl Evaluator {
         }
         kinds.sort_unstable();
         kinds.dedup();
-        Ok(Self { scenario: scenario.clone(), rules, inputs: inputs(scenario), kinds })
+        Ok(Self { scenario: scenario.clone(), rules, inputs: inputs(scenario), kinds, meter: None })
+    }
+
+    /// The same with every run of [`Self::at`] counted, and refused once the meter says so.
+    #[must_use]
+    pub fn metered(self, meter: Arc<Meter>) -> Self {
+        Self { meter: Some(meter), ..self }
     }
 
     /// The scenario as it was given.
@@ -156,8 +169,11 @@ impl Evaluator {
     /// Values that are outside of their physical range or clash make a failed run, not an error.
     ///
     /// # Errors
-    /// [`StudyError::NoInput`] and [`StudyError::NotFinite`].
+    /// [`StudyError::NoInput`] and [`StudyError::NotFinite`]; [`StudyError::Stopped`] where a meter refuses the run.
     pub fn at(&self, values: &[(usize, f64)]) -> Result<Run, StudyError> {
+        if self.meter.as_ref().is_some_and(|meter| !meter.count()) {
+            return Err(StudyError::Stopped);
+        }
         Ok(self.scenario_at(values)?.map_or_else(|| self.failed(Failure::Clash), |changed| self.run(&changed)))
     }
 
