@@ -2,6 +2,7 @@
 mod band;
 mod compare;
 mod evaluate;
+mod field;
 mod joe_kuo;
 mod meter;
 mod rank;
@@ -11,10 +12,12 @@ mod sobol;
 mod spread;
 mod vary;
 mod worst;
+mod zero;
 
 pub use band::{NORMAL_WIDTH, Quantile};
 pub use compare::{Comparison, InputChange, NumberChange, SAME_SHARE, Side, VerdictChange, compare};
 pub use evaluate::{Evaluator, Failure, Run, StudyError};
+pub use field::{Axis, Cell, Edge, Field, MOST_STEPS, Of, Piece, field, zero_line};
 pub use meter::Meter;
 pub use rank::{Bar, Importance, Part, Ranking, Target, bars, importance, importance_of};
 pub use remedy::{ADJUSTABLE, MASS_MULTIPLE, MULTIPLE, REACH_M, Remedies, Remedy, Way, remedies};
