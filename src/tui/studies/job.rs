@@ -2,8 +2,8 @@
 use super::name::{Name, names};
 use crate::scenario::{Input, Scenario};
 use crate::study::{
-    ADJUSTABLE, Axis, Bar, Evaluator, Field, Meter, Ranking, Remedies, Spread, StudyError, Target, Variation, WorstFound,
-    bars, field, importance, remedies, spread, usual_range, vary, worst_found,
+    ADJUSTABLE, Axis, Bar, Evaluator, Field, Meter, Ranking, Remedies, Spread, StudyError, Target, Variation,
+    WorstFound, bars, field, importance, remedies, spread, usual_range, vary, worst_found,
 };
 use crate::tui::message::Message;
 use std::ops::{ControlFlow, RangeInclusive};

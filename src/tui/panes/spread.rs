@@ -1,0 +1,310 @@
+//! The view Spread: what the bands do to the checks, how the governing number spreads, and which band matters.
+use super::state::{self, grouped};
+use crate::margin::{Margin, Verdict};
+use crate::quantity::{Dimension, UnitSystem, format_si};
+use crate::study::{CheckSpread, Importance, NumberSpread, Place, QUANTILE_SHARES, Share, Worst};
+use crate::tui::model::Model;
+use crate::tui::studies::{Lane, Ranked, Searched, Spreading};
+use crate::tui::text::{cells, wrap};
+use ratatui::buffer::Buffer;
+use ratatui::layout::Rect;
+use ratatui::style::Style;
+
+/// Column, words and style of a row.
+type Row = (u16, String, Style);
+
+const INDENT: u16 = 2;
+/// From this width on counts and worst stand beside histogram and ranking.
+const TWO_FROM: u16 = 84;
+/// Bars of the histogram that are joined into one row.
+const JOINED: usize = 4;
+
+/// The rows of the left and the right column; all in the left one where there is room for one only.
+fn columns(model: &Model, width: u16) -> (Vec<Row>, Vec<Row>) {
+    if !model.has_bands() {
+        let words = "no input is a band: type one such as 80..100..120 kg to see what it does";
+        let rows = wrap(words, usize::from(width.saturating_sub(2))).into_iter();
+        return (rows.map(|line| (1, line, model.theme.plain())).collect(), Vec::new());
+    }
+    if width < TWO_FROM {
+        let mut rows = left(model, width);
+        rows.extend(right(model, width));
+        return (rows, Vec::new());
+    }
+    let half = width / 2;
+    (left(model, half), right(model, width - half))
+}
+
+fn left(model: &Model, width: u16) -> Vec<Row> {
+    let mut rows = lane_rows(model, Lane::Spread, width);
+    if let Some(found) = model.shelf.spread() {
+        rows.extend(share_rows(model, found, width));
+    }
+    rows.extend(lane_rows(model, Lane::Bands, width));
+    if let Some(found) = model.shelf.bands() {
+        rows.extend(worst_rows(model, found, width));
+    }
+    rows
+}
+
+fn right(model: &Model, width: u16) -> Vec<Row> {
+    let mut rows = Vec::new();
+    if let Some(found) = model.shelf.spread() {
+        rows.extend(histogram_rows(model, found, width));
+    }
+    rows.extend(lane_rows(model, Lane::Ranking, width));
+    if let Some(found) = model.shelf.ranking() {
+        rows.extend(ranking_rows(model, found, width));
+    }
+    rows
+}
+
+fn lane_rows(model: &Model, lane: Lane, width: u16) -> Vec<Row> {
+    let Some((words, style)) = state::words(model, lane) else { return Vec::new() };
+    wrap(&words, usize::from(width.saturating_sub(1))).into_iter().map(|line| (0, line, style)).collect()
+}
+
+fn plain(rows: &mut Vec<Row>, words: &str, width: u16, style: Style) {
+    rows.extend(
+        wrap(words, usize::from(width.saturating_sub(INDENT + 1))).into_iter().map(|line| (INDENT, line, style)),
+    );
+}
+
+fn percent(share: f64) -> String {
+    let percent = share * 100.0;
+    if percent == 0.0 || percent >= 10.0 { format!("{percent:.0}") } else { format!("{percent:.2}") }
+}
+
+/// `3.1 % (2.8 to 3.4 %)`.
+fn share_words(share: &Share) -> String {
+    format!("{} % ({} to {} %)", percent(share.share), percent(share.low), percent(share.high))
+}
+
+fn share_rows(model: &Model, found: &Spreading, width: u16) -> Vec<Row> {
+    let (theme, spread) = (model.theme, &found.spread);
+    let mut rows = vec![(0, "how often short, with 95 % interval".to_owned(), theme.heading())];
+    let part =
+        if spread.is_partial() { format!(" of {}, stopped: a part", grouped(spread.asked)) } else { String::new() };
+    let failed =
+        if spread.failed > 0 { format!("; {} failed, counted as open", grouped(spread.failed)) } else { String::new() };
+    let lead = format!("{} samples{part}, seed {}{failed}", grouped(spread.samples), spread.seed);
+    let style = if spread.is_partial() || spread.failed > 0 { theme.fault() } else { theme.quiet() };
+    plain(&mut rows, &lead, width, style);
+    let matters = |check: &&CheckSpread| check.short.count > 0 || check.open > 0;
+    let mut listed: Vec<&CheckSpread> = spread.checks.iter().filter(matters).collect();
+    listed.sort_by_key(|check| std::cmp::Reverse(check.not_held.count));
+    for check in &listed {
+        let label = label(found.names.iter().find(|name| name.kind == check.kind).map(|name| &name.margin));
+        let open = if check.open > 0 {
+            format!(", open {} %", percent(ratio(check.open, spread.samples)))
+        } else {
+            String::new()
+        };
+        let verdict = if check.short.count > 0 { Verdict::Short } else { Verdict::Open };
+        rows.extend(pair(&label, &format!("{}{open}", share_words(&check.short)), width, theme.verdict(verdict)));
+    }
+    let never = spread.checks.len() - listed.len();
+    if never > 0 {
+        let most = spread.checks.iter().find(|check| check.short.count == 0).map_or(0.0, |check| check.short.high);
+        let words = format!("{never} checks never short or open: 0 % (0 to {} %)", percent(most));
+        plain(&mut rows, &words, width, theme.plain());
+    }
+    rows
+}
+
+#[expect(clippy::cast_precision_loss, reason = "counts of samples are small")]
+fn ratio(count: usize, of: usize) -> f64 {
+    count as f64 / of.max(1) as f64
+}
+
+fn label(margin: Option<&Margin>) -> String {
+    margin.map_or_else(|| "a check within the bands".to_owned(), |margin| margin.label.clone())
+}
+
+/// A label and what stands at the right end, in one row or two.
+fn pair(label: &str, right: &str, width: u16, style: Style) -> Vec<Row> {
+    let room = width.saturating_sub(INDENT + 1);
+    if cells(label) + 2 + cells(right) <= room {
+        let gap = usize::from(room - cells(label) - cells(right));
+        return vec![(INDENT, format!("{label}{}{right}", " ".repeat(gap)), style)];
+    }
+    let first = wrap(label, usize::from(room)).into_iter().map(|line| (INDENT, line, style));
+    let second = wrap(right, usize::from(room))
+        .into_iter()
+        .map(|line| (INDENT + room.saturating_sub(cells(&line)), line, style));
+    first.chain(second).collect()
+}
+
+fn worst_rows(model: &Model, found: &Searched, width: u16) -> Vec<Row> {
+    let theme = model.theme;
+    let mut rows = vec![(0, "worst found in the bands".to_owned(), theme.heading())];
+    let how = if found.found.all_corners { "every corner and inside" } else { "a spread of points, refined" };
+    plain(&mut rows, &format!("{} runs: {how}", grouped(found.found.runs)), width, theme.quiet());
+    let mut checks: Vec<&Worst> = found.found.checks.iter().filter(|worst| varies(worst)).collect();
+    checks.sort_by(|a, b| b.verdict.cmp(&a.verdict).then_with(|| relative(a).total_cmp(&relative(b))));
+    for worst in &checks {
+        let name = found.names.iter().find(|name| name.kind == worst.kind).map(|name| &name.margin);
+        let dimension = name.map(|margin| margin.dimension);
+        let head = format!("{} {} {}", worst.verdict.symbol(), worst.verdict.word(), label(name));
+        rows.extend(pair(&head, &rooms(worst, dimension, model.units), width, theme.verdict(worst.verdict)));
+        let stands = stands(found, worst);
+        let room = usize::from(width.saturating_sub(INDENT + 3));
+        rows.extend(wrap(&stands, room).into_iter().map(|line| (INDENT + 2, line, theme.quiet())));
+    }
+    let same = found.found.checks.len() - checks.len();
+    if same > 0 {
+        plain(&mut rows, &format!("{same} checks do not depend on the bands"), width, theme.plain());
+    }
+    rows
+}
+
+fn varies(worst: &Worst) -> bool {
+    let room = |check: &Option<crate::margin::Check>| check.and_then(|check| check.margin);
+    worst.verdict != Verdict::Holds && worst.typical.map(|check| check.verdict) != Some(worst.verdict)
+        || room(&worst.typical) != room(&worst.worst)
+}
+
+fn relative(worst: &Worst) -> f64 {
+    worst.worst.map_or(f64::INFINITY, |check| check.relative())
+}
+
+/// `+0.31 m -> -0.12 m`: room at the typical values and at the worst found.
+fn rooms(worst: &Worst, dimension: Option<Dimension>, units: UnitSystem) -> String {
+    let room = |check: Option<crate::margin::Check>| {
+        let found = check.and_then(|check| check.margin).zip(dimension);
+        found.map_or_else(|| "open".to_owned(), |(si, dimension)| signed(si, dimension, units))
+    };
+    format!("{} -> {}", room(worst.typical), room(worst.worst))
+}
+
+fn signed(si: f64, dimension: Dimension, units: UnitSystem) -> String {
+    format!("{}{}", if si >= 0.0 { "+" } else { "" }, format_si(si, dimension, units))
+}
+
+/// `subject.mass high 120 kg, line.stiffness low 50 kN/m`.
+fn stands(found: &Searched, worst: &Worst) -> String {
+    let one = |stand: &crate::study::Stand| {
+        let input = found.inputs.get(stand.input)?;
+        let place = match stand.place {
+            Place::Low => "low",
+            Place::High => "high",
+            Place::Inside => "inside",
+            Place::Anywhere => return None,
+        };
+        let value = crate::tui::map::text(input, stand.value);
+        Some(format!("{} {place} {value}", input.path))
+    };
+    let listed: Vec<String> = worst.stands.iter().filter_map(one).collect();
+    if listed.is_empty() { "at the typical values".to_owned() } else { format!("with {}", listed.join(", ")) }
+}
+
+/// The number behind the governing check.
+fn governing<'s>(model: &Model, found: &'s Spreading) -> Option<(&'s NumberSpread, Option<&'s Margin>)> {
+    let margin = model.answer.current().and_then(|report| report.margins.get(model.check))?;
+    let id = if margin.id.starts_with("clearance.") { margin.id.as_str() } else { number_id(&margin.id) };
+    let number = found.spread.numbers.iter().find(|number| number.id == id)?;
+    let own = found.names.iter().find(|name| name.margin.id == margin.id).map(|name| &name.margin);
+    Some((number, own.filter(|_| id == margin.id || number_id(&margin.id) == id)))
+}
+
+/// The key number that a check looks at; the arrest force for those without one.
+fn number_id(check: &str) -> &'static str {
+    match check {
+        "anchor_load" => "anchor_force_peak",
+        "total_fall_distance" | "arrest_distance" => "total_fall_distance",
+        "free_fall" => "free_fall_distance",
+        "absorber_stroke" | "deceleration_distance" => "deployed_length",
+        _ => "arrest_force_peak",
+    }
+}
+
+fn histogram_rows(model: &Model, found: &Spreading, width: u16) -> Vec<Row> {
+    let theme = model.theme;
+    let Some((number, _)) = governing(model, found) else { return Vec::new() };
+    let show = |si: f64| format_si(si, number.dimension, model.units);
+    let (name, about) = number.id.split_once('.').unwrap_or((&number.id, ""));
+    let title = format!("{} {}", name.replace('_', " "), about.replace('_', " "));
+    let mut rows = vec![(0, format!("how {} spreads", title.trim()), theme.heading())];
+    let [least, .., most] = number.quantiles;
+    let joined: Vec<usize> = number.bars.chunks(JOINED).map(|bars| bars.iter().sum()).collect();
+    let tallest = joined.iter().copied().max().unwrap_or(1).max(1);
+    let room = width.saturating_sub(36).clamp(6, 30);
+    let step = (most - least) / f64::from(u32::try_from(joined.len()).unwrap_or(1).max(1));
+    let mut from = least;
+    for count in &joined {
+        let bar = super::plot::place(ratio(*count, tallest), room + 1);
+        let bar = if *count > 0 { bar.max(1) } else { 0 };
+        let ends = format!("{} to {}", show(from), show(from + step));
+        let line = format!("{ends:<20} {:>5} % {}", percent(ratio(*count, number.count)), "#".repeat(usize::from(bar)));
+        rows.push((INDENT, line, theme.plain()));
+        from += step;
+    }
+    let at = |share: f64| QUANTILE_SHARES.iter().position(|known| *known == share).map(|at| show(number.quantiles[at]));
+    if let (Some(low), Some(middle), Some(high)) = (at(0.05), at(0.5), at(0.95)) {
+        plain(&mut rows, &format!("half below {middle}; 90 % between {low} and {high}"), width, theme.quiet());
+    }
+    if number.missing > 0 {
+        plain(&mut rows, &format!("{} samples do not give it", grouped(number.missing)), width, theme.fault());
+    }
+    rows
+}
+
+fn ranking_rows(model: &Model, found: &Ranked, width: u16) -> Vec<Row> {
+    let theme = model.theme;
+    let margin = &found.name.margin;
+    let mut rows = vec![(0, format!("which band moves the margin of {}", margin.label), theme.heading())];
+    plain(&mut rows, "one band at a time, low to high:", width, theme.quiet());
+    let reach = |bar: &crate::study::Bar| bar.reach();
+    let longest = found.bars.iter().filter_map(reach).fold(0.0, f64::max);
+    for bar in &found.bars {
+        let Some(input) = found.inputs.get(bar.input) else { continue };
+        let end =
+            |si: Option<f64>| si.map_or_else(|| "open".to_owned(), |si| signed(si, margin.dimension, model.units));
+        let length =
+            bar.reach().map_or(0, |reach| super::plot::place(if longest > 0.0 { reach / longest } else { 0.0 }, 9));
+        let words = format!("{} to {} {:<8}", end(bar.low), end(bar.high), "#".repeat(usize::from(length)));
+        rows.extend(pair(&input.path, &words, width, theme.plain()));
+    }
+    if found.ranking.inputs.is_empty() {
+        plain(&mut rows, "the margin does not vary over the bands", width, theme.plain());
+        return rows;
+    }
+    plain(&mut rows, "share of the variance, alone | with others (95 %):", width, theme.quiet());
+    let mut listed: Vec<&Importance> = found.ranking.inputs.iter().collect();
+    listed.sort_by(|a, b| b.total.value.total_cmp(&a.total.value));
+    for importance in listed {
+        let Some(input) = found.inputs.get(importance.input) else { continue };
+        let part = |part: crate::study::Part| format!("{:.2} ({:.2} to {:.2})", part.value, part.low, part.high);
+        let words = format!("{} | {}", part(importance.first), part(importance.total));
+        rows.extend(pair(&input.path, &words, width, theme.plain()));
+    }
+    if found.ranking.without_value > 0 {
+        let words =
+            format!("{} of {} points left out: no margin there", found.ranking.without_value, found.ranking.points);
+        plain(&mut rows, &words, width, theme.fault());
+    }
+    rows
+}
+
+/// The last row that may stand first.
+#[must_use]
+pub fn last_first(model: &Model, area: Rect) -> usize {
+    let (left, right) = columns(model, area.width);
+    left.len().max(right.len()).saturating_sub(usize::from(area.height.saturating_sub(1)))
+}
+
+/// Draws it from the row that the model is scrolled to.
+pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
+    let (left, right) = columns(model, area.width);
+    if right.is_empty() {
+        return super::draw_text(buffer, area, "Spread", &left, model.spread_row, model.theme);
+    }
+    let half = area.width / 2;
+    let rows = usize::from(area.height.saturating_sub(1));
+    let first = model.spread_row.min(left.len().max(right.len()).saturating_sub(rows));
+    super::draw_text(buffer, Rect { width: half, ..area }, "Spread", &left, first, model.theme);
+    let area = Rect { x: area.x + half, width: area.width - half, ..area };
+    for (line, (indent, text, style)) in (1..area.height).zip(right.iter().skip(first)) {
+        crate::tui::text::put(buffer, area, *indent, line, text, *style);
+    }
+}
