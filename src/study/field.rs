@@ -6,7 +6,7 @@ use rayon::prelude::*;
 use std::ops::{ControlFlow, RangeInclusive};
 
 /// Most values along one input.
-pub const MOST_STEPS: usize = 1000;
+pub const MOST_STEPS: usize = 400;
 /// Cells that are run between two looks at whether to stop, at least; always whole rows.
 const BATCH: usize = 512;
 

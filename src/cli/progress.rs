@@ -1,0 +1,109 @@
+//! How far a long command is, on stderr, and Ctrl-C, which stops it with what it has.
+use super::output;
+use std::io::{self, IsTerminal};
+use std::ops::ControlFlow;
+use std::sync::Arc;
+use std::sync::atomic::{AtomicBool, Ordering};
+use std::time::{Duration, Instant};
+
+/// Nothing is told of a command that takes less.
+const FIRST: Duration = Duration::from_secs(1);
+/// On a terminal the line is written anew this often; elsewhere each line waits twice as long as the one before.
+const AGAIN: Duration = Duration::from_millis(200);
+
+/// Watches one long command.
+#[derive(Debug)]
+pub struct Progress {
+    what: &'static str,
+    total: usize,
+    start: Instant,
+    next: Duration,
+    is_terminal: bool,
+    drawn: bool,
+    stop: Arc<AtomicBool>,
+}
+
+impl Progress {
+    /// Starts the clock and listens to Ctrl-C: the first stops the command with what it has, a second ends the program.
+    pub fn new(what: &'static str, total: usize) -> Self {
+        let stop = Arc::new(AtomicBool::new(false));
+        listen(&stop);
+        let is_terminal = io::stderr().is_terminal();
+        Self { what, total, start: Instant::now(), next: FIRST, is_terminal, drawn: false, stop }
+    }
+
+    /// Tells how much is done, and breaks off after Ctrl-C.
+    pub fn step(&mut self, done: usize) -> ControlFlow<()> {
+        let passed = self.start.elapsed();
+        if passed >= self.next && done < self.total {
+            self.tell(done, passed);
+        }
+        if self.stopped() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
+    }
+
+    /// True after Ctrl-C.
+    pub fn stopped(&self) -> bool {
+        self.stop.load(Ordering::Relaxed)
+    }
+
+    fn tell(&mut self, done: usize, passed: Duration) {
+        let words = format!("{done} of {} {}, {}", self.total, self.what, left(done, self.total, passed));
+        if self.is_terminal {
+            output::diagnostics(&format!("\r{words}\u{1b}[K"));
+            self.drawn = true;
+            self.next = passed + AGAIN;
+        } else {
+            output::message(&words);
+            self.next = passed * 2;
+        }
+    }
+}
+
+impl Drop for Progress {
+    fn drop(&mut self) {
+        if self.drawn {
+            output::diagnostics("\r\u{1b}[K");
+        }
+    }
+}
+
+/// The time left if the rest goes as fast as what is done, in whole seconds, rounded up.
+fn left(done: usize, total: usize, passed: Duration) -> String {
+    if done == 0 {
+        return "time left not known yet".to_owned();
+    }
+    #[expect(clippy::cast_precision_loss, reason = "an estimate for reading")]
+    let seconds = (passed.as_secs_f64() * (total - done) as f64 / done as f64).ceil();
+    format!("about {seconds:.0} s left")
+}
+
+#[cfg(unix)]
+fn listen(stop: &Arc<AtomicBool>) {
+    use signal_hook::{consts::SIGINT, flag};
+    // Without a handler Ctrl-C ends the program at once, as it does by itself: nothing to be told.
+    let _ = flag::register_conditional_default(SIGINT, Arc::clone(stop));
+    let _ = flag::register(SIGINT, Arc::clone(stop));
+}
+
+#[cfg(not(unix))]
+const fn listen(_stop: &Arc<AtomicBool>) {}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn the_time_left_goes_by_what_is_done() {
+        assert_eq!(left(25, 100, Duration::from_secs(2)), "about 6 s left");
+        assert_eq!(left(99, 100, Duration::from_secs(2)), "about 1 s left");
+        assert_eq!(left(0, 100, Duration::from_secs(2)), "time left not known yet");
+    }
+
+    #[test]
+    fn a_stopped_command_breaks_off() {
+        let mut progress = Progress::new("cells", 10);
+        assert!(progress.step(1).is_continue());
+        progress.stop.store(true, Ordering::Relaxed);
+        assert!(progress.step(2).is_break() && progress.stopped());
+    }
+}
