@@ -1,8 +1,9 @@
 //! `compare`, `vary` and `remedy`: many runs, each well under a second.
 use super::exit::Code;
+use super::interrupt::Interrupt;
 use super::options::{CompareArgs, RemedyArgs, VaryArgs};
 use super::output::{self, PAINT};
-use super::run::load_and_report;
+use super::run::{load_and_judge, load_and_report};
 use crate::margin::worst;
 use crate::quantity::parse_quantity;
 use crate::sheet::{
@@ -14,7 +15,9 @@ use std::ops::RangeInclusive;
 
 /// Prints what differs between two files.
 pub fn compare(args: &CompareArgs) -> Code {
-    let ((a_file, a), (b_file, b)) = match (load_and_report(&args.first), load_and_report(&args.second)) {
+    let interrupt = Interrupt::listen();
+    let both = (load_and_judge(&args.first, &interrupt), load_and_judge(&args.second, &interrupt));
+    let ((a_file, a), (b_file, b)) = match both {
         (Ok(a), Ok(b)) => (a, b),
         (a, b) => {
             let failures: Vec<_> = [a.err(), b.err()].into_iter().flatten().collect();
@@ -29,6 +32,10 @@ pub fn compare(args: &CompareArgs) -> Code {
         compare_text(&found, &a, &b, args.units.system(), PAINT)
     };
     output::results(&text);
+    if interrupt.is_pressed() {
+        interrupt.tell();
+        return Code::Interrupted;
+    }
     if found.is_worse() { Code::NotHeld } else { Code::Holds }
 }
 
