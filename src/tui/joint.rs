@@ -1,7 +1,9 @@
 //! The word of a check while the bands are being searched: none is called final before the worst is found.
 use super::model::Model;
-use super::studies::{Lane, State};
+use super::studies::{Lane, SEED, State};
 use crate::margin::{Margin, Verdict};
+use crate::sheet::ReportBands;
+use crate::study::{Bands, Spread};
 
 /// What may be said of a check.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -65,7 +67,7 @@ impl Model {
     }
 
     fn word(&self, verdict: Verdict) -> Word {
-        let is_known = !self.has_bands() || self.bands_are_in();
+        let is_known = !self.has_bands() || self.bands().is_some();
         match (verdict, is_known, &self.shelf.slot(Lane::Bands).state) {
             (Verdict::Holds, false, State::Stopped | State::Failed(_)) => Word::Unsearched,
             (Verdict::Holds, false, _) => Word::Searching,
@@ -73,8 +75,26 @@ impl Model {
         }
     }
 
-    /// Whether the present report speaks of the bands.
-    fn bands_are_in(&self) -> bool {
-        self.shelf.bands().is_some()
+    /// What the bands do to the checks of the present report, where it is known.
+    #[must_use]
+    pub fn bands(&self) -> Option<&ReportBands> {
+        self.answer.current()?.bands.as_ref()
+    }
+
+    /// Puts what is known of the bands into the present report; the chosen check stays chosen.
+    pub fn add_bands(&mut self) {
+        let Some(found) = self.shelf.bands().cloned() else { return };
+        let spread = self.shelf.spread().map_or_else(|| Spread::empty(0, SEED), |found| found.spread.clone());
+        let Some(report) = self.answer.report.as_mut().filter(|_| self.answer.fault.is_none()) else { return };
+        let chosen = report.margins.get(self.check).map(|margin| margin.id.clone());
+        let is_governing = self.check == 0;
+        if let Err(error) = report.add_bands(Bands { found, spread }) {
+            return self.complain(error.to_string());
+        }
+        let at = report.margins.iter().position(|margin| Some(&margin.id) == chosen.as_ref());
+        self.check = if is_governing { 0 } else { at.unwrap_or(0) };
+        if self.kept.generation == self.generation {
+            self.kept.report = Some(report.clone());
+        }
     }
 }

@@ -183,7 +183,7 @@ fn seen(mapped: &Mapped, point: [f64; 2], units: UnitSystem) -> Seen {
         || "nothing to judge".to_owned(),
         |check| {
             let margin = mapped.evaluator.margin(&run, check, units);
-            format!("{} {}", margin.label, pane::room(&margin, units))
+            format!("{} ({})", pane::room(&margin, units), margin.label)
         },
     );
     Seen { verdict, words }

@@ -30,8 +30,11 @@ impl Model {
 
 /// Takes the answer of a study.
 pub(super) fn studied(model: &mut Model, lane: Lane, ticket: u64, result: Result<Findings, String>) {
-    model.shelf.take(lane, ticket, result);
+    if !model.shelf.take(lane, ticket, result) {
+        return;
+    }
     match lane {
+        Lane::Bands | Lane::Spread => model.add_bands(),
         Lane::Map => model.look_at_point(),
         Lane::Remedies => model.remedy = 0,
         _ => {}

@@ -25,7 +25,12 @@ fn rows(model: &Model, width: u16) -> Vec<Row> {
         rows.push((0, "one of the two states has no run to compare".to_owned(), theme.fault()));
         return rows;
     };
-    rows.push((0, "verdicts that changed".to_owned(), theme.heading()));
+    let which = match (model.compares_bands(), model.has_bands()) {
+        (true, _) => "verdicts that changed, bands included",
+        (false, true) => "verdicts that changed at typical values",
+        (false, false) => "verdicts that changed",
+    };
+    rows.push((0, which.to_owned(), theme.heading()));
     found.verdicts.iter().for_each(|change| rows.extend(verdict_rows(model, change, width)));
     none(&mut rows, found.verdicts.is_empty(), theme.plain());
     rows.push((0, "inputs that differ".to_owned(), theme.heading()));

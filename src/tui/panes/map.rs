@@ -104,10 +104,10 @@ fn share(axis: &Axis, value: f64) -> f64 {
 }
 
 fn draw_line(frame: &mut Frame, cells: Rect, model: &Model, field: &Field) {
-    for piece in &field.line {
-        let middle = (f64::midpoint(piece[0].x, piece[1].x), f64::midpoint(piece[0].y, piece[1].y));
-        let column = place(share(&field.across, middle.0), cells.width);
-        let row = place(1.0 - share(&field.up, middle.1), cells.height);
+    // The points of the line stand on the grid, which has a cell of the screen for each of its own.
+    for edge in field.line.iter().flatten() {
+        let column = place(share(&field.across, edge.x), cells.width);
+        let row = place(1.0 - share(&field.up, edge.y), cells.height);
         put(frame.buffer_mut(), cells, column, row, LINE, model.theme.heading());
     }
 }
@@ -131,28 +131,26 @@ fn draw_points(frame: &mut Frame, cells: Rect, model: &Model, mapped: &Mapped) {
 fn draw_words(frame: &mut Frame, area: Rect, model: &Model, mapped: &Mapped) {
     let theme = model.theme;
     let [across, up] = &mapped.inputs;
-    let across_words = format!("{} to the right, {}", across.path, across.measure.unit.symbol());
-    let legend = format!("{NOW} now  {POINT} point  {LINE} line of change");
     let width = usize::from(area.width);
-    let first = format!("{across_words}   {legend}");
-    let short = format!("{} ->  {legend}", across.path);
-    let line = if wrap(&first, width).len() == 1 { first } else { fit(&short, width) };
+    let long = format!(
+        "{} to the right, {}   {NOW} now  {POINT} point  {LINE} where a verdict changes",
+        across.path,
+        across.measure.unit.symbol()
+    );
+    let short = format!("{} ->  {NOW} now {POINT} point {LINE} change", across.path);
+    let line = if wrap(&long, width).len() == 1 { long } else { fit(&short, width) };
     put(frame.buffer_mut(), area, 0, 0, &line, theme.quiet());
     let point = model.map_point(mapped);
     let Some(seen) = &model.map.seen else { return };
-    let values = format!("{} {}, {} {}", across.path, text(across, point[0]), up.path, text(up, point[1]));
     let who = if model.map.at.is_some() { "point" } else { "now" };
+    let values = format!("{}, {}", text(across, point[0]), text(up, point[1]));
     let keys = match (model.map.at.is_some(), model.pane == Pane::View) {
         (true, _) => format!("; {} writes it into the inputs", key_name(Command::IntoInputs)),
         (false, true) => "; arrows move a point".to_owned(),
         (false, false) => String::new(),
     };
     let verdict: Verdict = seen.verdict;
-    let words = format!("{who}: {} {}, {}; {values}{keys}", verdict.symbol(), verdict.word(), seen.words);
-    put_wrapped(
-        frame.buffer_mut(),
-        Rect { y: area.y + 1, height: area.height - 1, ..area },
-        &words,
-        theme.verdict(verdict),
-    );
+    let words = format!("{who} {values}: {} {} {}{keys}", verdict.symbol(), verdict.word(), seen.words);
+    let rest = Rect { y: area.y + 1, height: area.height.saturating_sub(1), ..area };
+    put_wrapped(frame.buffer_mut(), rest, &words, theme.verdict(verdict));
 }

@@ -2,9 +2,10 @@
 use super::state::{self, grouped};
 use crate::margin::{Margin, Verdict};
 use crate::quantity::{Dimension, UnitSystem, format_si};
-use crate::study::{CheckSpread, Importance, NumberSpread, Place, QUANTILE_SHARES, Share, Worst};
+use crate::sheet::place_words;
+use crate::study::{CheckSpread, Importance, NumberSpread, QUANTILE_SHARES, Share};
 use crate::tui::model::Model;
-use crate::tui::studies::{Lane, Ranked, Searched, Spreading};
+use crate::tui::studies::{Lane, Ranked, Spreading};
 use crate::tui::text::{cells, wrap};
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
@@ -41,9 +42,7 @@ fn left(model: &Model, width: u16) -> Vec<Row> {
         rows.extend(share_rows(model, found, width));
     }
     rows.extend(lane_rows(model, Lane::Bands, width));
-    if let Some(found) = model.shelf.bands() {
-        rows.extend(worst_rows(model, found, width));
-    }
+    rows.extend(worst_rows(model, width));
     rows
 }
 
@@ -135,96 +134,74 @@ fn pair(label: &str, right: &str, width: u16, style: Style) -> Vec<Row> {
     first.chain(second).collect()
 }
 
-fn worst_rows(model: &Model, found: &Searched, width: u16) -> Vec<Row> {
-    let theme = model.theme;
-    let mut rows = vec![(0, "worst found in the bands".to_owned(), theme.heading())];
-    let how = if found.found.all_corners { "every corner and inside" } else { "a spread of points, refined" };
-    plain(&mut rows, &format!("{} runs: {how}", grouped(found.found.runs)), width, theme.quiet());
-    let mut checks: Vec<&Worst> = found.found.checks.iter().filter(|worst| varies(worst)).collect();
-    checks.sort_by(|a, b| b.verdict.cmp(&a.verdict).then_with(|| relative(a).total_cmp(&relative(b))));
-    for worst in &checks {
-        let name = found.names.iter().find(|name| name.kind == worst.kind).map(|name| &name.margin);
-        let dimension = name.map(|margin| margin.dimension);
-        let head = format!("{} {} {}", worst.verdict.symbol(), worst.verdict.word(), label(name));
-        rows.extend(pair(&head, &rooms(worst, dimension, model.units), width, theme.verdict(worst.verdict)));
-        let stands = stands(found, worst);
+fn worst_rows(model: &Model, width: u16) -> Vec<Row> {
+    let (Some(report), Some(bands)) = (model.answer.current(), model.bands()) else { return Vec::new() };
+    let (theme, found) = (model.theme, &bands.study.found);
+    let mut rows = vec![(0, "worst found in the bands: room at typical -> worst".to_owned(), theme.heading())];
+    let how = if found.all_corners { "every corner, and inside" } else { "a part of the corners, and inside" };
+    let failed = if found.failed > 0 { format!("; {} failed, counted as open", found.failed) } else { String::new() };
+    plain(&mut rows, &format!("{} runs: {how}{failed}", grouped(found.runs)), width, theme.quiet());
+    let mut same = 0;
+    for (margin, band) in report.margins.iter().zip(&bands.margins) {
+        let room =
+            |of: Option<f64>| of.map_or_else(|| "open".to_owned(), |si| signed(si, margin.dimension, model.units));
+        let worst = band.worst.as_ref().and_then(|worst| worst.margin);
+        if worst == margin.margin && band.typical == Some(margin.verdict) {
+            same += 1;
+            continue;
+        }
+        let head = format!("{} {} {}", margin.verdict.symbol(), margin.verdict.word(), margin.label);
+        let rooms = format!("{} -> {}", room(margin.margin), room(worst));
+        rows.extend(pair(&head, &rooms, width, theme.verdict(margin.verdict)));
+        let open = if band.open_runs > 0 { format!("; {} runs open", grouped(band.open_runs)) } else { String::new() };
+        let inside = if band.corner { "" } else { ", inside the bands" };
+        let place = format!("at {}{inside}{open}", place_words(band, model.units));
         let room = usize::from(width.saturating_sub(INDENT + 3));
-        rows.extend(wrap(&stands, room).into_iter().map(|line| (INDENT + 2, line, theme.quiet())));
+        rows.extend(wrap(&place, room).into_iter().map(|line| (INDENT + 2, line, theme.quiet())));
     }
-    let same = found.found.checks.len() - checks.len();
     if same > 0 {
         plain(&mut rows, &format!("{same} checks do not depend on the bands"), width, theme.plain());
     }
     rows
 }
 
-fn varies(worst: &Worst) -> bool {
-    let room = |check: &Option<crate::margin::Check>| check.and_then(|check| check.margin);
-    worst.verdict != Verdict::Holds && worst.typical.map(|check| check.verdict) != Some(worst.verdict)
-        || room(&worst.typical) != room(&worst.worst)
-}
-
-fn relative(worst: &Worst) -> f64 {
-    worst.worst.map_or(f64::INFINITY, |check| check.relative())
-}
-
-/// `+0.31 m -> -0.12 m`: room at the typical values and at the worst found.
-fn rooms(worst: &Worst, dimension: Option<Dimension>, units: UnitSystem) -> String {
-    let room = |check: Option<crate::margin::Check>| {
-        let found = check.and_then(|check| check.margin).zip(dimension);
-        found.map_or_else(|| "open".to_owned(), |(si, dimension)| signed(si, dimension, units))
-    };
-    format!("{} -> {}", room(worst.typical), room(worst.worst))
-}
-
 fn signed(si: f64, dimension: Dimension, units: UnitSystem) -> String {
     format!("{}{}", if si >= 0.0 { "+" } else { "" }, format_si(si, dimension, units))
 }
 
-/// `subject.mass high 120 kg, line.stiffness low 50 kN/m`.
-fn stands(found: &Searched, worst: &Worst) -> String {
-    let one = |stand: &crate::study::Stand| {
-        let input = found.inputs.get(stand.input)?;
-        let place = match stand.place {
-            Place::Low => "low",
-            Place::High => "high",
-            Place::Inside => "inside",
-            Place::Anywhere => return None,
-        };
-        let value = crate::tui::map::text(input, stand.value);
-        Some(format!("{} {place} {value}", input.path))
-    };
-    let listed: Vec<String> = worst.stands.iter().filter_map(one).collect();
-    if listed.is_empty() { "at the typical values".to_owned() } else { format!("with {}", listed.join(", ")) }
-}
-
-/// The number behind the governing check.
-fn governing<'s>(model: &Model, found: &'s Spreading) -> Option<(&'s NumberSpread, Option<&'s Margin>)> {
+/// The number behind the chosen check, with its limit where that limits this very number.
+fn governing<'s>(model: &Model, found: &'s Spreading) -> Option<(&'s NumberSpread, Option<f64>)> {
     let margin = model.answer.current().and_then(|report| report.margins.get(model.check))?;
-    let id = if margin.id.starts_with("clearance.") { margin.id.as_str() } else { number_id(&margin.id) };
-    let number = found.spread.numbers.iter().find(|number| number.id == id)?;
-    let own = found.names.iter().find(|name| name.margin.id == margin.id).map(|name| &name.margin);
-    Some((number, own.filter(|_| id == margin.id || number_id(&margin.id) == id)))
+    let id = number_id(&margin.id).unwrap_or(&margin.id);
+    let number = found.spread.numbers.iter().find(|number| number.id == id);
+    let other = || found.spread.numbers.iter().find(|number| number.id == "arrest_force_peak");
+    match number {
+        Some(number) => Some((number, margin.limit)),
+        None => other().map(|number| (number, None)),
+    }
 }
 
-/// The key number that a check looks at; the arrest force for those without one.
-fn number_id(check: &str) -> &'static str {
+/// The key number that a check looks at, where it has another name.
+fn number_id(check: &str) -> Option<&'static str> {
     match check {
-        "anchor_load" => "anchor_force_peak",
-        "total_fall_distance" | "arrest_distance" => "total_fall_distance",
-        "free_fall" => "free_fall_distance",
-        "absorber_stroke" | "deceleration_distance" => "deployed_length",
-        _ => "arrest_force_peak",
+        "arrest_force" | "line_force" => Some("arrest_force_peak"),
+        "anchor_load" => Some("anchor_force_peak"),
+        "arrest_distance" => Some("total_fall_distance"),
+        "free_fall" => Some("free_fall_distance"),
+        "absorber_stroke" | "deceleration_distance" => Some("deployed_length"),
+        _ => None,
     }
 }
 
 fn histogram_rows(model: &Model, found: &Spreading, width: u16) -> Vec<Row> {
     let theme = model.theme;
-    let Some((number, _)) = governing(model, found) else { return Vec::new() };
+    let Some((number, limit)) = governing(model, found) else { return Vec::new() };
     let show = |si: f64| format_si(si, number.dimension, model.units);
     let (name, about) = number.id.split_once('.').unwrap_or((&number.id, ""));
     let title = format!("{} {}", name.replace('_', " "), about.replace('_', " "));
-    let mut rows = vec![(0, format!("how {} spreads", title.trim()), theme.heading())];
+    let title = format!("how {} spreads", title.trim());
+    let lines = wrap(&title, usize::from(width.saturating_sub(1))).into_iter();
+    let mut rows: Vec<Row> = lines.map(|line| (0, line, theme.heading())).collect();
     let [least, .., most] = number.quantiles;
     let joined: Vec<usize> = number.bars.chunks(JOINED).map(|bars| bars.iter().sum()).collect();
     let tallest = joined.iter().copied().max().unwrap_or(1).max(1);
@@ -235,7 +212,11 @@ fn histogram_rows(model: &Model, found: &Spreading, width: u16) -> Vec<Row> {
         let bar = super::plot::place(ratio(*count, tallest), room + 1);
         let bar = if *count > 0 { bar.max(1) } else { 0 };
         let ends = format!("{} to {}", show(from), show(from + step));
-        let line = format!("{ends:<20} {:>5} % {}", percent(ratio(*count, number.count)), "#".repeat(usize::from(bar)));
+        let is_last = from + 1.5 * step > most;
+        let holds = |limit: &f64| (from..from + step).contains(limit) || is_last && *limit == most;
+        let mark = limit.filter(holds).map_or_else(String::new, |limit| format!(" < limit {}", show(limit)));
+        let bars = "#".repeat(usize::from(bar));
+        let line = format!("{ends:<20} {:>5} % {bars}{mark}", percent(ratio(*count, number.count)));
         rows.push((INDENT, line, theme.plain()));
         from += step;
     }
@@ -252,7 +233,9 @@ fn histogram_rows(model: &Model, found: &Spreading, width: u16) -> Vec<Row> {
 fn ranking_rows(model: &Model, found: &Ranked, width: u16) -> Vec<Row> {
     let theme = model.theme;
     let margin = &found.name.margin;
-    let mut rows = vec![(0, format!("which band moves the margin of {}", margin.label), theme.heading())];
+    let title = format!("which band moves the margin of {}", margin.label);
+    let lines = wrap(&title, usize::from(width.saturating_sub(1))).into_iter();
+    let mut rows: Vec<Row> = lines.map(|line| (0, line, theme.heading())).collect();
     plain(&mut rows, "one band at a time, low to high:", width, theme.quiet());
     let reach = |bar: &crate::study::Bar| bar.reach();
     let longest = found.bars.iter().filter_map(reach).fold(0.0, f64::max);

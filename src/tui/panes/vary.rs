@@ -7,7 +7,7 @@ use crate::quantity::format_unit;
 use crate::study::{Crossing, Row};
 use crate::tui::model::Model;
 use crate::tui::studies::{Lane, Name, Varied};
-use crate::tui::text::{fit, put, put_right};
+use crate::tui::text::{cells, fit, put, put_right};
 use ratatui::Frame;
 use ratatui::layout::Rect;
 
@@ -29,7 +29,7 @@ pub fn draw(frame: &mut Frame, area: Rect, model: &Model) {
     let title = format!("Vary {} from {low} to {high}", varied.input.path);
     let room = usize::from(area.width);
     put(frame.buffer_mut(), area, 0, 0, &fit(&title, room), theme.heading());
-    let changes = change_lines(model, varied, area.width);
+    let changes = change_lines(varied, area.width);
     let rows = u16::try_from(changes.len()).unwrap_or(MOST_CHANGES).min(MOST_CHANGES).min(area.height / 3).max(1);
     let plot = Rect { y: area.y + 1, height: area.height.saturating_sub(3 + rows), ..area };
     let strip = Rect { y: plot.bottom(), height: 1, ..area };
@@ -102,7 +102,7 @@ fn draw_plot(frame: &mut Frame, area: Rect, model: &Model, varied: &Varied, name
 fn draw_now(frame: &mut Frame, area: Rect, model: &Model, now: &str, (here, range): (f64, (f64, f64))) {
     let field = super::plot::field(area);
     let column = place((here - range.0) / (range.1 - range.0), field.width);
-    let wide = crate::tui::text::cells(now);
+    let wide = cells(now);
     let column = if column + 2 + wide <= field.width { column + 2 } else { column.saturating_sub(wide + 1) };
     put(frame.buffer_mut(), field, column, 0, now, model.theme.play_head());
 }
@@ -138,7 +138,7 @@ fn word(row: &Row) -> Verdict {
 }
 
 /// One line for each value at which a check changes; those that change together share it.
-fn change_lines(model: &Model, varied: &Varied, width: u16) -> Vec<(String, Option<Verdict>)> {
+fn change_lines(varied: &Varied, width: u16) -> Vec<(String, Option<Verdict>)> {
     if varied.variation.crossings.is_empty() {
         let words = "no verdict changes in this range (typical values of the rest)";
         return crate::tui::text::wrap(words, usize::from(width)).into_iter().map(|line| (line, None)).collect();
@@ -150,10 +150,11 @@ fn change_lines(model: &Model, varied: &Varied, width: u16) -> Vec<(String, Opti
         let labels: Vec<&str> = group.iter().map(|at| label(varied, at)).collect();
         let first = labels.first().copied().unwrap_or_default();
         let more = if labels.len() > 1 { format!(" and {} more", labels.len() - 1) } else { String::new() };
-        let words = format!("at {value}: {first}{more} {} below, {} above", at.below.word(), at.above.word());
+        let long = format!("{value}: {first}{more} {} below, {} above", at.below.word(), at.above.word());
+        let short = format!("{value}: {first}{more} {} -> {}", at.below.symbol(), at.above.symbol());
+        let words = if cells(&long) <= width { long } else { short };
         Some((words, Some(at.below.max(at.above))))
     };
-    let _ = model;
     varied.variation.crossings.chunk_by(together).filter_map(line).collect()
 }
 

@@ -2,8 +2,9 @@
 use crate::estimate::{Estimate, EventKind};
 use crate::margin::Verdict;
 use crate::quantity::{Dimension, UnitSystem, format_si};
-use crate::sheet::{Report, governing_words};
+use crate::sheet::{Report, governing_words, worst_words};
 use crate::tui::command::{Command, key_name};
+use crate::tui::joint::Word;
 use crate::tui::model::Model;
 use crate::tui::text::{put, put_right, width, wrap};
 use ratatui::buffer::Buffer;
@@ -19,7 +20,7 @@ pub fn rows(model: &Model, columns: u16) -> u16 {
 /// Draws it.
 pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
     let (sentence, peak) = words(model);
-    let verdict = model.answer.current().map_or(Verdict::Open, |report| report.verdict);
+    let verdict = model.word_of_all().verdict();
     let lines = lines(&sentence, &peak, area.width);
     let inner = Rect { x: area.x + 1, width: area.width.saturating_sub(2), ..area };
     for (row, line) in (0..).zip(&lines) {
@@ -43,16 +44,14 @@ fn lines(sentence: &str, peak: &str, columns: u16) -> Vec<String> {
 fn words(model: &Model) -> (String, String) {
     if let Some(fault) = &model.answer.fault {
         let rest = if model.answer.report.is_some() { "; the numbers below are of earlier inputs" } else { "" };
-        return (format!("{}: {fault}{rest}", head(Verdict::Open)), String::new());
+        return (format!("{}: {fault}{rest}", Word::Final(Verdict::Open).head()), String::new());
     }
-    let Some(report) = &model.answer.report else { return (head(Verdict::Open), String::new()) };
-    let sentence = governing_words(&report.scenario, &report.margins, model.units);
-    (format!("{}  {sentence}", head(report.verdict)), peak(report, model.units))
-}
-
-/// `x SHORT`.
-fn head(verdict: Verdict) -> String {
-    format!("{} {}", verdict.symbol(), verdict.word().to_uppercase())
+    let Some(report) = &model.answer.report else { return (Word::Final(Verdict::Open).head(), String::new()) };
+    let mut sentence = governing_words(&report.scenario, &report.margins, model.units);
+    if let Some(worst) = report.margins.first().and_then(|margin| worst_words(report, margin, model.units)) {
+        sentence = format!("{sentence}; {worst}");
+    }
+    (format!("{}  {sentence}", model.word_of_all().head()), peak(report, model.units))
 }
 
 fn peak(report: &Report, units: UnitSystem) -> String {

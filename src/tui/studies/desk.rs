@@ -95,8 +95,15 @@ impl Running {
             self.since = Some(now);
         }
         let passed = self.since.map_or_else(Default::default, |since| now.duration_since(since));
-        Message::Progress { lane: self.lane, ticket: self.ticket, done, of: self.of, passed }
+        let of = self.of.or_else(|| self.meter.share().map(|share| whole(done, share)));
+        Message::Progress { lane: self.lane, ticket: self.ticket, done, of, passed }
     }
+}
+
+/// How much the whole is of which so much is this share.
+#[expect(clippy::cast_precision_loss, clippy::cast_possible_truncation, clippy::cast_sign_loss, reason = "for the eye")]
+fn whole(done: usize, share: f32) -> usize {
+    (done as f32 / share).round() as usize
 }
 
 /// Lets every other thread go first; without leave from the system it stays as it is.

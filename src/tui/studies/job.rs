@@ -2,8 +2,8 @@
 use super::name::{Name, names};
 use crate::scenario::{Input, Scenario};
 use crate::study::{
-    ADJUSTABLE, Axis, Bar, Evaluator, Field, Meter, Ranking, Remedies, Spread, StudyError, Target, Variation,
-    WorstFound, bars, field, importance, remedies, spread, usual_range, vary, worst_found,
+    self, ADJUSTABLE, Axis, Bar, Evaluator, Field, Meter, Ranking, Remedies, Spread, Step, StudyError, Target,
+    Variation, WorstFound, bars, field, importance, remedies, spread, usual_range, vary, worst_found,
 };
 use crate::tui::message::Message;
 use std::ops::{ControlFlow, RangeInclusive};
@@ -110,17 +110,6 @@ impl What {
     }
 }
 
-/// A search of the bands.
-#[derive(Clone, Debug)]
-pub struct Searched {
-    /// The checks.
-    pub names: Vec<Name>,
-    /// The inputs.
-    pub inputs: Vec<Input>,
-    /// What was found.
-    pub found: WorstFound,
-}
-
 /// One input across its range.
 #[derive(Clone, Debug)]
 pub struct Varied {
@@ -171,7 +160,7 @@ pub struct Ranked {
 #[derive(Clone, Debug)]
 pub enum Findings {
     /// Of [`What::Bands`].
-    Bands(Arc<Searched>),
+    Bands(Arc<WorstFound>),
     /// Of [`What::Vary`].
     Vary(Arc<Varied>),
     /// Of [`What::Map`].
@@ -238,11 +227,7 @@ impl Order {
             if meter.is_ending() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
         };
         Ok(match &self.what {
-            What::Bands => Findings::Bands(Arc::new(Searched {
-                found: worst_found(&evaluator)?,
-                names: names(&evaluator),
-                inputs: evaluator.inputs().to_vec(),
-            })),
+            What::Bands => Findings::Bands(Arc::new(worst_found(&evaluator, &|at| search_goes_on(at, meter))?)),
             What::Vary { path } => Findings::Vary(Arc::new(varied(&evaluator, path)?)),
             What::Map { paths, steps } => {
                 let [across, up] = [axis(&evaluator, &paths[0], steps[0])?, axis(&evaluator, &paths[1], steps[1])?];
@@ -252,12 +237,27 @@ impl Order {
             }
             What::Spread { samples } => {
                 let spread = spread(&evaluator, *samples, SEED, &mut watch)?;
-                Findings::Spread(Arc::new(Spreading { names: names(&evaluator), spread }))
+                let kinds = spread.checks.iter().map(|check| check.kind);
+                Findings::Spread(Arc::new(Spreading { names: names(&evaluator, kinds), spread }))
             }
             What::Ranking { check } => Findings::Ranking(Arc::new(ranked(&evaluator, check)?)),
             What::Remedies => Findings::Remedies(Arc::new(remedies(&evaluator)?)),
         })
     }
+}
+
+/// Share of a search that its first runs are taken for.
+const FIRST_SHARE: f32 = 0.3;
+
+/// Tells how far a search of the bands is; it goes on until nobody wants it.
+#[expect(clippy::cast_precision_loss, reason = "a share for the eye")]
+fn search_goes_on(at: study::Progress, meter: &Meter) -> ControlFlow<()> {
+    let share = at.done as f32 / at.of.max(1) as f32;
+    meter.tell_share(match at.step {
+        Step::Corners => FIRST_SHARE * share,
+        _ => FIRST_SHARE + (1.0 - FIRST_SHARE) * share,
+    });
+    if meter.is_dropped() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
 }
 
 fn no_range(path: &str) -> StudyError {
@@ -278,11 +278,11 @@ fn varied(evaluator: &Evaluator, path: &str) -> Result<Varied, StudyError> {
     let input = evaluator.index_of(path)?;
     let range = range(evaluator, input).ok_or_else(|| no_range(path))?;
     let variation = vary(evaluator, input, range.clone(), VARY_ROWS)?;
-    Ok(Varied { names: names(evaluator), input: evaluator.inputs()[input].clone(), range, variation })
+    Ok(Varied { names: names(evaluator, []), input: evaluator.inputs()[input].clone(), range, variation })
 }
 
 fn ranked(evaluator: &Evaluator, check: &str) -> Result<Ranked, StudyError> {
-    let names = names(evaluator);
+    let names = names(evaluator, []);
     let found = names.iter().find(|name| name.margin.id == check).or_else(|| names.first()).cloned();
     let name = found.ok_or_else(|| StudyError::NoPath { path: check.to_owned() })?;
     let target = Target::Margin(name.kind);

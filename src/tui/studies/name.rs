@@ -12,13 +12,17 @@ pub struct Name {
     pub margin: Margin,
 }
 
-/// Every check of an evaluator at its typical values.
+/// Every check of an evaluator at its typical values, and further ones that apply only elsewhere.
 #[must_use]
-pub fn names(evaluator: &Evaluator) -> Vec<Name> {
+pub fn names(evaluator: &Evaluator, further: impl IntoIterator<Item = CheckKind>) -> Vec<Name> {
     let typical = evaluator.typical();
-    let name = |&kind: &CheckKind| {
+    let mut kinds = evaluator.kinds().to_vec();
+    kinds.extend(further);
+    kinds.sort_unstable();
+    kinds.dedup();
+    let name = |kind: CheckKind| {
         let check = typical.check(kind).copied().unwrap_or_else(|| judge(kind, None, None));
         Name { kind, margin: evaluator.margin(&typical, &check, UnitSystem::Metric) }
     };
-    evaluator.kinds().iter().map(name).collect()
+    kinds.into_iter().map(name).collect()
 }

@@ -1,6 +1,6 @@
 //! The answers of studies, each with what it was asked for; an answer to anything else is never shown.
-use super::job::{Findings, Lane, Mapped, Ranked, Searched, Spreading, Varied, What};
-use crate::study::Remedies;
+use super::job::{Findings, Lane, Mapped, Ranked, Spreading, Varied, What};
+use crate::study::{Remedies, WorstFound};
 use std::time::Duration;
 
 /// How far a study is.
@@ -99,15 +99,17 @@ impl Shelf {
         self.samples = (4 * self.samples).min(MOST_SAMPLES);
     }
 
-    /// Takes an answer, unless it is not to the last question.
-    pub fn take(&mut self, lane: Lane, ticket: u64, result: Result<Findings, String>) {
+    /// Takes an answer, unless it is not to the last question; true when it was taken.
+    pub fn take(&mut self, lane: Lane, ticket: u64, result: Result<Findings, String>) -> bool {
         let slot = self.slot_mut(lane);
-        if slot.ticket == ticket && matches!(slot.state, State::Running(_)) {
+        let is_wanted = slot.ticket == ticket && matches!(slot.state, State::Running(_));
+        if is_wanted {
             slot.state = match result {
                 Ok(found) => State::Done(found),
                 Err(why) => State::Failed(why),
             };
         }
+        is_wanted
     }
 
     /// Takes note of how far a study is.
@@ -127,7 +129,7 @@ impl Shelf {
 
     /// The search of the bands.
     #[must_use]
-    pub fn bands(&self) -> Option<&Searched> {
+    pub fn bands(&self) -> Option<&WorstFound> {
         if let State::Done(Findings::Bands(found)) = &self.slot(Lane::Bands).state { Some(found) } else { None }
     }
 
