@@ -111,7 +111,9 @@ fn a_line_becomes_retractable_and_vertical_on_the_screen() {
 /// Column and row of the first cell that shows a symbol within the view.
 fn cell_of(bench: &Bench, symbol: char) -> (f64, f64) {
     let frame = bench.frame();
-    let found = frame.lines().zip(0_u32..).find_map(|(line, row)| {
+    // Below the row of tabs, which has names of its own.
+    let tabs = frame.lines().position(|line| line.contains("Elev")).unwrap_or(0);
+    let found = frame.lines().zip(0_u32..).skip(tabs + 1).find_map(|(line, row)| {
         let column = line.chars().zip(0_u32..).skip(45).find(|(known, _)| *known == symbol)?.1;
         Some((f64::from(column), f64::from(row)))
     });

@@ -69,6 +69,11 @@ fn plain(rows: &mut Vec<Row>, words: &str, width: u16, style: Style) {
     );
 }
 
+/// A heading, wrapped.
+fn heading(words: &str, width: u16, style: Style) -> Vec<Row> {
+    wrap(words, usize::from(width.saturating_sub(1))).into_iter().map(|line| (0, line, style)).collect()
+}
+
 fn percent(share: f64) -> String {
     let percent = share * 100.0;
     if percent == 0.0 || percent >= 10.0 { format!("{percent:.0}") } else { format!("{percent:.2}") }
@@ -81,7 +86,7 @@ fn share_words(share: &Share) -> String {
 
 fn share_rows(model: &Model, found: &Spreading, width: u16) -> Vec<Row> {
     let (theme, spread) = (model.theme, &found.spread);
-    let mut rows = vec![(0, "how often short, with 95 % interval".to_owned(), theme.heading())];
+    let mut rows = heading("how often short, with 95 % interval", width, theme.heading());
     let part =
         if spread.is_partial() { format!(" of {}, stopped: a part", grouped(spread.asked)) } else { String::new() };
     let failed =
@@ -137,7 +142,7 @@ fn pair(label: &str, right: &str, width: u16, style: Style) -> Vec<Row> {
 fn worst_rows(model: &Model, width: u16) -> Vec<Row> {
     let (Some(report), Some(bands)) = (model.answer.current(), model.bands()) else { return Vec::new() };
     let (theme, found) = (model.theme, &bands.study.found);
-    let mut rows = vec![(0, "worst found in the bands: room at typical -> worst".to_owned(), theme.heading())];
+    let mut rows = heading("worst found in the bands, room at typical -> worst", width, theme.heading());
     let how = if found.all_corners { "every corner, and inside" } else { "a part of the corners, and inside" };
     let failed = if found.failed > 0 { format!("; {} failed, counted as open", found.failed) } else { String::new() };
     plain(&mut rows, &format!("{} runs: {how}{failed}", grouped(found.runs)), width, theme.quiet());
@@ -200,12 +205,11 @@ fn histogram_rows(model: &Model, found: &Spreading, width: u16) -> Vec<Row> {
     let (name, about) = number.id.split_once('.').unwrap_or((&number.id, ""));
     let title = format!("{} {}", name.replace('_', " "), about.replace('_', " "));
     let title = format!("how {} spreads", title.trim());
-    let lines = wrap(&title, usize::from(width.saturating_sub(1))).into_iter();
-    let mut rows: Vec<Row> = lines.map(|line| (0, line, theme.heading())).collect();
+    let mut rows = heading(&title, width, theme.heading());
     let [least, .., most] = number.quantiles;
     let joined: Vec<usize> = number.bars.chunks(JOINED).map(|bars| bars.iter().sum()).collect();
     let tallest = joined.iter().copied().max().unwrap_or(1).max(1);
-    let room = width.saturating_sub(36).clamp(6, 30);
+    let room = width.saturating_sub(49).clamp(5, 24);
     let step = (most - least) / f64::from(u32::try_from(joined.len()).unwrap_or(1).max(1));
     let mut from = least;
     for count in &joined {
@@ -234,8 +238,7 @@ fn ranking_rows(model: &Model, found: &Ranked, width: u16) -> Vec<Row> {
     let theme = model.theme;
     let margin = &found.name.margin;
     let title = format!("which band moves the margin of {}", margin.label);
-    let lines = wrap(&title, usize::from(width.saturating_sub(1))).into_iter();
-    let mut rows: Vec<Row> = lines.map(|line| (0, line, theme.heading())).collect();
+    let mut rows = heading(&title, width, theme.heading());
     plain(&mut rows, "one band at a time, low to high:", width, theme.quiet());
     let reach = |bar: &crate::study::Bar| bar.reach();
     let longest = found.bars.iter().filter_map(reach).fold(0.0, f64::max);

@@ -10,6 +10,9 @@ use crate::tui::text::{put, put_right, width, wrap};
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 
+/// From this width on the sentence says where in the bands the worst found is.
+const WORST_PLACE_FROM: u16 = 100;
+
 /// Rows that the sentence and the peak force take.
 #[must_use]
 pub fn rows(model: &Model, columns: u16) -> u16 {
@@ -49,7 +52,10 @@ fn words(model: &Model) -> (String, String) {
     let Some(report) = &model.answer.report else { return (Word::Final(Verdict::Open).head(), String::new()) };
     let mut sentence = governing_words(&report.scenario, &report.margins, model.units);
     if let Some(worst) = report.margins.first().and_then(|margin| worst_words(report, margin, model.units)) {
-        sentence = format!("{sentence}; {worst}");
+        // Where it is narrow, Margins and Spread say at which ends of the bands that is.
+        let brief = worst.split_once(" (").map_or(worst.as_str(), |(brief, _)| brief);
+        let words = if model.size.width < WORST_PLACE_FROM { brief } else { &worst };
+        sentence = format!("{sentence}; {words}");
     }
     (format!("{}  {sentence}", model.word_of_all().head()), peak(report, model.units))
 }
