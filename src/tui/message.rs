@@ -43,8 +43,8 @@ pub enum Message {
         lane: Lane,
         /// Number of its order.
         ticket: u64,
-        /// The answer, or why there is none.
-        result: Result<Findings, String>,
+        /// The answer, none where it was stopped before there was any, or why there is none.
+        result: Result<Option<Findings>, String>,
     },
     /// How far a study is.
     Progress {

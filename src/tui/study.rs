@@ -29,7 +29,7 @@ impl Model {
 }
 
 /// Takes the answer of a study.
-pub(super) fn studied(model: &mut Model, lane: Lane, ticket: u64, result: Result<Findings, String>) {
+pub(super) fn studied(model: &mut Model, lane: Lane, ticket: u64, result: Result<Option<Findings>, String>) {
     if !model.shelf.take(lane, ticket, result) {
         return;
     }

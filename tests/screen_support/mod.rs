@@ -91,12 +91,21 @@ pub struct Bench {
 
 impl Bench {
     pub fn of(text: &str, columns: u16, rows: u16) -> Self {
+        Self::with_studies(text, columns, rows, true)
+    }
+
+    /// As [`Bench::of`], with every study left undone.
+    pub fn still(text: &str, columns: u16, rows: u16) -> Self {
+        Self::with_studies(text, columns, rows, false)
+    }
+
+    fn with_studies(text: &str, columns: u16, rows: u16, studies: bool) -> Self {
         let folder = tempfile::tempdir().unwrap();
         let path = folder.path().join("roof-edge.toml");
         std::fs::write(&path, text).unwrap();
         let mut model = Model::new(Document::open(&path).unwrap(), UnitSystem::Metric);
         let effects = update(&mut model, Message::Resize(columns, rows));
-        let mut bench = Self { folder, path, model, hold_studies: false, held: Vec::new() };
+        let mut bench = Self { folder, path, model, hold_studies: !studies, held: Vec::new() };
         let effects = bench.study(effects);
         bench.carry_out(effects);
         bench

@@ -210,7 +210,9 @@ impl Order {
     pub fn answer(&self, meter: &Arc<Meter>) -> Message {
         let answer = catch_unwind(AssertUnwindSafe(|| self.find(meter)));
         let result = match answer {
-            Ok(found) => found.map_err(|error| error.to_string()),
+            Ok(Ok(found)) => Ok(Some(found)),
+            Ok(Err(StudyError::Stopped)) => Ok(None),
+            Ok(Err(error)) => Err(error.to_string()),
             Err(_) => Err("an inner fault, please report it with the file".to_owned()),
         };
         Message::Studied { lane: self.what.lane(), ticket: self.ticket, result }
@@ -218,7 +220,7 @@ impl Order {
 
     fn find(&self, meter: &Arc<Meter>) -> Result<Findings, StudyError> {
         let evaluator = Evaluator::new(&self.scenario)?.metered(Arc::clone(meter));
-        if meter.is_dropped() {
+        if meter.is_ending() {
             return Err(StudyError::Stopped);
         }
         // Between two parts of a long study others may pass: they share its threads.

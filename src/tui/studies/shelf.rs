@@ -100,12 +100,13 @@ impl Shelf {
     }
 
     /// Takes an answer, unless it is not to the last question; true when it was taken.
-    pub fn take(&mut self, lane: Lane, ticket: u64, result: Result<Findings, String>) -> bool {
+    pub fn take(&mut self, lane: Lane, ticket: u64, result: Result<Option<Findings>, String>) -> bool {
         let slot = self.slot_mut(lane);
         let is_wanted = slot.ticket == ticket && matches!(slot.state, State::Running(_));
         if is_wanted {
             slot.state = match result {
-                Ok(found) => State::Done(found),
+                Ok(Some(found)) => State::Done(found),
+                Ok(None) => State::Stopped,
                 Err(why) => State::Failed(why),
             };
         }
