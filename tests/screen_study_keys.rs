@@ -227,7 +227,7 @@ fn what_the_map_says_of_a_point_is_what_its_inputs_give() {
     assert_eq!(seen.verdict, Verdict::Short);
     assert_eq!(bench.model.answer.current().unwrap().verdict, Verdict::Short);
     let room = bench.model.answer.current().unwrap().margins[0].margin.unwrap();
-    assert!(seen.words.contains(&format!("{:.3}", room)[..5]), "{} {room}", seen.words);
+    assert!(seen.words.contains(&format!("{room:.3}")[..5]), "{} {room}", seen.words);
 }
 
 #[test]

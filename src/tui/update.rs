@@ -232,10 +232,9 @@ pub(super) fn scroll_text(model: &mut Model, command: Command, rows: usize) {
 fn other_pane(model: &mut Model, command: Command) {
     let view = model.view.takes_keys().then_some(Pane::View);
     let next = match (model.pane, command) {
-        (Pane::Inputs, Command::NextPane) => Pane::Margins,
+        (Pane::Inputs, Command::NextPane) | (Pane::View, Command::PreviousPane) => Pane::Margins,
         (Pane::Inputs, _) => view.unwrap_or(Pane::Margins),
         (Pane::Margins, Command::NextPane) => view.unwrap_or(Pane::Inputs),
-        (Pane::View, Command::PreviousPane) => Pane::Margins,
         (Pane::Margins | Pane::View, _) => Pane::Inputs,
     };
     if next == Pane::Margins { show_margins(model) } else { model.pane = next }

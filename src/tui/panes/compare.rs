@@ -88,10 +88,8 @@ fn number_rows(model: &Model, change: &NumberChange, width: u16) -> Vec<Row> {
         (None, _) => any.id.clone(),
     };
     let shown = |number: &Option<Number>| number.as_ref().map_or_else(|| "none".to_owned(), |n| value(n, model.units));
-    let mut words = format!("{} -> {}", shown(&change.before), shown(&change.after));
-    if let Some(step) = step(change, model.units) {
-        words += &format!(" ({step})");
-    }
+    let step = step(change, model.units).map_or_else(String::new, |step| format!(" ({step})"));
+    let words = format!("{} -> {}{step}", shown(&change.before), shown(&change.after));
     pair(&label, &words, width, model.theme.plain())
 }
 

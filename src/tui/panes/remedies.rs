@@ -1,7 +1,7 @@
 //! The view Remedies: for each input alone the nearest value at which every check holds.
 use super::state;
 use crate::margin::Verdict;
-use crate::quantity::{format_measure, format_unit};
+use crate::quantity::format_unit;
 use crate::sheet::REMEDY_CAUTION;
 use crate::study::{Remedies, Remedy};
 use crate::tui::command::{Command, key_name};
@@ -52,7 +52,7 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
     let list = list_area(area);
     match model.shelf.remedies() {
         None => {
-            state::draw(buffer, Rect { height: list.height + 1, ..area }, model, Lane::Remedies, "nothing to work out")
+            state::draw(buffer, Rect { height: list.height + 1, ..area }, model, Lane::Remedies, "nothing to work out");
         }
         Some(found) if found.today == Verdict::Holds => {
             let words = "every check holds at the typical values: no change is worked out";
@@ -91,24 +91,25 @@ fn draw_list(buffer: &mut Buffer, area: Rect, model: &Model, found: &Remedies) {
     }
 }
 
+/// The change, and how large it is or why there is none.
+fn words(remedy: &Remedy) -> (String, String) {
+    let today = value_text(&remedy.input.measure);
+    if let Some(way) = &remedy.way {
+        let of = if way.of_range { "of its range" } else { "of its value" };
+        let ways = if way.ways > 1 { format!(", nearest of {} ways", way.ways) } else { String::new() };
+        return (format!("{today} -> {}", way.written), format!("{:.1} % {of}{ways}", way.relative * 100.0));
+    }
+    let unit = remedy.input.measure.unit;
+    let (low, high) = (format_unit(remedy.range.0, unit), format_unit(remedy.range.1, unit));
+    (today, format!("none in {low} to {high}"))
+}
+
 fn draw_remedy(buffer: &mut Buffer, row: Rect, model: &Model, remedy: &Remedy, is_chosen: bool) {
     let theme = model.theme;
     let base = if is_chosen { theme.chosen(model.pane == Pane::View) } else { theme.plain() };
     buffer.set_style(row, base);
     put(buffer, row, 0, 0, if is_chosen { ">" } else { " " }, base);
-    let today = value_text(&remedy.input.measure);
-    let (change, note) = match &remedy.way {
-        Some(way) => {
-            let of = if way.of_range { "of its range" } else { "of its value" };
-            let ways = if way.ways > 1 { format!(", nearest of {} ways", way.ways) } else { String::new() };
-            (format!("{today} -> {}", way.written), format!("{:.1} % {of}{ways}", way.relative * 100.0))
-        }
-        None => {
-            let unit = remedy.input.measure.unit;
-            let (low, high) = (format_unit(remedy.range.0, unit), format_unit(remedy.range.1, unit));
-            (format_measure(&remedy.input.measure), format!("none in {low} to {high}"))
-        }
-    };
+    let (change, note) = words(remedy);
     let style = if remedy.way.is_some() { base } else { base.patch(theme.quiet()) };
     if row.height == 1 {
         put(buffer, row, 2, 0, &fit(&remedy.input.path, 22), style);
