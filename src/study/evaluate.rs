@@ -52,6 +52,12 @@ pub enum StudyError {
         /// How many can be sampled.
         most: usize,
     },
+    /// An input without a usual range: an exact zero has no half and no double.
+    #[error("`{path}` is zero and has no range to move in; give it a value or a band")]
+    NoRange {
+        /// The path of the input.
+        path: String,
+    },
     /// Somebody broke it off, see [`Meter::drop_study`].
     #[error("stopped before it was done")]
     Stopped,

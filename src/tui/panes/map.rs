@@ -57,8 +57,11 @@ pub fn draw(frame: &mut Frame, area: Rect, model: &Model) {
         return state::draw(frame.buffer_mut(), area, model, Lane::Map, nothing);
     };
     let [across, up] = &mapped.inputs;
-    let part = if mapped.field.partial { " (stopped: a part)" } else { "" };
-    let title = format!("Map {} upwards, {}{part}", up.path, up.measure.unit.symbol());
+    let part = if mapped.field.partial { ", STOPPED: a part" } else { "" };
+    let unit = up.measure.unit.symbol();
+    let long = format!("Map of {} upwards, {unit}, the rest at typical values{part}", up.path);
+    let short = format!("Map {} up, {unit}, typical{part}", up.path);
+    let title = if wrap(&long, usize::from(area.width)).len() == 1 { long } else { short };
     put(frame.buffer_mut(), area, 0, 0, &fit(&title, usize::from(area.width)), theme.heading());
     let cells = field(area);
     draw_gutter(frame, area, cells, model, mapped);

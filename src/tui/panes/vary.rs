@@ -26,8 +26,10 @@ pub fn draw(frame: &mut Frame, area: Rect, model: &Model) {
     };
     let unit = varied.input.measure.unit;
     let (low, high) = (format_unit(*varied.range.start(), unit), format_unit(*varied.range.end(), unit));
-    let title = format!("Vary {} from {low} to {high}", varied.input.path);
     let room = usize::from(area.width);
+    let long = format!("Vary {} from {low} to {high}, the rest at typical values", varied.input.path);
+    let short = format!("Vary {} {low} to {high}, typical", varied.input.path);
+    let title = if cells(&long) <= area.width { long } else { short };
     put(frame.buffer_mut(), area, 0, 0, &fit(&title, room), theme.heading());
     let changes = change_lines(varied, area.width);
     let rows = u16::try_from(changes.len()).unwrap_or(MOST_CHANGES).min(MOST_CHANGES).min(area.height / 3).max(1);
@@ -140,7 +142,7 @@ fn word(row: &Row) -> Verdict {
 /// One line for each value at which a check changes; those that change together share it.
 fn change_lines(varied: &Varied, width: u16) -> Vec<(String, Option<Verdict>)> {
     if varied.variation.crossings.is_empty() {
-        let words = "no verdict changes in this range (typical values of the rest)";
+        let words = "no verdict changes in this range";
         return crate::tui::text::wrap(words, usize::from(width)).into_iter().map(|line| (line, None)).collect();
     }
     let together = |a: &Crossing, b: &Crossing| (a.value, a.below, a.above) == (b.value, b.below, b.above);

@@ -208,13 +208,7 @@ impl Order {
     /// Works it out; a panic becomes a message. Also what tests call instead of a thread.
     #[must_use]
     pub fn answer(&self, meter: &Arc<Meter>) -> Message {
-        let answer = catch_unwind(AssertUnwindSafe(|| self.find(meter)));
-        let result = match answer {
-            Ok(Ok(found)) => Ok(Some(found)),
-            Ok(Err(StudyError::Stopped)) => Ok(None),
-            Ok(Err(error)) => Err(error.to_string()),
-            Err(_) => Err("an inner fault, please report it with the file".to_owned()),
-        };
+        let result = guarded(|| self.find(meter));
         Message::Studied { lane: self.what.lane(), ticket: self.ticket, result }
     }
 
@@ -248,6 +242,16 @@ impl Order {
     }
 }
 
+/// The answer; none where it was stopped, a message where it failed or panicked.
+fn guarded(find: impl FnOnce() -> Result<Findings, StudyError>) -> Result<Option<Findings>, String> {
+    match catch_unwind(AssertUnwindSafe(find)) {
+        Ok(Ok(found)) => Ok(Some(found)),
+        Ok(Err(StudyError::Stopped)) => Ok(None),
+        Ok(Err(error)) => Err(error.to_string()),
+        Err(_) => Err("an inner fault; please report it with the file".to_owned()),
+    }
+}
+
 /// Share of a search that its first runs are taken for.
 const FIRST_SHARE: f32 = 0.3;
 
@@ -263,22 +267,17 @@ fn search_goes_on(at: study::Progress, meter: &Meter) -> ControlFlow<()> {
 }
 
 fn no_range(path: &str) -> StudyError {
-    StudyError::NotFinite { path: path.to_owned() }
+    StudyError::NoRange { path: path.to_owned() }
 }
 
 fn axis(evaluator: &Evaluator, path: &str, steps: usize) -> Result<Axis, StudyError> {
     let input = evaluator.index_of(path)?;
-    Ok(Axis { input, range: range(evaluator, input).ok_or_else(|| no_range(path))?, steps })
-}
-
-/// The range shown of an input: the usual one, widened so that it encloses the present value.
-fn range(evaluator: &Evaluator, input: usize) -> Option<RangeInclusive<f64>> {
-    usual_range(evaluator, input)
+    Ok(Axis { input, range: usual_range(evaluator, input).ok_or_else(|| no_range(path))?, steps })
 }
 
 fn varied(evaluator: &Evaluator, path: &str) -> Result<Varied, StudyError> {
     let input = evaluator.index_of(path)?;
-    let range = range(evaluator, input).ok_or_else(|| no_range(path))?;
+    let range = usual_range(evaluator, input).ok_or_else(|| no_range(path))?;
     let variation = vary(evaluator, input, range.clone(), VARY_ROWS)?;
     Ok(Varied { names: names(evaluator, []), input: evaluator.inputs()[input].clone(), range, variation })
 }
@@ -294,4 +293,17 @@ fn ranked(evaluator: &Evaluator, check: &str) -> Result<Ranked, StudyError> {
         inputs: evaluator.inputs().to_vec(),
         name,
     })
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    #[expect(clippy::panic, reason = "the panic is what is tested")]
+    fn a_panic_becomes_a_message_and_a_stop_becomes_none() {
+        let told = guarded(|| panic!("a fault on purpose"));
+        assert!(matches!(told, Err(words) if words.contains("inner fault")));
+        assert!(matches!(guarded(|| Err(StudyError::Stopped)), Ok(None)));
+    }
 }
