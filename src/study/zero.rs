@@ -128,7 +128,9 @@ impl<'a> Contour<'a> {
             let (x, y) = at(share);
             let seen = self.look(x, y)?;
             if seen.room().is_some_and(|room| room.abs() <= ZERO_SHARE) {
-                return Ok(Edge { x, y, kind: seen.check.map(|c| c.kind), through_zero: true });
+                let bad = ends[usize::from(ends[0].sight.holds)];
+                let kind = seen.check.map(|c| c.kind);
+                return Ok(Edge { x, y, kind, beyond: bad.sight.verdict(), through_zero: true });
             }
             let side = usize::from(seen.holds != ends[0].sight.holds);
             ends[side] = end(share, seen);
@@ -146,7 +148,8 @@ impl<'a> Contour<'a> {
         let [good, bad] = if ends[0].sight.holds { [ends[0], ends[1]] } else { [ends[1], ends[0]] };
         let (x, y) = at(good.share);
         let small = |end: End| end.sight.room().is_some_and(|room| room.abs() <= SMALL_SHARE);
-        Edge { x, y, kind: bad.sight.check.map(|c| c.kind), through_zero: small(good) && small(bad) }
+        let (kind, beyond) = (bad.sight.check.map(|c| c.kind), bad.sight.verdict());
+        Edge { x, y, kind, beyond, through_zero: small(good) && small(bad) }
     }
 
     fn place(&self, number: usize) -> (f64, f64) {
@@ -160,6 +163,10 @@ fn cell_checks(cell: &Cell) -> &[Check] {
 }
 
 impl Sight {
+    fn verdict(&self) -> Verdict {
+        self.check.map_or(Verdict::Open, |check| check.verdict)
+    }
+
     /// The margin as a share of the limit where it tells the side: positive where it holds, negative where not.
     fn room(&self) -> Option<f64> {
         let check = self.check?;
