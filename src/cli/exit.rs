@@ -12,7 +12,7 @@ pub enum Code {
     WrongInput,
     /// 3: it could not be computed.
     NotComputed,
-    /// 130: stopped by Ctrl-C; what is there was printed and marked partial.
+    /// 130: Ctrl-C; what there was by then is printed and marked.
     Interrupted,
 }
 

@@ -1,9 +1,8 @@
-//! How far a long command is, on stderr, and Ctrl-C, which stops it with what it has.
+//! How far a long command is, on stderr.
+use super::interrupt::Interrupt;
 use super::output;
 use std::io::{self, IsTerminal};
 use std::ops::ControlFlow;
-use std::sync::Arc;
-use std::sync::atomic::{AtomicBool, Ordering};
 use std::time::{Duration, Instant};
 
 /// Nothing is told of a command that takes less.
@@ -20,16 +19,15 @@ pub struct Progress {
     next: Duration,
     is_terminal: bool,
     drawn: bool,
-    stop: Arc<AtomicBool>,
+    interrupt: Interrupt,
 }
 
 impl Progress {
-    /// Starts the clock and listens to Ctrl-C: the first stops the command with what it has, a second ends the program.
+    /// Starts the clock and listens to Ctrl-C.
     pub fn new(what: &'static str, total: usize) -> Self {
-        let stop = Arc::new(AtomicBool::new(false));
-        listen(&stop);
         let is_terminal = io::stderr().is_terminal();
-        Self { what, total, start: Instant::now(), next: FIRST, is_terminal, drawn: false, stop }
+        let interrupt = Interrupt::listen();
+        Self { what, total, start: Instant::now(), next: FIRST, is_terminal, drawn: false, interrupt }
     }
 
     /// Tells how much is done, and breaks off after Ctrl-C.
@@ -38,12 +36,7 @@ impl Progress {
         if passed >= self.next && done < self.total {
             self.tell(done, passed);
         }
-        if self.stopped() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
-    }
-
-    /// True after Ctrl-C.
-    pub fn stopped(&self) -> bool {
-        self.stop.load(Ordering::Relaxed)
+        if self.interrupt.is_pressed() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
     }
 
     fn tell(&mut self, done: usize, passed: Duration) {
@@ -77,17 +70,6 @@ fn left(done: usize, total: usize, passed: Duration) -> String {
     format!("about {seconds:.0} s left")
 }
 
-#[cfg(unix)]
-fn listen(stop: &Arc<AtomicBool>) {
-    use signal_hook::{consts::SIGINT, flag};
-    // Without a handler Ctrl-C ends the program at once, as it does by itself: nothing to be told.
-    let _ = flag::register_conditional_default(SIGINT, Arc::clone(stop));
-    let _ = flag::register(SIGINT, Arc::clone(stop));
-}
-
-#[cfg(not(unix))]
-const fn listen(_stop: &Arc<AtomicBool>) {}
-
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -97,13 +79,5 @@ mod tests {
         assert_eq!(left(25, 100, Duration::from_secs(2)), "about 6 s left");
         assert_eq!(left(99, 100, Duration::from_secs(2)), "about 1 s left");
         assert_eq!(left(0, 100, Duration::from_secs(2)), "time left not known yet");
-    }
-
-    #[test]
-    fn a_stopped_command_breaks_off() {
-        let mut progress = Progress::new("cells", 10);
-        assert!(progress.step(1).is_continue());
-        progress.stop.store(true, Ordering::Relaxed);
-        assert!(progress.step(2).is_break() && progress.stopped());
     }
 }

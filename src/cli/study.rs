@@ -1,14 +1,17 @@
 //! `compare` and `remedy`.
 use super::exit::Code;
+use super::interrupt::Interrupt;
 use super::options::{CompareArgs, RemedyArgs};
 use super::output::{self, PAINT};
-use super::run::load_and_report;
+use super::run::{load_and_judge, load_and_report};
 use crate::sheet::{Layout, compare_object, compare_text, comparison, print, remedy_object, remedy_text};
 use crate::study::{Evaluator, StudyError, remedies};
 
 /// Prints what differs between two files.
 pub fn compare(args: &CompareArgs) -> Code {
-    let ((a_file, a), (b_file, b)) = match (load_and_report(&args.first), load_and_report(&args.second)) {
+    let interrupt = Interrupt::listen();
+    let both = (load_and_judge(&args.first, &interrupt), load_and_judge(&args.second, &interrupt));
+    let ((a_file, a), (b_file, b)) = match both {
         (Ok(a), Ok(b)) => (a, b),
         (a, b) => {
             let failures: Vec<_> = [a.err(), b.err()].into_iter().flatten().collect();
@@ -23,6 +26,10 @@ pub fn compare(args: &CompareArgs) -> Code {
         compare_text(&found, &a, &b, args.units.system(), PAINT)
     };
     output::results(&text);
+    if interrupt.is_pressed() {
+        interrupt.tell();
+        return Code::Interrupted;
+    }
     if found.is_worse() { Code::NotHeld } else { Code::Holds }
 }
 

@@ -1,5 +1,5 @@
 //! Two scenarios beside each other, as text and JSON.
-use super::json::margin as margin_json;
+use super::band_words::{report_margin_object, worst_words};
 use super::page::{Page, Paint, Tone, pad};
 use super::words::margin_words;
 use super::{CAUTION_LINE, CAUTIONS, Report};
@@ -67,7 +67,8 @@ fn verdict_lines(page: &mut Page, change: &VerdictChange, reports: [&Report; 2],
     page.wrapped(&format!("  {} ", pad(label, 34)), &format!("{} -> {}", word(before), word(after)), tone);
     for (lead, margin, report) in [("    first   ", before, reports[0]), ("    second  ", after, reports[1])] {
         if let Some(margin) = margin {
-            page.wrapped(lead, &margin_words(&report.scenario, margin, system), Tone::Plain);
+            let worst = worst_words(report, margin, system).map_or(String::new(), |words| format!("; {words}"));
+            page.wrapped(lead, &format!("{}{worst}", margin_words(&report.scenario, margin, system)), Tone::Plain);
         }
     }
 }
@@ -113,8 +114,8 @@ pub fn compare_object(found: &Comparison, a: &Report, b: &Report) -> Value {
             "second": number(&c.after),
         })).collect::<Vec<_>>(),
         "verdicts": found.verdicts.iter().map(|c| json!({
-            "first": c.before.as_ref().map(margin_json),
-            "second": c.after.as_ref().map(margin_json),
+            "first": c.before.as_ref().map(|m| report_margin_object(a, m)),
+            "second": c.after.as_ref().map(|m| report_margin_object(b, m)),
             "worse": c.is_worse(),
         })).collect::<Vec<_>>(),
     })

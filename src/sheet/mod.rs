@@ -1,5 +1,7 @@
 //! Results to bytes: text, JSON, CSV and SVG. Pure functions.
 mod audit;
+mod band_words;
+mod bands;
 mod caution;
 mod compare;
 mod csv;
@@ -20,6 +22,10 @@ mod words;
 mod working;
 
 pub use audit::{Audited, Finding, audit_head, audit_json, audit_text, tally};
+pub use band_words::{
+    bands_object, bands_sentence, place_word, place_words, report_margin_object, share_object, share_words, worst_words,
+};
+pub use bands::{InputAt, MarginBand, ReportBands, report_bands};
 pub use caution::{CAUTION_LINE, CAUTIONS, EQUIPMENT_CAUTIONS, LEFT_OUT};
 pub use compare::{compare_object, compare_text, comparison};
 pub use csv::csv;

@@ -194,6 +194,12 @@ impl Evaluator {
         margin_of(&self.rules, &self.scenario, &run.validity, check, system)
     }
 
+    /// A check of a run whose model is valid, as [`Self::margin`].
+    #[must_use]
+    pub fn margin_of(&self, check: &Check, system: UnitSystem) -> Margin {
+        margin_of(&self.rules, &self.scenario, &[], check, system)
+    }
+
     fn run(&self, scenario: &Scenario) -> Run {
         match figures(scenario) {
             Ok(figures) => Run {

@@ -126,6 +126,12 @@ pub struct Spread {
 }
 
 impl Spread {
+    /// A sample that was stopped before its first run.
+    #[must_use]
+    pub const fn empty(asked: usize, seed: u64) -> Self {
+        Self { asked, samples: 0, seed, failed: 0, checks: Vec::new(), numbers: Vec::new() }
+    }
+
     /// True when it was stopped before all samples were made.
     #[must_use]
     pub const fn is_partial(&self) -> bool {
