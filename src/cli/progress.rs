@@ -14,7 +14,6 @@ const AGAIN: Duration = Duration::from_millis(200);
 #[derive(Debug)]
 pub struct Progress {
     what: &'static str,
-    total: usize,
     start: Instant,
     next: Duration,
     is_terminal: bool,
@@ -24,29 +23,36 @@ pub struct Progress {
 
 impl Progress {
     /// Starts the clock and listens to Ctrl-C.
-    pub fn new(what: &'static str, total: usize) -> Self {
+    pub fn new() -> Self {
         let is_terminal = io::stderr().is_terminal();
         let interrupt = Interrupt::listen();
-        Self { what, total, start: Instant::now(), next: FIRST, is_terminal, drawn: false, interrupt }
+        Self { what: "", start: Instant::now(), next: FIRST, is_terminal, drawn: false, interrupt }
     }
 
-    /// Tells how much is done, and breaks off after Ctrl-C.
-    pub fn step(&mut self, done: usize) -> ControlFlow<()> {
-        let passed = self.start.elapsed();
-        if passed >= self.next && done < self.total {
-            self.tell(done, passed);
+    /// Tells how much of what is done, and breaks off after Ctrl-C. Another `what` starts the clock anew.
+    pub fn step(&mut self, what: &'static str, done: usize, total: usize) -> ControlFlow<()> {
+        if what != self.what {
+            (self.what, self.start, self.next) = (what, Instant::now(), FIRST);
         }
-        if self.interrupt.is_pressed() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
+        let passed = self.start.elapsed();
+        if passed >= self.next && done < total {
+            self.tell(&format!("{done} of {total} {what}, {}", left(done, total, passed)), passed);
+        }
+        if self.is_interrupted() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
     }
 
-    fn tell(&mut self, done: usize, passed: Duration) {
-        let words = format!("{done} of {} {}, {}", self.total, self.what, left(done, self.total, passed));
+    /// Whether Ctrl-C was pressed.
+    pub fn is_interrupted(&self) -> bool {
+        self.interrupt.is_pressed()
+    }
+
+    fn tell(&mut self, words: &str, passed: Duration) {
         if self.is_terminal {
             output::diagnostics(&format!("\r{words}\u{1b}[K"));
             self.drawn = true;
             self.next = passed + AGAIN;
         } else {
-            output::message(&words);
+            output::message(words);
             self.next = passed * 2;
         }
     }

@@ -126,8 +126,9 @@ fn map(args: &VaryArgs, second: &str, form: Form, evaluator: &Evaluator) -> Resu
         range: range(evaluator, inputs[1], &second_ends)?,
         steps: steps("--and-steps", args.and_steps.unwrap_or(USUAL_STEPS[1]), false)?,
     };
-    let mut progress = Progress::new("cells", across.steps * up.steps);
-    field(evaluator, across, up, &mut |done| progress.step(done)).map_err(|error| error.to_string())
+    let cells = across.steps * up.steps;
+    let mut progress = Progress::new();
+    field(evaluator, across, up, &mut |done| progress.step("cells", done, cells)).map_err(|error| error.to_string())
 }
 
 /// A text map has room for fewer values than the other forms.

@@ -12,6 +12,10 @@ pub enum Step {
     Sample,
     /// Base points of the ranking.
     Ranking,
+    /// Inputs whose nearest value is searched.
+    Remedies,
+    /// Pairs of inputs whose nearest joint change is searched.
+    Pairs,
 }
 
 /// How far one step is.
