@@ -18,8 +18,8 @@ const WORST_WORDS: &str = "All other inputs anywhere in their bands: every check
      search over the bands that `run` makes, done anew with the changed value. That value counts as exact: a band of its \
      own is left out, and what it is known within must be added by whoever confirms the change.";
 /// What a joint change is.
-const PAIR_WORDS: &str = "Two inputs changed together, where that is nearer than each of both alone: the least root of \
-     the sum of the squares of both changes, each as a share as above, along 32 directions about today's values and the \
+const PAIR_WORDS: &str = "Two inputs changed together, where that is nearer than each of both alone by a hundredth: the \
+     least root of the sum of the squares of both changes, each as a share as above, along 32 directions about today's values and the \
      refined best of them. A nearer one between the directions can be missed.";
 
 /// By what the changes are compared.
@@ -163,7 +163,7 @@ fn pairs(page: &mut Page, found: &Remedies, system: Option<UnitSystem>) {
         page.wrapped(&format!("  {} ", pad(&joint, 8)), &words(0), Tone::Plain);
         page.wrapped(&format!("  {} ", pad("", 8)), &words(1), Tone::Plain);
     }
-    let words = format!("{} of {} pairs are nearer than each alone", found.pairs.len(), found.pairs_searched);
+    let words = format!("{} of {} pairs are nearer so", found.pairs.len(), found.pairs_searched);
     page.wrapped("  ", &words, Tone::Plain);
 }
 

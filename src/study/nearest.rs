@@ -48,7 +48,8 @@ impl Search<'_> {
 
     fn found(&self, value: f64, shown: String, ways: usize) -> Result<Way, StudyError> {
         let narrowed = self.held == Held::Worst && self.span.input.measure.band.is_wide();
-        let back = value + (self.span.today() - value).signum() * STEP * value.abs().max(STEP);
+        let way_back = self.span.today() - value;
+        let back = value + way_back.signum() * (STEP * value.abs()).min(way_back.abs());
         let place = self.judge.failing_place(&[(self.span.index, back)])?;
         Ok(way(self.span, value, shown, narrowed, ways, place.unwrap_or_default()))
     }

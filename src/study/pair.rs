@@ -11,8 +11,9 @@ const DIRECTIONS: u32 = 32;
 const CELLS: u32 = 48;
 /// The best direction is refined by halving steps down to this share of a turn.
 const LEAST_TURN: f64 = 1e-4;
-/// A joint change is told where it is nearer than the best of both alone by this share, and both inputs move.
-const NEARER: f64 = 1e-3;
+/// A joint change is told where it is nearer than the best of both alone by this share of it at least, and each input makes
+/// at least this share of it.
+const NEARER: f64 = 0.01;
 
 /// The search of one pair.
 pub(super) struct PairSearch<'a> {
