@@ -1,12 +1,11 @@
 //! Whether every check holds with some inputs changed: at the typical values of the others, or at the worst found over
 //! their bands.
 use super::evaluate::{Evaluator, Run, StudyError};
-use super::watch::Watch;
+use super::watch::{Pulse, Watch};
 use super::worst::{Worst, WorstFound, worst_found};
 use crate::margin::{Verdict, worst};
 use crate::scenario::with_exact_values;
 use std::ops::ControlFlow;
-use std::sync::atomic::{AtomicBool, Ordering};
 
 /// Most bands of which every corner is tried before the search for the worst: 2^8 runs.
 const CORNER_BANDS: usize = 8;
@@ -44,7 +43,7 @@ pub(super) struct Judge<'e> {
     changed: Vec<usize>,
     /// Empty is the typical place.
     places: Vec<Values>,
-    stop: &'e AtomicBool,
+    pulse: &'e Pulse<'e>,
 }
 
 /// The worst verdict of one run.
@@ -52,18 +51,23 @@ pub(super) fn word(run: &Run) -> Verdict {
     worst(run.checks.iter().map(|check| check.verdict))
 }
 
-/// The verdict today, and the places of the bands where a check does not hold.
-pub(super) fn today(
-    evaluator: &Evaluator,
-    held: Held,
-    watch: &Watch<'_>,
-) -> Result<(Verdict, Vec<Values>), StudyError> {
-    match held {
-        Held::Typical => Ok((word(&evaluator.typical()), Vec::new())),
-        Held::Worst => {
-            let found = worst_found(evaluator, watch)?;
-            Ok((worst(found.checks.iter().map(|check| check.verdict)), places(&found)))
+/// What holds today.
+pub(super) struct Today {
+    pub verdict: Verdict,
+    /// Places of the bands where a check does not hold.
+    pub places: Vec<Values>,
+    /// The search for the worst was broken off.
+    pub partial: bool,
+}
+
+impl Today {
+    pub fn new(evaluator: &Evaluator, held: Held, watch: &Watch<'_>) -> Result<Self, StudyError> {
+        if held == Held::Typical {
+            return Ok(Self { verdict: word(&evaluator.typical()), places: Vec::new(), partial: false });
         }
+        let found = worst_found(evaluator, watch)?;
+        let verdict = worst(found.checks.iter().map(|check| check.verdict));
+        Ok(Self { verdict, places: places(&found), partial: found.partial })
     }
 }
 
@@ -79,9 +83,9 @@ impl<'e> Judge<'e> {
         held: Held,
         changed: Vec<usize>,
         known: &[Values],
-        stop: &'e AtomicBool,
+        pulse: &'e Pulse<'e>,
     ) -> Self {
-        let mut judge = Self { evaluator, held, changed, places: vec![Values::new()], stop };
+        let mut judge = Self { evaluator, held, changed, places: vec![Values::new()], pulse };
         for place in known {
             judge.add(place);
         }
@@ -89,7 +93,7 @@ impl<'e> Judge<'e> {
     }
 
     pub fn is_stopped(&self) -> bool {
-        self.stop.load(Ordering::Relaxed)
+        self.pulse.beat()
     }
 
     /// A place at which all checks must hold as well; true when it was not known.
@@ -102,8 +106,11 @@ impl<'e> Judge<'e> {
         new
     }
 
-    /// Whether every check holds at all known places.
+    /// Whether every check holds at all known places; never once the search is broken off.
     pub fn holds(&self, values: &[(usize, f64)]) -> Result<bool, StudyError> {
+        if self.is_stopped() {
+            return Ok(false);
+        }
         // The latest place is the likeliest to fail.
         for place in self.places.iter().rev() {
             if !self.holds_at(values, place)? {
@@ -169,7 +176,7 @@ impl<'e> Judge<'e> {
             if !self.holds_at(values, &place)? {
                 failing.push(place);
             }
-            if failing.len() >= TAKEN {
+            if failing.len() >= TAKEN || self.is_stopped() {
                 break;
             }
         }

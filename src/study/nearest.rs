@@ -103,9 +103,6 @@ impl Search<'_> {
                 first = first.or(Some((last, value)));
             }
             (last, held) = (value, holds);
-            if self.judge.is_stopped() {
-                return Ok((None, 0));
-            }
         }
         Ok((first, count))
     }

@@ -81,9 +81,6 @@ impl PairSearch<'_> {
         let mut best: Option<Hit> = None;
         for i in 0..DIRECTIONS {
             best = self.nearer(f64::from(i) / f64::from(DIRECTIONS), best)?;
-            if self.judge.is_stopped() {
-                return Ok(None);
-            }
         }
         let mut step = 0.5 / f64::from(DIRECTIONS);
         while let Some(hit) = best.filter(|_| step > LEAST_TURN) {

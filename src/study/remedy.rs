@@ -1,15 +1,14 @@
 //! For each input that can be chosen, alone or with a second: the nearest change at which every check holds. Arithmetic,
 //! not advice.
-use super::held::{Held, Judge, Values, today};
+use super::held::{Held, Judge, Today, Values};
 use super::nearest::Search;
 use super::pair::PairSearch;
-use super::watch::{Progress, Step, Watch, unwatched};
+use super::watch::{Pulse, Step, Watch, unwatched};
 use super::{Evaluator, StudyError};
 use crate::margin::Verdict;
 use crate::quantity::Dimension;
 use crate::scenario::Input;
 use rayon::prelude::*;
-use std::sync::atomic::{AtomicBool, AtomicUsize, Ordering};
 
 /// Inputs that somebody chooses when the fall is planned. What is stated of a thing as it is (strengths, capacities,
 /// ratings, the body, obstacles with their reserves, limits) is not among them: writing another value there would not
@@ -190,20 +189,28 @@ pub fn remedies(evaluator: &Evaluator) -> Result<Remedies, StudyError> {
 /// # Errors
 /// As [`Evaluator::at`] and [`super::worst_found`].
 pub fn remedies_of(evaluator: &Evaluator, wanted: Wanted, watch: &Watch<'_>) -> Result<Remedies, StudyError> {
-    let (today, known) = today(evaluator, wanted.held, watch)?;
-    let yard = yard(evaluator);
-    let mut found =
-        Remedies { today, wanted, yard, list: Vec::new(), pairs: Vec::new(), pairs_searched: 0, partial: false };
-    if today == Verdict::Holds {
+    let today = Today::new(evaluator, wanted.held, watch)?;
+    let (yard, partial) = (yard(evaluator), today.partial);
+    let mut found = Remedies {
+        today: today.verdict,
+        wanted,
+        yard,
+        list: Vec::new(),
+        pairs: Vec::new(),
+        pairs_searched: 0,
+        partial,
+    };
+    if today.verdict == Verdict::Holds || partial {
         return Ok(found);
     }
-    let stop = AtomicBool::new(false);
-    let all = All { evaluator, wanted, known: &known, yard: yard.1, stop: &stop };
+    let all = All { evaluator, wanted, known: &today.places, yard: yard.1 };
     let inputs = evaluator.inputs().iter().enumerate();
     let adjustable: Vec<usize> =
         inputs.filter(|(_, input)| ADJUSTABLE.contains(&input.path.as_str())).map(|(index, _)| index).collect();
-    found.list = all.each(Step::Remedies, &adjustable, watch, |&input| all.remedy(input))?;
-    if wanted.pairs {
+    let pulse = Pulse::new(watch, Step::Remedies, adjustable.len());
+    found.list = each(&pulse, &adjustable, |&input| all.remedy(input, &pulse))?;
+    found.partial = pulse.is_stopped();
+    if wanted.pairs && !found.partial {
         let pairs: Vec<[usize; 2]> =
             adjustable.iter().flat_map(|&a| adjustable.iter().filter(move |b| **b > a).map(move |&b| [a, b])).collect();
         let alone = |input: usize| {
@@ -211,15 +218,16 @@ pub fn remedies_of(evaluator: &Evaluator, wanted: Wanted, watch: &Watch<'_>) -> 
             let known = found.list.iter().find(|remedy| Some(remedy.input.path.as_str()) == path);
             known.and_then(|remedy| remedy.way.as_ref()).map_or(f64::INFINITY, |way| way.relative)
         };
+        let pulse = Pulse::new(watch, Step::Pairs, pairs.len());
+        let answers = each(&pulse, &pairs, |&pair| all.pair(pair, pair.map(alone), &pulse))?;
         found.pairs_searched = pairs.len();
-        let answers = all.each(Step::Pairs, &pairs, watch, |&pair| all.pair(pair, pair.map(alone)))?;
+        found.partial = pulse.is_stopped();
         found.pairs = answers.into_iter().flatten().collect();
         found.pairs.sort_by(|a, b| a.relative.total_cmp(&b.relative));
     }
     let change = |r: &Remedy| r.way.as_ref().map_or(f64::INFINITY, |w| w.relative);
     let without = |r: &Remedy| r.way.is_none();
     found.list.sort_by(|a, b| without(a).cmp(&without(b)).then(change(a).total_cmp(&change(b))));
-    found.partial = stop.load(Ordering::Relaxed);
     Ok(found)
 }
 
@@ -233,42 +241,32 @@ fn yard(evaluator: &Evaluator) -> (Yard, f64) {
     }
 }
 
+/// Answers in the order of the questions.
+fn each<Q: Sync, A: Send>(
+    pulse: &Pulse<'_>,
+    questions: &[Q],
+    answer: impl Fn(&Q) -> Result<A, StudyError> + Sync,
+) -> Result<Vec<A>, StudyError> {
+    pulse.beat();
+    let one = |question: &Q| {
+        let found = answer(question)?;
+        pulse.answered();
+        Ok(found)
+    };
+    questions.par_iter().map(one).collect()
+}
+
 /// What all searches share.
 struct All<'a> {
     evaluator: &'a Evaluator,
     wanted: Wanted,
     known: &'a [Values],
     yard: f64,
-    stop: &'a AtomicBool,
 }
 
-impl All<'_> {
-    /// Answers in the order of the questions.
-    fn each<Q: Sync, A: Send>(
-        &self,
-        step: Step,
-        questions: &[Q],
-        watch: &Watch<'_>,
-        answer: impl Fn(&Q) -> Result<A, StudyError> + Sync,
-    ) -> Result<Vec<A>, StudyError> {
-        let done = AtomicUsize::new(0);
-        let tell = |more: usize| {
-            let done = done.fetch_add(more, Ordering::Relaxed) + more;
-            if watch(Progress { step, done, of: questions.len() }).is_break() {
-                self.stop.store(true, Ordering::Relaxed);
-            }
-        };
-        tell(0);
-        let one = |question: &Q| {
-            let found = answer(question)?;
-            tell(1);
-            Ok(found)
-        };
-        questions.par_iter().map(one).collect()
-    }
-
-    fn judge(&self, changed: Vec<usize>) -> Judge<'_> {
-        Judge::new(self.evaluator, self.wanted.held, changed, self.known, self.stop)
+impl<'a> All<'a> {
+    fn judge(&self, changed: Vec<usize>, pulse: &'a Pulse<'a>) -> Judge<'a> {
+        Judge::new(self.evaluator, self.wanted.held, changed, self.known, pulse)
     }
 
     fn span(&self, index: usize) -> Option<Span> {
@@ -276,17 +274,17 @@ impl All<'_> {
         Some(Span { index, input: input.clone(), range: range(input), scale: scale(input, self.yard) })
     }
 
-    fn remedy(&self, index: usize) -> Result<Remedy, StudyError> {
+    fn remedy(&self, index: usize, pulse: &'a Pulse<'a>) -> Result<Remedy, StudyError> {
         let count = self.evaluator.inputs().len();
         let span = self.span(index).ok_or(StudyError::NoInput { index, count })?;
-        let way = Search { span: &span, judge: self.judge(vec![index]), held: self.wanted.held }.way()?;
+        let way = Search { span: &span, judge: self.judge(vec![index], pulse), held: self.wanted.held }.way()?;
         let without = way.as_ref().err().copied();
         Ok(Remedy { range: span.range, input: span.input, way: way.ok(), without })
     }
 
-    fn pair(&self, pair: [usize; 2], alone: [f64; 2]) -> Result<Option<Pair>, StudyError> {
+    fn pair(&self, pair: [usize; 2], alone: [f64; 2], pulse: &'a Pulse<'a>) -> Result<Option<Pair>, StudyError> {
         let [Some(a), Some(b)] = pair.map(|index| self.span(index)) else { return Ok(None) };
-        let judge = self.judge(pair.to_vec());
+        let judge = self.judge(pair.to_vec(), pulse);
         PairSearch { spans: [&a, &b], judge, held: self.wanted.held, alone: alone[0].min(alone[1]) }.pair()
     }
 }
