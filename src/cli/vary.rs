@@ -32,15 +32,17 @@ impl Form {
     /// As asked for, else by the ending of the file, else text.
     fn of(args: &VaryArgs) -> Self {
         let ending = |path: &std::path::PathBuf| path.extension().map(|e| e.to_string_lossy().to_lowercase());
-        let by_ending = args.output.output.as_ref().and_then(ending);
-        match (args.csv, args.json, args.svg, by_ending.as_deref()) {
-            (true, ..) => Self::Csv,
-            (_, true, ..) => Self::Json,
-            (_, _, true, _) => Self::Svg,
-            (.., Some("csv")) => Self::Csv,
-            (.., Some("json")) => Self::Json,
-            (.., Some("svg")) => Self::Svg,
-            _ => Self::Text,
+        let by_ending = args.output.output.as_ref().and_then(ending).unwrap_or_default();
+        let none = !(args.csv || args.json || args.svg);
+        let is = |asked: bool, name: &str| asked || (none && by_ending == name);
+        if is(args.csv, "csv") {
+            Self::Csv
+        } else if is(args.json, "json") {
+            Self::Json
+        } else if is(args.svg, "svg") {
+            Self::Svg
+        } else {
+            Self::Text
         }
     }
 }

@@ -140,22 +140,22 @@ impl<'a> Contour<'a> {
             }
             last = Some(side);
         }
-        Ok(self.jump(&ends, at))
-    }
-
-    /// The verdict jumps: the point on the side that holds, and the check that stops holding.
-    fn jump(&self, ends: &[End; 2], at: impl Fn(f64) -> (f64, f64)) -> Edge {
-        let [good, bad] = if ends[0].sight.holds { [ends[0], ends[1]] } else { [ends[1], ends[0]] };
-        let (x, y) = at(good.share);
-        let small = |end: End| end.sight.room().is_some_and(|room| room.abs() <= SMALL_SHARE);
-        let (kind, beyond) = (bad.sight.check.map(|c| c.kind), bad.sight.verdict());
-        Edge { x, y, kind, beyond, through_zero: small(good) && small(bad) }
+        Ok(jump(&ends, at))
     }
 
     fn place(&self, number: usize) -> (f64, f64) {
         let across = &self.field.across;
         (across.value(number % across.steps), self.field.up.value(number / across.steps))
     }
+}
+
+/// The verdict jumps: the point on the side that holds, and the check that stops holding.
+fn jump(ends: &[End; 2], at: impl Fn(f64) -> (f64, f64)) -> Edge {
+    let [good, bad] = if ends[0].sight.holds { [ends[0], ends[1]] } else { [ends[1], ends[0]] };
+    let (x, y) = at(good.share);
+    let small = |end: End| end.sight.room().is_some_and(|room| room.abs() <= SMALL_SHARE);
+    let (kind, beyond) = (bad.sight.check.map(|c| c.kind), bad.sight.verdict());
+    Edge { x, y, kind, beyond, through_zero: small(good) && small(bad) }
 }
 
 fn cell_checks(cell: &Cell) -> &[Check] {
