@@ -228,7 +228,7 @@ fn pairs_at_the_worst_hold_there_when_put_back() {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(6))]
+    #![proptest_config(ProptestConfig::with_cases(3))]
     #[test]
     fn remedies_at_the_worst_hold_there_when_put_back(standing in 4.6..6.0_f64, length in 1.5..1.9_f64) {
         put_back_at_worst(&banded(standing, length));
