@@ -91,12 +91,16 @@ fn a_point_has_no_margin_left_or_lies_at_a_jump() {
         let at = |dx: f64, dy: f64| {
             evaluator.at(&[(field.across.input, point.x + dx), (field.up.input, point.y + dy)]).unwrap()
         };
+        let all = |run: underfoot::study::Run| worst(run.checks.iter().map(|c| c.verdict)) == Verdict::Holds;
         if point.through_zero {
             let room = at(0.0, 0.0).check(point.kind.unwrap()).unwrap().relative();
             assert!(room.abs() <= 1e-6, "{point:?} leaves {room}");
+            // A margin that is zero all along one side is no crossing: both sides are near.
+            let (dx, dy) = (1e-4 * step, 1e-4 * rise);
+            let near = [(dx, 0.0), (-dx, 0.0), (0.0, dy), (0.0, -dy)].map(|d| all(at(d.0, d.1)));
+            assert!(near.contains(&true) && near.contains(&false), "{point:?} has one side alone: {near:?}");
             zeros += 1;
         } else {
-            let all = |run: underfoot::study::Run| worst(run.checks.iter().map(|c| c.verdict)) == Verdict::Holds;
             assert!(all(at(0.0, 0.0)), "{point:?} is not on the side that holds");
             let (dx, dy) = (2e-6 * step, 2e-6 * rise);
             assert!([(dx, 0.0), (-dx, 0.0), (0.0, dy), (0.0, -dy)].iter().any(|d| !all(at(d.0, d.1))), "{point:?}");

@@ -9,8 +9,9 @@ const EXIT_CODES: &str = "Exit codes: 0 every check holds; 1 a check is thin, sh
 
 const VARY_CODES: &str = "Exit codes: 0 every check holds in every row or cell; 1 a check is short or open in one; 2 \
                           the input is wrong; 3 it could not be computed; 130 interrupted, with what there was.";
-const REMEDY_CODES: &str = "Exit codes: 0 every check holds today, at the typical values; 1 a check is short or open \
-                            today; 2 the input is wrong; 3 it could not be computed.";
+const REMEDY_CODES: &str = "Exit codes: 0 every check holds today, at the typical values or with --worst at the worst \
+                            found; 1 a check is short, thin or open today; 2 the input is wrong; 3 it could not be \
+                            computed; 130 interrupted, with what there was.";
 const COMPARE_CODES: &str = "Exit codes: 0 no check of the second file is worse than in the first; 1 one is worse, does \
                              not hold where the first has none, or is no longer made; 2 the input is wrong; 3 it could \
                              not be computed.";
@@ -219,9 +220,18 @@ fn row_count(text: &str) -> Result<usize, String> {
 /// Arguments of `remedy`.
 #[derive(Args, Clone, Debug)]
 pub struct RemedyArgs {
-    /// Scenario file
+    /// Scenario file; `-` reads standard input
     pub file: PathBuf,
+    /// Every check holds at the worst found over the bands of all other inputs, not at their typical values alone
+    #[arg(long)]
+    pub worst: bool,
+    /// Pairs of inputs changed together as well
+    #[arg(long)]
+    pub pairs: bool,
     /// JSON, SI units
     #[arg(long)]
     pub json: bool,
+    /// Units shown in text beside those of the file
+    #[arg(long, value_enum)]
+    pub units: Option<Units>,
 }

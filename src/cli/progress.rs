@@ -1,9 +1,8 @@
-//! How far a long command is, on stderr, and Ctrl-C, which stops it with what it has.
+//! How far a long command is, on stderr.
+use super::interrupt::Interrupt;
 use super::output;
 use std::io::{self, IsTerminal};
 use std::ops::ControlFlow;
-use std::sync::Arc;
-use std::sync::atomic::{AtomicBool, Ordering};
 use std::time::{Duration, Instant};
 
 /// Nothing is told of a command that takes less.
@@ -15,45 +14,45 @@ const AGAIN: Duration = Duration::from_millis(200);
 #[derive(Debug)]
 pub struct Progress {
     what: &'static str,
-    total: usize,
     start: Instant,
     next: Duration,
     is_terminal: bool,
     drawn: bool,
-    stop: Arc<AtomicBool>,
+    interrupt: Interrupt,
 }
 
 impl Progress {
-    /// Starts the clock and listens to Ctrl-C: the first stops the command with what it has, a second ends the program.
-    pub fn new(what: &'static str, total: usize) -> Self {
-        let stop = Arc::new(AtomicBool::new(false));
-        listen(&stop);
+    /// Starts the clock and listens to Ctrl-C.
+    pub fn new() -> Self {
         let is_terminal = io::stderr().is_terminal();
-        Self { what, total, start: Instant::now(), next: FIRST, is_terminal, drawn: false, stop }
+        let interrupt = Interrupt::listen();
+        Self { what: "", start: Instant::now(), next: FIRST, is_terminal, drawn: false, interrupt }
     }
 
-    /// Tells how much is done, and breaks off after Ctrl-C.
-    pub fn step(&mut self, done: usize) -> ControlFlow<()> {
-        let passed = self.start.elapsed();
-        if passed >= self.next && done < self.total {
-            self.tell(done, passed);
+    /// Tells how much of what is done, and breaks off after Ctrl-C. Another `what` starts the clock anew.
+    pub fn step(&mut self, what: &'static str, done: usize, total: usize) -> ControlFlow<()> {
+        if what != self.what {
+            (self.what, self.start, self.next) = (what, Instant::now(), FIRST);
         }
-        if self.stopped() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
+        let passed = self.start.elapsed();
+        if passed >= self.next && done < total {
+            self.tell(&format!("{done} of {total} {what}, {}", left(done, total, passed)), passed);
+        }
+        if self.is_interrupted() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
     }
 
-    /// True after Ctrl-C.
-    pub fn stopped(&self) -> bool {
-        self.stop.load(Ordering::Relaxed)
+    /// Whether Ctrl-C was pressed.
+    pub fn is_interrupted(&self) -> bool {
+        self.interrupt.is_pressed()
     }
 
-    fn tell(&mut self, done: usize, passed: Duration) {
-        let words = format!("{done} of {} {}, {}", self.total, self.what, left(done, self.total, passed));
+    fn tell(&mut self, words: &str, passed: Duration) {
         if self.is_terminal {
             output::diagnostics(&format!("\r{words}\u{1b}[K"));
             self.drawn = true;
             self.next = passed + AGAIN;
         } else {
-            output::message(&words);
+            output::message(words);
             self.next = passed * 2;
         }
     }
@@ -77,17 +76,6 @@ fn left(done: usize, total: usize, passed: Duration) -> String {
     format!("about {seconds:.0} s left")
 }
 
-#[cfg(unix)]
-fn listen(stop: &Arc<AtomicBool>) {
-    use signal_hook::{consts::SIGINT, flag};
-    // Without a handler Ctrl-C ends the program at once, as it does by itself: nothing to be told.
-    let _ = flag::register_conditional_default(SIGINT, Arc::clone(stop));
-    let _ = flag::register(SIGINT, Arc::clone(stop));
-}
-
-#[cfg(not(unix))]
-const fn listen(_stop: &Arc<AtomicBool>) {}
-
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -97,13 +85,5 @@ mod tests {
         assert_eq!(left(25, 100, Duration::from_secs(2)), "about 6 s left");
         assert_eq!(left(99, 100, Duration::from_secs(2)), "about 1 s left");
         assert_eq!(left(0, 100, Duration::from_secs(2)), "time left not known yet");
-    }
-
-    #[test]
-    fn a_stopped_command_breaks_off() {
-        let mut progress = Progress::new("cells", 10);
-        assert!(progress.step(1).is_continue());
-        progress.stop.store(true, Ordering::Relaxed);
-        assert!(progress.step(2).is_break() && progress.stopped());
     }
 }

@@ -32,15 +32,17 @@ impl Form {
     /// As asked for, else by the ending of the file, else text.
     fn of(args: &VaryArgs) -> Self {
         let ending = |path: &std::path::PathBuf| path.extension().map(|e| e.to_string_lossy().to_lowercase());
-        let by_ending = args.output.output.as_ref().and_then(ending);
-        match (args.csv, args.json, args.svg, by_ending.as_deref()) {
-            (true, ..) => Self::Csv,
-            (_, true, ..) => Self::Json,
-            (_, _, true, _) => Self::Svg,
-            (.., Some("csv")) => Self::Csv,
-            (.., Some("json")) => Self::Json,
-            (.., Some("svg")) => Self::Svg,
-            _ => Self::Text,
+        let by_ending = args.output.output.as_ref().and_then(ending).unwrap_or_default();
+        let none = !(args.csv || args.json || args.svg);
+        let is = |asked: bool, name: &str| asked || (none && by_ending == name);
+        if is(args.csv, "csv") {
+            Self::Csv
+        } else if is(args.json, "json") {
+            Self::Json
+        } else if is(args.svg, "svg") {
+            Self::Svg
+        } else {
+            Self::Text
         }
     }
 }
@@ -126,8 +128,9 @@ fn map(args: &VaryArgs, second: &str, form: Form, evaluator: &Evaluator) -> Resu
         range: range(evaluator, inputs[1], &second_ends)?,
         steps: steps("--and-steps", args.and_steps.unwrap_or(USUAL_STEPS[1]), false)?,
     };
-    let mut progress = Progress::new("cells", across.steps * up.steps);
-    field(evaluator, across, up, &mut |done| progress.step(done)).map_err(|error| error.to_string())
+    let cells = across.steps * up.steps;
+    let mut progress = Progress::new();
+    field(evaluator, across, up, &mut |done| progress.step("cells", done, cells)).map_err(|error| error.to_string())
 }
 
 /// A text map has room for fewer values than the other forms.

@@ -25,6 +25,7 @@ text { fill: var(--ink); font: 14px sans-serif; } .small { font-size: 12px; } .f
 .end { text-anchor: end; } .paper { fill: var(--paper); } .frame { fill: none; stroke: var(--ink); } \
 .grid { stroke: var(--grid); } .ink { stroke: var(--ink); fill: none; } .zero { stroke: var(--ink); stroke-width: 2.5; \
 fill: none; stroke-linecap: round; } .halo { stroke: var(--paper); stroke-width: 5; fill: none; stroke-linecap: round; } \
+.change { stroke: var(--faint); stroke-dasharray: 2 3; } .flat { shape-rendering: crispEdges; } \
 .holds { fill: var(--holds); } .thin { fill: var(--thin); } .open { fill: var(--open); } .short { fill: var(--short); } \
 .m-thin { fill: none; stroke: var(--mark-thin); } .m-open { fill: var(--mark-open); } \
 .m-short { fill: none; stroke: var(--mark-short); }";
@@ -120,7 +121,7 @@ impl Drawing {
 
     /// A field of one verdict: its colour, and its pattern above it.
     pub fn verdict(&mut self, verdict: Verdict, place: [f64; 4]) {
-        self.rect(verdict.word(), place);
+        self.rect(&format!("flat {}", verdict.word()), place);
         if verdict != Verdict::Holds {
             let pattern = format!("url(#p-{})", verdict.word());
             self.add(rect("", place).with("fill", pattern));

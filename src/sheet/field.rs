@@ -181,9 +181,14 @@ impl Map<'_> {
     }
 
     fn point_words(&self, point: &Edge) -> String {
-        let label = self.margin(point).map_or_else(|| "no check".to_owned(), |margin| margin.label);
+        let value = self.shown(&self.field.across, point.x);
+        // Where a run cannot be made or its model is not valid, more than one check is open at once.
+        let label = match self.margin(point) {
+            Some(margin) if point.beyond != Verdict::Open => margin.label,
+            _ => format!("{} beyond", Verdict::Open.word()),
+        };
         let how = if point.through_zero { "" } else { ", a jump" };
-        format!("{} ({label}{how})", self.shown(&self.field.across, point.x))
+        format!("{value} ({label}{how})")
     }
 
     /// The check that changes at a point, in words.
@@ -240,7 +245,7 @@ pub fn field_csv(evaluator: &Evaluator, field: &Field) -> Result<String, csv::Er
     }
     for point in field.line.iter().flatten() {
         let name = map.margin(point).map_or(String::new(), |margin| margin.id);
-        line(if point.through_zero { "zero" } else { "jump" }, (point.x, point.y), &name, None, "")?;
+        line(if point.through_zero { "zero" } else { "jump" }, (point.x, point.y), &name, None, point.beyond.word())?;
     }
     let bytes = writer.into_inner().map_err(|e| csv::Error::from(e.into_error()))?;
     Ok(String::from_utf8_lossy(&bytes).into_owned())

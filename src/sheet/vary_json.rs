@@ -112,7 +112,8 @@ pub fn field_object(report: &Report, evaluator: &Evaluator, field: &Field) -> Va
     let row = |cells: &[Cell]| cells.iter().map(cell).collect::<Vec<_>>();
     let point = |point: &Edge| {
         let kind = point.kind.map(|kind| name_of(&names, kind));
-        json!({ "at": [point.x, point.y], "id": kind, "how": how(point.through_zero) })
+        let (beyond, how) = (point.beyond.word(), how(point.through_zero));
+        json!({ "at": [point.x, point.y], "id": kind, "beyond": beyond, "how": how })
     };
     let mut object = head(report, &[MAP_CAUTION]);
     object["over"] = axis(&field.across);

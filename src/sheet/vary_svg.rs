@@ -12,6 +12,8 @@ use svg::node::element::Element;
 const DASHES: [&str; 6] = ["", "9 4", "3 3", "12 3 3 3", "6 2 1 2", "1 4"];
 /// Most checks that are drawn; those with the least room anywhere come first.
 const MOST_LINES: usize = 6;
+/// Height of the strip of verdicts, user units.
+const STRIP: f64 = 18.0;
 /// Room beyond this share of the limit, on either side, is cut.
 const CUT: f64 = 1.0;
 
@@ -136,8 +138,8 @@ pub fn vary_svg(report: &Report, evaluator: &Evaluator, found: &Variation, syste
     let unit = display_unit(input.measure.dimension(), system);
     let values: Vec<f64> = found.rows.iter().map(|row| row.value / unit.factor()).collect();
     let (Some(&low), Some(&high)) = (values.first(), values.last()) else { return String::new() };
-    let words = format!("{} ({}) {}", input.path, input.field.label, unit.symbol());
-    let x = Scale { low, high, words: words.trim_end().to_owned() };
+    let symbol = if unit.symbol().is_empty() { String::new() } else { format!(", {}", unit.symbol()) };
+    let x = Scale { low, high, words: format!("{} ({}){symbol}", input.path, input.field.label) };
     let y = Scale { low: -CUT, high: CUT, words: "room left as a share of the limit (above zero it holds)".to_owned() };
     let title = format!("Checks over {}", input.path);
     let mut drawing = Drawing::new(&title, &vary_alternative(report, evaluator, found, system));
@@ -149,7 +151,7 @@ pub fn vary_svg(report: &Report, evaluator: &Evaluator, found: &Variation, syste
     }
     drawing.path("zero", &format!("M{} {}H{}", px(FRAME[0]), px(y.y(0.0)), px(FRAME[2])));
     for at in &found.crossings {
-        drawing.path("grid", &format!("M{} {}V{}", px(x.x(at.value / unit.factor())), px(FRAME[1]), px(FRAME[3])));
+        drawing.path("change", &format!("M{} {}V{}", px(x.x(at.value / unit.factor())), px(FRAME[1]), px(FRAME[3])));
     }
     let today = input.measure.si() / unit.factor();
     if (low..=high).contains(&today) {
@@ -185,7 +187,7 @@ fn label(evaluator: &Evaluator, found: &Variation, kind: CheckKind) -> String {
     known.map_or(String::new(), |(row, check)| evaluator.margin(&row.run, check, UnitSystem::Metric).label)
 }
 
-/// The worst verdict of every row behind the lines.
+/// The worst verdict of every row along the lower rim.
 fn strip(drawing: &mut Drawing, found: &Variation, x: &Scale, unit: f64) {
     let verdict = |row: &crate::study::Row| worst(row.run.checks.iter().map(|check| check.verdict));
     for pair in found.rows.windows(2) {
@@ -193,7 +195,7 @@ fn strip(drawing: &mut Drawing, found: &Variation, x: &Scale, unit: f64) {
         let (from, to) = (x.x(a.value / unit), x.x(b.value / unit));
         let middle = f64::midpoint(from, to);
         for (row, start, end) in [(a, from, middle), (b, middle, to)] {
-            drawing.verdict(verdict(row), [start, FRAME[1], end - start, FRAME[3] - FRAME[1]]);
+            drawing.verdict(verdict(row), [start, FRAME[3] - STRIP, end - start, STRIP]);
         }
     }
 }
@@ -252,7 +254,9 @@ fn vary_legend(drawing: &mut Drawing, report: &Report, evaluator: &Evaluator, fo
     }
     mark(drawing, (FRAME[0] + 285.0, y + 39.0));
     drawing.text("small", (FRAME[0] + 302.0, y + 44.0), &format!("the file: {}", report.verdict.word()));
-    let words = "thin upright lines: where a verdict changes (refined); bands play no part";
-    drawing.text("small faint", (FRAME[0] + 420.0, y + 44.0), words);
-    drawing.text("small faint", (FRAME[0], y + 66.0), &report.file);
+    drawing.path("change", &format!("M{} {}h26", px(FRAME[0] + 400.0), px(y + 40.0)));
+    drawing.text("small", (FRAME[0] + 432.0, y + 44.0), "where a verdict changes (refined)");
+    let words = "At the typical values of all other inputs; room beyond the limit itself, either way, is cut.";
+    drawing.text("small faint", (FRAME[0], y + 66.0), words);
+    drawing.text("small faint", (FRAME[0], y + 84.0), &report.file);
 }

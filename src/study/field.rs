@@ -82,6 +82,8 @@ pub struct Edge {
     pub y: f64,
     /// The check that changes; of several at once the one that governs.
     pub kind: Option<CheckKind>,
+    /// The verdict on the side that does not hold.
+    pub beyond: Verdict,
     /// True where a margin passes through zero; false where the verdict jumps (a stroke used up, a model that stops
     /// being valid, a run that fails).
     pub through_zero: bool,

@@ -159,7 +159,7 @@ pub fn spread(
     let mut gathered = Gathered::default();
     while gathered.samples < samples {
         let batch = gathered.samples..(gathered.samples + BATCH).min(samples);
-        let row = |index| evaluator.at(&sampler.values(index)).map(|run| Row::of(&run));
+        let row = |index| evaluator.peaks_at(&sampler.values(index)).map(|run| Row::of(&run));
         let rows = batch.into_par_iter().map(row).collect::<Result<Vec<_>, _>>()?;
         for row in rows {
             gathered.take(row);

@@ -105,7 +105,7 @@ pub fn worst_found(evaluator: &Evaluator, watch: &Watch<'_>) -> Result<WorstFoun
     let all_corners = wide.len() <= MOST_CORNER_BANDS;
     let search = Search::new(evaluator, wide, watch);
     let starts = search.starts(all_corners)?;
-    let typical = Outcome::of(evaluator.typical());
+    let typical = Outcome::of(evaluator.peaks_at(&[])?);
     let found = kinds(evaluator, &starts);
     search.count.refining(found.len());
     let checks = found.par_iter().map(|&kind| search.check(kind, &typical, &starts)).collect::<Result<Vec<_>, _>>()?;
@@ -203,7 +203,7 @@ impl<'e> Search<'e> {
             return Ok(None);
         }
         let values: Vec<_> = point.iter().enumerate().map(|(d, share)| (self.wide[d], self.value(d, *share))).collect();
-        self.memory.outcome(&values, || self.evaluator.at(&values)).map(Some)
+        self.memory.outcome(&values, || self.evaluator.peaks_at(&values)).map(Some)
     }
 
     fn check(&self, kind: CheckKind, typical: &Outcome, starts: &Starts) -> Result<Worst, StudyError> {

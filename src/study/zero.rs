@@ -1,7 +1,7 @@
 //! Lines through a grid of verdicts: which edges of the grid are crossed, and where on each.
 use super::evaluate::{Evaluator, StudyError};
-use super::field::{Cell, Edge, Field, Of, Piece};
-use crate::margin::{Check, Verdict};
+use super::field::{Edge, Field, Of, Piece};
+use crate::margin::{Check, CheckKind, Verdict};
 use rayon::prelude::*;
 
 /// A margin below this share of the limit is zero.
@@ -22,26 +22,18 @@ pub(super) struct Contour<'a> {
     holds: Vec<bool>,
 }
 
-/// Whether a place holds, and the margin that a root is sought of.
-#[derive(Clone, Copy)]
-struct Sight {
-    holds: bool,
-    /// The check that governs.
-    check: Option<Check>,
-}
-
-/// One end of a bracket on an edge: the share of the edge from its first end, and what was seen there.
-#[derive(Clone, Copy)]
+/// One end of a bracket on an edge: the share of the edge from its first end, and the checks there.
 struct End {
     share: f64,
-    sight: Sight,
-    /// The margin as a share of the limit, of the check that is followed; halved by Illinois steps.
-    room: Option<f64>,
+    holds: bool,
+    checks: Vec<Check>,
+    /// Halved by Illinois steps while the end stays.
+    weight: f64,
 }
 
 impl<'a> Contour<'a> {
     pub(super) fn new(evaluator: &'a Evaluator, field: &'a Field, of: Of) -> Self {
-        let holds = field.cells.iter().map(|cell| sight(cell.checks.as_slice(), of).holds).collect();
+        let holds = field.cells.iter().map(|cell| holds(&cell.checks, of)).collect();
         Self { evaluator, field, of, holds }
     }
 
@@ -95,58 +87,65 @@ impl<'a> Contour<'a> {
         let axes = [&self.field.across, &self.field.up];
         let [x, y] =
             [(axes[0], across), (axes[1], up)].map(|(axis, i)| f64::midpoint(axis.value(i), axis.value(i + 1)));
-        let middle = self.look(x, y)?.holds;
+        let middle = holds(&self.look(x, y)?, self.of);
         let corner = self.holds[up * axes[0].steps + across];
         let joined = if middle == corner { [[below, right], [above, left]] } else { [[below, left], [right, above]] };
         pieces.extend(joined);
         Ok(())
     }
 
-    fn look(&self, x: f64, y: f64) -> Result<Sight, StudyError> {
-        let run = self.evaluator.at(&[(self.field.across.input, x), (self.field.up.input, y)])?;
-        Ok(sight(&run.checks, self.of))
+    fn look(&self, x: f64, y: f64) -> Result<Vec<Check>, StudyError> {
+        Ok(self.evaluator.at(&[(self.field.across.input, x), (self.field.up.input, y)])?.checks)
     }
 
-    /// The change between two neighbours: regula falsi after Illinois on the margin that changes sign, halving where there is
-    /// none or where it does not shrink the bracket.
+    /// The change between two neighbours: regula falsi after Illinois on the margin of the check that governs on the side
+    /// that does not hold, halving where that margin does not change its sign. Which side a place is on is told by the
+    /// verdicts alone.
     ///
     /// # Reference
     /// Dowell and Jarratt (1971), BIT 11:168-174.
     fn refine(&self, a: usize, b: usize) -> Result<Edge, StudyError> {
         let (from, to) = (self.place(a), self.place(b));
         let at = |share: f64| (from.0 + share * (to.0 - from.0), from.1 + share * (to.1 - from.1));
-        let end = |share: f64, sight: Sight| End { share, sight, room: sight.room() };
-        let cell = |place: usize| sight(cell_checks(&self.field.cells[place]), self.of);
-        let mut ends = [end(0.0, cell(a)), end(1.0, cell(b))];
+        let end = |share: f64, checks: Vec<Check>| End { share, holds: holds(&checks, self.of), checks, weight: 1.0 };
+        let checks = |place: usize| self.field.cells[place].checks.clone();
+        let mut ends = [end(0.0, checks(a)), end(1.0, checks(b))];
         let mut last = None;
         for round in 0..ROUNDS {
-            let width = ends[1].share - ends[0].share;
-            if width <= POINT_SHARE[usize::from(ends.iter().all(|end| end.room.is_some()))] {
+            let bad = &ends[usize::from(ends[0].holds)];
+            let followed = governing(&bad.checks, self.of).map(|check| check.kind);
+            let rooms = followed.and_then(|kind| crossed(&ends, kind));
+            if ends[1].share - ends[0].share <= POINT_SHARE[usize::from(rooms.is_some())] {
                 break;
             }
-            let share = guess(&ends, round);
+            let share = guess(&ends, rooms, round);
             let (x, y) = at(share);
-            let seen = self.look(x, y)?;
-            if seen.room().is_some_and(|room| room.abs() <= ZERO_SHARE) {
-                return Ok(Edge { x, y, kind: seen.check.map(|c| c.kind), through_zero: true });
+            let seen = end(share, self.look(x, y)?);
+            let governs = governing(&seen.checks, self.of).map(|check| check.kind);
+            let room = followed.and_then(|kind| room(&seen.checks, kind));
+            if rooms.is_some() && (seen.holds || governs == followed) && room.is_some_and(|r| r.abs() <= ZERO_SHARE) {
+                let beyond = governing(&bad.checks, self.of).map_or(Verdict::Open, |check| check.verdict);
+                return Ok(Edge { x, y, kind: followed, beyond, through_zero: true });
             }
-            let side = usize::from(seen.holds != ends[0].sight.holds);
-            ends[side] = end(share, seen);
+            let side = usize::from(seen.holds != ends[0].holds);
+            ends[side] = seen;
             if last == Some(side) {
-                // The other end stays: its weight is halved, so that the next guess falls nearer to it.
-                ends[1 - side].room = ends[1 - side].room.map(|room| room / 2.0);
+                ends[1 - side].weight /= 2.0;
             }
             last = Some(side);
         }
-        Ok(self.jump(&ends, at))
+        Ok(self.point_between(&ends, at))
     }
 
-    /// The verdict jumps: the point on the side that holds, and the check that stops holding.
-    fn jump(&self, ends: &[End; 2], at: impl Fn(f64) -> (f64, f64)) -> Edge {
-        let [good, bad] = if ends[0].sight.holds { [ends[0], ends[1]] } else { [ends[1], ends[0]] };
+    /// The bracket is a point: it lies on the side that holds, and names the check that stops holding.
+    fn point_between(&self, ends: &[End; 2], at: impl Fn(f64) -> (f64, f64)) -> Edge {
+        let [good, bad] = if ends[0].holds { [&ends[0], &ends[1]] } else { [&ends[1], &ends[0]] };
         let (x, y) = at(good.share);
-        let small = |end: End| end.sight.room().is_some_and(|room| room.abs() <= SMALL_SHARE);
-        Edge { x, y, kind: bad.sight.check.map(|c| c.kind), through_zero: small(good) && small(bad) }
+        let check = governing(&bad.checks, self.of);
+        let kind = check.map(|check| check.kind);
+        let small = |end: &End| kind.and_then(|kind| room(&end.checks, kind)).is_some_and(|r| r.abs() <= SMALL_SHARE);
+        let beyond = check.map_or(Verdict::Open, |check| check.verdict);
+        Edge { x, y, kind, beyond, through_zero: small(good) && small(bad) }
     }
 
     fn place(&self, number: usize) -> (f64, f64) {
@@ -155,45 +154,47 @@ impl<'a> Contour<'a> {
     }
 }
 
-fn cell_checks(cell: &Cell) -> &[Check] {
-    &cell.checks
-}
-
-impl Sight {
-    /// The margin as a share of the limit where it tells the side: positive where it holds, negative where not.
-    fn room(&self) -> Option<f64> {
-        let check = self.check?;
-        let room = check.relative();
-        let tells = check.margin.is_some() && room.is_finite() && (room >= 0.0) == self.holds;
-        tells.then_some(room)
-    }
-}
-
-fn sight(checks: &[Check], of: Of) -> Sight {
+/// The check that governs: the one that is followed or, of all, the worst verdict and within it the least room.
+fn governing(checks: &[Check], of: Of) -> Option<&Check> {
+    let worse = |a: &&Check, b: &&Check| b.verdict.cmp(&a.verdict).then(a.relative().total_cmp(&b.relative()));
     match of {
-        Of::One(kind) => {
-            let check = checks.iter().find(|check| check.kind == kind).copied();
-            Sight { holds: check.is_none_or(|check| check.verdict == Verdict::Holds), check }
-        }
-        Of::All => {
-            // The worst verdict, then the least room: that of the run and of stated values alike, so that the margin
-            // is continuous where no verdict jumps.
-            let worse = |a: &&Check, b: &&Check| b.verdict.cmp(&a.verdict).then(a.relative().total_cmp(&b.relative()));
-            let check = checks.iter().min_by(worse).copied();
-            Sight { holds: check.is_some_and(|check| check.verdict == Verdict::Holds), check }
-        }
+        Of::One(kind) => checks.iter().find(|check| check.kind == kind),
+        Of::All => checks.iter().min_by(worse),
     }
+}
+
+/// Whether a place is on the good side of a line; a single check that does not apply is.
+fn holds(checks: &[Check], of: Of) -> bool {
+    let check = governing(checks, of);
+    match of {
+        Of::One(_) => check.is_none_or(|check| check.verdict == Verdict::Holds),
+        Of::All => check.is_some_and(|check| check.verdict == Verdict::Holds),
+    }
+}
+
+/// The margin of a check as a share of its limit, where it has one.
+fn room(checks: &[Check], kind: CheckKind) -> Option<f64> {
+    let check = checks.iter().find(|check| check.kind == kind)?;
+    check.margin.map(|_| check.relative()).filter(|room| room.is_finite())
+}
+
+/// The margins of a check at both ends where it passes through zero between them, weighted; none where it does not, as
+/// where it is zero all along the side that holds.
+fn crossed(ends: &[End; 2], kind: CheckKind) -> Option<[f64; 2]> {
+    let [a, b] = [room(&ends[0].checks, kind)?, room(&ends[1].checks, kind)?];
+    let [good, bad] = if ends[0].holds { [a, b] } else { [b, a] };
+    (good > ZERO_SHARE && bad < 0.0).then_some([a * ends[0].weight, b * ends[1].weight])
 }
 
 /// Where to look next between two ends.
-fn guess(ends: &[End; 2], round: usize) -> f64 {
-    let [a, b] = ends;
-    let middle = f64::midpoint(a.share, b.share);
-    match (a.room, b.room) {
+fn guess(ends: &[End; 2], rooms: Option<[f64; 2]>, round: usize) -> f64 {
+    let [a, b] = [ends[0].share, ends[1].share];
+    let middle = f64::midpoint(a, b);
+    match rooms {
         // Every fourth round halves, so that no bracket is stuck at a kink.
-        (Some(p), Some(q)) if round % 4 != 3 && p != q => {
-            let share = a.share + (b.share - a.share) * p / (p - q);
-            if share > a.share && share < b.share { share } else { middle }
+        Some([p, q]) if round % 4 != 3 => {
+            let share = a + (b - a) * p / (p - q);
+            if share > a && share < b { share } else { middle }
         }
         _ => middle,
     }
