@@ -3,10 +3,12 @@ mod audit;
 mod exit;
 mod interrupt;
 mod locate;
+mod meter;
 mod new;
 mod options;
 mod output;
 mod run;
+mod spread;
 mod study;
 
 pub use exit::Code;
@@ -52,6 +54,7 @@ fn dispatch(arguments: Arguments) -> Next {
         (Some(Command::Compare(args)), _) => Next::Exit(study::compare(&args)),
         (Some(Command::Vary(args)), _) => Next::Exit(study::vary_one(&args)),
         (Some(Command::Remedy(args)), _) => Next::Exit(study::remedy(&args)),
+        (Some(Command::Spread(args)), _) => Next::Exit(spread::spread(&args)),
         (Some(Command::Limits(args)), _) => Next::Exit(new::limits(&args)),
         (Some(Command::New(args)), _) => Next::Exit(new::new(&args)),
         (None, None) => {
