@@ -120,6 +120,7 @@ pub fn spread_csv(sheet: &SpreadSheet<'_>) -> Result<String, csv::Error> {
     Ok(String::from_utf8_lossy(&bytes).into_owned())
 }
 
+#[expect(clippy::needless_pass_by_value, reason = "numbers and words alike, most of them made for the line")]
 fn line(row: &str, id: &str, item: &str, value: impl ToString, unit: &str) -> Line {
     [row.to_owned(), id.to_owned(), item.to_owned(), value.to_string(), unit.to_owned()]
 }
