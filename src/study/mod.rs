@@ -10,6 +10,7 @@ mod memory;
 mod nearest;
 mod pair;
 mod rank;
+mod ranked;
 mod remedy;
 mod sample;
 mod sobol;
@@ -25,7 +26,8 @@ pub use compare::{Comparison, InputChange, NumberChange, SAME_SHARE, Side, Verdi
 pub use evaluate::{Evaluator, Failure, Run, StudyError};
 pub use field::{Axis, Cell, Edge, Field, MOST_STEPS, Of, Piece, field, zero_line};
 pub use held::Held;
-pub use rank::{Bar, Importance, Part, Ranking, Target, bars, importance, importance_of};
+pub use rank::{Bar, Importance, Part, Ranking, Target, bars, importance, importance_of, importances};
+pub use ranked::{CheckRanking, ranked};
 pub use remedy::{
     ADJUSTABLE, MASS_MULTIPLE, MULTIPLE, Pair, REACH_M, Remedies, Remedy, Scale, Wanted, Way, Without, Yard, remedies,
     remedies_of,
