@@ -102,7 +102,7 @@ fn a_point_has_no_margin_left_or_lies_at_a_jump() {
             zeros += 1;
         } else {
             assert!(all(at(0.0, 0.0)), "{point:?} is not on the side that holds");
-            let (dx, dy) = (2e-6 * step, 2e-6 * rise);
+            let (dx, dy) = (2e-4 * step, 2e-4 * rise);
             assert!([(dx, 0.0), (-dx, 0.0), (0.0, dy), (0.0, -dy)].iter().any(|d| !all(at(d.0, d.1))), "{point:?}");
             jumps += 1;
         }

@@ -3,11 +3,12 @@ mod audit;
 mod exit;
 mod interrupt;
 mod locate;
+mod meter;
 mod new;
 mod options;
 mod output;
-mod progress;
 mod run;
+mod spread;
 mod study;
 mod vary;
 
@@ -54,6 +55,7 @@ fn dispatch(arguments: Arguments) -> Next {
         (Some(Command::Compare(args)), _) => Next::Exit(study::compare(&args)),
         (Some(Command::Vary(args)), _) => Next::Exit(vary::vary_inputs(&args)),
         (Some(Command::Remedy(args)), _) => Next::Exit(study::remedy(&args)),
+        (Some(Command::Spread(args)), _) => Next::Exit(spread::spread(&args)),
         (Some(Command::Limits(args)), _) => Next::Exit(new::limits(&args)),
         (Some(Command::New(args)), _) => Next::Exit(new::new(&args)),
         (None, None) => {

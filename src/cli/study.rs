@@ -1,13 +1,12 @@
 //! `compare` and `remedy`.
 use super::exit::Code;
 use super::interrupt::Interrupt;
+use super::meter::Meter;
 use super::options::{CompareArgs, RemedyArgs, Units};
 use super::output::{self, PAINT};
-use super::progress::Progress;
 use super::run::{load_and_judge, load_and_report};
 use crate::sheet::{Layout, compare_object, compare_text, comparison, print, remedy_object, remedy_text};
-use crate::study::{self, Evaluator, Held, Step, StudyError, Wanted, remedies_of};
-use std::sync::{Mutex, PoisonError};
+use crate::study::{Evaluator, Held, StudyError, Wanted, remedies_of};
 
 /// Prints what differs between two files.
 pub fn compare(args: &CompareArgs) -> Code {
@@ -51,13 +50,10 @@ pub fn remedy(args: &RemedyArgs) -> Code {
     };
     let held = if args.worst { Held::Worst } else { Held::Typical };
     let wanted = Wanted { held, pairs: args.pairs };
-    let progress = Mutex::new(Progress::new());
-    let watch = |told: study::Progress| {
-        let mut progress = progress.lock().unwrap_or_else(PoisonError::into_inner);
-        progress.step(what(told.step), told.done, told.of)
-    };
+    let (interrupt, meter) = (Interrupt::listen(), Meter::new());
+    let watch = |progress| interrupt.watch(&meter, progress);
     let found = Evaluator::new(&report.scenario).and_then(|evaluator| remedies_of(&evaluator, wanted, &watch));
-    let interrupted = progress.into_inner().unwrap_or_else(PoisonError::into_inner).is_interrupted();
+    meter.clear();
     match found {
         Ok(found) => {
             let text = if args.json {
@@ -66,24 +62,13 @@ pub fn remedy(args: &RemedyArgs) -> Code {
                 remedy_text(&report, &found, args.units.map(Units::system), PAINT)
             };
             output::results(&text);
-            if interrupted { Code::Interrupted } else { Code::from(found.today) }
+            interrupt.tell();
+            if interrupt.is_pressed() { Code::Interrupted } else { Code::from(found.today) }
         }
         Err(StudyError::Basis(error)) => refused(&error.to_string()),
         Err(error) => {
             output::message(&error.to_string());
             Code::NotComputed
         }
-    }
-}
-
-/// What a step counts.
-const fn what(step: Step) -> &'static str {
-    match step {
-        Step::Corners => "runs over the bands",
-        Step::Refining => "checks at their worst",
-        Step::Sample => "runs of the sample",
-        Step::Ranking => "points of the ranking",
-        Step::Remedies => "inputs",
-        Step::Pairs => "pairs of inputs",
     }
 }

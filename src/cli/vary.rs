@@ -1,8 +1,9 @@
 //! `vary`: one input across a range, or two across a map.
 use super::exit::Code;
+use super::interrupt::Interrupt;
+use super::meter::Meter;
 use super::options::VaryArgs;
 use super::output::{self, PAINT};
-use super::progress::Progress;
 use super::run::load_and_report;
 use super::study::refused;
 use crate::margin::worst;
@@ -11,7 +12,7 @@ use crate::sheet::{
     CAUTION_LINE, Layout, MOST_TEXT_STEPS, Report, field_csv, field_object, field_svg, field_text, print, vary_csv,
     vary_object, vary_svg, vary_text,
 };
-use crate::study::{Axis, Evaluator, Field, MOST_STEPS, Variation, field, usual_range, vary};
+use crate::study::{Axis, Evaluator, Field, MOST_STEPS, Progress, Step, Variation, field, usual_range, vary};
 use std::ops::RangeInclusive;
 
 /// Values of the first input of a map, and of the second, where none are asked for.
@@ -129,8 +130,12 @@ fn map(args: &VaryArgs, second: &str, form: Form, evaluator: &Evaluator) -> Resu
         steps: steps("--and-steps", args.and_steps.unwrap_or(USUAL_STEPS[1]), false)?,
     };
     let cells = across.steps * up.steps;
-    let mut progress = Progress::new();
-    field(evaluator, across, up, &mut |done| progress.step("cells", done, cells)).map_err(|error| error.to_string())
+    let (interrupt, meter) = (Interrupt::listen(), Meter::new());
+    let mut watch = |done| interrupt.watch(&meter, Progress { step: Step::Cells, done, of: cells });
+    let found = field(evaluator, across, up, &mut watch);
+    meter.clear();
+    interrupt.tell();
+    found.map_err(|error| error.to_string())
 }
 
 /// A text map has room for fewer values than the other forms.

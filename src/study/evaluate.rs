@@ -187,9 +187,7 @@ impl Evaluator {
     /// # Errors
     /// [`StudyError::NoInput`] and [`StudyError::NotFinite`]; [`StudyError::Stopped`] where a meter refuses the run.
     pub fn at(&self, values: &[(usize, f64)]) -> Result<Run, StudyError> {
-        if self.meter.as_ref().is_some_and(|meter| !meter.count()) {
-            return Err(StudyError::Stopped);
-        }
+        self.count()?;
         Ok(self.scenario_at(values)?.map_or_else(|| self.failed(Failure::Clash), |changed| self.run(&changed)))
     }
 
@@ -199,8 +197,15 @@ impl Evaluator {
     /// # Errors
     /// As [`Self::at`].
     pub fn peaks_at(&self, values: &[(usize, f64)]) -> Result<Run, StudyError> {
+        self.count()?;
         let run = |changed: &Scenario| self.judged(changed, peaks(changed));
         Ok(self.scenario_at(values)?.as_ref().map_or_else(|| self.failed(Failure::Clash), run))
+    }
+
+    /// One more run for the meter, which may refuse it.
+    fn count(&self) -> Result<(), StudyError> {
+        let refused = self.meter.as_ref().is_some_and(|meter| !meter.count());
+        if refused { Err(StudyError::Stopped) } else { Ok(()) }
     }
 
     /// The scenario with some inputs replaced, as [`Self::at`] runs it; none where the values cannot be together.

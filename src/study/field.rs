@@ -180,13 +180,13 @@ fn fits(evaluator: &Evaluator, axes: [&Axis; 2]) -> Result<(), StudyError> {
 fn run(evaluator: &Evaluator, field: &Field, place: usize) -> Result<Cell, StudyError> {
     let (across, up) = (&field.across, &field.up);
     let values = [(across.input, across.value(place % across.steps)), (up.input, up.value(place / across.steps))];
-    Ok(Cell::of(evaluator.at(&values)?))
+    Ok(Cell::of(evaluator.peaks_at(&values)?))
 }
 
 /// Where a check, or all together, changes between holding and not holding, as pieces of a line, one or two in a cell.
 ///
 /// Every point is found by root finding along an edge between two neighbours of the grid, not read off it: the margin
-/// there is within 1e-9 of the limit of zero, or the verdict jumps within a millionth of the edge. Between its points a
+/// there is within 1e-9 of the limit of zero, or the verdict jumps within a ten-thousandth of the edge. Between its points a
 /// piece is straight where the line may bend, and what changes twice between two neighbours is missed. A check that does
 /// not apply holds.
 ///

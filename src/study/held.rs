@@ -132,7 +132,7 @@ impl<'e> Judge<'e> {
 
     fn holds_at(&self, values: &[(usize, f64)], place: &[(usize, f64)]) -> Result<bool, StudyError> {
         let all: Values = values.iter().chain(place).copied().collect();
-        Ok(word(&self.evaluator.at(&all)?) == Verdict::Holds)
+        Ok(word(&self.evaluator.peaks_at(&all)?) == Verdict::Holds)
     }
 
     /// Looks whether a change that holds at all known places holds at the worst found: first at the corners of the bands,

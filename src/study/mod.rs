@@ -11,6 +11,7 @@ mod meter;
 mod nearest;
 mod pair;
 mod rank;
+mod ranked;
 mod remedy;
 mod sample;
 mod sobol;
@@ -27,7 +28,8 @@ pub use evaluate::{Evaluator, Failure, Run, StudyError};
 pub use field::{Axis, Cell, Edge, Field, MOST_STEPS, Of, Piece, field, zero_line};
 pub use held::Held;
 pub use meter::Meter;
-pub use rank::{Bar, Importance, Part, Ranking, Target, bars, importance, importance_of};
+pub use rank::{Bar, Importance, Part, Ranking, Target, bars, importance, importance_of, importances};
+pub use ranked::{CheckRanking, ranked};
 pub use remedy::{
     ADJUSTABLE, MASS_MULTIPLE, MULTIPLE, Pair, REACH_M, Remedies, Remedy, Scale, Wanted, Way, Without, Yard, remedies,
     remedies_of,

@@ -13,6 +13,8 @@ pub enum Step {
     Sample,
     /// Base points of the ranking.
     Ranking,
+    /// Cells of a map.
+    Cells,
     /// Inputs whose nearest value is searched.
     Remedies,
     /// Pairs of inputs whose nearest joint change is searched.

@@ -7,10 +7,10 @@ use rayon::prelude::*;
 /// A margin below this share of the limit is zero.
 const ZERO_SHARE: f64 = 1e-9;
 /// A bracket of this share of an edge is a point, where no margin leads to it and where one does.
-const POINT_SHARE: [f64; 2] = [1e-6, 1e-9];
+const POINT_SHARE: [f64; 2] = [1e-4, 1e-9];
 /// Margins on both sides of a point below this share of the limit are those of a zero, larger ones of a jump.
 const SMALL_SHARE: f64 = 1e-6;
-/// Rounds on one edge; halving alone needs 20 to come to a point.
+/// Rounds on one edge; halving alone needs 14 to come to a point.
 const ROUNDS: usize = 60;
 
 /// One line to be drawn.
@@ -95,7 +95,7 @@ impl<'a> Contour<'a> {
     }
 
     fn look(&self, x: f64, y: f64) -> Result<Vec<Check>, StudyError> {
-        Ok(self.evaluator.at(&[(self.field.across.input, x), (self.field.up.input, y)])?.checks)
+        Ok(self.evaluator.peaks_at(&[(self.field.across.input, x), (self.field.up.input, y)])?.checks)
     }
 
     /// The change between two neighbours: regula falsi after Illinois on the margin of the check that governs on the side

@@ -72,6 +72,8 @@ pub enum Command {
     AxisAcross,
     /// The chosen input goes upwards in Map.
     AxisUp,
+    /// Remedies at the typical values or at the worst found.
+    HeldAt,
     /// Keep the present state to compare with.
     Keep,
     /// Play or pause the fall.

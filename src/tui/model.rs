@@ -142,6 +142,8 @@ pub struct Model {
     pub spread_row: usize,
     /// First row shown of Compare.
     pub compare_row: usize,
+    /// Whether remedies are to hold at the worst found, too.
+    pub remedies_at_worst: bool,
     /// The chosen remedy.
     pub remedy: usize,
     /// Axes and movable point of Map.
@@ -194,6 +196,7 @@ impl Model {
             ledger_row: 0,
             spread_row: 0,
             compare_row: 0,
+            remedies_at_worst: false,
             remedy: 0,
             map: Point::default(),
             shelf: Shelf::default(),

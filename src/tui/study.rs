@@ -4,7 +4,9 @@ use super::map::Step;
 use super::model::{Model, Pane, View};
 use super::panes::{map, remedies};
 use super::studies::{Findings, Lane};
-use crate::study::Remedy;
+use crate::margin::{Verdict, worst};
+use crate::sheet::Report;
+use crate::study::{Held, Remedy};
 use ratatui::layout::{Position, Rect};
 
 /// Cells that the point of Map moves with shift.
@@ -21,10 +23,35 @@ impl Model {
         }
     }
 
+    /// Where a remedy must hold: at the worst found where every check holds at the typical values already, or where the
+    /// user asks for it.
+    #[must_use]
+    pub fn remedies_held(&self) -> Held {
+        let typical = self.answer.current().map_or(Verdict::Open, typical_verdict);
+        let is_worst = self.has_bands() && (self.remedies_at_worst || typical == Verdict::Holds);
+        if is_worst { Held::Worst } else { Held::Typical }
+    }
+
+    /// Remedies at the typical values or at the worst found.
+    pub fn switch_remedies(&mut self) {
+        if !self.has_bands() {
+            return self.say("no input is a band: the typical values are all there is");
+        }
+        self.remedies_at_worst = !self.remedies_at_worst;
+    }
+
     /// The input that Vary moves: the chosen one.
     #[must_use]
     pub fn varied_path(&self) -> Option<&str> {
         self.chosen().map(|input| input.path.as_str())
+    }
+}
+
+/// The worst word at the typical values.
+fn typical_verdict(report: &Report) -> Verdict {
+    match &report.bands {
+        Some(bands) => worst(bands.margins.iter().filter_map(|band| band.typical)),
+        None => report.verdict,
     }
 }
 

@@ -203,6 +203,14 @@ pub const COMMANDS: &[Entry] = &[
         Group::Study,
     ),
     entry(
+        Command::HeldAt,
+        "held-at",
+        &[Key::letter('h')],
+        "at the worst",
+        "Remedies: holds with the other inputs at their typical values, or at the worst found in their bands",
+        Group::Study,
+    ),
+    entry(
         Command::Keep,
         "keep",
         &[Key::letter('k')],

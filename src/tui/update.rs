@@ -142,6 +142,7 @@ fn run(model: &mut Model, command: Command) -> Vec<Effect> {
         Command::IntoInputs => study::into_inputs(model),
         Command::AxisAcross => model.set_axis(0),
         Command::AxisUp => model.set_axis(1),
+        Command::HeldAt => model.switch_remedies(),
         Command::Keep => model.keep(),
         Command::Stop => return studies::stop(model),
         Command::Again => studies::again(model),

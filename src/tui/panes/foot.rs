@@ -55,6 +55,7 @@ fn is_of_view(model: &Model, entry: &Entry) -> bool {
     match entry.command {
         Command::IntoInputs => model.view.takes_keys(),
         Command::AxisAcross | Command::AxisUp => model.view == View::Map,
+        Command::HeldAt => model.view == View::Remedies && model.has_bands(),
         Command::Keep => model.view == View::Compare,
         Command::Stop => is_running,
         Command::Again => !is_running && matches!(model.view, View::Spread),

@@ -3,7 +3,7 @@ use super::state;
 use crate::margin::Verdict;
 use crate::quantity::format_unit;
 use crate::sheet::REMEDY_CAUTION;
-use crate::study::{Remedies, Remedy};
+use crate::study::{Held, Remedies, Remedy, Scale, Way, Without, Yard};
 use crate::tui::command::{Command, key_name};
 use crate::tui::edit::value_text;
 use crate::tui::layout::scroll;
@@ -45,7 +45,10 @@ pub fn remedy_at(model: &Model, area: Rect, row: u16) -> Option<usize> {
 /// Draws it.
 pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
     let theme = model.theme;
-    let title = "Remedies  one input alone, at typical values";
+    let title = match model.remedies_held() {
+        Held::Typical => "Remedies  one input alone, at typical values",
+        Held::Worst => "Remedies  one input alone, at the worst found",
+    };
     put(buffer, area, 0, 0, &fit(title, usize::from(area.width)), theme.heading());
     let words = Rect { y: area.bottom() - words_rows(area), height: words_rows(area), ..area };
     draw_caution(buffer, words, model);
@@ -55,7 +58,10 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
             state::draw(buffer, Rect { height: list.height + 1, ..area }, model, Lane::Remedies, "nothing to work out");
         }
         Some(found) if found.today == Verdict::Holds => {
-            let words = "every check holds at the typical values: no change is worked out";
+            let words = match found.wanted.held {
+                Held::Typical => "every check holds at the typical values: no change is worked out",
+                Held::Worst => "every check holds at the worst found in the bands: no change is worked out",
+            };
             put_wrapped(
                 buffer,
                 Rect { y: list.y + 1, height: list.height.saturating_sub(1), ..list },
@@ -82,7 +88,7 @@ fn draw_list(buffer: &mut Buffer, area: Rect, model: &Model, found: &Remedies) {
     let first = scroll(model.remedy, found.list.len(), shown);
     for (line, (index, remedy)) in (0..).zip(found.list.iter().enumerate().skip(first).take(shown)) {
         let row = Rect { y: area.y + line * each, height: each, ..area };
-        draw_remedy(buffer, row, model, remedy, index == model.remedy);
+        draw_remedy(buffer, row, model, (remedy, found.yard.0), index == model.remedy);
     }
     let below = found.list.len().saturating_sub(first + shown);
     if first + below > 0 {
@@ -92,24 +98,44 @@ fn draw_list(buffer: &mut Buffer, area: Rect, model: &Model, found: &Remedies) {
 }
 
 /// The change, and how large it is or why there is none.
-fn words(remedy: &Remedy) -> (String, String) {
+fn words(remedy: &Remedy, yard: Yard) -> (String, String) {
     let today = value_text(&remedy.input.measure);
     if let Some(way) = &remedy.way {
-        let of = if way.of_range { "of its range" } else { "of its value" };
         let ways = if way.ways > 1 { format!(", nearest of {} ways", way.ways) } else { String::new() };
-        return (format!("{today} -> {}", way.written), format!("{:.1} % {of}{ways}", way.relative * 100.0));
+        let exactly = if way.narrowed { " exactly" } else { "" };
+        return (format!("{today} -> {}{exactly}", way.shown), format!("{}{ways}", share_words(way, yard)));
     }
     let unit = remedy.input.measure.unit;
     let (low, high) = (format_unit(remedy.range.0, unit), format_unit(remedy.range.1, unit));
-    (today, format!("none in {low} to {high}"))
+    let why = match remedy.without {
+        Some(Without::Unsettled) => format!("not settled in {low} to {high}"),
+        Some(Without::Stopped) => "stopped".to_owned(),
+        Some(Without::NoneInRange) | None => format!("none in {low} to {high}"),
+    };
+    (today, why)
 }
 
-fn draw_remedy(buffer: &mut Buffer, row: Rect, model: &Model, remedy: &Remedy, is_chosen: bool) {
+/// What the change is a share of.
+fn share_words(way: &Way, yard: Yard) -> String {
+    let percent = way.relative * 100.0;
+    match way.scale {
+        Scale::Today(_) => format!("{percent:.1} % of its value"),
+        Scale::Fall(size) => match yard {
+            Yard::Line => format!("{percent:.1} % of the line's length"),
+            Yard::TotalFall => format!("{percent:.1} % of the total fall"),
+            Yard::Reach => format!("{percent:.1} % of {size:.0} m"),
+        },
+        Scale::One => format!("{percent:.1} % of 1"),
+        Scale::Nothing => "from zero".to_owned(),
+    }
+}
+
+fn draw_remedy(buffer: &mut Buffer, row: Rect, model: &Model, (remedy, yard): (&Remedy, Yard), is_chosen: bool) {
     let theme = model.theme;
     let base = if is_chosen { theme.chosen(model.pane == Pane::View) } else { theme.plain() };
     buffer.set_style(row, base);
     put(buffer, row, 0, 0, if is_chosen { ">" } else { " " }, base);
-    let (change, note) = words(remedy);
+    let (change, note) = words(remedy, yard);
     let style = if remedy.way.is_some() { base } else { base.patch(theme.quiet()) };
     if row.height == 1 {
         put(buffer, row, 2, 0, &fit(&remedy.input.path, 22), style);

@@ -2,8 +2,8 @@
 use super::name::{Name, names};
 use crate::scenario::{Input, Scenario};
 use crate::study::{
-    self, ADJUSTABLE, Axis, Bar, Evaluator, Field, Meter, Ranking, Remedies, Spread, Step, StudyError, Target,
-    Variation, WorstFound, bars, field, importance, remedies, spread, usual_range, vary, worst_found,
+    self, Axis, Bar, Evaluator, Field, Held, Meter, Ranking, Remedies, Spread, Step, StudyError, Target, Variation,
+    Wanted, WorstFound, bars, field, importances, remedies_of, spread, usual_range, vary, worst_found,
 };
 use crate::tui::message::Message;
 use std::ops::{ControlFlow, RangeInclusive};
@@ -91,8 +91,11 @@ pub enum What {
         /// Id of the check.
         check: String,
     },
-    /// Nearest values at which every check holds.
-    Remedies,
+    /// Nearest values at which every check holds: with the others at their typical values, or at the worst found.
+    Remedies {
+        /// Which of the two.
+        held: Held,
+    },
 }
 
 impl What {
@@ -105,7 +108,7 @@ impl What {
             Self::Map { .. } => Lane::Map,
             Self::Spread { .. } => Lane::Spread,
             Self::Ranking { .. } => Lane::Ranking,
-            Self::Remedies => Lane::Remedies,
+            Self::Remedies { .. } => Lane::Remedies,
         }
     }
 }
@@ -190,17 +193,13 @@ impl Order {
     pub fn expected(&self) -> Option<usize> {
         let inputs = crate::scenario::inputs(&self.scenario);
         match &self.what {
-            What::Bands => None,
+            What::Bands | What::Remedies { .. } => None,
             What::Vary { .. } => Some(VARY_ROWS),
             What::Map { steps, .. } => Some(steps[0] * steps[1]),
             What::Spread { samples } => Some(*samples),
             What::Ranking { .. } => {
                 let wide = inputs.iter().filter(|input| input.measure.band.is_wide()).count();
                 Some(RANKING_POINTS * (2 * wide + 2) + 2 * wide)
-            }
-            What::Remedies => {
-                let free = inputs.iter().filter(|input| ADJUSTABLE.contains(&input.path.as_str())).count();
-                Some(free * 2 * 400)
             }
         }
     }
@@ -223,7 +222,7 @@ impl Order {
             if meter.is_ending() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
         };
         Ok(match &self.what {
-            What::Bands => Findings::Bands(Arc::new(worst_found(&evaluator, &|at| search_goes_on(at, meter))?)),
+            What::Bands => Findings::Bands(Arc::new(worst_found(&evaluator, &|at| goes_on(at, meter))?)),
             What::Vary { path } => Findings::Vary(Arc::new(varied(&evaluator, path)?)),
             What::Map { paths, steps } => {
                 let [across, up] = [axis(&evaluator, &paths[0], steps[0])?, axis(&evaluator, &paths[1], steps[1])?];
@@ -236,8 +235,11 @@ impl Order {
                 let kinds = spread.checks.iter().map(|check| check.kind);
                 Findings::Spread(Arc::new(Spreading { names: names(&evaluator, kinds), spread }))
             }
-            What::Ranking { check } => Findings::Ranking(Arc::new(ranked(&evaluator, check)?)),
-            What::Remedies => Findings::Remedies(Arc::new(remedies(&evaluator)?)),
+            What::Ranking { check } => Findings::Ranking(Arc::new(ranked(&evaluator, check, meter)?)),
+            What::Remedies { held } => {
+                let wanted = Wanted { held: *held, pairs: false };
+                Findings::Remedies(Arc::new(remedies_of(&evaluator, wanted, &|at| goes_on(at, meter))?))
+            }
         })
     }
 }
@@ -255,14 +257,16 @@ fn guarded(find: impl FnOnce() -> Result<Findings, StudyError>) -> Result<Option
 /// Share of a search that its first runs are taken for.
 const FIRST_SHARE: f32 = 0.3;
 
-/// Tells how far a search of the bands is; it goes on until nobody wants it.
+/// Tells how far a study is; it goes on until nobody wants it.
 #[expect(clippy::cast_precision_loss, reason = "a share for the eye")]
-fn search_goes_on(at: study::Progress, meter: &Meter) -> ControlFlow<()> {
+fn goes_on(at: study::Progress, meter: &Meter) -> ControlFlow<()> {
     let share = at.done as f32 / at.of.max(1) as f32;
-    meter.tell_share(match at.step {
-        Step::Corners => FIRST_SHARE * share,
-        _ => FIRST_SHARE + (1.0 - FIRST_SHARE) * share,
-    });
+    match at.step {
+        Step::Corners => meter.tell_share(FIRST_SHARE * share),
+        Step::Refining => meter.tell_share(FIRST_SHARE + (1.0 - FIRST_SHARE) * share),
+        Step::Remedies => meter.tell_share(share),
+        _ => {}
+    }
     if meter.is_dropped() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
 }
 
@@ -282,17 +286,16 @@ fn varied(evaluator: &Evaluator, path: &str) -> Result<Varied, StudyError> {
     Ok(Varied { names: names(evaluator, []), input: evaluator.inputs()[input].clone(), range, variation })
 }
 
-fn ranked(evaluator: &Evaluator, check: &str) -> Result<Ranked, StudyError> {
+fn ranked(evaluator: &Evaluator, check: &str, meter: &Meter) -> Result<Ranked, StudyError> {
     let names = names(evaluator, []);
     let found = names.iter().find(|name| name.margin.id == check).or_else(|| names.first()).cloned();
     let name = found.ok_or_else(|| StudyError::NoPath { path: check.to_owned() })?;
     let target = Target::Margin(name.kind);
-    Ok(Ranked {
-        bars: bars(evaluator, &target)?,
-        ranking: importance(evaluator, &target, RANKING_POINTS, SEED)?,
-        inputs: evaluator.inputs().to_vec(),
-        name,
-    })
+    let bars = bars(evaluator, &target)?;
+    let targets = [target];
+    let mut rankings = importances(evaluator, &targets, RANKING_POINTS, SEED, &|at| goes_on(at, meter))?;
+    let ranking = rankings.pop().filter(|_| !meter.is_dropped()).ok_or(StudyError::Stopped)?;
+    Ok(Ranked { bars, ranking, inputs: evaluator.inputs().to_vec(), name })
 }
 
 #[cfg(test)]

@@ -57,7 +57,7 @@ fn wanted(model: &Model) -> Vec<What> {
             let check = report.margins.get(model.check).map(|margin| margin.id.clone());
             wanted.extend(check.map(|check| What::Ranking { check }));
         }
-        View::Remedies => wanted.push(What::Remedies),
+        View::Remedies => wanted.push(What::Remedies { held: model.remedies_held() }),
         _ => {}
     }
     wanted
