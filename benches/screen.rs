@@ -12,6 +12,7 @@ use std::time::{Duration, Instant};
 use underfoot::estimate::estimate;
 use underfoot::quantity::UnitSystem;
 use underfoot::scenario::Document;
+use underfoot::study::MOST_POINTS;
 use underfoot::tui::arrival::Arrival;
 use underfoot::tui::choice::Entry;
 use underfoot::tui::message::{Effect, Message};
@@ -109,7 +110,9 @@ fn nudges_beside_studies(path: &Path) -> Option<(f64, f64)> {
     let mut model = open(path);
     let scenario = model.document.scenario().clone();
     let map = What::Map { paths: model.map_paths()?, steps: [1000, 1000] };
-    for (ticket, what) in (0..).zip([map, What::Spread { samples: 1 << 24 }]) {
+    let sample = model.has_bands().then_some(What::Spread { samples: MOST_POINTS });
+    let wanted: Vec<What> = sample.into_iter().chain([map]).collect();
+    for (ticket, what) in (0..).zip(wanted.clone()) {
         desk.give(Order { ticket, scenario: scenario.clone(), what });
     }
     let mut screen = terminal();
@@ -120,8 +123,12 @@ fn nudges_beside_studies(path: &Path) -> Option<(f64, f64)> {
             }
         }
     });
-    let running = desk.progress(Instant::now()).len();
-    assert!(running >= 2, "map and sample ended too soon: {running}");
+    let is_running =
+        |message: &Message, what: &What| matches!(message, Message::Progress { lane, .. } if *lane == what.lane());
+    let running = desk.progress(Instant::now());
+    for what in &wanted {
+        assert!(running.iter().any(|message| is_running(message, what)), "{what:?} ended too soon");
+    }
     drop(inbox);
     let slowest = frames.iter().copied().fold(0.0, f64::max);
     Some((median(frames), slowest))

@@ -107,7 +107,7 @@ fn whole(done: usize, share: f32) -> usize {
 }
 
 /// Lets every other thread go first; without leave from the system it stays as it is.
-fn step_back() {
+pub fn step_back() {
     #[cfg(target_os = "linux")]
     let _ = rustix::process::setpriority_process(None, NICENESS);
 }

@@ -5,7 +5,7 @@ mod name;
 mod plan;
 mod shelf;
 
-pub use desk::Desk;
+pub use desk::{Desk, step_back};
 pub use job::{Findings, Lane, Mapped, Order, RANKING_POINTS, Ranked, SEED, Spreading, VARY_ROWS, Varied, What};
 pub use name::{Name, names};
 pub use plan::{again, plan, stop};
