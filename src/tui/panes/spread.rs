@@ -207,6 +207,10 @@ fn histogram_rows(model: &Model, found: &Spreading, width: u16) -> Vec<Row> {
     let title = format!("how {} spreads", title.trim());
     let mut rows = heading(&title, width, theme.heading());
     let [least, .., most] = number.quantiles;
+    if show(least) == show(most) {
+        plain(&mut rows, &format!("{} in every sample that gives it", show(least)), width, theme.plain());
+        return rows;
+    }
     let joined: Vec<usize> = number.bars.chunks(JOINED).map(|bars| bars.iter().sum()).collect();
     let tallest = joined.iter().copied().max().unwrap_or(1).max(1);
     let room = width.saturating_sub(49).clamp(5, 24);

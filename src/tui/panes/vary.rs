@@ -83,7 +83,7 @@ fn draw_plot(frame: &mut Frame, area: Rect, model: &Model, varied: &Varied, name
         })
         .collect();
     let zero = Level { at: 0.0, name: "0: short below".to_owned(), color: theme.limit(), style: theme.quiet() };
-    let now = format!("now {}", format_unit(varied.input.measure.si(), varied.input.measure.unit));
+    let now = format!(" now {}", format_unit(varied.input.measure.si(), varied.input.measure.unit));
     Plot {
         title: fit(&format!("margin of {}, {}", name.margin.label, scale.symbol), usize::from(area.width)),
         across: shown_range(varied),
@@ -97,16 +97,7 @@ fn draw_plot(frame: &mut Frame, area: Rect, model: &Model, varied: &Varied, name
         title_style: theme.plain(),
     }
     .draw(frame, area);
-    draw_now(frame, area, model, &now, (here, shown_range(varied)));
-}
-
-/// The present value beside its upright line, on the side that has room.
-fn draw_now(frame: &mut Frame, area: Rect, model: &Model, now: &str, (here, range): (f64, (f64, f64))) {
-    let field = super::plot::field(area);
-    let column = place((here - range.0) / (range.1 - range.0), field.width);
-    let wide = cells(now);
-    let column = if column + 2 + wide <= field.width { column + 2 } else { column.saturating_sub(wide + 1) };
-    put(frame.buffer_mut(), field, column, 0, now, model.theme.play_head());
+    put_right(frame.buffer_mut(), area, 0, &now, theme.play_head());
 }
 
 /// Range of the margins with zero in it; the farthest few at both ends may leave it.

@@ -1,6 +1,6 @@
 //! The verdict in a sentence.
 use crate::estimate::{Estimate, EventKind};
-use crate::margin::Verdict;
+use crate::margin::{Margin, Verdict};
 use crate::quantity::{Dimension, UnitSystem, format_si};
 use crate::sheet::{Report, governing_words, worst_words};
 use crate::tui::command::{Command, key_name};
@@ -51,13 +51,20 @@ fn words(model: &Model) -> (String, String) {
     }
     let Some(report) = &model.answer.report else { return (Word::Final(Verdict::Open).head(), String::new()) };
     let mut sentence = governing_words(&report.scenario, &report.margins, model.units);
-    if let Some(worst) = report.margins.first().and_then(|margin| worst_words(report, margin, model.units)) {
+    let moved = report.margins.first().filter(|margin| is_moved(report, margin));
+    if let Some(worst) = moved.and_then(|margin| worst_words(report, margin, model.units)) {
         // Where it is narrow, Margins and Spread say at which ends of the bands that is.
         let brief = worst.split_once(" (").map_or(worst.as_str(), |(brief, _)| brief);
         let words = if model.size.width < WORST_PLACE_FROM { brief } else { &worst };
         sentence = format!("{sentence}; {words}");
     }
     (format!("{}  {sentence}", model.word_of_all().head()), peak(report, model.units))
+}
+
+/// Whether the bands change the margin at all.
+fn is_moved(report: &Report, margin: &Margin) -> bool {
+    let worst = report.band_of(margin).and_then(|band| band.worst.as_ref());
+    worst.is_some_and(|worst| worst.margin != margin.margin)
 }
 
 fn peak(report: &Report, units: UnitSystem) -> String {
