@@ -1,5 +1,5 @@
 //! Constant acceleration with relaxing dampers: slack flight, and deployment at a constant force.
-use super::roots::{Passage, first_passage, monotone_zero};
+use super::roots::{Passage, Passing, first_passing, monotone_zero};
 use super::signal::Turn;
 
 /// `w(t) = c0 + c1 t + c2 t^2 + sum of E exp(-r t)` over at most two relaxations with `r > 0`.
@@ -58,6 +58,20 @@ impl Drift {
         Self { c: [a * c0 + b, a * c1, a * c2], relax: self.relax.map(|(e, r)| (a * e, r)) }
     }
 
+    /// Whether it never changes.
+    #[must_use]
+    pub fn is_constant(&self) -> bool {
+        self.c[1] == 0.0 && self.c[2] == 0.0 && self.relax.iter().all(|(e, _)| *e == 0.0)
+    }
+
+    /// With a single relaxation, where the curvature `2 c2 + E r^2 exp(-r t)` is zero, or not a number where it never
+    /// is.
+    fn only_bend(&self) -> Option<f64> {
+        let [(e1, r1), (e2, r2)] = self.relax;
+        let (e, r) = if e2 == 0.0 { (e1, r1) } else { (e2, r2) };
+        (e1 == 0.0 || e2 == 0.0).then(|| (-e * r * r / (2.0 * self.c[2])).ln() / r)
+    }
+
     /// Where the third derivative is zero: at most once.
     fn third_derivative_zero(&self) -> Option<f64> {
         let [(e1, r1), (e2, r2)] = self.relax;
@@ -80,8 +94,13 @@ impl Drift {
             return turns;
         }
         let curvature = slope.derivative();
-        let bends = crossings(&curvature, from, self.third_derivative_zero().into_iter(), to);
-        let found = crossings(&slope, from, bends.into_iter().flatten().map(|(t, _)| t), to);
+        let bends = match self.only_bend() {
+            Some(bend) => [Some(bend).filter(|&t| t > from && t < to), None, None],
+            None => {
+                crossings(&curvature, from, self.third_derivative_zero().into_iter(), to).map(|b| b.map(|(t, _)| t))
+            }
+        };
+        let found = crossings(&slope, from, bends.into_iter().flatten(), to);
         for (slot, (time, passage)) in turns.iter_mut().zip(found.into_iter().flatten()) {
             *slot = Some(Turn { time, is_maximum: passage == Passage::Down });
         }
@@ -90,9 +109,12 @@ impl Drift {
 
     /// First passage of `level` in `(from, to]`.
     #[must_use]
-    pub fn first_passage(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<f64> {
+    pub fn first_passing(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<Passing> {
+        if self.is_constant() {
+            return None;
+        }
         let turns = self.turns(from, to);
-        first_passage(
+        first_passing(
             |t| {
                 let (w, slope) = self.value_slope(t);
                 (w - level, slope)

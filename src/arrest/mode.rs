@@ -2,7 +2,7 @@
 use super::drift::Drift;
 use super::oscillator::{Oscillator, Swing};
 use super::outcome::{ArrestError, Fall};
-use super::signal::Signal;
+use super::signal::{Moment, Signal};
 use super::third::{Spectrum, Wave};
 use crate::physics::{Group, Piece};
 
@@ -64,8 +64,19 @@ impl Stretch {
     /// State at a time from the start of the stretch.
     #[must_use]
     pub fn state(&self, t: f64) -> State {
-        let pair = if let Signal::Swing(x) = &self.x { Some(x.of.pair(t)) } else { None };
-        let at = |signal: &Signal| signal.value_with(t, pair);
+        self.state_at(&self.moment(t))
+    }
+
+    /// A time from the start of the stretch: all its swings, or waves, are of the same roots.
+    #[must_use]
+    pub fn moment(&self, t: f64) -> Moment {
+        self.x.moment(t)
+    }
+
+    /// State at a moment of the stretch.
+    #[must_use]
+    pub fn state_at(&self, moment: &Moment) -> State {
+        let at = |signal: &Signal| signal.value_at(moment);
         State { x: at(&self.x), v: at(&self.v), e: [at(&self.e[0]), at(&self.e[1])], s: at(&self.s) }
     }
 }
