@@ -172,10 +172,11 @@ impl<'a> Path<'a> {
             }
             parts => parts,
         };
-        let compliance: f64 = springs.iter().map(|p| 1.0 / p.slope()).sum();
+        let [k1, k2] = springs.each_ref().map(Part::slope);
+        let k = if k1.is_finite() && k2.is_finite() { 1.0 / (1.0 / k1 + 1.0 / k2) } else { k1.min(k2) };
         let c = springs[0].c + springs[1].c;
         let elastic = springs.iter().find(|p| p.piece.is_some()).map_or(0.0, Part::force);
-        let (x, force) = self.swing(c, 1.0 / compliance, elastic, state);
+        let (x, force) = self.swing(c, k, elastic, state);
         let now = elastic + c * state.v;
         let e = springs.map(|part| {
             if part.piece.is_none() {

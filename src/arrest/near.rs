@@ -11,7 +11,7 @@ use std::f64::consts::PI;
 /// Share of half a period taken as surely shorter than it.
 const SHORT: f64 = 1.0 - 1e-9;
 /// Change of the slope up to a passage, as a share of it, up to which the series is tried.
-const BENT: f64 = 0.3;
+const BENT: f64 = 0.6;
 /// A slope at a passage that is less than this share of the first may be near a turning point.
 const STEEP: f64 = 0.1;
 
@@ -78,7 +78,8 @@ impl Swing {
     /// Time of a level by the series of the swing at its start turned round, to the fifth order.
     fn series_passage(&self, level: f64, slope: f64) -> Option<f64> {
         let Oscillator { decay, stiffness, .. } = self.of;
-        let y = (level - self.rest - self.p) / slope;
+        // The value at the start as it is seen elsewhere, so that a start on the level is no passage.
+        let y = (level - (self.rest + self.p)) / slope;
         // Each derivative follows from the two before it; all as shares of the first.
         let next = |w: f64, before: f64| -2.0 * decay * w - stiffness * before;
         let second = next(1.0, self.p / slope);

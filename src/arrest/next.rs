@@ -106,8 +106,8 @@ impl Path<'_> {
                 self.knots(stretch, pieces, &mut first);
             }
             Mode::Slack => {
-                first.offer(taut_again(stretch, horizon), End::Taut);
                 self.knots(stretch, pieces, &mut first);
+                first.offer_first(taut_again(stretch, first.until()), End::Taut);
             }
         }
         first.ending()
@@ -135,7 +135,10 @@ impl Path<'_> {
         let knot = absorber.force.piece(pieces.slider).x1;
         let (level, end) =
             if knot < absorber.stroke_m { (knot, End::SliderKnot) } else { (absorber.stroke_m, End::StrokeUsedUp) };
-        first.offer(stretch.s.first_passage(level, Passage::Up, 0.0, first.until()), end);
+        // Up to its first maximum the length is largest at an end.
+        if first.best.is_none_or(|(stop, _)| stretch.s.value(stop) > level) {
+            first.offer(stretch.s.first_passage(level, Passage::Up, 0.0, first.until()), end);
+        }
     }
 
     fn knots(&self, stretch: &Stretch, pieces: Pieces, first: &mut Earliest) {
@@ -177,7 +180,8 @@ fn through(signal: &Signal, level: f64, touch: f64, to: f64) -> Option<f64> {
         if signal.value(top) > level + touch {
             return Some(rise);
         }
-        if top <= from || top >= to {
+        // The later maxima of a swing are no higher.
+        if top <= from || top >= to || matches!(signal, Signal::Swing(_)) {
             return None;
         }
         from = top;
@@ -194,15 +198,15 @@ fn taut_again(stretch: &Stretch, horizon: f64) -> Option<f64> {
     let s = stretch.s.value(0.0);
     let c = [e1.c[0] + e2.c[0] + s - x.c[0], -x.c[1], -x.c[2]];
     let gap = super::drift::Drift { c, relax: [e1.relax[0], e2.relax[0]] };
+    let (end, closed) = (horizon, gap.value(horizon));
+    if closed > 0.0 {
+        return None;
+    }
     let widest = gap.turns(0.0, horizon).into_iter().flatten().rfind(|t| t.is_maximum);
     let (from, open) = match widest {
         Some(turn) => (turn.time, gap.value(turn.time)),
         None => (0.0, gap.value(0.0)),
     };
-    let (end, closed) = (horizon, gap.value(horizon));
-    if closed > 0.0 {
-        return None;
-    }
     if open <= 0.0 {
         return Some(from);
     }

@@ -77,12 +77,12 @@ impl Record {
     /// Reads turning points off a stretch up to a moment and calls `on_lowest` for each new lowest one.
     pub fn turnings(&mut self, stretch: &Stretch, end: &Moment, mut on_lowest: impl FnMut(f64)) {
         let until = end.t;
-        if let Signal::Swing(x) = &stretch.x {
-            let none_new = self.highest.is_some() && self.lowest.is_some_and(|l| stretch.x.stays_below(l.travel_m));
-            if !none_new && x.monotone_ends(until, end.pair()).is_none() {
-                self.swing_turnings(stretch, x, end, on_lowest);
-            }
+        let none_new = self.highest.is_some() && self.lowest.is_some_and(|l| stretch.x.stays_below(l.travel_m));
+        if none_new || stretch.x.monotone_ends(end).is_some() {
             return;
+        }
+        if let Signal::Swing(x) = &stretch.x {
+            return self.swing_turnings(stretch, x, end, on_lowest);
         }
         let mut from = 0.0;
         while let Some(t) = stretch.v.first_passage(0.0, Passage::Down, from, until) {

@@ -86,7 +86,7 @@ impl Signal {
     pub fn monotone_ends(&self, moment: &Moment) -> Option<[f64; 2]> {
         match self {
             Self::Swing(s) => s.monotone_ends(moment.t, moment.pair()),
-            Self::Drift(s) => s.is_constant().then_some([s.c[0]; 2]),
+            Self::Drift(s) => s.monotone_ends(moment.t),
             Self::Wave(_) => None,
         }
     }
@@ -96,7 +96,7 @@ impl Signal {
     pub fn stays_below(&self, level: f64) -> bool {
         match self {
             Self::Swing(s) => s.rest < level && s.stays_off(level),
-            Self::Drift(s) => s.is_constant() && s.c[0] <= level,
+            Self::Drift(s) => s.stays_below(level),
             Self::Wave(_) => false,
         }
     }

@@ -95,7 +95,7 @@ impl<'a> Run<'a> {
             imbalance_j: 0.0,
             record: Record::new(),
             hang_j: fall.hang_j(),
-            stretches: Vec::with_capacity(16),
+            stretches: Vec::with_capacity(32),
             happenings: Vec::with_capacity(16),
             ended: None,
             settled: None,
