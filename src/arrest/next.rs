@@ -24,6 +24,8 @@ pub enum End {
     SliderKnot,
     /// A group passes a knot: which group, and whether upward.
     Knot(usize, bool),
+    /// A lifeline whose in-line absorber has given turns back.
+    SpanTurns,
 }
 
 /// The slider's part of the state.
@@ -96,7 +98,8 @@ impl Path<'_> {
         for (group, law) in [&self.fall().path.line.elastic, &self.fall().path.other.elastic].into_iter().enumerate() {
             let Some(piece) = law.piece(pieces.group[group]) else { continue };
             if piece.x1.is_finite() {
-                let time = stretch.e[group].first_passage(piece.x1, Passage::Up, 0.0, first.until());
+                // A stretch that only touches a knot at its top stays on its piece.
+                let time = through(&stretch.e[group], piece.x1, TOUCH * piece.x1, first.until());
                 first.offer(time, End::Knot(group, true));
             }
             if pieces.group[group] > 0 {

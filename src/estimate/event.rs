@@ -32,8 +32,12 @@ pub enum EventKind {
     StrikeLevel,
     /// The swing turns back: the end of a planar run.
     TurnsBack,
-    /// The first peak is past and the model does not say what comes after.
-    PeakPassed,
+    /// The absorber in line with a lifeline starts to deploy.
+    SpanStarts,
+    /// The lifeline turns back: its in-line absorber stops.
+    SpanStops,
+    /// The absorber in line with a lifeline is locked at its stroke.
+    SpanUsedUp,
 }
 
 /// One line of the log. Values SI; the words are the same in text, JSON and on the screen.
@@ -77,7 +81,9 @@ impl Event {
             EventKind::StrikeFace => format!("strikes a face at {speed}"),
             EventKind::StrikeLevel => format!("strikes a level at {speed}"),
             EventKind::TurnsBack => "swing turns back".to_owned(),
-            EventKind::PeakPassed => "not followed beyond the first peak".to_owned(),
+            EventKind::SpanStarts => format!("lifeline absorber starts, line force {force}"),
+            EventKind::SpanStops => format!("lifeline absorber stops, {} below taut", length(self.travel_m)),
+            EventKind::SpanUsedUp => format!("lifeline absorber's stroke used up, line force {force}"),
             EventKind::TimeLimit => "still moving at the time limit".to_owned(),
         }
     }

@@ -58,8 +58,7 @@ pub fn warnings(scenario: &Scenario, setup: &Setup, vertical: Option<&Outcome>, 
         );
     }
     list.extend(setup.span.iter().flat_map(super::rigging::Rigging::warnings));
-    let followed = !setup.span.as_ref().is_some_and(super::rigging::Rigging::has_absorber);
-    if followed && vertical.is_some_and(|outcome| outcome.ended == Ended::TimeLimit) {
+    if vertical.is_some_and(|outcome| outcome.ended == Ended::TimeLimit) {
         list.push(
             "The motion is not settled at the time limit: settle time and slack episodes are left out. Little or no \
              damping does that."
