@@ -68,6 +68,13 @@ pub fn warnings(scenario: &Scenario, setup: &Setup, vertical: Option<&Outcome>, 
     if stroke_used_up {
         list.push("The absorber's stroke is used up: from there on only stretch limits the force.".to_owned());
     }
+    if vertical.and_then(|outcome| outcome.span).is_some_and(|given| given.used_up) {
+        list.push(
+            "The stroke of the absorber in line with the lifeline is used up: from there on the tension of the cable has \
+             no bound but its stretch."
+                .to_owned(),
+        );
+    }
     if scenario.harness.is_some() && scenario.subject.stretch_allowance.is_some_and(|a| a.si() > 0.0) {
         list.push(
             "Both [harness] and `subject.stretch_allowance` are given: the stretch of the harness is counted twice."

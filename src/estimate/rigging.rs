@@ -190,6 +190,13 @@ impl Rigging {
                     .to_owned(),
             );
         }
+        if self.has_absorber {
+            list.push(
+                "The absorber in line with the lifeline holds the tension at its force while the cable moves down, takes \
+                 nothing back, and is rigid at its stroke; the cable stays longer by what it has deployed."
+                    .to_owned(),
+            );
+        }
         if self.span.spans > 1 {
             list.push("The cable runs through the intermediate supports without friction.".to_owned());
         }
