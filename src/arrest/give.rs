@@ -152,6 +152,7 @@ impl Signal {
             Self::Swing(s) => Self::Swing(s.derivative()),
             Self::Drift(s) => Self::Drift(s.derivative()),
             Self::Wave(s) => Self::Wave(s.derivative()),
+            Self::Series(s) => Self::Series(s.derivative()),
         }
     }
 }

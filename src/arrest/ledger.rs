@@ -76,6 +76,7 @@ fn rate_square_integral(e: &Signal, t: f64) -> f64 {
     match e {
         Signal::Swing(e) => e.derivative().square_integral(t),
         Signal::Wave(e) => e.derivative().square_integral(t),
+        Signal::Series(e) => e.derivative().square_integral(t),
         Signal::Drift(e) => {
             let (away, rate) = e.relax[0];
             0.5 * away * away * rate * -(-2.0 * rate * t).exp_m1()

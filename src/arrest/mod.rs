@@ -3,6 +3,7 @@
 //! [`solve`] takes a [`Fall`] and gives an [`Outcome`]. Every mode of the path is affine and has a closed-form
 //! solution; events are zeros of scalars of that solution, and no time is stepped.
 pub mod drift;
+pub mod fourth;
 mod give;
 mod hang;
 mod ledger;
@@ -12,6 +13,7 @@ mod next;
 mod onset;
 pub mod oscillator;
 mod outcome;
+pub(crate) mod poly;
 mod quadrature;
 mod record;
 pub mod roots;

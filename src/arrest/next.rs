@@ -26,6 +26,8 @@ pub enum End {
     Knot(usize, bool),
     /// A lifeline whose in-line absorber has given turns back.
     SpanTurns,
+    /// The solution of the mode ends, not the mode.
+    StepEnds,
 }
 
 /// The slider's part of the state.
@@ -87,7 +89,11 @@ impl Path<'_> {
 
     fn sliding_ends(&self, stretch: &Stretch, pieces: Pieces, first: &mut Earliest) {
         let Some(absorber) = &self.fall().path.absorber else { return };
-        first.offer(stretch.s.first_maximum(0.0, first.horizon), End::SliderStops);
+        let stops = match &stretch.s {
+            Signal::Series(s) => s.first_stop(first.horizon),
+            s => s.first_maximum(0.0, first.horizon),
+        };
+        first.offer(stops, End::SliderStops);
         let knot = absorber.force.piece(pieces.slider).x1;
         let (level, end) =
             if knot < absorber.stroke_m { (knot, End::SliderKnot) } else { (absorber.stroke_m, End::StrokeUsedUp) };

@@ -17,6 +17,40 @@ pub struct Fall {
     pub path: SeriesPath,
 }
 
+impl Fall {
+    pub(crate) fn check(&self) -> Result<(), ArrestError> {
+        let positive = |what, value: f64| {
+            if value > 0.0 && value.is_finite() { Ok(()) } else { Err(ArrestError::Input { what, value }) }
+        };
+        let not_negative = |what, value: f64| {
+            if value >= 0.0 && value.is_finite() { Ok(()) } else { Err(ArrestError::Input { what, value }) }
+        };
+        positive("mass", self.mass_kg)?;
+        not_negative("free fall", self.free_fall_m)?;
+        not_negative("gravity", self.gravity_m_per_s2)?;
+        if self.free_fall_m > 0.0 {
+            positive("gravity", self.gravity_m_per_s2)?;
+        }
+        if let Some(speed) = self.speed_at_taut_m_per_s {
+            not_negative("speed at taut", speed)?;
+        }
+        for group in [&self.path.line, &self.path.other] {
+            if let Some(piece) = group.elastic.piece(0) {
+                positive("stiffness", piece.slope)?;
+                not_negative("damping", group.damping_n_s_per_m)?;
+            }
+        }
+        if let Some(absorber) = &self.path.absorber {
+            positive("deployment force", absorber.force.value(0.0))?;
+            positive("stroke", absorber.stroke_m)?;
+            if absorber.onset_n.is_nan() || absorber.onset_n < absorber.force.value(0.0) {
+                return Err(ArrestError::Input { what: "onset force", value: absorber.onset_n });
+            }
+        }
+        Ok(())
+    }
+}
+
 /// How far to solve.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Settings {
@@ -181,9 +215,6 @@ pub enum ArrestError {
         /// When, s.
         time_s: f64,
     },
-    /// Two damped groups on an absorber whose force rises with its length: not solved in closed form.
-    #[error("two damped groups in series with an absorber whose force rises with its length are not solved")]
-    FourthOrder,
     /// The law of a lifeline that gives has no table.
     #[error(transparent)]
     Span(#[from] SpanError),

@@ -97,14 +97,17 @@ impl<'a> Run<'a> {
             }
             self.modes += 1;
             let pieces = self.pieces();
-            let mut stretch = self.path().stretch(self.mode, pieces, &self.state, self.time_s)?;
-            let horizon = limit_s - self.time_s;
+            let mut stretch = self.path().stretch(self.mode, pieces, &self.state, self.time_s);
+            let left_s = limit_s - self.time_s;
+            let horizon = left_s.min(stretch.length_s);
             let end = self.path().first_end(&stretch, pieces, self.slider, horizon);
+            let end = end.or((horizon < left_s).then_some((horizon, End::StepEnds)));
             let end = self.or_turned(&stretch, end, horizon);
             stretch.length_s = end.map_or(horizon, |(t, _)| t);
             let reach = stretch.length_s;
             // Only a third-order mode can come to a deeper point after its first.
-            let deepest_known = self.record.lowest.is_some() && !matches!(stretch.x, Signal::Wave(_));
+            let deepest_known =
+                self.record.lowest.is_some() && !matches!(stretch.x, Signal::Wave(_) | Signal::Series(_));
             self.settled = self.settled.or_else(|| settle::time(self, &stretch, end.is_none()));
             // What is settled while the slider still moves goes on until the slider stops.
             if let Some((time_s, _)) = self.settled.filter(|_| self.mode != Mode::Sliding) {
@@ -182,6 +185,7 @@ impl<'a> Run<'a> {
             End::Taut => self.taut(),
             End::Onset => self.slide(),
             End::SpanTurns => self.turn_span(),
+            End::StepEnds => Ok(()),
             End::SliderStops => {
                 self.happened(Happening::DeploymentEnd);
                 self.mode = Mode::Stuck;
@@ -244,7 +248,7 @@ impl<'a> Run<'a> {
             self.record.force.offer(level, self.time_s);
             return self.slide();
         }
-        let stuck = self.path().stretch(Mode::Stuck, self.pieces(), &self.state, self.time_s)?;
+        let stuck = self.path().stretch(Mode::Stuck, self.pieces(), &self.state, self.time_s);
         if let Some(level) = level.filter(|l| stuck.force.value(0.0) > l * (1.0 + TOUCH)) {
             self.record.force.offer(level, self.time_s);
             return self.slide();
@@ -357,39 +361,5 @@ impl<'a> Run<'a> {
     /// Travel at rest with all that has been deployed, m.
     pub fn hang_travel_m(&self) -> f64 {
         self.fall.hang_travel_m(self.state.s) + self.shift_m()
-    }
-}
-
-impl Fall {
-    pub(crate) fn check(&self) -> Result<(), ArrestError> {
-        let positive = |what, value: f64| {
-            if value > 0.0 && value.is_finite() { Ok(()) } else { Err(ArrestError::Input { what, value }) }
-        };
-        let not_negative = |what, value: f64| {
-            if value >= 0.0 && value.is_finite() { Ok(()) } else { Err(ArrestError::Input { what, value }) }
-        };
-        positive("mass", self.mass_kg)?;
-        not_negative("free fall", self.free_fall_m)?;
-        not_negative("gravity", self.gravity_m_per_s2)?;
-        if self.free_fall_m > 0.0 {
-            positive("gravity", self.gravity_m_per_s2)?;
-        }
-        if let Some(speed) = self.speed_at_taut_m_per_s {
-            not_negative("speed at taut", speed)?;
-        }
-        for group in [&self.path.line, &self.path.other] {
-            if let Some(piece) = group.elastic.piece(0) {
-                positive("stiffness", piece.slope)?;
-                not_negative("damping", group.damping_n_s_per_m)?;
-            }
-        }
-        if let Some(absorber) = &self.path.absorber {
-            positive("deployment force", absorber.force.value(0.0))?;
-            positive("stroke", absorber.stroke_m)?;
-            if absorber.onset_n.is_nan() || absorber.onset_n < absorber.force.value(0.0) {
-                return Err(ArrestError::Input { what: "onset force", value: absorber.onset_n });
-            }
-        }
-        Ok(())
     }
 }
