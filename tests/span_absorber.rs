@@ -191,6 +191,18 @@ fn a_stroke_that_just_does_is_not_used_up() {
     }
 }
 
+/// While the lanyard's absorber slides at one force the lifeline stands still at its turning point, a knot of its law.
+#[test]
+fn a_lifeline_that_stands_on_its_turning_point_leaves_it_downward() {
+    let mut fall = fall(100.0, 1.3, Group::damped(6e4, 392.0));
+    fall.path.absorber = Some(Absorber::constant(2600.0, 2600.0, 1.1));
+    for step in 0..150 {
+        let law = YieldingSpan::new(span(0.6), None, 2500.0 + 10.0 * f64::from(step), 2e-4).unwrap();
+        let ours = solve_on_span(&fall, law, &Settings::default()).unwrap();
+        assert!(ours.energy_residual < 1e-9 && ours.span.unwrap().deployed_m > 0.1 && ours.deployed_m > 0.01);
+    }
+}
+
 proptest! {
     #![proptest_config(ProptestConfig::with_cases(60))]
 

@@ -141,7 +141,7 @@ fn moved(stretch: &Stretch, by_m: f64) -> Stretch {
 
 impl Signal {
     /// Whether it falls from its very start.
-    fn starts_down(&self) -> bool {
+    pub(super) fn starts_down(&self) -> bool {
         let slope = self.derivative();
         let first = slope.value(0.0);
         first < 0.0 || (first == 0.0 && slope.derivative().value(0.0) < 0.0)

@@ -109,7 +109,9 @@ impl Path<'_> {
                 first.offer(time, End::Knot(group, true));
             }
             if pieces.group[group] > 0 {
-                let time = stretch.e[group].first_passage(piece.x0, Passage::Down, 0.0, first.until());
+                let e = &stretch.e[group];
+                let at_once = leaves_downward(e, piece.x0, first.until()).then_some(0.0);
+                let time = at_once.or_else(|| e.first_passage(piece.x0, Passage::Down, 0.0, first.until()));
                 first.offer(time, End::Knot(group, false));
             }
         }
@@ -123,6 +125,12 @@ impl Path<'_> {
             slider: path.absorber.as_ref().map_or(0, |a| a.force.piece_at(state.s)),
         }
     }
+}
+
+/// On a knot and on its way down: the piece below has begun. What rises from it by no more than rounding does so as well.
+fn leaves_downward(e: &Signal, knot: f64, to: f64) -> bool {
+    let on = |value: f64| value <= knot * (1.0 + TOUCH);
+    on(e.value(0.0)) && (e.starts_down() || e.first_maximum(0.0, to).is_some_and(|top| on(e.value(top))))
 }
 
 /// First rise through a level that goes on to more than `touch` above it before it falls again.

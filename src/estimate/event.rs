@@ -55,6 +55,8 @@ pub struct Event {
     pub force_n: f64,
     /// Deployed length then, m.
     pub deployed_m: f64,
+    /// The face or level that is struck, by its name in the file.
+    pub name: Option<String>,
 }
 
 impl Event {
@@ -78,14 +80,18 @@ impl Event {
             }
             EventKind::Highest => format!("highest, {}", beside_taut(self.travel_m, length)),
             EventKind::Settled => format!("settled, {}", beside_taut(self.travel_m, length)),
-            EventKind::StrikeFace => format!("strikes a face at {speed}"),
-            EventKind::StrikeLevel => format!("strikes a level at {speed}"),
+            EventKind::StrikeFace => format!("strikes {} at {speed}", self.struck("a face")),
+            EventKind::StrikeLevel => format!("strikes {} at {speed}", self.struck("a level")),
             EventKind::TurnsBack => "swing turns back".to_owned(),
             EventKind::SpanStarts => format!("lifeline absorber starts, line force {force}"),
             EventKind::SpanStops => format!("lifeline absorber stops, {} below taut", length(self.travel_m)),
             EventKind::SpanUsedUp => format!("lifeline absorber's stroke used up, line force {force}"),
             EventKind::TimeLimit => "still moving at the time limit".to_owned(),
         }
+    }
+
+    fn struck<'a>(&'a self, unnamed: &'a str) -> &'a str {
+        self.name.as_deref().map_or(unnamed, str::trim)
     }
 }
 

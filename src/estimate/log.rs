@@ -73,5 +73,6 @@ const fn event(kind: EventKind, instant: &Instant) -> Event {
         speed_m_per_s: instant.speed_m_per_s,
         force_n: instant.force_n,
         deployed_m: instant.deployed_m,
+        name: None,
     }
 }

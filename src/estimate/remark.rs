@@ -1,4 +1,5 @@
 //! Sentences beside the numbers: what is taken for granted, and what the reader must know.
+use super::Validity;
 use super::setup::Setup;
 use crate::arrest::{Ended, Outcome};
 use crate::physics::Group;
@@ -17,7 +18,9 @@ pub fn assumptions(scenario: &Scenario, setup: &Setup) -> Vec<String> {
     let mut list = vec![falls.to_owned(), path_sentence(&path.line, &path.other).to_owned()];
     if !path.is_linear() {
         list.push(
-            "A force-elongation table is straight between its rows, and goes on straight beyond the last.".to_owned(),
+            "A force-elongation table is straight between its rows; beyond the last it goes on straight, and what \
+             depends on that is open."
+                .to_owned(),
         );
     }
     list.extend(setup.span.iter().flat_map(super::rigging::Rigging::assumptions));
@@ -89,6 +92,21 @@ pub fn warnings(scenario: &Scenario, setup: &Setup, vertical: Option<&Outcome>, 
     list
 }
 
+/// The warnings with a sentence for each reason why numbers are open, which comes first.
+pub fn with_open(warnings: Vec<String>, validity: &[Validity]) -> Vec<String> {
+    let open = |reason: &Validity| {
+        let words = reason.told(|m| both(m, Dimension::Length));
+        format!("The model is not valid for this run: {words}. What depends on the motion is open, not judged.")
+    };
+    validity.iter().map(open).chain(warnings).collect()
+}
+
+/// A value in metric and in US units: sentences of an estimate do not know the reader's.
+pub fn both(si: f64, dimension: Dimension) -> String {
+    let text = |system| format_si(si, dimension, system);
+    format!("{} ({})", text(UnitSystem::Metric), text(UnitSystem::Us))
+}
+
 fn contact_jump(setup: &Setup, outcome: &Outcome) -> bool {
     let path = &setup.fall.path;
     let one_damped = path.line.is_damped() && path.other.is_rigid();
@@ -102,9 +120,10 @@ fn heavy(scenario: &Scenario) -> Option<String> {
     let heavy = scenario.subject.kind == SubjectKind::Person && scenario.absorber.is_some() && mass > 100.0;
     heavy.then(|| {
         format!(
-            "The person's mass of {} is above 100 kg: most absorbers tested were not adequate for heavy workers (Goh and \
+            "The person's mass of {} is above {}: most absorbers tested were not adequate for heavy workers (Goh and \
              Love 2010).",
-            format_si(mass, Dimension::Mass, UnitSystem::Metric)
+            both(mass, Dimension::Mass),
+            both(100.0, Dimension::Mass)
         )
     })
 }

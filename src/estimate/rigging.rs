@@ -1,8 +1,9 @@
 //! The horizontal lifeline: its curve as a part of the path, and what it feels at the peak.
+use super::remark::both;
 use super::{EndLoadView, EstimateError, SpanView};
 use crate::arrest::{Fall, Outcome, Settings, solve, solve_on_span};
 use crate::physics::{Elastic, Geometry, InlineAbsorber, SpanCurve, SpanError, Tightness, YieldingSpan, knots};
-use crate::quantity::{Dimension, UnitSystem, format_si};
+use crate::quantity::Dimension;
 use crate::scenario::{Span, SpanTension};
 
 /// Largest error of the force table as a share of the largest force.
@@ -40,15 +41,18 @@ impl Rigging {
         // Also where the line runs over an edge on the fall line: the fall is straight, the pull on the span is not.
         if geometry.layout.is_some_and(|layout| layout.anchor.offset_m != 0.0 || layout.pivot.offset_m != 0.0) {
             return Err(refused(
-                "a horizontal lifeline with its line beside the fall line is not solved",
-                "leave out `place.anchor_offset` and `place.edge`, or judge the lifeline on its own",
+                "a line beside the fall line pulls a horizontal lifeline sideways, and its place on the cable is solved \
+                 moving up and down only",
+                "leave out `place.anchor_offset` and `place.edge` for the lifeline; for the swing, put a fixed anchor \
+                 where the cable carries the line under load",
                 "anchor.kind",
             ));
         }
         if fall.path.other.is_damped() {
             return Err(refused(
-                "damping of the harness beside a horizontal lifeline is not solved",
-                "leave out `harness.damping`: without it the estimate is on the far side",
+                "damping of the harness is not solved beside a horizontal lifeline: joining the two to one damper needs \
+                 one stiffness, and that of a lifeline rises with its load",
+                "leave out `harness.damping`: nothing then takes that energy, and the fall goes deeper",
                 "harness.damping",
             ));
         }
@@ -200,7 +204,7 @@ impl Rigging {
         if self.span.spans > 1 {
             list.push("The cable runs through the intermediate supports without friction.".to_owned());
         }
-        let slack = format_si(self.curve.slack_m(), Dimension::Length, UnitSystem::Metric);
+        let slack = both(self.curve.slack_m(), Dimension::Length);
         list.push(format!(
             "The lifeline hangs {slack} below its chord at the load before it takes any: part of the free fall."
         ));
