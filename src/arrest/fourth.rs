@@ -5,12 +5,12 @@ use super::poly::{self, Crossing, Poly, crossings};
 use super::roots::Passage;
 use super::signal::Signal;
 
-/// Highest power.
-const ORDER: usize = 12;
+/// Highest power: a scalar is then no larger than one of a third-order mode, which every stretch has room for.
+const ORDER: usize = 9;
 /// Coefficients of the powers, lowest first.
 type Powers = [f64; ORDER + 1];
-/// Length of a step over the shortest time of the system: `0.3^13 / 13!` is below the last digit.
-const REACH: f64 = 0.3;
+/// Length of a step over the shortest time of the system: `0.1^10 / 10!` is below the last digit.
+const REACH: f64 = 0.1;
 /// A speed of the slider this small beside the speeds it is the difference of is rounding.
 const ROUNDING: f64 = 1e-13;
 

@@ -5,6 +5,7 @@ use super::signal::Signal;
 
 /// Work done so far, J.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
+#[expect(clippy::struct_field_names, reason = "the suffix is the unit")]
 pub struct Work {
     /// Taken by the dampers.
     pub damper_j: f64,
