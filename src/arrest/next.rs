@@ -24,6 +24,10 @@ pub enum End {
     SliderKnot,
     /// A group passes a knot: which group, and whether upward.
     Knot(usize, bool),
+    /// A lifeline whose in-line absorber has given turns back.
+    SpanTurns,
+    /// The solution of the mode ends, not the mode.
+    StepEnds,
 }
 
 /// The slider's part of the state.
@@ -76,12 +80,12 @@ impl Earliest<'_> {
         self.best.map_or(self.horizon, |(t, _)| t)
     }
 
-    /// Smallest and largest value of a signal up to the best so far, where they are at the ends and need no search.
-    /// Where a level is not inside, its passage is no earlier end.
-    fn range(&mut self, signal: &Signal) -> Option<[f64; 2]> {
+    /// First value of a signal and the one at the best so far, where it is known to be monotone between: the passage of
+    /// a level that is not between them is no earlier end.
+    fn ends(&mut self, signal: &Signal) -> Option<[f64; 2]> {
         let (time, _) = self.best?;
         let moment = self.at.get_or_insert_with(|| self.stretch.moment(time));
-        signal.monotone_ends(moment).map(|[a, b]| [a.min(b), a.max(b)])
+        signal.monotone_ends(moment)
     }
 
     fn ending(self) -> Ending {
@@ -117,11 +121,11 @@ impl Path<'_> {
         let force = &stretch.force;
         let onset = moving_force(self.fall(), slider, stretch.s.value(0.0));
         if let Some(level) = onset
-            && first.range(force).is_none_or(|[_, most]| most > level)
+            && first.ends(force).is_none_or(|[a, b]| a.max(b) > level)
         {
             first.offer_first(through(force, level, TOUCH * level, first.until()), End::Onset);
         }
-        if first.range(force).is_none_or(|[least, _]| least < 0.0) {
+        if first.ends(force).is_none_or(|[a, b]| a.min(b) < 0.0) {
             let scale = self.fall().weight_n() + force.value(0.0).abs();
             let scale = onset.map_or(scale, |level| scale.max(level));
             let down = force.scaled(-1.0, 0.0);
@@ -131,7 +135,11 @@ impl Path<'_> {
 
     fn sliding_ends(&self, stretch: &Stretch, pieces: Pieces, first: &mut Earliest) {
         let Some(absorber) = &self.fall().path.absorber else { return };
-        first.offer(stretch.s.first_maximum(0.0, first.horizon), End::SliderStops);
+        let stops = match &stretch.s {
+            Signal::Series(s) => s.first_stop(first.horizon),
+            s => s.first_maximum(0.0, first.horizon),
+        };
+        first.offer(stops, End::SliderStops);
         let knot = absorber.force.piece(pieces.slider).x1;
         let (level, end) =
             if knot < absorber.stroke_m { (knot, End::SliderKnot) } else { (absorber.stroke_m, End::StrokeUsedUp) };
@@ -147,11 +155,16 @@ impl Path<'_> {
             let e = &stretch.e[group];
             let upward = stretch.v.value(0.0) > 0.0;
             for up in [upward, !upward] {
-                let (level, passage) = if up { (piece.x1, Passage::Up) } else { (piece.x0, Passage::Down) };
-                let is_knot = if up { level.is_finite() } else { pieces.group[group] > 0 };
-                let inside = |[least, most]: [f64; 2]| if up { most > level } else { least <= level };
-                if is_knot && first.range(e).is_none_or(inside) {
-                    first.offer(e.first_passage(level, passage, 0.0, first.until()), End::Knot(group, up));
+                if up && piece.x1.is_finite() && first.ends(e).is_none_or(|[a, b]| a.max(b) > piece.x1) {
+                    // A stretch that only touches a knot at its top stays on its piece.
+                    let time = through(e, piece.x1, TOUCH * piece.x1, first.until());
+                    first.offer(time, End::Knot(group, true));
+                }
+                let rises = |[a, b]: [f64; 2]| a >= piece.x0 && b > a && b > piece.x0 * (1.0 + TOUCH);
+                if !up && pieces.group[group] > 0 && !first.ends(e).is_some_and(rises) {
+                    let at_once = leaves_downward(e, piece.x0, first.until()).then_some(0.0);
+                    let time = at_once.or_else(|| e.first_passage(piece.x0, Passage::Down, 0.0, first.until()));
+                    first.offer(time, End::Knot(group, false));
                 }
             }
         }
@@ -165,6 +178,12 @@ impl Path<'_> {
             slider: path.absorber.as_ref().map_or(0, |a| a.force.piece_at(state.s)),
         }
     }
+}
+
+/// On a knot and on its way down: the piece below has begun. What rises from it by no more than rounding does so as well.
+fn leaves_downward(e: &Signal, knot: f64, to: f64) -> bool {
+    let on = |value: f64| value <= knot * (1.0 + TOUCH);
+    on(e.value(0.0)) && (e.starts_down() || e.first_maximum(0.0, to).is_some_and(|top| on(e.value(top))))
 }
 
 /// First rise through a level that goes on to more than `touch` above it before it falls again.

@@ -11,13 +11,12 @@ use super::solve::{Close, Run};
 /// turned, or is known never to turn: then `x` is the travel at rest. Stretches before that are looked at again.
 pub fn time(run: &Run, stretch: &Stretch, close: &Close, last: bool) -> Option<(f64, f64)> {
     let deepest = deepest(run, stretch, close, last)?;
-    let earlier = if run.record.lowest.is_none() { run.stretches.as_slice() } else { &[] };
-    if let Some(time_s) = first(run, earlier.iter(), deepest) {
+    let earlier = run.record.lowest.is_none().then(|| run.hidden()).into_iter().flatten();
+    if let Some(time_s) = first(run, earlier, deepest) {
         return Some((time_s, deepest));
     }
-    let level_j = level_j(run, deepest);
     let above_j = run.fall.held_above_j(close.held_j, &close.state, run.hang_j);
-    let t = if above_j < level_j { within(run, stretch, above_j, level_j) } else { None };
+    let t = within(run, stretch, above_j, level_j(run, deepest));
     t.map(|t| (stretch.start_s + t, deepest))
 }
 
@@ -26,11 +25,11 @@ fn level_j(run: &Run, travel_m: f64) -> f64 {
 }
 
 /// When the first of some stretches settles, for a level taken from a travel in m.
-pub fn first<'a>(run: &Run, mut stretches: impl Iterator<Item = &'a Stretch>, travel_m: f64) -> Option<f64> {
+pub fn first(run: &Run, mut stretches: impl Iterator<Item = Stretch>, travel_m: f64) -> Option<f64> {
     let level_j = level_j(run, travel_m);
     stretches.find_map(|s| {
         let end_j = run.fall.energy_above_j(&s.state(s.length_s), run.hang_j);
-        within(run, s, end_j, level_j).map(|t| s.start_s + t)
+        within(run, &s, end_j, level_j).map(|t| s.start_s + t)
     })
 }
 
@@ -61,11 +60,11 @@ fn within(run: &Run, stretch: &Stretch, end_j: f64, level_j: f64) -> Option<f64>
 fn deepest(run: &Run, stretch: &Stretch, close: &Close, last: bool) -> Option<f64> {
     let mut record = Record { lowest: run.record.lowest, ..Record::new() };
     if record.lowest.is_none() {
-        record.turnings(stretch, &close.at, |_| {});
+        record.turnings(&run.shown(stretch), &close.at, |_| {});
     }
     match record.lowest {
         Some(lowest) => Some(lowest.travel_m),
-        None => last.then(|| run.fall.hang_travel_m(close.state.s)),
+        None => last.then(|| run.fall.hang_travel_m(close.state.s) + run.shift_m()),
     }
 }
 

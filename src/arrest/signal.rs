@@ -1,5 +1,6 @@
 //! A scalar of one mode as a function of the time since the mode began, whatever the mode's law.
 use super::drift::Drift;
+use super::fourth::Series;
 use super::oscillator::Swing;
 use super::roots::{Passage, Passing};
 use super::third::Wave;
@@ -38,6 +39,8 @@ pub enum Signal {
     Drift(Drift),
     /// Third order.
     Wave(Wave),
+    /// One step of a fourth-order mode.
+    Series(Series),
 }
 
 impl Signal {
@@ -54,6 +57,7 @@ impl Signal {
             Self::Swing(s) => s.value(t),
             Self::Drift(s) => s.value(t),
             Self::Wave(s) => s.value(t),
+            Self::Series(s) => s.value(t),
         }
     }
 
@@ -65,7 +69,7 @@ impl Signal {
                 let (c, s) = s.of.pair(t);
                 [c, s, 0.0]
             }
-            Self::Drift(_) => [0.0; 3],
+            Self::Drift(_) | Self::Series(_) => [0.0; 3],
             Self::Wave(s) => s.of.basis(t),
         };
         Moment { t, basis }
@@ -78,6 +82,7 @@ impl Signal {
             Self::Swing(s) => s.value_of_pair(moment.pair()),
             Self::Drift(s) => s.value(moment.t),
             Self::Wave(s) => s.value_of_basis(moment.basis),
+            Self::Series(s) => s.value(moment.t),
         }
     }
 
@@ -87,7 +92,7 @@ impl Signal {
         match self {
             Self::Swing(s) => s.monotone_ends(moment.t, moment.pair()),
             Self::Drift(s) => s.monotone_ends(moment.t),
-            Self::Wave(_) => None,
+            Self::Wave(_) | Self::Series(_) => None,
         }
     }
 
@@ -97,7 +102,7 @@ impl Signal {
         match self {
             Self::Swing(s) => s.rest < level && s.stays_off(level),
             Self::Drift(s) => s.stays_below(level),
-            Self::Wave(_) => false,
+            Self::Wave(_) | Self::Series(_) => false,
         }
     }
 
@@ -114,6 +119,8 @@ impl Signal {
             Self::Swing(s) => s.first_passing(level, passage, from, to),
             Self::Drift(s) => s.first_passing(level, passage, from, to),
             Self::Wave(s) => s.first_passing(level, passage, from, to),
+            // How far it goes beyond is not known without another search.
+            Self::Series(s) => s.first_passage(level, passage, from, to).map(|time| Passing { time, beyond: 0.0 }),
         }
     }
 
@@ -124,6 +131,7 @@ impl Signal {
             Self::Swing(s) => s.first_maximum(from, to),
             Self::Drift(s) => s.turns(from, to).into_iter().flatten().find(|turn| turn.is_maximum).map(|t| t.time),
             Self::Wave(s) => s.first_maximum(from, to),
+            Self::Series(s) => s.first_maximum(from, to),
         }
     }
 
@@ -145,6 +153,10 @@ impl Signal {
             Self::Wave(wave) => return wave.largest(length),
             // A swing's first maximum is its largest.
             Self::Swing(swing) => offer(swing.first_maximum(0.0, length).unwrap_or(length)),
+            Self::Series(series) => {
+                series.first_maximum(0.0, length).into_iter().for_each(&mut offer);
+                offer(length);
+            }
             Self::Drift(drift) => {
                 drift.turns(0.0, length).into_iter().flatten().for_each(|turn| offer(turn.time));
                 offer(length);
@@ -160,6 +172,7 @@ impl Signal {
             Self::Swing(s) => Self::Swing(s.scaled(a, b)),
             Self::Drift(s) => Self::Drift(s.scaled(a, b)),
             Self::Wave(s) => Self::Wave(s.scaled(a, b)),
+            Self::Series(s) => Self::Series(s.scaled(a, b)),
         }
     }
 }
