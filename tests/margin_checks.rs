@@ -6,7 +6,7 @@ use underfoot::margin::{CheckKind, Margin, Rules, UnknownBasis, Verdict, checks,
 use underfoot::quantity::{Dimension, Measure, Unit};
 use underfoot::scenario::{
     Absorber, Anchor, AnchorKind, DampingLaw, Fall, Limits, Line, LineKind, Obstacle, OwnLimit, Place, Scenario,
-    StretchLaw, Subject, SubjectKind,
+    StretchLaw, Study, Subject, SubjectKind,
 };
 
 fn metres(value: f64) -> Measure {
@@ -71,6 +71,7 @@ fn scenario(basis: Option<&str>) -> Scenario {
         }],
         faces: Vec::new(),
         limits: Limits { basis: basis.map(str::to_owned), own: Vec::new() },
+        study: Study::default(),
     }
 }
 

@@ -57,6 +57,18 @@ fn a_long_band_keeps_its_shape() {
 }
 
 #[test]
+fn the_seed_of_the_sample_is_added_and_written_anew_as_a_bare_number() {
+    let first = document(FILE).with_value("study.seed", "7").unwrap();
+    assert_eq!(first.scenario().study.seed, Some(7));
+    assert!(first.text().contains("[study]\nseed = 7"), "{}", first.text());
+    let second = first.with_value("study.seed", "8").unwrap();
+    assert_eq!(second.text(), first.text().replace("seed = 7", "seed = 8"));
+    assert!(second.with_value("study.samples", "0").is_err());
+    let kept = second.with_value("subject.mass", "90 kg").unwrap();
+    assert_eq!(kept.scenario().study.seed, Some(8));
+}
+
+#[test]
 fn an_absent_key_is_added_to_its_section() {
     let cases = [
         ("obstacle.1.reserve", "1 m", "top = \"0 m\"\n", "top = \"0 m\"\nreserve = \"1 m\"\n"),

@@ -2,8 +2,8 @@
 #![allow(clippy::unwrap_used, clippy::panic, reason = "helpers of tests fail loudly")]
 use std::path::Path;
 use underfoot::scenario::{
-    AnchorKind, Change, Document, FIELDS, LineKind, Scenario, SpanTension, StretchLaw, doubts, inputs, kind_changes,
-    new_file, places, read, with_value,
+    AnchorKind, Change, Document, LineKind, Scenario, SpanTension, StretchLaw, doubts, inputs, kind_changes, new_file,
+    places, read, with_value,
 };
 
 /// A swing from a span over an edge, with everything of it stated.
@@ -250,12 +250,6 @@ fn the_choices_of_a_new_file_read_when_they_are_made() {
     let s = scenario(&text);
     assert!(matches!(&s.anchor.kind, AnchorKind::Span(span) if span.absorber.is_some()));
     assert!(s.place.edge.is_some() && s.faces.len() == 1);
-}
-
-#[test]
-fn only_studies_are_left_to_a_later_version() {
-    let later: Vec<&str> = FIELDS.iter().filter(|field| !field.ready).map(|field| field.path).collect();
-    assert_eq!(later, ["study"]);
 }
 
 #[test]

@@ -3,7 +3,7 @@
 use proptest::prelude::*;
 use underfoot::margin::{CheckKind, Verdict};
 use underfoot::scenario::{Scenario, read};
-use underfoot::study::{Evaluator, Place, Worst, worst_found};
+use underfoot::study::{Evaluator, Place, Worst, unwatched, worst_found};
 
 fn scenario(mass: &str, stiffness: &str, ratio: &str, force: &str) -> Scenario {
     let text = format!(
@@ -45,7 +45,7 @@ fn of(checks: &[Worst], kind: CheckKind) -> &Worst {
 #[test]
 fn a_heavy_person_on_a_weak_absorber_comes_lowest() {
     let scenario = scenario("80..100..120 kg", "60 kN/m", "0.08", "3.6..4.2..5 kN");
-    let found = worst_found(&Evaluator::new(&scenario).unwrap()).unwrap();
+    let found = worst_found(&Evaluator::new(&scenario).unwrap(), &unwatched).unwrap();
     let clearance = of(&found.checks, CheckKind::Clearance(0));
     let places: Vec<_> = clearance.stands.iter().map(|stand| stand.place).collect();
     assert_eq!(places, [Place::High, Place::Low]);
@@ -57,7 +57,7 @@ fn a_heavy_person_on_a_weak_absorber_comes_lowest() {
 #[test]
 fn a_check_that_holds_at_typical_and_falls_short_in_the_band_is_thin() {
     let scenario = scenario("100 kg", "60 kN/m", "0.08", "4..5..6.5 kN");
-    let found = worst_found(&Evaluator::new(&scenario).unwrap()).unwrap();
+    let found = worst_found(&Evaluator::new(&scenario).unwrap(), &unwatched).unwrap();
     let force = of(&found.checks, CheckKind::ArrestForce);
     assert_eq!(force.typical.unwrap().verdict, Verdict::Holds);
     assert_eq!(force.worst.unwrap().verdict, Verdict::Short);
@@ -67,7 +67,7 @@ fn a_check_that_holds_at_typical_and_falls_short_in_the_band_is_thin() {
 #[test]
 fn without_bands_the_worst_is_the_typical() {
     let scenario = scenario("100 kg", "60 kN/m", "0.08", "4.2 kN");
-    let found = worst_found(&Evaluator::new(&scenario).unwrap()).unwrap();
+    let found = worst_found(&Evaluator::new(&scenario).unwrap(), &unwatched).unwrap();
     for worst in &found.checks {
         assert_eq!(worst.worst, worst.typical.filter(|check| check.verdict != Verdict::Open));
         assert!(worst.stands.is_empty());
@@ -77,7 +77,7 @@ fn without_bands_the_worst_is_the_typical() {
 #[test]
 fn an_input_that_does_not_matter_to_a_check_stands_anywhere() {
     let scenario = scenario("80..100..120 kg", "40..60..80 kN/m", "0.08", "4.2 kN");
-    let found = worst_found(&Evaluator::new(&scenario).unwrap()).unwrap();
+    let found = worst_found(&Evaluator::new(&scenario).unwrap(), &unwatched).unwrap();
     let free_fall = of(&found.checks, CheckKind::Stroke);
     assert_eq!(free_fall.stands[0].place, Place::High);
     assert!(found.checks.iter().any(|worst| worst.stands.iter().any(|stand| stand.place == Place::Anywhere)));
@@ -93,7 +93,7 @@ fn a_band_with_impossible_values_leaves_its_checks_open_and_says_how_many_runs()
     onset.band.typical = 4.5e3;
     onset.band.high = 5e3;
     absorber.onset_force = Some(onset);
-    let found = worst_found(&Evaluator::new(&scenario).unwrap()).unwrap();
+    let found = worst_found(&Evaluator::new(&scenario).unwrap(), &unwatched).unwrap();
     assert!(found.failed > 0);
     assert!(found.checks.iter().all(|worst| worst.open_runs > 0 && worst.verdict == Verdict::Open));
 }
@@ -111,7 +111,7 @@ proptest! {
         let band = |low: f64, unit: &str| format!("{low}..{} {unit}", low * 1.5);
         let scenario = scenario(&band(mass, "kg"), &band(stiffness, "kN/m"), band(ratio, "").trim(), &band(force, "kN"));
         let evaluator = Evaluator::new(&scenario).unwrap();
-        let found = worst_found(&evaluator).unwrap();
+        let found = worst_found(&evaluator, &unwatched).unwrap();
         let wide = evaluator.wide();
         prop_assert_eq!(wide.len(), 4);
         for number in 0..7_usize.pow(4) {

@@ -1,8 +1,9 @@
 //! `audit`: files and folders for a reviewer.
 use super::exit::Code;
+use super::interrupt::Interrupt;
 use super::options::AuditArgs;
 use super::output::{self, PAINT, Reader};
-use super::run::{Failure, load_and_report};
+use super::run::{Failure, load_and_judge};
 use crate::scenario::doubts;
 use crate::sheet::{Audited, Finding, audit_head, audit_json, audit_text, tally};
 use std::io;
@@ -13,13 +14,19 @@ pub fn audit(args: &AuditArgs) -> Code {
     let (files, mut code) = gather(&args.paths);
     let mut reader = if args.json { Reader::Listens } else { output::results(&audit_head(PAINT)) };
     let mut verdicts = Vec::with_capacity(files.len());
+    let interrupt = Interrupt::listen();
     for path in &files {
-        let (audited, own_code) = one_file(path);
+        let (audited, own_code) = one_file(path, &interrupt);
         code = code.max(own_code);
         verdicts.push(audited.verdict());
         let text = if args.json { audit_json(&audited) } else { audit_text(&audited, args.units.system(), PAINT) };
         if reader == Reader::Listens {
             reader = output::results(&text);
+        }
+        if interrupt.is_pressed() {
+            code = Code::Interrupted;
+            interrupt.tell();
+            break;
         }
     }
     last_line(&tally(&verdicts), args.json, reader);
@@ -35,9 +42,9 @@ fn last_line(words: &str, json: bool, reader: Reader) {
     }
 }
 
-fn one_file(path: &Path) -> (Audited, Code) {
+fn one_file(path: &Path, interrupt: &Interrupt) -> (Audited, Code) {
     let file = path.display().to_string();
-    let (finding, code) = match load_and_report(path) {
+    let (finding, code) = match load_and_judge(path, interrupt) {
         Ok((loaded, report)) => {
             let code = Code::from(report.verdict);
             let doubts = doubts(&file, &loaded.text, &loaded.scenario);

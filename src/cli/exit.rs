@@ -12,6 +12,8 @@ pub enum Code {
     WrongInput,
     /// 3: it could not be computed.
     NotComputed,
+    /// 130: Ctrl-C; what there was by then is printed and marked.
+    Interrupted,
 }
 
 impl Code {
@@ -23,6 +25,7 @@ impl Code {
             Self::NotHeld => 1,
             Self::WrongInput => 2,
             Self::NotComputed => 3,
+            Self::Interrupted => 130,
         }
     }
 }

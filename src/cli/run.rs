@@ -1,12 +1,15 @@
 //! `run`: the estimate and its margins.
 use super::exit::Code;
+use super::interrupt::Interrupt;
 use super::locate::{one_fault, unknown_basis};
+use super::meter::Meter;
 use super::options::RunArgs;
 use super::output::{self, PAINT, Reader};
 use crate::estimate::EstimateError;
 use crate::margin::Rules;
 use crate::scenario::{Faults, LoadError, Loaded, load, read};
-use crate::sheet::{CAUTION_LINE, Layout, Report, ReportError, csv, json, report, text};
+use crate::sheet::{CAUTION_LINE, Layout, Report, ReportError, csv, json, report, report_bands, text};
+use crate::study::StudyError;
 use std::io::Read;
 use std::path::Path;
 
@@ -53,7 +56,7 @@ fn with_line_end(mut text: String) -> String {
     text
 }
 
-/// Prints every file; the largest exit code counts.
+/// Prints every file; the largest exit code counts. After Ctrl-C the file at hand is the last.
 pub fn run(args: &RunArgs) -> Code {
     if args.csv && args.files.len() > 1 {
         output::message("`--csv` takes one file; run it once for each");
@@ -61,8 +64,9 @@ pub fn run(args: &RunArgs) -> Code {
     }
     let mut code = Code::Holds;
     let mut reader = Reader::Listens;
+    let interrupt = Interrupt::listen();
     for (i, path) in args.files.iter().enumerate() {
-        match load_and_report(path) {
+        match load_and_judge(path, &interrupt) {
             Ok((_, report)) => {
                 code = code.max(Code::from(report.verdict));
                 if reader == Reader::Listens {
@@ -73,6 +77,10 @@ pub fn run(args: &RunArgs) -> Code {
                 failure.print();
                 code = code.max(failure.code());
             }
+        }
+        if interrupt.is_pressed() {
+            interrupt.tell();
+            return Code::Interrupted;
         }
     }
     code
@@ -102,6 +110,22 @@ pub fn load_and_report(path: &Path) -> Result<(Loaded, Report), Failure> {
         Ok(report) => Ok((loaded, report)),
         Err(error) => Err(no_report(file, &loaded.text, error)),
     }
+}
+
+/// As [`load_and_report`], with what the bands do to the checks; Ctrl-C leaves a part of that.
+///
+/// # Errors
+/// See [`Failure`].
+pub fn load_and_judge(path: &Path, interrupt: &Interrupt) -> Result<(Loaded, Report), Failure> {
+    let (loaded, mut report) = load_and_report(path)?;
+    let meter = Meter::new();
+    let found = report_bands(&report, &|progress| interrupt.watch(&meter, progress));
+    meter.clear();
+    let put = found.and_then(|bands| bands.map_or(Ok(()), |bands| report.add_bands(bands)));
+    let not_computed =
+        |error: StudyError| Failure::NotComputed { file: report.file.clone(), reason: error.to_string() };
+    put.map_err(not_computed)?;
+    Ok((loaded, report))
 }
 
 /// Looks whether a file can be edited on the screen: it reads without a fault and its set of limits is known.

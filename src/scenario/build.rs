@@ -1,7 +1,9 @@
 //! From checked values to the scenario.
 use super::anchor::{Anchor, AnchorKind, Compliance, Span, SpanAbsorber, SpanTension};
 use super::line::{Absorber, DampingLaw, Line, LineKind, StretchLaw};
-use super::model::{Edge, Face, Fall, LIMIT_KEYS, Limits, Obstacle, OwnLimit, Place, Scenario, Subject, SubjectKind};
+use super::model::{
+    Edge, Face, Fall, LIMIT_KEYS, Limits, Obstacle, OwnLimit, Place, Scenario, Study, Subject, SubjectKind,
+};
 use super::values::Values;
 use crate::quantity::{Measure, Unit};
 
@@ -26,7 +28,14 @@ pub(super) fn scenario(values: &mut Values) -> Option<Scenario> {
         obstacles: (1..=v.count("obstacle")).map(|n| obstacle(v, n)).collect::<Option<Vec<_>>>()?,
         faces: (1..=v.count("face")).map(|n| face(v, n)).collect::<Option<Vec<_>>>()?,
         limits: limits(v),
+        study: Study { seed: whole(v, "study.seed"), samples: whole(v, "study.samples") },
     })
+}
+
+/// A whole number, which the reader keeps within 0 to 2^53 - 1.
+#[expect(clippy::cast_possible_truncation, clippy::cast_sign_loss, reason = "whole, from 0 to below 2^53")]
+fn whole(values: &Values, path: &str) -> Option<u64> {
+    m(values, path).map(|measure| measure.si() as u64)
 }
 
 fn m(values: &Values, path: &str) -> Option<Measure> {

@@ -40,7 +40,7 @@ fn ends_like(text: &str, edited: String) -> String {
 /// # Errors
 /// A message when the input has no place in the file.
 fn with_value(text: &str, places: &Places, input: &str, value: &str) -> Result<String, String> {
-    let field = field_for(input).filter(|field| field.ready).ok_or_else(|| format!("there is no input `{input}`"))?;
+    let field = field_for(input).ok_or_else(|| format!("there is no input `{input}`"))?;
     let inner = format!("{input}.value");
     let Some(at) = places.exactly(&inner).or_else(|| places.exactly(input)) else {
         return inserted(text, field, input, value);

@@ -19,8 +19,6 @@ pub struct Field {
     pub least: f64,
     /// Largest physical value, SI, itself allowed.
     pub most: f64,
-    /// False for a key that a later version will read: refused with a message that says so.
-    pub ready: bool,
     /// When the key must stand in the file.
     pub need: Need,
     /// The words it may hold; empty for free text and quantities.
@@ -51,7 +49,6 @@ pub(super) const fn text(path: &'static str, label: &'static str, doc: &'static 
         columns: None,
         least: 0.0,
         most: 0.0,
-        ready: true,
         need: Need::Default("none"),
         words: &[],
         example,
@@ -66,6 +63,17 @@ pub(super) const fn quantity(
     example: &'static str,
 ) -> Field {
     Field { dimension: Some(dimension), least, most, ..text(path, label, doc, example) }
+}
+
+/// A whole number without a unit: an option, no input of the fall.
+pub(super) const fn count(
+    path: &'static str,
+    label: &'static str,
+    doc: &'static str,
+    (least, most): (f64, f64),
+    example: &'static str,
+) -> Field {
+    quantity(path, label, doc, (Dimension::Ratio, least, most), example)
 }
 
 pub(super) const fn table(
@@ -85,8 +93,9 @@ impl Field {
     pub(super) const fn one_of(self, words: &'static [&'static str]) -> Self {
         Self { words, ..self }
     }
-    pub(super) const fn later(self) -> Self {
-        Self { ready: false, ..self }
+    /// True for a whole number of `[study]`.
+    pub(super) fn is_count(&self) -> bool {
+        self.path.starts_with("study.")
     }
     /// The part of the path after the last point: `stiffness`.
     #[must_use]

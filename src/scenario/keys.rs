@@ -1,6 +1,6 @@
 //! The table of every key a file may hold: feeds the reader, `new`, the inputs list and messages.
 use super::field::Need::{Always, Default, InSection, Sometimes};
-use super::field::{Field, quantity, table, text};
+use super::field::{Field, count, quantity, table, text};
 use crate::quantity::Dimension;
 use crate::quantity::Dimension::{Acceleration, Damping, Force, Length, Mass, MassPerLength, Ratio, Stiffness};
 
@@ -18,6 +18,11 @@ const STIFFEST_N_PER_M: f64 = 1e11;
 const LEAST_N: f64 = 0.01;
 /// See [`LEAST_N`].
 const MOST_N: f64 = 1e9;
+
+/// Largest whole number that every reader of TOML and JSON keeps exactly: 2^53 - 1.
+const LARGEST_SEED: f64 = 9_007_199_254_740_991.0;
+/// A finer share than one in a million says nothing that the bands know.
+const MOST_SAMPLES: f64 = 1e6;
 
 const ELEVATION: (Dimension, f64, f64) = (Length, DEEPEST_M, HIGHEST_M);
 const DISTANCE: (Dimension, f64, f64) = (Length, 0.0, LONGEST_M);
@@ -370,7 +375,9 @@ pub const FIELDS: &[Field] = &[
     quantity("limits.line_strength", "limit on the line", "least strength of the line", FORCE, "\"22 kN\""),
     quantity("limits.line_factor", "line factor", "factor on the line force", (Ratio, 1.0, 100.0), "2"),
     quantity("limits.subject_mass", "limit on the mass", "largest mass of the subject", MASS, "\"140 kg\""),
-    text("study", "study", "seed and samples of a study", "").later(),
+    count("study.seed", "seed", "which sample of the bands is drawn", (0.0, LARGEST_SEED), "1").needed(Default("1")),
+    count("study.samples", "samples", "runs that the sample of the bands has", (1.0, MOST_SAMPLES), "4096")
+        .needed(Default("4096")),
 ];
 
 /// Line kinds of a file.

@@ -16,6 +16,9 @@ pub(super) fn read(values: &mut Values, text: &str, path: &str, field: &Field, v
             other => wrong_type(values, value.span(), field, other, "expected text in quotes"),
         };
     };
+    if field.is_count() {
+        return count(values, path, field, value);
+    }
     let one_value = path.starts_with("limits.");
     let measure = match value.get_ref() {
         DeValue::Table(table) if one_value => limit(values, text, path, field, table, value.span()),
@@ -27,6 +30,25 @@ pub(super) fn read(values: &mut Values, text: &str, path: &str, field: &Field, v
         && in_range(values, field, &measure, value.span())
     {
         values.measures.insert(path.to_owned(), measure);
+    }
+}
+
+/// A whole number without quotes.
+fn count(values: &mut Values, path: &str, field: &Field, value: &Value<'_>) {
+    let whole = match value.get_ref() {
+        DeValue::Integer(number) if number.radix() == 10 => number.as_str().replace('_', ""),
+        other => return wrong_type(values, value.span(), field, other, "expected a whole number"),
+    };
+    match whole.parse::<f64>() {
+        Ok(number) if number >= field.least && number <= field.most => {
+            values.measures.insert(path.to_owned(), Measure::exact(number, Unit::One));
+        }
+        _ => {
+            let message = format!("{} is outside the range of {}", quoted(&whole), field.label);
+            let expected = format!("expected {:.0} to {:.0}", field.least, field.most);
+            let hint = format!("write a whole number such as `{} = {}`", field.key(), field.example);
+            values.error(value.span(), message, &expected, Some(hint));
+        }
     }
 }
 

@@ -34,6 +34,17 @@ pub struct Scenario {
     pub faces: Vec<Face>,
     /// Limits to check against.
     pub limits: Limits,
+    /// How the bands are sampled, where the file says so.
+    pub study: Study,
+}
+
+/// How the bands are sampled; what is absent is at its default.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub struct Study {
+    /// Which sample, 0 to 2^53 - 1.
+    pub seed: Option<u64>,
+    /// Runs of the sample, 1 to 1,000,000.
+    pub samples: Option<u64>,
 }
 
 /// Person or load.

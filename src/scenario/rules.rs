@@ -42,7 +42,7 @@ fn missing(text: &str, values: &mut Values, path: &str, because: &str) {
 }
 
 fn needed(text: &str, values: &mut Values) {
-    for field in FIELDS.iter().filter(|field| field.ready) {
+    for field in FIELDS {
         match field.need {
             Need::Always if !values.has(field.path) => missing(text, values, field.path, ""),
             Need::InSection => in_section(text, values, field),

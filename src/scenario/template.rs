@@ -24,7 +24,8 @@ const SHOWN: &[&str] = &[
 ];
 
 /// Sections that stand in the new file as comments.
-const OPTIONAL_SECTIONS: &[&str] = &["place.edge", "fall", "harness", "anchor.span", "anchor.span.absorber", "face.*"];
+const OPTIONAL_SECTIONS: &[&str] =
+    &["place.edge", "fall", "harness", "anchor.span", "anchor.span.absorber", "face.*", "study"];
 
 /// Sections that stand in the new file as one key with a table in braces.
 const IN_ONE_LINE: &[&str] = &["line.rated_impact", "line.static_elongation"];
@@ -40,7 +41,7 @@ pub fn new_file() -> String {
          # Every number carries its unit; a band is \"80..100..120 kg\". Lines behind # are choices.\n\n",
     );
     let mut sections = vec![""];
-    for field in FIELDS.iter().filter(|field| field.ready) {
+    for field in FIELDS {
         let own = field.path.rsplit_once('.').map_or("", |(section, _)| section);
         if !sections.contains(&own) {
             sections.push(own);

@@ -59,7 +59,6 @@ impl Values {
             let name = key.get_ref().as_ref();
             let path = if prefix.is_empty() { name.to_owned() } else { format!("{prefix}.{name}") };
             match (plain(name), field_for(&path)) {
-                (true, Some(field)) if !field.ready => self.later(key.span(), &format!("`{path}`")),
                 (true, Some(field)) => {
                     self.spans.insert(path.clone(), value.span());
                     match field.columns {
@@ -119,12 +118,6 @@ impl Values {
                 self.walk(text, &path, table);
             }
         }
-    }
-
-    /// A key that a later version will read.
-    fn later(&mut self, span: Range<usize>, what: &str) {
-        let hint = Some("a later version will read it; take it out or keep it in a comment until then".to_owned());
-        self.error(span, format!("{what} is not read by this version"), "not supported yet", hint);
     }
 
     /// Notes an unknown key; returns the path that was probably meant.

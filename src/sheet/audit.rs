@@ -1,5 +1,6 @@
 //! What a reviewer is told about one file after the other.
-use super::json::{Layout, margin, print};
+use super::band_words::{band_table, bands_object, report_margin_object};
+use super::json::{Layout, print};
 use super::page::{Page, Paint, Tone};
 use super::text::{margin_table, sentences, verdict_line};
 use super::{CAUTION_LINE, CAUTIONS, Report};
@@ -81,7 +82,7 @@ fn refusal(page: &mut Page, audited: &Audited, why: &str) {
 
 fn judged(page: &mut Page, report: &Report, doubts: &Faults, system: UnitSystem, colour: bool) {
     let margins = report.margins_in(system);
-    verdict_line(page, &report.scenario, &margins, report.verdict, system);
+    verdict_line(page, report, &margins, system);
     margin_table(page, &margins, system);
     for margin in &margins {
         page.wrapped("    ", &format!("{}: {}", margin.label, margin.basis.words), Tone::Faint);
@@ -89,6 +90,7 @@ fn judged(page: &mut Page, report: &Report, doubts: &Faults, system: UnitSystem,
             page.wrapped("      note: ", note, Tone::Plain);
         }
     }
+    band_table(page, report, system);
     sentences(page, "limits", &report.limit_remarks);
     sentences(page, "warnings", &report.estimate.warnings);
     if !doubts.faults.is_empty() {
@@ -110,8 +112,11 @@ pub fn audit_json(audited: &Audited) -> String {
             object.insert("scenario_sha256".into(), json!(report.scenario_sha256));
             object.insert("faults".into(), json!([]));
             object.insert("doubts".into(), json!(doubts.rows()));
-            object.insert("margins".into(), report.margins.iter().map(margin).collect());
+            object.insert("margins".into(), report.margins.iter().map(|m| report_margin_object(report, m)).collect());
             object.insert("warnings".into(), json!(report.estimate.warnings));
+            if let Some(bands) = &report.bands {
+                object.insert("bands".into(), bands_object(bands));
+            }
         }
         Finding::Refused(faults) => {
             object.insert("faults".into(), json!(faults.rows()));

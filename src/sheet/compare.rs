@@ -1,11 +1,12 @@
 //! Two scenarios beside each other, as text and JSON.
-use super::json::margin as margin_json;
+use super::band_words::{report_margin_object, worst_words};
+use super::json::si_unit;
 use super::page::{Page, Paint, Tone, pad};
 use super::words::margin_words;
 use super::{CAUTION_LINE, CAUTIONS, Report};
 use crate::estimate::{Number, Value as NumberValue, definition};
 use crate::margin::Margin;
-use crate::quantity::{UnitSystem, format_si};
+use crate::quantity::{Band, Measure, Shape, UnitSystem, format_si};
 use crate::study::{Comparison, InputChange, NumberChange, Side, VerdictChange, compare};
 use serde_json::{Value, json};
 
@@ -67,7 +68,8 @@ fn verdict_lines(page: &mut Page, change: &VerdictChange, reports: [&Report; 2],
     page.wrapped(&format!("  {} ", pad(label, 34)), &format!("{} -> {}", word(before), word(after)), tone);
     for (lead, margin, report) in [("    first   ", before, reports[0]), ("    second  ", after, reports[1])] {
         if let Some(margin) = margin {
-            page.wrapped(lead, &margin_words(&report.scenario, margin, system), Tone::Plain);
+            let worst = worst_words(report, margin, system).map_or(String::new(), |words| format!("; {words}"));
+            page.wrapped(lead, &format!("{}{worst}", margin_words(&report.scenario, margin, system)), Tone::Plain);
         }
     }
 }
@@ -105,7 +107,7 @@ pub fn compare_object(found: &Comparison, a: &Report, b: &Report) -> Value {
         "version": env!("CARGO_PKG_VERSION"),
         "cautions": CAUTIONS,
         "second_is_worse": found.is_worse(),
-        "inputs": found.inputs.iter().map(|c| json!({ "path": c.path, "first": c.before, "second": c.after })).collect::<Vec<_>>(),
+        "inputs": found.inputs.iter().map(input_object).collect::<Vec<_>>(),
         "numbers": found.numbers.iter().map(|c| json!({
             "id": number_id(c),
             "unit": c.before.as_ref().or(c.after.as_ref()).map(|n| n.unit),
@@ -113,9 +115,30 @@ pub fn compare_object(found: &Comparison, a: &Report, b: &Report) -> Value {
             "second": number(&c.after),
         })).collect::<Vec<_>>(),
         "verdicts": found.verdicts.iter().map(|c| json!({
-            "first": c.before.as_ref().map(margin_json),
-            "second": c.after.as_ref().map(margin_json),
+            "first": c.before.as_ref().map(|m| report_margin_object(a, m)),
+            "second": c.after.as_ref().map(|m| report_margin_object(b, m)),
             "worse": c.is_worse(),
         })).collect::<Vec<_>>(),
+    })
+}
+
+/// One input that differs: as both files state it and, where it is a quantity, both bands in SI units.
+fn input_object(change: &InputChange) -> Value {
+    let shape = |shape: Shape| match shape {
+        Shape::Uniform => "uniform",
+        Shape::Triangular => "triangular",
+        Shape::Normal => "normal",
+    };
+    let band = |measure: &Measure| {
+        let Band { low, typical, high, shape: of } = measure.band;
+        json!({ "low": low, "typical": typical, "high": high, "unit": si_unit(measure.dimension()), "shape": shape(of) })
+    };
+    let [first, second] = &change.measures;
+    json!({
+        "path": change.path,
+        "first": change.before,
+        "second": change.after,
+        "first_band": first.as_ref().map(band),
+        "second_band": second.as_ref().map(band),
     })
 }

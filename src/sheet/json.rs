@@ -1,4 +1,5 @@
 //! One report as JSON, SI units.
+use super::band_words::{bands_object, report_margin_object};
 use super::places::{span_object, swing_object};
 use super::working::working_object;
 use super::{CAUTIONS, Report};
@@ -45,11 +46,14 @@ pub fn object(report: &Report) -> Value {
         "warnings": report.estimate.warnings,
         "assumptions": report.estimate.assumptions,
         "limits": { "basis": report.scenario.limits.basis, "remarks": report.limit_remarks },
-        "margins": report.margins.iter().map(margin).collect::<Vec<_>>(),
+        "margins": report.margins.iter().map(|m| report_margin_object(report, m)).collect::<Vec<_>>(),
         "numbers": report.estimate.numbers.iter().map(number).collect::<Map<_, _>>(),
         "events": report.estimate.events.iter().map(event).collect::<Vec<_>>(),
         "working": working_object(report),
     });
+    if let Some(bands) = &report.bands {
+        object["bands"] = bands_object(bands);
+    }
     if let Some(view) = &report.estimate.span {
         object["span"] = span_object(view);
     }

@@ -1,4 +1,5 @@
 //! Everything an output needs about one file.
+use super::ReportBands;
 use crate::estimate::{Estimate, EstimateError, estimate};
 use crate::margin::{Margin, Rules, UnknownBasis, Verdict, margins, margins_in, remarks, worst};
 use crate::quantity::UnitSystem;
@@ -23,6 +24,8 @@ pub struct Report {
     pub verdict: Verdict,
     /// Sentences about the limits as a whole: what the set was written for, what is not judged.
     pub limit_remarks: Vec<String>,
+    /// What the bands do to the checks, once it was worked out; then `margins` and `verdict` are of both together.
+    pub bands: Option<ReportBands>,
 }
 
 impl Report {
@@ -31,7 +34,7 @@ impl Report {
     pub fn margins_in(&self, system: UnitSystem) -> Vec<Margin> {
         let noted = margins_in(&self.scenario, &self.estimate, system).unwrap_or_default();
         let note = |margin: &Margin| {
-            let same = noted.iter().find(|n| n.id == margin.id && n.verdict == margin.verdict);
+            let same = noted.iter().find(|n| n.id == margin.id);
             same.map_or_else(|| margin.note.clone(), |n| n.note.clone())
         };
         self.margins.iter().map(|margin| Margin { note: note(margin), ..margin.clone() }).collect()
@@ -65,6 +68,7 @@ pub fn report(file: &str, text: &str, scenario: &Scenario) -> Result<Report, Rep
         verdict: worst(margins.iter().map(|m| m.verdict)),
         margins,
         limit_remarks: remarks(&rules, scenario),
+        bands: None,
     })
 }
 

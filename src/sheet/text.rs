@@ -1,11 +1,12 @@
 //! One report as text for a screen of 100 columns.
+use super::band_words::{band_table, worst_words};
 use super::page::{Page, Paint, Tone, pad, pad_left};
 use super::places::{span, swing};
-use super::words::{governing_words, margin_value, place_name};
+use super::words::{governing_words, margin_value, place_name, signed};
 use super::working::{clearance_sums, working};
 use super::{CAUTION_LINE, CAUTIONS, Report};
 use crate::estimate::{DEFINITIONS, Number, Value};
-use crate::margin::{Margin, Sense, Verdict};
+use crate::margin::{Margin, Sense};
 use crate::quantity::{UnitSystem, format_si};
 use crate::scenario::Scenario;
 use unicode_width::UnicodeWidthStr;
@@ -16,7 +17,7 @@ pub fn text(report: &Report, system: UnitSystem, paint: Paint) -> String {
     let mut page = Page::new(paint);
     let margins = report.margins_in(system);
     head(&mut page, report);
-    verdict_line(&mut page, &report.scenario, &margins, report.verdict, system);
+    verdict_line(&mut page, report, &margins, system);
     events(&mut page, report, system);
     working(&mut page, &report.estimate, system);
     clearance_sums(&mut page, report, system);
@@ -25,6 +26,7 @@ pub fn text(report: &Report, system: UnitSystem, paint: Paint) -> String {
     numbers(&mut page, report, system);
     page.heading("margins (governing first)");
     margin_table(&mut page, &margins, system);
+    band_table(&mut page, report, system);
     margin_bases(&mut page, &margins);
     sentences(&mut page, "limits", &report.limit_remarks);
     sentences(&mut page, "assumptions", &report.estimate.assumptions);
@@ -52,15 +54,14 @@ fn head(page: &mut Page, report: &Report) {
 }
 
 /// `x SHORT  feet stop 0.42 m above the plant-room roof, 1.00 m wanted (0.58 m short)`.
-pub(super) fn verdict_line(
-    page: &mut Page,
-    scenario: &Scenario,
-    margins: &[Margin],
-    verdict: Verdict,
-    system: UnitSystem,
-) {
+pub(super) fn verdict_line(page: &mut Page, report: &Report, margins: &[Margin], system: UnitSystem) {
+    let verdict = report.verdict;
     let lead = format!("{} {}  ", verdict.symbol(), verdict.word().to_uppercase());
-    page.wrapped(&lead, &governing_words(scenario, margins, system), Tone::Verdict(verdict));
+    let mut words = governing_words(&report.scenario, margins, system);
+    if let Some(worst) = margins.first().and_then(|margin| worst_words(report, margin, system)) {
+        words = format!("{words}; {worst}");
+    }
+    page.wrapped(&lead, &words, Tone::Verdict(verdict));
 }
 
 fn events(page: &mut Page, report: &Report, system: UnitSystem) {
@@ -217,10 +218,6 @@ fn margin_cells(margin: &Margin, system: UnitSystem) -> String {
     let limit = margin.limit.map_or_else(|| "-".to_owned(), |l| format!("{sign} {}", show(Some(l))));
     let room = margin.margin.map_or_else(|| "-".to_owned(), |m| signed(m, &margin_value(margin, m, system)));
     [show(margin.demand), limit, room].map(|cell| pad_left(&cell, 15)).concat()
-}
-
-fn signed(value: f64, words: &str) -> String {
-    if value > 0.0 { format!("+{words}") } else { words.to_owned() }
 }
 
 fn margin_bases(page: &mut Page, margins: &[Margin]) {

@@ -68,6 +68,11 @@ pub(super) fn margin_value(margin: &Margin, value: f64, system: UnitSystem) -> S
     if margin.id == "span_workers" { format!("{value:.0}") } else { format_si(value, margin.dimension, system) }
 }
 
+/// Room with its sign.
+pub(super) fn signed(value: f64, words: &str) -> String {
+    if value > 0.0 { format!("+{words}") } else { words.to_owned() }
+}
+
 fn strike_words(name: &str, gap_m: f64, gap: &str, note: Option<&str>) -> String {
     let name = with_article(name);
     let note = note.map(|n| format!("; {n}")).unwrap_or_default();

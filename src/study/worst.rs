@@ -1,9 +1,11 @@
 //! The worst that the bands of a scenario do to each check, as far as a bounded search finds it.
-use super::evaluate::{Evaluator, Run, StudyError};
+use super::evaluate::{Evaluator, StudyError};
+use super::memory::{Count, Memory, Outcome};
 use super::sobol::{MOST_DIMENSIONS, Sobol};
+use super::watch::Watch;
 use crate::margin::{Check, CheckKind, Verdict};
 use rayon::prelude::*;
-use std::cmp::Ordering;
+use std::sync::Arc;
 
 /// Most bands for which every corner is tried: 2^12 runs.
 pub const MOST_CORNER_BANDS: usize = 12;
@@ -15,6 +17,9 @@ const INSIDE_SEED: u64 = 1;
 const STEPS: (f64, f64) = (0.25, 1e-5);
 /// A point this close to an end, as a share of the band, is at the end.
 const AT_END: f64 = 1e-9;
+
+/// Margins that differ by less than this share of demand or limit differ by the rounding of their runs.
+const ROUNDING: f64 = 1e-10;
 
 /// Where an input is at the worst found.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -53,8 +58,9 @@ pub struct Worst {
     pub stands: Vec<Stand>,
     /// Runs of the search that left it open, failed ones included.
     pub open_runs: usize,
-    /// The verdict of both together: short where typical is, open where typical is or where the search met open runs
-    /// and no short one, thin where only the worst is short.
+    /// The verdict of both together: short where typical is, thin where only the worst is (also where the check does
+    /// not apply at the typical values), open where typical is, where the search met open runs and no short one, or
+    /// where it was broken off without a short one.
     pub verdict: Verdict,
 }
 
@@ -77,65 +83,63 @@ pub struct WorstFound {
     pub failed: usize,
     /// True when every corner of the box was tried.
     pub all_corners: bool,
+    /// True when it was broken off: what it has not found may still be there.
+    pub partial: bool,
 }
 
 /// Searches the box of all wide bands for the smallest margin of each check.
 ///
-/// Tries every corner where at most [`MOST_CORNER_BANDS`] inputs are wide, the typical values and points spread over the inside; then
-/// refines each check from the worst corner and the worst inner point by a coordinate search with halving steps. Exact
-/// where the margin rises or falls with each input throughout; else the worst found, no more.
+/// Tries every corner where at most [`MOST_CORNER_BANDS`] inputs are wide, the typical values and points spread over the
+/// inside; then refines each check from the worst corner and the worst inner point by a coordinate search with halving
+/// steps. Exact where the margin rises or falls with each input throughout; else the worst found, no more. `watch` is
+/// told of every run and may break off: what is found by then is given and marked.
 ///
 /// # Errors
 /// [`StudyError::TooManyBands`] beyond [`MOST_DIMENSIONS`] wide inputs.
 ///
 /// # Reference
 /// Hooke and Jeeves (1961), J. ACM 8(2):212-229, exploratory moves.
-pub fn worst_found(evaluator: &Evaluator) -> Result<WorstFound, StudyError> {
+pub fn worst_found(evaluator: &Evaluator, watch: &Watch<'_>) -> Result<WorstFound, StudyError> {
     let wide = evaluator.wide();
     if wide.len() > MOST_DIMENSIONS {
         return Err(StudyError::TooManyBands { bands: wide.len(), most: MOST_DIMENSIONS });
     }
     let all_corners = wide.len() <= MOST_CORNER_BANDS;
-    let search = Search { evaluator, wide };
-    let starts = search.starts(all_corners);
-    let runs = starts.points.par_iter().map(|point| search.run(point)).collect::<Result<Vec<_>, _>>()?;
-    let typical = evaluator.typical();
-    let found = kinds(evaluator, &runs);
-    let checks =
-        found.par_iter().map(|&kind| search.check(kind, &typical, &starts, &runs)).collect::<Result<Vec<_>, _>>()?;
-    Ok(WorstFound {
-        runs: runs.len() + checks.iter().map(|(_, runs, _)| runs).sum::<usize>(),
-        failed: count(runs.iter(), |run| run.failure.is_some())
-            + checks.iter().map(|(.., failed)| failed).sum::<usize>(),
-        checks: checks.into_iter().map(|(worst, ..)| worst).collect(),
-        all_corners,
-    })
+    let search = Search::new(evaluator, wide, watch);
+    let starts = search.starts(all_corners)?;
+    let typical = Outcome::of(evaluator.peaks_at(&[])?);
+    let found = kinds(evaluator, &starts);
+    search.count.refining(found.len());
+    let checks = found.par_iter().map(|&kind| search.check(kind, &typical, &starts)).collect::<Result<Vec<_>, _>>()?;
+    let (runs, failed) = search.memory.counts();
+    Ok(WorstFound { runs, failed, checks, all_corners, partial: search.count.is_stopped() })
 }
 
-/// `thin` and its siblings: one word of the typical and the worst verdict, and of how many runs were open.
-fn together(typical: Option<&Check>, worst: Option<&Check>, open_runs: usize) -> Verdict {
-    match (typical.map_or(Verdict::Open, |c| c.verdict), worst.map(|c| c.verdict)) {
+/// `thin` and its siblings: one word of the typical and the worst verdict, of how many runs were open, and of whether
+/// the search came to its end.
+fn together(typical: Option<&Check>, worst: Option<&Check>, open_runs: usize, partial: bool) -> Verdict {
+    let unsure = open_runs > 0 || partial;
+    match (typical.map_or(Verdict::Holds, |c| c.verdict), worst.map(|c| c.verdict)) {
         (Verdict::Holds, Some(Verdict::Short)) => Verdict::Thin,
-        (Verdict::Holds, _) if open_runs > 0 => Verdict::Open,
+        (Verdict::Holds, _) if unsure => Verdict::Open,
         (typical, _) => typical,
     }
 }
 
-fn kinds(evaluator: &Evaluator, runs: &[Run]) -> Vec<CheckKind> {
+fn kinds(evaluator: &Evaluator, starts: &Starts) -> Vec<CheckKind> {
     let mut kinds = evaluator.kinds().to_vec();
-    kinds.extend(runs.iter().flat_map(|run| &run.checks).map(|check| check.kind));
+    kinds.extend(starts.points.iter().flat_map(|(_, run)| &run.checks).map(|check| check.kind));
     kinds.sort_unstable();
     kinds.dedup();
     kinds
 }
 
-fn count<'r>(runs: impl Iterator<Item = &'r Run>, is: impl Fn(&Run) -> bool) -> usize {
-    runs.filter(|run| is(run)).count()
-}
+/// A point of the unit box with what its run gave.
+type Tried = (Vec<f64>, Arc<Outcome>);
 
 struct Starts {
-    /// Points of the unit box; the corners come first.
-    points: Vec<Vec<f64>>,
+    /// The corners come first; fewer than meant where the search was broken off.
+    points: Vec<Tried>,
     corners: usize,
 }
 
@@ -147,33 +151,70 @@ struct Found {
 }
 
 impl Found {
-    /// Worse is less: short before the others, then the smaller margin.
-    fn compare(&self, other: &Self) -> Ordering {
-        let rank = |found: &Self| u8::from(found.check.verdict != Verdict::Short);
-        let margin = |found: &Self| found.check.margin.unwrap_or(f64::INFINITY);
-        rank(self).cmp(&rank(other)).then(margin(self).total_cmp(&margin(other)))
+    /// Worse than another: short where the other is not, or a smaller margin beyond rounding.
+    fn is_worse_than(&self, other: &Self) -> bool {
+        let short = |found: &Self| found.check.verdict == Verdict::Short;
+        match (short(self), short(other)) {
+            (true, false) => true,
+            (false, true) => false,
+            _ => self.margin() < other.margin() - other.rounding(),
+        }
     }
+
+    /// The same check but for rounding.
+    fn is_same_as(&self, other: &Self) -> bool {
+        let away = self.margin() - other.margin();
+        let close = self.check.verdict == other.check.verdict && away.abs() <= other.rounding();
+        close || self.check == other.check
+    }
+
+    fn margin(&self) -> f64 {
+        self.check.margin.unwrap_or(f64::INFINITY)
+    }
+
+    fn rounding(&self) -> f64 {
+        let scale = [self.check.limit, self.check.demand].into_iter().flatten().map(f64::abs).fold(0.0, f64::max);
+        ROUNDING * scale
+    }
+}
+
+/// The worst of a list, the first of equals.
+fn worst_of(list: &[Option<Found>]) -> Option<Found> {
+    let worse = |best: Option<Found>, found: &Found| match best {
+        Some(best) if !found.is_worse_than(&best) => Some(best),
+        _ => Some(found.clone()),
+    };
+    list.iter().flatten().fold(None, worse)
 }
 
 struct Search<'e> {
     evaluator: &'e Evaluator,
     wide: Vec<usize>,
+    memory: Memory,
+    count: Count<'e>,
 }
 
-impl Search<'_> {
-    fn starts(&self, all_corners: bool) -> Starts {
+impl<'e> Search<'e> {
+    fn new(evaluator: &'e Evaluator, wide: Vec<usize>, watch: &'e Watch<'e>) -> Self {
+        Self { evaluator, wide, memory: Memory::default(), count: Count::new(watch) }
+    }
+
+    fn starts(&self, all_corners: bool) -> Result<Starts, StudyError> {
         let bands = self.wide.len();
-        if bands == 0 {
-            return Starts { points: vec![Vec::new()], corners: 1 };
-        }
         let corners = if all_corners { 1_usize << bands } else { 0 };
         let corner = |number: usize| (0..bands).map(|d| if number >> d & 1 == 1 { 1.0 } else { 0.0 }).collect();
-        let sobol = Sobol::scrambled(bands, INSIDE_SEED);
-        let inside = INSIDE_RUNS[usize::from(!all_corners)];
         let mut points: Vec<Vec<f64>> = (0..corners).map(corner).collect();
-        points.push(self.wide.iter().map(|&input| self.typical_share(input)).collect());
-        points.extend((0..inside).map(|index| sobol.point(index)));
-        Starts { points, corners }
+        if bands > 0 {
+            let sobol = Sobol::scrambled(bands, INSIDE_SEED);
+            let inside = INSIDE_RUNS[usize::from(!all_corners)];
+            points.push(self.wide.iter().map(|&input| self.typical_share(input)).collect());
+            points.extend((0..inside).map(|index| sobol.point(index)));
+        }
+        self.count.corners(points.len());
+        let tried = |point: Vec<f64>| Ok(self.run(&point)?.map(|run| (point, run)));
+        let tried = points.into_par_iter().map(tried).collect::<Result<Vec<Option<Tried>>, StudyError>>()?;
+        let corners = tried.iter().take(corners).flatten().count();
+        Ok(Starts { points: tried.into_iter().flatten().collect(), corners })
     }
 
     fn typical_share(&self, input: usize) -> f64 {
@@ -186,36 +227,34 @@ impl Search<'_> {
         if share >= 1.0 { band.high } else { band.low + share * (band.high - band.low) }
     }
 
-    fn run(&self, point: &[f64]) -> Result<Run, StudyError> {
+    /// The run of a point; none once the search is broken off.
+    fn run(&self, point: &[f64]) -> Result<Option<Arc<Outcome>>, StudyError> {
+        if self.count.tell_run() {
+            return Ok(None);
+        }
         let values: Vec<_> = point.iter().enumerate().map(|(d, share)| (self.wide[d], self.value(d, *share))).collect();
-        self.evaluator.at(&values)
+        self.memory.outcome(&values, || self.evaluator.peaks_at(&values)).map(Some)
     }
 
-    /// One check: its worst, the runs that its refinement took and how many of these failed.
-    fn check(
-        &self,
-        kind: CheckKind,
-        typical: &Run,
-        starts: &Starts,
-        runs: &[Run],
-    ) -> Result<(Worst, usize, usize), StudyError> {
-        let mut tally = Tally { kind, runs: 0, failed: 0, open: 0 };
-        let judged: Vec<_> = runs.iter().zip(&starts.points).map(|(run, point)| tally.judge(run, point)).collect();
-        (tally.runs, tally.failed) = (0, 0);
+    fn check(&self, kind: CheckKind, typical: &Outcome, starts: &Starts) -> Result<Worst, StudyError> {
+        let mut tally = Tally { kind, open: 0 };
+        let judged: Vec<_> = starts.points.iter().map(|(point, run)| tally.judge(run, point)).collect();
         let (corners, inside) = judged.split_at(starts.corners);
-        let worst_of = |list: &[Option<Found>]| list.iter().flatten().min_by(|a, b| a.compare(b)).cloned();
         let mut best: Option<Found> = None;
+        let varies =
+            judged.windows(2).any(|pair| pair[0].as_ref().map(|f| f.check) != pair[1].as_ref().map(|f| f.check));
         for start in [worst_of(corners), worst_of(inside)].into_iter().flatten() {
-            let found = self.refine(start, &mut tally)?;
-            if best.as_ref().is_none_or(|best| found.compare(best).is_lt()) {
+            let found = if varies { self.refine(start, &mut tally)? } else { start };
+            if best.as_ref().is_none_or(|best| found.is_worse_than(best)) {
                 best = Some(found);
             }
         }
         let typical = typical.check(kind).copied();
         let stands = best.as_ref().map_or(Ok(Vec::new()), |found| self.stands(found, &mut tally))?;
         let worst = best.map(|found| found.check);
-        let verdict = together(typical.as_ref(), worst.as_ref(), tally.open);
-        Ok((Worst { kind, typical, worst, stands, open_runs: tally.open, verdict }, tally.runs, tally.failed))
+        self.count.refined();
+        let verdict = together(typical.as_ref(), worst.as_ref(), tally.open, self.count.is_stopped());
+        Ok(Worst { kind, typical, worst, stands, open_runs: tally.open, verdict })
     }
 
     /// Moves along one input at a time as long as that makes it worse, with halving steps.
@@ -231,8 +270,8 @@ impl Search<'_> {
                     if point[d] == best.point[d] {
                         continue;
                     }
-                    let found = tally.judge(&self.run(&point)?, &point);
-                    if let Some(found) = found.filter(|found| found.compare(&best).is_lt()) {
+                    let Some(run) = self.run(&point)? else { return Ok(best) };
+                    if let Some(found) = tally.judge(&run, &point).filter(|found| found.is_worse_than(&best)) {
                         best = found;
                         moved = true;
                     }
@@ -250,8 +289,8 @@ impl Search<'_> {
         for (d, &input) in self.wide.iter().enumerate() {
             let mut point = found.point.clone();
             point[d] = self.typical_share(input);
-            let other = tally.judge(&self.run(&point)?, &point);
-            let same = other.is_some_and(|other| other.check == found.check);
+            let other = self.run(&point)?.and_then(|run| tally.judge(&run, &point));
+            let same = other.is_some_and(|other| other.is_same_as(found));
             let share = found.point[d];
             let place = match share {
                 _ if same && point[d] != share => Place::Anywhere,
@@ -265,19 +304,15 @@ impl Search<'_> {
     }
 }
 
-/// Counts the runs of one check.
+/// Counts the open runs of one check.
 struct Tally {
     kind: CheckKind,
-    runs: usize,
-    failed: usize,
     open: usize,
 }
 
 impl Tally {
     /// The point where the run judged the check; an open one is counted.
-    fn judge(&mut self, run: &Run, point: &[f64]) -> Option<Found> {
-        self.runs += 1;
-        self.failed += usize::from(run.failure.is_some());
+    fn judge(&mut self, run: &Outcome, point: &[f64]) -> Option<Found> {
         let check = *run.check(self.kind)?;
         if check.verdict == Verdict::Open {
             self.open += 1;
