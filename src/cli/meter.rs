@@ -47,10 +47,10 @@ impl Meter {
             self.bar.set_draw_target(ProgressDrawTarget::stderr());
         }
         *step = Some(progress.step);
-        self.bar.set_message(words(progress.step));
         self.bar.set_length(progress.of as u64);
         self.bar.set_position(progress.done as u64);
         self.bar.reset_eta();
+        self.bar.set_message(words(progress.step));
     }
 
     /// Takes the line away.

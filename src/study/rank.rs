@@ -187,7 +187,7 @@ struct Tried {
 }
 
 /// Base points between two looks at whether to stop.
-const BATCH: usize = 64;
+const BATCH: usize = 32;
 
 /// Runs every base point and its mixtures.
 fn tried(

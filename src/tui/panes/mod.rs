@@ -2,6 +2,7 @@
 pub mod about;
 pub mod compare;
 pub mod elevation;
+pub mod end_loads;
 pub mod foot;
 pub mod header;
 pub mod help;
