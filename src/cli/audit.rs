@@ -4,7 +4,7 @@ use super::interrupt::Interrupt;
 use super::options::AuditArgs;
 use super::output::{self, PAINT, Reader};
 use super::run::{Failure, load_and_judge};
-use crate::scenario::doubts;
+use crate::scenario::{doubts, is_walk};
 use crate::sheet::{Audited, Finding, audit_head, audit_json, audit_text, tally};
 use std::io;
 use std::path::{Path, PathBuf};
@@ -95,6 +95,11 @@ fn search(folder: &Path, files: &mut Vec<PathBuf>) -> io::Result<()> {
         let path = entry.path();
         if entry.file_type()?.is_dir() {
             search(&path, files)?;
+        } else if is_walk(&path) {
+            output::message(&format!(
+                "`{0}` is a walk-through and was passed over; `underfoot walk {0} --text` checks it",
+                path.display()
+            ));
         } else if path.extension().is_some_and(|ending| ending == "toml") {
             files.push(path);
         }

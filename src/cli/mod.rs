@@ -11,6 +11,7 @@ mod run;
 mod spread;
 mod study;
 mod vary;
+mod walk;
 
 pub use exit::Code;
 
@@ -28,6 +29,13 @@ pub enum Next {
     Exit(Code),
     /// Open the screen on a file that reads without a fault.
     View {
+        /// The file.
+        path: PathBuf,
+        /// The units shown.
+        units: UnitSystem,
+    },
+    /// Open the screen on a walk-through that reads without a fault.
+    Walk {
         /// The file.
         path: PathBuf,
         /// The units shown.
@@ -56,6 +64,7 @@ fn dispatch(arguments: Arguments) -> Next {
         (Some(Command::Vary(args)), _) => Next::Exit(vary::vary_inputs(&args)),
         (Some(Command::Remedy(args)), _) => Next::Exit(study::remedy(&args)),
         (Some(Command::Spread(args)), _) => Next::Exit(spread::spread(&args)),
+        (Some(Command::Walk(args)), _) => walk::walk(&args),
         (Some(Command::Limits(args)), _) => Next::Exit(new::limits(&args)),
         (Some(Command::New(args)), _) => Next::Exit(new::new(&args)),
         (None, None) => {
