@@ -62,6 +62,14 @@ pub struct StopChange {
     pub after: String,
 }
 
+impl Stop {
+    /// False where the stop only speaks.
+    #[must_use]
+    pub const fn is_changing(&self) -> bool {
+        !self.changes.is_empty()
+    }
+}
+
 impl Walk {
     /// The state at a stop, counted from 1; 0 is the start, and beyond the last stop the last state counts.
     #[must_use]

@@ -93,7 +93,7 @@ pub fn walk_text(walked: &Walked, system: UnitSystem, paint: Paint) -> String {
         page.wrapped("  ", &stop.say, Tone::Heading);
         let changed = stop_changes_words(stop).unwrap_or_else(|| "nothing".to_owned());
         page.wrapped("  changed     ", &changed, Tone::Plain);
-        run_lines(&mut page, [Some(before), Some(own)], system);
+        run_lines(&mut page, [Some(before).filter(|_| stop.is_changing()), Some(own)], system);
         if let Some(view) = stop.view {
             page.line(&format!("  view        {view}"), Tone::Plain);
         }
@@ -115,7 +115,8 @@ fn run_lines(page: &mut Page, [before, own]: [Option<&WalkRun>; 2], system: Unit
         Some(WalkRun::Judged { typical, joint }) => {
             page.wrapped("  margin      ", &governing_step(before, typical, system), Tone::Plain);
             page.wrapped("  peak force  ", &peak_step(before, typical, system), Tone::Plain);
-            let words = format!("{} (margin, force and this at typical values)", verdict_step(before, typical));
+            let at = if joint.bands.is_some() { " at typical values, as margin and force" } else { "" };
+            let words = format!("{}{at}", verdict_step(before, typical));
             page.wrapped("  verdict     ", &words, Tone::Plain);
             verdict_line(page, joint, &joint.margins_in(system), system);
         }

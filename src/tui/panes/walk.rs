@@ -1,4 +1,5 @@
 //! The bar of a walk-through: the stop, its sentence, what it changed and what that did.
+use crate::scenario::Stop;
 use crate::sheet::{Report, governing_step, peak_step, stop_changes_words, verdict_step};
 use crate::tui::command::{Command, key_name};
 use crate::tui::model::Model;
@@ -69,7 +70,8 @@ fn sentence(walking: &Walking) -> String {
 fn did(model: &Model, walking: &Walking) -> Vec<String> {
     let mut lines = Vec::new();
     let [before, own] = &walking.runs;
-    let before = before.as_deref().ok().filter(|_| walking.at > 0);
+    let is_changing = walking.stop().is_some_and(Stop::is_changing);
+    let before = before.as_deref().ok().filter(|_| is_changing);
     if let Some(stop) = walking.stop() {
         lines.push(
             stop_changes_words(stop)
@@ -85,7 +87,8 @@ fn did(model: &Model, walking: &Walking) -> Vec<String> {
 
 fn steps(model: &Model, before: Option<&Report>, own: &Report) -> String {
     let (margin, peak) = (governing_step(before, own, model.units), peak_step(before, own, model.units));
-    format!("margin {margin}   peak {peak}   {} at typical values", verdict_step(before, own))
+    let at = if model.has_bands() { " at typical values" } else { "" };
+    format!("margin {margin}   peak {peak}   {}{at}", verdict_step(before, own))
 }
 
 fn file_words(model: &Model, walking: &Walking) -> String {
