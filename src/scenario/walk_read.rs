@@ -231,13 +231,13 @@ impl Reader {
 
     /// `input` and `value`, which stand together.
     fn pair(&mut self, number: usize, change: RawChange, stands: [bool; 2]) -> Option<RawChange> {
-        let (missing, hint) = match stands {
+        let (stands, missing, hint) = match stands {
             [true, true] => return Some(change).filter(|change| change.input.is_some() && change.value.is_some()),
-            [true, false] => ("value", "add `value = \"..\"`, as it would stand in the scenario"),
-            _ => ("input", "add `input = \"line.stiffness\"`: the path of what is changed"),
+            [true, false] => ("input", "value", "add `value = \"..\"`, as it would stand in the scenario"),
+            _ => ("value", "input", "add `input = \"line.stiffness\"`: the path of what is changed"),
         };
         let at = change.input.or(change.value).map_or(0..0, |(_, at)| at);
-        let message = format!("stop {number} changes an input without `{missing}`");
+        let message = format!("stop {number} has `{stands}` without `{missing}`");
         self.fault(at, message, &format!("expected `{missing}` beside it"), hint);
         None
     }
