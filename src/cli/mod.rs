@@ -6,10 +6,12 @@ mod locate;
 mod new;
 mod options;
 mod output;
+mod reference;
 mod run;
 mod study;
 
 pub use exit::Code;
+pub use reference::{KeyRow, commands_markdown, manual, print_manual};
 
 use crate::quantity::UnitSystem;
 use clap::Parser;
@@ -30,6 +32,8 @@ pub enum Next {
         /// The units shown.
         units: UnitSystem,
     },
+    /// Print the manual, which lists the keys of the screen too.
+    Manual,
 }
 
 /// Reads the arguments (the first is the program's name) and does what they ask for, except for the screen.
@@ -54,6 +58,9 @@ fn dispatch(arguments: Arguments) -> Next {
         (Some(Command::Remedy(args)), _) => Next::Exit(study::remedy(&args)),
         (Some(Command::Limits(args)), _) => Next::Exit(new::limits(&args)),
         (Some(Command::New(args)), _) => Next::Exit(new::new(&args)),
+        (Some(Command::Schema), _) => Next::Exit(reference::print_schema()),
+        (Some(Command::Completions(args)), _) => Next::Exit(reference::print_completions(args.shell)),
+        (Some(Command::Manual), _) => Next::Manual,
         (None, None) => {
             output::message("no file is given; `underfoot --help` lists what there is");
             Next::Exit(Code::WrongInput)
