@@ -1,20 +1,24 @@
 //! The command line: arguments in, results to stdout, messages to stderr, one exit code out.
 mod audit;
+mod examples;
 mod exit;
 mod interrupt;
 mod locate;
+mod meter;
 mod new;
 mod options;
 mod output;
 mod reference;
 mod run;
+mod spread;
 mod study;
+mod vary;
 
 pub use exit::Code;
 pub use reference::{KeyRow, commands_markdown, manual, print_manual};
 
 use crate::quantity::UnitSystem;
-use clap::Parser;
+use clap::FromArgMatches;
 use options::{Arguments, Command, ViewArgs};
 use std::ffi::OsString;
 use std::io::IsTerminal;
@@ -38,7 +42,8 @@ pub enum Next {
 
 /// Reads the arguments (the first is the program's name) and does what they ask for, except for the screen.
 pub fn parse_and_run(args: impl IntoIterator<Item = impl Into<OsString> + Clone>) -> Next {
-    match Arguments::try_parse_from(args) {
+    let read = examples::command().try_get_matches_from(args);
+    match read.and_then(|matches| Arguments::from_arg_matches(&matches)) {
         Ok(arguments) => dispatch(arguments),
         Err(refusal) => {
             // A closed pipe while help is printed is not worth a message.
@@ -54,8 +59,9 @@ fn dispatch(arguments: Arguments) -> Next {
         (Some(Command::Run(args)), _) => Next::Exit(run::run(&args)),
         (Some(Command::Audit(args)), _) => Next::Exit(audit::audit(&args)),
         (Some(Command::Compare(args)), _) => Next::Exit(study::compare(&args)),
-        (Some(Command::Vary(args)), _) => Next::Exit(study::vary_one(&args)),
+        (Some(Command::Vary(args)), _) => Next::Exit(vary::vary_inputs(&args)),
         (Some(Command::Remedy(args)), _) => Next::Exit(study::remedy(&args)),
+        (Some(Command::Spread(args)), _) => Next::Exit(spread::spread(&args)),
         (Some(Command::Limits(args)), _) => Next::Exit(new::limits(&args)),
         (Some(Command::New(args)), _) => Next::Exit(new::new(&args)),
         (Some(Command::Schema), _) => Next::Exit(reference::print_schema()),

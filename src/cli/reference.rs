@@ -1,10 +1,9 @@
 //! `schema`, `completions` and `manual`: what editors, shells and readers need, all from the tables the program itself uses.
+use super::examples::command;
 use super::exit::Code;
-use super::options::Arguments;
 use super::output;
 use crate::scenario::schema;
 use crate::sheet::{CAUTIONS, Layout, print};
-use clap::CommandFactory;
 use clap_complete::Shell;
 use clap_mangen::Man;
 use clap_mangen::roff::{Roff, bold, roman};
@@ -22,7 +21,7 @@ pub fn print_schema() -> Code {
 /// Prints the completions of a shell.
 pub fn print_completions(shell: Shell) -> Code {
     let mut bytes = Vec::new();
-    clap_complete::generate(shell, &mut Arguments::command(), "underfoot", &mut bytes);
+    clap_complete::generate(shell, &mut command(), "underfoot", &mut bytes);
     output::results(&String::from_utf8_lossy(&bytes));
     Code::Holds
 }
@@ -46,7 +45,7 @@ pub fn print_manual(keys: &[KeyRow]) -> Code {
 /// # Errors
 /// When it cannot be laid out, which takes no more than memory.
 pub fn manual(keys: &[KeyRow]) -> io::Result<String> {
-    let mut program = Arguments::command();
+    let mut program = command();
     program.build();
     let mut page = Vec::new();
     let main = Man::new(program.clone()).manual("scenario files and estimates");
@@ -109,7 +108,7 @@ fn render_keys(page: &mut impl Write, keys: &[KeyRow]) -> io::Result<()> {
 /// The commands as the list that the read-me carries: one a line with its sentence.
 #[must_use]
 pub fn commands_markdown() -> String {
-    let program = Arguments::command();
+    let program = command();
     let rows: Vec<(String, String)> = program
         .get_subcommands()
         .map(|command| (usage(command), command.get_about().map(ToString::to_string).unwrap_or_default()))
