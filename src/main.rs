@@ -19,6 +19,7 @@ fn start() -> color_eyre::Result<ExitCode> {
         Next::Exit(code) => Ok(ExitCode::from(code.number())),
         Next::View { path, units } => screen(tui::run(&path, units)),
         Next::Walk { path, units } => screen(tui::walk(&path, units)),
+        Next::Manual => Ok(ExitCode::from(cli::print_manual(&tui::key_rows()).number())),
     }
 }
 

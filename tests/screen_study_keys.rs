@@ -6,6 +6,7 @@ use crossterm::event::{KeyCode, KeyModifiers, MouseButton, MouseEventKind};
 use screen_support::{Bench, LOAD, ROOF};
 use std::time::Duration;
 use underfoot::margin::Verdict;
+use underfoot::study::Held;
 use underfoot::tui::joint::Word;
 use underfoot::tui::layout::Panes;
 use underfoot::tui::message::{Effect, Message};
@@ -338,4 +339,28 @@ fn stale_inputs_stop_every_study() {
     };
     assert!(!faulty.iter().any(|effect| matches!(effect, Effect::Study(_))), "{faulty:?}");
     assert_eq!(bench.model.view, View::Map);
+}
+
+#[test]
+fn a_thin_file_gets_remedies_that_hold_at_the_worst_found() {
+    let mut bench = Bench::of(BANDS, 140, 44);
+    assert_eq!(bench.model.word_of_all(), Word::Final(Verdict::Thin));
+    bench.keys("9");
+    assert_eq!(bench.model.remedies_held(), Held::Worst);
+    assert!(bench.frame().contains("at the worst found"), "{}", bench.frame());
+    bench.keys("i");
+    assert_eq!(bench.model.word_of_all(), Word::Final(Verdict::Holds), "{}", bench.frame());
+}
+
+#[test]
+fn remedies_of_a_short_file_are_typical_until_the_worst_is_asked_for() {
+    let mut bench = Bench::of(ROOF, 140, 44);
+    bench.keys("9");
+    let typical = bench.model.shelf.remedies().unwrap().list[0].way.clone().unwrap();
+    bench.keys("h");
+    assert_eq!(bench.model.remedies_held(), Held::Worst);
+    let worst = bench.model.shelf.remedies().unwrap().list[0].way.clone().unwrap();
+    assert!(worst.relative > typical.relative, "{worst:?} {typical:?}");
+    bench.keys("h");
+    assert_eq!(bench.model.shelf.remedies().unwrap().list[0].way.clone().unwrap(), typical);
 }

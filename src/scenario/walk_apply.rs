@@ -102,7 +102,14 @@ fn changed(before: &Document, changes: &[Sound<'_>], faults: &mut Vec<Fault>) ->
     let first = changes.first()?;
     let pairs: Vec<(&str, &str)> = changes.iter().map(|change| (change.path, change.value)).collect();
     match before.turned(&pairs) {
-        Ok(Turn::Done { document, taken_out }) => return Some((*document, taken_out)),
+        Ok(Turn::Done { document, taken_out }) => {
+            let Some(lost) = changes.iter().find(|change| taken_out.iter().any(|path| path == change.path)) else {
+                return Some((*document, taken_out));
+            };
+            let message = format!("`{}` does not belong to this scenario here", lost.path);
+            let hint = "change the word that decides it, such as `line.kind` or `anchor.kind`, at this stop or before";
+            faults.push(fault(lost.at.clone(), message, "has no place here", hint.to_owned()));
+        }
         Ok(Turn::Needs(path)) => {
             let example = field_for(&path).map_or("..", |field| field.example);
             let hint = format!("add it to the same stop: `change = [.., {{ input = \"{path}\", value = {example} }}]`");

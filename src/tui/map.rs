@@ -7,7 +7,7 @@ use super::studies::{Mapped, What};
 use crate::margin::{Verdict, governing_first, worst};
 use crate::quantity::{Measure, UnitSystem};
 use crate::scenario::{Input, Turn};
-use crate::study::Axis;
+use crate::study::{Axis, MOST_STEPS};
 
 /// Inputs that are put on the axes where none were chosen, in this order.
 const USUAL: [&str; 8] = [
@@ -67,7 +67,7 @@ impl Model {
     pub fn map_question(&self) -> Option<What> {
         let panes = Panes::of(self.size, self)?;
         let field = pane::field(panes.view);
-        let steps = [field.width, field.height].map(|cells| usize::from(cells).max(2));
+        let steps = [field.width, field.height].map(|cells| usize::from(cells).clamp(2, MOST_STEPS));
         Some(What::Map { paths: self.map_paths()?, steps })
     }
 

@@ -37,7 +37,11 @@ impl Model {
         if !self.has_bands() {
             return self.say("no input is a band: the typical values are all there is");
         }
+        let before = self.remedies_held();
         self.remedies_at_worst = !self.remedies_at_worst;
+        if self.remedies_held() == before {
+            self.say("every check holds at the typical values: remedies are for the worst found");
+        }
     }
 
     /// The input that Vary moves: the chosen one.

@@ -46,10 +46,11 @@ pub fn remedy_at(model: &Model, area: Rect, row: u16) -> Option<usize> {
 pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
     let theme = model.theme;
     let title = match model.remedies_held() {
-        Held::Typical => "Remedies  one input alone, at typical values",
-        Held::Worst => "Remedies  one input alone, at the worst found",
+        Held::Typical => "Remedies at typical values",
+        Held::Worst => "Remedies at the worst found",
     };
-    put(buffer, area, 0, 0, &fit(title, usize::from(area.width)), theme.heading());
+    let title = if area.width < WIDE_FROM { title.to_owned() } else { format!("{title}, one input alone") };
+    put(buffer, area, 0, 0, &fit(&title, usize::from(area.width)), theme.heading());
     let words = Rect { y: area.bottom() - words_rows(area), height: words_rows(area), ..area };
     draw_caution(buffer, words, model);
     let list = list_area(area);
@@ -102,6 +103,9 @@ fn words(remedy: &Remedy, yard: Yard) -> (String, String) {
     let today = value_text(&remedy.input.measure);
     if let Some(way) = &remedy.way {
         let ways = if way.ways > 1 { format!(", nearest of {} ways", way.ways) } else { String::new() };
+        if way.relative == 0.0 {
+            return (format!("{today} -> {} exactly", way.shown), "its own band has to go".to_owned());
+        }
         let exactly = if way.narrowed { " exactly" } else { "" };
         return (format!("{today} -> {}{exactly}", way.shown), format!("{}{ways}", share_words(way, yard)));
     }

@@ -181,7 +181,11 @@ fn governing<'s>(model: &Model, found: &'s Spreading) -> Option<(&'s NumberSprea
     let number = found.spread.numbers.iter().find(|number| number.id == id);
     let other = || found.spread.numbers.iter().find(|number| number.id == "arrest_force_peak");
     match number {
-        Some(number) => Some((number, margin.limit)),
+        Some(number) => {
+            // A check with a factor compares a multiple of the number: its limit is not one of this number.
+            let own = model.answer.current().and_then(|report| report.estimate.numbers.get(id));
+            Some((number, margin.limit.filter(|_| own == margin.demand)))
+        }
         None => other().map(|number| (number, None)),
     }
 }

@@ -3,7 +3,7 @@ use crate::scenario::Stop;
 use crate::sheet::{Report, governing_step, peak_step, stop_changes_words, verdict_step};
 use crate::tui::command::{Command, key_name};
 use crate::tui::model::Model;
-use crate::tui::text::{put, width, wrap};
+use crate::tui::text::{fit, put, width, wrap};
 use crate::tui::walking::Walking;
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
@@ -31,32 +31,40 @@ fn lines(model: &Model) -> Vec<(String, Style)> {
     let Some(walking) = &model.walking else { return Vec::new() };
     let room = usize::from(model.size.width.saturating_sub(2));
     let theme = model.theme;
+    let gap = (model.size.height >= ROOMY_FROM).then(|| (String::new(), theme.plain()));
     let mut lines = vec![(head(model, walking, room), theme.play_head())];
-    let mut put = |text: &str, style: Style| lines.extend(wrap(text, room).into_iter().map(|line| (line, style)));
-    let is_roomy = model.size.height >= ROOMY_FROM;
-    if is_roomy {
-        put("", theme.plain());
-    }
-    put(&sentence(walking), theme.heading());
-    if is_roomy {
-        put("", theme.plain());
-    }
-    did(model, walking).iter().for_each(|line| put(line, theme.plain()));
-    put(&file_words(model, walking), if model.is_edited() { theme.fault() } else { theme.quiet() });
+    lines.extend(gap.clone());
+    lines.extend(wrap(&sentence(walking), room).into_iter().map(|line| (line, theme.heading())));
+    lines.extend(gap);
+    lines.extend(filled(&did(model, walking), room).into_iter().map(|line| (line, theme.plain())));
     lines
 }
 
-/// `stop 2 of 6: a low scaffold`, over the whole width.
+/// Texts beside each other as long as there is room; one that is too long is wrapped on its own.
+fn filled(texts: &[String], room: usize) -> Vec<String> {
+    let mut rows: Vec<String> = Vec::new();
+    for text in texts {
+        match rows.last_mut() {
+            Some(last) if width(last) + 3 + width(text) <= room => {
+                last.push_str("   ");
+                last.push_str(text);
+            }
+            _ => rows.extend(wrap(text, room)),
+        }
+    }
+    rows
+}
+
+/// `stop 2 of 6: a low scaffold`, and at the right end how the values stand to the file.
 fn head(model: &Model, walking: &Walking, room: usize) -> String {
     let count = walking.walk.stops.len();
     let place =
         if walking.at == 0 { format!("start, {count} stops") } else { format!("stop {} of {count}", walking.at) };
     let title = walking.walk.title.as_ref().map_or_else(String::new, |title| format!(": {title}"));
-    let by_hand = if model.is_at_stop() { "" } else { "  (changed by hand since)" };
-    let fitted = crate::tui::text::fit(&title, room.saturating_sub(width(&place) + width(by_hand)));
-    let words = format!("{place}{fitted}{by_hand}");
-    let blanks = room.saturating_sub(width(&words));
-    words + &" ".repeat(blanks)
+    let right = file_words(model, walking, room.saturating_sub(width(&place) + 2));
+    let left = format!("{place}{}", fit(&title, room.saturating_sub(width(&place) + width(&right) + 2)));
+    let blanks = room.saturating_sub(width(&left) + width(&right));
+    format!("{left}{}{right}", " ".repeat(blanks))
 }
 
 fn sentence(walking: &Walking) -> String {
@@ -68,35 +76,41 @@ fn sentence(walking: &Walking) -> String {
 
 /// What was changed and what that did, at typical values.
 fn did(model: &Model, walking: &Walking) -> Vec<String> {
-    let mut lines = Vec::new();
+    let stop = walking.stop();
+    let mut texts = Vec::new();
+    if let Some(stop) = stop {
+        let words = stop_changes_words(stop).unwrap_or_else(|| "nothing".to_owned());
+        texts.push(format!("changed {words}"));
+    }
     let [before, own] = &walking.runs;
-    let is_changing = walking.stop().is_some_and(Stop::is_changing);
+    let is_changing = stop.is_some_and(Stop::is_changing);
     let before = before.as_deref().ok().filter(|_| is_changing);
-    if let Some(stop) = walking.stop() {
-        lines.push(
-            stop_changes_words(stop)
-                .map_or_else(|| "changed nothing here".to_owned(), |words| format!("changed {words}")),
-        );
-    }
     match own {
-        Ok(report) => lines.push(steps(model, before, report)),
-        Err(why) => lines.push(format!("cannot be computed here: {why}")),
+        Ok(report) => texts.extend(steps(model, before, report)),
+        Err(why) => texts.push(format!("cannot be computed here: {why}")),
     }
-    lines
+    texts
 }
 
-fn steps(model: &Model, before: Option<&Report>, own: &Report) -> String {
-    let (margin, peak) = (governing_step(before, own, model.units), peak_step(before, own, model.units));
-    let at = if model.has_bands() { " at typical values" } else { "" };
-    format!("margin {margin}   peak {peak}   {}{at}", verdict_step(before, own))
+fn steps(model: &Model, before: Option<&Report>, own: &Report) -> [String; 3] {
+    let at = if model.has_bands() { " (at typical values)" } else { "" };
+    [
+        format!("margin {}", governing_step(before, own, model.units)),
+        format!("peak {}", peak_step(before, own, model.units)),
+        format!("{}{at}", verdict_step(before, own)),
+    ]
 }
 
-fn file_words(model: &Model, walking: &Walking) -> String {
-    let name =
-        walking.walk.start.path().file_name().map_or_else(String::new, |name| name.to_string_lossy().into_owned());
-    if model.is_edited() {
-        format!("the values on show differ from {name}, which is not written unless you save")
+/// How the values on show stand to the file and to the stop, the longest that fits.
+fn file_words(model: &Model, walking: &Walking, room: usize) -> String {
+    let path = walking.walk.start.path();
+    let name = path.file_name().map_or_else(String::new, |name| name.to_string_lossy().into_owned());
+    let by_hand = if model.is_at_stop() { "" } else { "changed by hand; " };
+    let choices = if model.is_edited() {
+        [format!("{by_hand}differs from {name}, which is not written"), format!("{by_hand}differs from the file")]
     } else {
-        format!("the values on show are those of {name}")
-    }
+        [format!("{by_hand}as in {name}"), format!("{by_hand}as in the file")]
+    };
+    let [_, short] = choices.clone();
+    choices.into_iter().find(|words| width(words) <= room).unwrap_or(short)
 }

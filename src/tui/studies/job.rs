@@ -303,7 +303,6 @@ mod tests {
     use super::*;
 
     #[test]
-    #[expect(clippy::panic, reason = "the panic is what is tested")]
     fn a_panic_becomes_a_message_and_a_stop_becomes_none() {
         let told = guarded(|| panic!("a fault on purpose"));
         assert!(matches!(told, Err(words) if words.contains("inner fault")));
