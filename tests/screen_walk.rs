@@ -206,7 +206,7 @@ fn the_bar_says_what_changed_what_it_did_and_that_the_file_is_untouched() {
         assert!(flat.contains("changed line.length 1.8 m -> 2.4 m"), "{frame}");
         assert!(flat.contains("FIRST-PASS ESTIMATE"), "{frame}");
         let is_said = flat.contains("differs from roof-edge.toml, which is not written");
-        assert!(is_said || columns < 80 && flat.contains("differs from the file"), "{frame}");
+        assert!(is_said || columns < 80 && flat.contains("differs from the file"), "{columns} {frame}");
         if rows > 20 {
             assert!(
                 flat.contains("margin clearance plant-room roof") && flat.contains("peak 4.00 kN -> 4.00 kN"),

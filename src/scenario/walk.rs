@@ -75,7 +75,7 @@ impl Walk {
     #[must_use]
     pub fn state(&self, at: usize) -> &Document {
         at.checked_sub(1)
-            .and_then(|index| self.stops.get(index.min(self.stops.len() - 1)))
+            .and_then(|index| self.stops.get(index.min(self.stops.len().saturating_sub(1))))
             .map_or(&self.start, |stop| &stop.document)
     }
 

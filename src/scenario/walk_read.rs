@@ -161,8 +161,8 @@ impl Reader {
                 let first =
                     first.map_or_else(String::new, |row| format!(", the first in line {}: {}", row.line, row.message));
                 let message = format!("the scenario {} has {} fault(s){first}", quoted(name), faults.faults.len());
-                let hint = format!("`underfoot run {name}` lists them all; put them right there");
-                self.fault(at, message, "expected a scenario without faults", &hint);
+                let hint = "`underfoot run` on that file lists them all; put them right there";
+                self.fault(at, message, "expected a scenario without faults", hint);
                 None
             }
         }

@@ -58,10 +58,14 @@ fn filled(texts: &[String], room: usize) -> Vec<String> {
 /// `stop 2 of 6: a low scaffold`, and at the right end how the values stand to the file.
 fn head(model: &Model, walking: &Walking, room: usize) -> String {
     let count = walking.walk.stops.len();
-    let place =
-        if walking.at == 0 { format!("start, {count} stops") } else { format!("stop {} of {count}", walking.at) };
+    let place = if walking.at == 0 {
+        format!("start, {count} stop{}", if count == 1 { "" } else { "s" })
+    } else {
+        format!("stop {} of {count}", walking.at)
+    };
     let title = walking.walk.title.as_ref().map_or_else(String::new, |title| format!(": {title}"));
-    let right = file_words(model, walking, room.saturating_sub(width(&place) + 2));
+    let taken = width(&place) + 2;
+    let right = file_words(model, walking, [room.saturating_sub(taken + width(&title)), room.saturating_sub(taken)]);
     let left = format!("{place}{}", fit(&title, room.saturating_sub(width(&place) + width(&right) + 2)));
     let blanks = room.saturating_sub(width(&left) + width(&right));
     format!("{left}{}{right}", " ".repeat(blanks))
@@ -101,16 +105,18 @@ fn steps(model: &Model, before: Option<&Report>, own: &Report) -> [String; 3] {
     ]
 }
 
-/// How the values on show stand to the file and to the stop, the longest that fits.
-fn file_words(model: &Model, walking: &Walking, room: usize) -> String {
+/// How the values on show stand to the file and to the stop: with the file's name where there is room for it beside the
+/// title as well.
+fn file_words(model: &Model, walking: &Walking, [beside_title, room]: [usize; 2]) -> String {
     let path = walking.walk.start.path();
     let name = path.file_name().map_or_else(String::new, |name| name.to_string_lossy().into_owned());
     let by_hand = if model.is_at_stop() { "" } else { "changed by hand; " };
-    let choices = if model.is_edited() {
-        [format!("{by_hand}differs from {name}, which is not written"), format!("{by_hand}differs from the file")]
-    } else {
-        [format!("{by_hand}as in {name}"), format!("{by_hand}as in the file")]
-    };
-    let [_, short] = choices.clone();
-    choices.into_iter().find(|words| width(words) <= room).unwrap_or(short)
+    let (verb, rest) = if model.is_edited() { ("differs from", ", which is not written") } else { ("as in", "") };
+    let long = format!("{by_hand}{verb} {name}{rest}");
+    let middle = format!("{by_hand}{verb} the file{rest}");
+    match (width(&long) <= beside_title, width(&middle) <= room) {
+        (true, _) => long,
+        (_, true) => middle,
+        _ => format!("{by_hand}{verb} the file"),
+    }
 }
