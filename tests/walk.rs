@@ -27,11 +27,11 @@ const LANYARD_STOPS: [Expected; 5] = [
     ("holds", "arrest_force", 2000.0, 1.043_678_224, 4000.0),
 ];
 const ROPE_STOPS: [Expected; 5] = [
-    ("holds", "arrest_force", 1463.193_620, 0.735_494_791, 4536.806_380),
-    ("short", "arrest_force", -972.571_392, 0.948_422_922, 6972.571_392),
-    ("holds", "arrest_force", 2483.633_597, 0.479_032_383, 3516.366_403),
-    ("short", "clearance.gantry_ring", -0.094_814_370, -0.094_814_370, 2701.912_972),
-    ("holds", "arrest_force", 4002.682_669, 0.940_368_616, 1997.317_331),
+    ("holds", "arrest_force", 1_463.193_620, 0.735_494_791, 4_536.806_380),
+    ("short", "arrest_force", -972.571_392, 0.948_422_922, 6_972.571_392),
+    ("holds", "arrest_force", 2_483.633_597, 0.479_032_383, 3_516.366_403),
+    ("short", "clearance.gantry_ring", -0.094_814_370, -0.094_814_370, 2_701.912_972),
+    ("holds", "arrest_force", 4_002.682_669, 0.940_368_616, 1_997.317_331),
 ];
 
 fn root() -> &'static Path {
@@ -87,7 +87,7 @@ fn the_sentences_of_the_shipped_walks_say_what_the_numbers_say() {
     assert!(clearance(3) < 1.0, "still not there");
     assert!(clearance(4) > 2.0, "twice over");
     let walk = load_walk(&root().join(LANYARD)).unwrap();
-    let holds: Vec<bool> = walk.stops.iter().map(|stop| may_be_so_long(stop)).collect();
+    let holds: Vec<bool> = walk.stops.iter().map(may_be_so_long).collect();
     assert_eq!(holds, [true, false, true, true, true], "more than a lanyard may have");
     let (force, room) = (|stop: usize| ROPE_STOPS[stop].4, |stop: usize| ROPE_STOPS[stop].3);
     assert!(force(1) > 6000.0 && room(1) > room(0), "more room, above 6 kN");
@@ -164,9 +164,9 @@ fn json_carries_the_stops_with_units_steps_and_cautions() {
         (&"3.4 %".into(), &"1.2 %".into())
     );
     let number = |value: &Value| value.as_f64().unwrap();
-    assert!(near(number(&stops[1]["margin_step"]), -972.571_392 - 1463.193_620));
-    assert!(near(number(&stops[1]["arrest_force_peak"]["value"]), 6972.571_392));
-    assert!(near(number(&stops[1]["arrest_force_peak_step"]), 6972.571_392 - 4536.806_380));
+    assert!(near(number(&stops[1]["margin_step"]), -972.571_392 - 1_463.193_620));
+    assert!(near(number(&stops[1]["arrest_force_peak"]["value"]), 6_972.571_392));
+    assert!(near(number(&stops[1]["arrest_force_peak_step"]), 6_972.571_392 - 4_536.806_380));
     assert_eq!(stops[3]["margin_step"], Value::Null, "another check governs");
     assert_eq!(stops[3]["governing"]["id"], "clearance.gantry_ring");
     assert_eq!(stops[3]["verdict"], "short");

@@ -184,11 +184,10 @@ impl Reader {
                 self.fault(entry.span(), message, "one too many", "part the walk into several files");
                 break;
             }
-            match entry.get_ref().as_table() {
-                Some(table) => stops.push(self.stop(index + 1, entry.span(), table)),
-                None => {
-                    self.fault(entry.span(), format!("stop {} holds no keys", index + 1), "expected [[stop]]", hint)
-                }
+            if let Some(table) = entry.get_ref().as_table() {
+                stops.push(self.stop(index + 1, entry.span(), table));
+            } else {
+                self.fault(entry.span(), format!("stop {} holds no keys", index + 1), "expected [[stop]]", hint);
             }
         }
         stops
