@@ -56,6 +56,5 @@ pub fn command() -> clap::Command {
 fn with_examples(command: clap::Command, examples: &[&str]) -> clap::Command {
     let before = command.get_after_help().map(|text| format!("{text}\n\n")).unwrap_or_default();
     let head = if examples.len() == 1 { "Example:" } else { "Examples:" };
-    let lines: String = examples.iter().map(|example| format!("\n  {example}")).collect();
-    command.after_help(format!("{before}{head}{lines}"))
+    command.after_help(format!("{before}{head}\n  {}", examples.join("\n  ")))
 }
