@@ -7,6 +7,7 @@ mod new;
 mod options;
 mod output;
 mod run;
+mod sheet;
 mod study;
 
 pub use exit::Code;
@@ -52,6 +53,7 @@ fn dispatch(arguments: Arguments) -> Next {
         (Some(Command::Compare(args)), _) => Next::Exit(study::compare(&args)),
         (Some(Command::Vary(args)), _) => Next::Exit(study::vary_one(&args)),
         (Some(Command::Remedy(args)), _) => Next::Exit(study::remedy(&args)),
+        (Some(Command::Sheet(args)), _) => Next::Exit(sheet::sheet(&args)),
         (Some(Command::Limits(args)), _) => Next::Exit(new::limits(&args)),
         (Some(Command::New(args)), _) => Next::Exit(new::new(&args)),
         (None, None) => {
