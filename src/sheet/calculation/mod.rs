@@ -2,7 +2,9 @@
 mod arrest;
 mod checks;
 mod drawing;
+mod elevation;
 mod figure;
+mod figures;
 mod geometry;
 mod head;
 mod html;
@@ -12,6 +14,7 @@ mod ledger;
 mod markdown;
 mod modes;
 mod path;
+mod plot;
 mod steps;
 mod studies;
 mod value;
@@ -56,6 +59,7 @@ pub fn sheet(report: &Report, text: &str, options: &SheetOptions) -> Sheet {
         studies::spread(report, options.ranking.as_ref(), system),
     ];
     sections.extend(options.remedies.as_ref().map(studies::remedies));
+    sections.push(figures::section(report, &margins, system));
     sections.push(ledger::section(report, system));
     sections.push(head::reproduction(report, &options.command, seed));
     sections.push(head::decision());
