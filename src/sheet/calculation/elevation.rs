@@ -30,8 +30,9 @@ pub fn elevation(report: &Report, system: UnitSystem) -> Option<Figure> {
         .collect();
     let below = if obstacles.is_empty() { String::new() } else { format!(" Below: {}.", obstacles.join(", ")) };
     let anchor = e.anchor_m.map_or(String::new(), |a| format!(" The anchor is at {}.", words(a)));
+    let beside = if report.estimate.plane.is_some() { ", offsets too" } else { ", four moments side by side" };
     let text = format!(
-        "Elevations to scale.{anchor} The attachment is at {} at the start, at {} when the line comes taut, at {} at the \
+        "Elevations to scale{beside}.{anchor} The attachment is at {} at the start, at {} when the line comes taut, at {} at the \
          lowest point and at {} at rest; the lowest part of the body comes down to {}, its allowance counted in.{below}",
         words(e.attachment_start_m),
         words(e.attachment_taut_m),

@@ -77,10 +77,14 @@ fn travel(report: &Report, window: &Window, system: UnitSystem) -> Figure {
         .map_or(String::new(), |m| format!(" The lowest point is {} past taut.", length(m)));
     let rest =
         numbers.get("hang_travel").map_or(String::new(), |m| format!(" It comes to rest {} past taut.", length(m)));
-    let bounds =
-        if envelope.is_some() { " Dotted: the envelope of the oscillation about the hang position." } else { "" };
+    let bounds = if envelope.is_some() {
+        " Dotted: the envelope of its mode about the hang position, carried on to the end."
+    } else {
+        ""
+    };
     let text = format!("Travel of the attachment over time, downward.{lowest}{rest}{bounds}{}", window.words());
-    Figure { id: "travel", title: "Travel over time with its envelope".to_owned(), text, drawing: plot.finish() }
+    let title = if envelope.is_some() { "Travel over time with its envelope" } else { "Travel over time" };
+    Figure { id: "travel", title: title.to_owned(), text, drawing: plot.finish() }
 }
 
 fn bound(envelope: &Envelope, end_s: f64, sign: f64, shown: impl Fn(f64) -> f64) -> Vec<(f64, f64)> {
@@ -176,7 +180,8 @@ fn spreads(report: &Report, system: UnitSystem) -> Vec<Figure> {
     let wanted = |n: &&NumberSpread| {
         n.id == "arrest_force_peak" || n.id == "total_fall_distance" || n.id.starts_with("clearance.")
     };
-    let varies = |n: &&NumberSpread| n.bars.len() > 1;
+    // Rounding alone is no spread.
+    let varies = |n: &&NumberSpread| n.quantiles[6] - n.quantiles[0] > 1e-6 * n.quantiles[6].abs();
     let numbers = bands.study.spread.numbers.iter().filter(wanted).filter(varies);
     numbers.zip(HISTOGRAMS).map(|(number, id)| histogram(report, number, id, system)).collect()
 }

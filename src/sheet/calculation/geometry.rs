@@ -28,6 +28,11 @@ pub fn section(report: &Report, system: UnitSystem) -> Section {
         let steps: Vec<_> = estimate.working.iter().map(|step| (step.what.clone(), step.value_m)).collect();
         blocks.push(table("geometry", "how the free fall is worked out", "G", &steps, system));
     }
+    if report.scenario.place.anchor.is_none() && estimate.elevations.is_some_and(|e| e.anchor_m.is_some()) {
+        blocks.push(Block::words(
+            "The file states no elevation of the anchor: it is taken one length of the line above the attachment when taut.",
+        ));
+    }
     for (index, sum) in sums(&report.scenario, estimate.elevations.as_ref()).iter().enumerate() {
         let mut rows = sum.terms.clone();
         rows.push((format!("sum: clear space wanted below {}", sum.datum), sum.total_m()));

@@ -73,33 +73,44 @@ fn table(table: &Table) -> Markup {
         table id=(format!("table-{}", table.id)) class=(table_class(table)) {
             caption { (table.caption) }
             thead { tr { @for column in table.columns { th scope="col" class=[column_class(column)] { (column.head) } } } }
-            tbody { @for row in &table.rows { (self::row(table.columns, row)) } }
+            tbody { @for row in &table.rows { (self::row(table, row)) } }
         }
     }
+}
+
+/// Whether the rows are steps of a working, with symbols in their words.
+fn is_working(table: &Table) -> bool {
+    table.columns.iter().any(|column| column.key == "formula")
 }
 
 fn table_class(table: &Table) -> &'static str {
-    if table.columns.iter().any(|column| column.key == "formula") { "steps" } else { "plain" }
+    if is_working(table) { "steps" } else { "plain" }
 }
 
-fn row(columns: &[Column], row: &Row) -> Markup {
+fn row(table: &Table, row: &Row) -> Markup {
+    let working = is_working(table);
     html! {
         tr class=[row.verdict.map(Verdict::word)] {
-            @for (column, cell) in columns.iter().zip(&row.cells) { (self::cell(column, cell)) }
+            @for (column, cell) in table.columns.iter().zip(&row.cells) { (self::cell(column, cell, working)) }
         }
     }
 }
 
-fn cell(column: &Column, cell: &Cell) -> Markup {
+fn cell(column: &Column, cell: &Cell, working: bool) -> Markup {
+    let words = match (column.kind, working) {
+        (_, true) => formula(&cell.words),
+        (Kind::Formula, false) => key(&cell.words),
+        _ => html! { (cell.words) },
+    };
     if column.kind == Kind::Name {
-        return html! { th scope="row" { (cell.words) } };
+        return html! { th scope="row" { (words) } };
     }
-    html! {
-        td class=[column_class(column)] {
-            @if column.kind == Kind::Formula && column.key != "path" && column.key != "id" { (formula(&cell.words)) }
-            @else { (cell.words) }
-        }
-    }
+    html! { td class=[column_class(column)] { (words) } }
+}
+
+/// A key of the file or an id, which may break after its points and between its words.
+fn key(words: &str) -> Markup {
+    html! { @for part in words.split_inclusive(['.', '_']) { (part) wbr; } }
 }
 
 const fn column_class(column: &Column) -> Option<&'static str> {

@@ -1,8 +1,8 @@
 //! The inputs: as the file states them, in SI as used, and where each comes from.
 use super::value::{Block, Cell, Column, Kind, Row, Section, Table, column, exact};
-use crate::quantity::{Dimension, Shape, format_unit};
+use crate::quantity::{Dimension, Measure, Shape, format_unit};
 use crate::scenario::{
-    AnchorKind, DampingLaw, FIELDS, Field, Input, LineKind, Need, Places, Scenario, StretchLaw, inputs, places,
+    AnchorKind, DampingLaw, FIELDS, Field, LineKind, Need, Places, Scenario, StretchLaw, inputs, places,
 };
 use crate::sheet::Report;
 use crate::sheet::json::si_unit;
@@ -27,7 +27,9 @@ const PAIRS: &[Column] = &[column("length", "length", Kind::Number), column("for
 /// The section of the inputs; `text` is the file's.
 pub fn section(report: &Report, text: &str) -> Section {
     let found = places(text);
-    let numeric = inputs(&report.scenario);
+    let own = report.scenario.limits.own.iter().map(|limit| (format!("limits.{}", limit.key), limit.value));
+    let numeric: Vec<(String, Measure)> =
+        inputs(&report.scenario).into_iter().map(|input| (input.path, input.measure)).chain(own).collect();
     let counts = [("obstacle", report.scenario.obstacles.len()), ("face", report.scenario.faces.len())];
     let fields: Vec<(String, &Field)> = FIELDS.iter().flat_map(|f| concrete(f, &counts)).collect();
     let source = Source { text, places: &found };
@@ -72,8 +74,8 @@ impl Source<'_> {
         Some((raw.trim_matches('"').trim_matches('\'').split_whitespace().collect::<Vec<_>>().join(" "), line))
     }
 
-    fn row(&self, path: &str, field: &Field, numeric: &[Input]) -> Option<Row> {
-        let input = numeric.iter().find(|input| input.path == path);
+    fn row(&self, path: &str, field: &Field, numeric: &[(String, Measure)]) -> Option<Row> {
+        let input = numeric.iter().find(|(known, _)| known == path).map(|(_, measure)| measure);
         let stated = self.stated(path);
         if stated.is_none() && input.is_none() {
             return None;
@@ -85,7 +87,7 @@ impl Source<'_> {
         let words = if field.columns.is_some() { "table below".to_owned() } else { words };
         let mut cells = vec![Cell::words(field.label), Cell::words(path), Cell::words(&words)];
         match input {
-            Some(input) => cells.extend(band_cells(input)),
+            Some(measure) => cells.extend(band_cells(measure)),
             None => cells.extend([Cell::none(), Cell::none(), Cell::none(), Cell::none()]),
         }
         cells.push(Cell::words(&from));
@@ -117,10 +119,10 @@ fn matters(path: &str, scenario: &Scenario) -> bool {
     }
 }
 
-fn band_cells(input: &Input) -> [Cell; 4] {
-    let band = input.measure.band;
-    let unit = si_unit(input.measure.dimension());
-    let shown = |value: f64| Cell::shown(format_unit(value, input.measure.unit), value, unit);
+fn band_cells(measure: &Measure) -> [Cell; 4] {
+    let band = measure.band;
+    let unit = si_unit(measure.dimension());
+    let shown = |value: f64| Cell::shown(format_unit(value, measure.unit), value, unit);
     let used = if unit == "1" { exact(band.typical) } else { format!("{} {unit}", exact(band.typical)) };
     let used = Cell::shown(used, band.typical, unit);
     if !band.is_wide() {

@@ -83,7 +83,8 @@ impl Plot {
     pub fn level(&mut self, class: &'static str, value: f64, words: &str) {
         let ((x0, y), (x1, _)) = (self.place(self.x.from, value), self.place(self.x.to, value));
         self.line(class, (x0, y), (x1, y));
-        self.words("", (x1 - 4.0, y - 4.0), Anchor::End, words);
+        let base = if y < AROUND.1 + 18.0 { y + 13.0 } else { y - 4.0 };
+        self.words("", (x1 - 4.0, base), Anchor::End, words);
     }
 
     /// A box between two pairs of values.

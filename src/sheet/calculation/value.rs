@@ -173,9 +173,9 @@ pub struct Figure {
 /// Significant digits of the working.
 const DIGITS: i32 = 6;
 /// What is smaller is left by rounding.
-const NOTHING: f64 = 1e-9;
+const NOTHING: f64 = 1e-8;
 
-/// A number to six significant digits, without a point where all of them stand before it; `0` below 1e-9, where only
+/// A number to six significant digits, without a point where all of them stand before it; `0` below 1e-8, where only
 /// rounding is left.
 #[must_use]
 pub fn digits(value: f64) -> String {
