@@ -610,6 +610,8 @@ fn ledger_is_right(hand: &Hand) {
 fn no_other_number_is_printed(hand: &Hand) {
     let mut values: Vec<f64> = hand.known.values().chain(hand.inputs.values()).copied().collect();
     values.extend([2.0, 4.0, 1.0]);
+    // A long run is drawn up to ten times the time of its lowest point.
+    values.extend(hand.run.lowest.map(|low| 10.0 * low.t));
     let is_known =
         |printed: &str| values.iter().any(|v| is_printed(printed, v.abs()) || is_printed(printed, v.abs() / 1000.0));
     for table in hand.tables.iter().filter(|t| t.head.iter().any(|h| h == "with numbers, SI")) {

@@ -59,8 +59,10 @@ fn table(page: &mut String, table: &Table) {
 }
 
 fn cell(column: &Column, cell: &Cell) -> String {
-    if column.kind == Kind::Formula && !cell.words.is_empty() {
-        return format!("`{}`", cell.words.replace('`', "'").replace('|', "\\|"));
+    // What could be markup is never left to a code span: a name of the file may hold a backtick of its own.
+    let plain = !cell.words.contains(['<', '>', '&', '`', '|']);
+    if column.kind == Kind::Formula && !cell.words.is_empty() && plain {
+        return format!("`{}`", cell.words);
     }
     escape(&cell.words)
 }
