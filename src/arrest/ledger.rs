@@ -5,11 +5,14 @@ use super::signal::Signal;
 
 /// Work done so far, J.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
+#[expect(clippy::struct_field_names, reason = "the suffix is the unit")]
 pub struct Work {
     /// Taken by the dampers.
     pub damper_j: f64,
     /// Taken by the absorber.
     pub absorber_j: f64,
+    /// Taken by the absorber in line with a lifeline.
+    pub span_absorber_j: f64,
 }
 
 impl Fall {
@@ -47,7 +50,8 @@ impl Fall {
     pub(super) fn account(&self, state: &State, work: Work) -> EnergyAccount {
         let [line_j, other_j] = self.elastic_j(state.e);
         let kinetic_j = 0.5 * self.mass_kg * state.v * state.v;
-        EnergyAccount { kinetic_j, line_j, other_j, absorber_j: work.absorber_j, damper_j: work.damper_j }
+        let Work { damper_j, absorber_j, span_absorber_j } = work;
+        EnergyAccount { kinetic_j, line_j, other_j, absorber_j, span_absorber_j, damper_j }
     }
 
     /// Work done in the first `t` s of a stretch, J: each integral is worked out on its own, not from the balance.
@@ -65,7 +69,7 @@ impl Fall {
             }
             _ => 0.0,
         };
-        Work { damper_j, absorber_j }
+        Work { damper_j, absorber_j, span_absorber_j: 0.0 }
     }
 }
 
@@ -73,6 +77,7 @@ fn rate_square_integral(e: &Signal, t: f64) -> f64 {
     match e {
         Signal::Swing(e) => e.derivative().square_integral(t),
         Signal::Wave(e) => e.derivative().square_integral(t),
+        Signal::Series(e) => e.derivative().square_integral(t),
         Signal::Drift(e) => {
             let (away, rate) = e.relax[0];
             0.5 * away * away * rate * -(-2.0 * rate * t).exp_m1()
@@ -84,7 +89,7 @@ impl EnergyAccount {
     /// Sum of all entries, J.
     #[must_use]
     pub fn total_j(&self) -> f64 {
-        self.kinetic_j + self.line_j + self.other_j + self.absorber_j + self.damper_j
+        self.kinetic_j + self.line_j + self.other_j + self.absorber_j + self.span_absorber_j + self.damper_j
     }
 }
 
@@ -92,6 +97,7 @@ impl std::ops::AddAssign for Work {
     fn add_assign(&mut self, other: Self) {
         self.damper_j += other.damper_j;
         self.absorber_j += other.absorber_j;
+        self.span_absorber_j += other.span_absorber_j;
     }
 }
 

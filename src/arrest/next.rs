@@ -24,6 +24,10 @@ pub enum End {
     SliderKnot,
     /// A group passes a knot: which group, and whether upward.
     Knot(usize, bool),
+    /// A lifeline whose in-line absorber has given turns back.
+    SpanTurns,
+    /// The solution of the mode ends, not the mode.
+    StepEnds,
 }
 
 /// The slider's part of the state.
@@ -85,7 +89,11 @@ impl Path<'_> {
 
     fn sliding_ends(&self, stretch: &Stretch, pieces: Pieces, first: &mut Earliest) {
         let Some(absorber) = &self.fall().path.absorber else { return };
-        first.offer(stretch.s.first_maximum(0.0, first.horizon), End::SliderStops);
+        let stops = match &stretch.s {
+            Signal::Series(s) => s.first_stop(first.horizon),
+            s => s.first_maximum(0.0, first.horizon),
+        };
+        first.offer(stops, End::SliderStops);
         let knot = absorber.force.piece(pieces.slider).x1;
         let (level, end) =
             if knot < absorber.stroke_m { (knot, End::SliderKnot) } else { (absorber.stroke_m, End::StrokeUsedUp) };
@@ -96,11 +104,14 @@ impl Path<'_> {
         for (group, law) in [&self.fall().path.line.elastic, &self.fall().path.other.elastic].into_iter().enumerate() {
             let Some(piece) = law.piece(pieces.group[group]) else { continue };
             if piece.x1.is_finite() {
-                let time = stretch.e[group].first_passage(piece.x1, Passage::Up, 0.0, first.until());
+                // A stretch that only touches a knot at its top stays on its piece.
+                let time = through(&stretch.e[group], piece.x1, TOUCH * piece.x1, first.until());
                 first.offer(time, End::Knot(group, true));
             }
             if pieces.group[group] > 0 {
-                let time = stretch.e[group].first_passage(piece.x0, Passage::Down, 0.0, first.until());
+                let e = &stretch.e[group];
+                let at_once = leaves_downward(e, piece.x0, first.until()).then_some(0.0);
+                let time = at_once.or_else(|| e.first_passage(piece.x0, Passage::Down, 0.0, first.until()));
                 first.offer(time, End::Knot(group, false));
             }
         }
@@ -114,6 +125,12 @@ impl Path<'_> {
             slider: path.absorber.as_ref().map_or(0, |a| a.force.piece_at(state.s)),
         }
     }
+}
+
+/// On a knot and on its way down: the piece below has begun. What rises from it by no more than rounding does so as well.
+fn leaves_downward(e: &Signal, knot: f64, to: f64) -> bool {
+    let on = |value: f64| value <= knot * (1.0 + TOUCH);
+    on(e.value(0.0)) && (e.starts_down() || e.first_maximum(0.0, to).is_some_and(|top| on(e.value(top))))
 }
 
 /// First rise through a level that goes on to more than `touch` above it before it falls again.

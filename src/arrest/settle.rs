@@ -12,14 +12,14 @@ use super::solve::Run;
 pub fn time(run: &Run, stretch: &Stretch, last: bool) -> Option<(f64, f64)> {
     let deepest = deepest(run, stretch, last)?;
     let first_look = run.record.lowest.is_none();
-    let earlier = if first_look { run.stretches.as_slice() } else { &[] };
-    Some((first(run, earlier.iter().chain(std::iter::once(stretch)), deepest)?, deepest))
+    let earlier = first_look.then(|| run.hidden()).into_iter().flatten();
+    Some((first(run, earlier.chain(std::iter::once(*stretch)), deepest)?, deepest))
 }
 
 /// When the first of some stretches settles, for a level taken from a travel in m.
-pub fn first<'a>(run: &Run, mut stretches: impl Iterator<Item = &'a Stretch>, travel_m: f64) -> Option<f64> {
+pub fn first(run: &Run, mut stretches: impl Iterator<Item = Stretch>, travel_m: f64) -> Option<f64> {
     let level_j = run.settings.settled_share * run.fall_energy_j(travel_m);
-    stretches.find_map(|s| within(run, s, level_j).map(|t| s.start_s + t))
+    stretches.find_map(|s| within(run, &s, level_j).map(|t| s.start_s + t))
 }
 
 /// When the energy first is below a level in a stretch, s from its start. It never rises while taut or slack.
@@ -49,11 +49,11 @@ fn within(run: &Run, stretch: &Stretch, level_j: f64) -> Option<f64> {
 fn deepest(run: &Run, stretch: &Stretch, last: bool) -> Option<f64> {
     let mut record = Record { lowest: run.record.lowest, ..Record::new() };
     if record.lowest.is_none() {
-        record.turnings(stretch, stretch.length_s, |_| {});
+        record.turnings(&run.shown(stretch), stretch.length_s, |_| {});
     }
     match record.lowest {
         Some(lowest) => Some(lowest.travel_m),
-        None => last.then(|| run.fall.hang_travel_m(stretch.s.value(stretch.length_s))),
+        None => last.then(|| run.fall.hang_travel_m(stretch.s.value(stretch.length_s)) + run.shift_m()),
     }
 }
 

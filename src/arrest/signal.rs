@@ -1,5 +1,6 @@
 //! A scalar of one mode as a function of the time since the mode began, whatever the mode's law.
 use super::drift::Drift;
+use super::fourth::Series;
 use super::oscillator::Swing;
 use super::roots::Passage;
 use super::third::Wave;
@@ -22,6 +23,8 @@ pub enum Signal {
     Drift(Drift),
     /// Third order.
     Wave(Wave),
+    /// One step of a fourth-order mode.
+    Series(Series),
 }
 
 impl Signal {
@@ -38,6 +41,7 @@ impl Signal {
             Self::Swing(s) => s.value(t),
             Self::Drift(s) => s.value(t),
             Self::Wave(s) => s.value(t),
+            Self::Series(s) => s.value(t),
         }
     }
 
@@ -57,6 +61,7 @@ impl Signal {
             Self::Swing(s) => s.first_passage(level, passage, from, to),
             Self::Drift(s) => s.first_passage(level, passage, from, to),
             Self::Wave(s) => s.first_passage(level, passage, from, to),
+            Self::Series(s) => s.first_passage(level, passage, from, to),
         }
     }
 
@@ -67,6 +72,7 @@ impl Signal {
             Self::Swing(s) => s.first_maximum(from, to),
             Self::Drift(s) => s.turns(from, to).into_iter().flatten().find(|turn| turn.is_maximum).map(|t| t.time),
             Self::Wave(s) => s.first_maximum(from, to),
+            Self::Series(s) => s.first_maximum(from, to),
         }
     }
 
@@ -87,6 +93,9 @@ impl Signal {
                 Some(top) => offer(top),
                 None => offer(length),
             };
+            if let Self::Series(_) = self {
+                offer(length);
+            }
             if let Self::Drift(drift) = self {
                 drift.turns(0.0, length).into_iter().flatten().for_each(|turn| _ = offer(turn.time));
                 offer(length);
@@ -109,6 +118,7 @@ impl Signal {
             Self::Swing(s) => Self::Swing(s.scaled(a, b)),
             Self::Drift(s) => Self::Drift(s.scaled(a, b)),
             Self::Wave(s) => Self::Wave(s.scaled(a, b)),
+            Self::Series(s) => Self::Series(s.scaled(a, b)),
         }
     }
 }
