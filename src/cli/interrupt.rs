@@ -1,4 +1,5 @@
 //! Ctrl-C ends a long study with what it has; a second one ends the program.
+use super::meter::Meter;
 use super::output;
 use crate::study::Progress;
 use std::ops::ControlFlow;
@@ -32,7 +33,8 @@ impl Interrupt {
     }
 
     /// Goes on until Ctrl-C is pressed.
-    pub fn watch(&self, _: Progress) -> ControlFlow<()> {
+    pub fn watch(&self, meter: &Meter, progress: Progress) -> ControlFlow<()> {
+        meter.tell(progress);
         if self.is_pressed() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
     }
 }

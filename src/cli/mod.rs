@@ -3,11 +3,13 @@ mod audit;
 mod exit;
 mod interrupt;
 mod locate;
+mod meter;
 mod new;
 mod options;
 mod output;
 mod run;
 mod sheet;
+mod spread;
 mod study;
 
 pub use exit::Code;
@@ -54,6 +56,7 @@ fn dispatch(arguments: Arguments) -> Next {
         (Some(Command::Vary(args)), _) => Next::Exit(study::vary_one(&args)),
         (Some(Command::Remedy(args)), _) => Next::Exit(study::remedy(&args)),
         (Some(Command::Sheet(args)), _) => Next::Exit(sheet::sheet(&args)),
+        (Some(Command::Spread(args)), _) => Next::Exit(spread::spread(&args)),
         (Some(Command::Limits(args)), _) => Next::Exit(new::limits(&args)),
         (Some(Command::New(args)), _) => Next::Exit(new::new(&args)),
         (None, None) => {

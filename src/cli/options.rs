@@ -1,6 +1,7 @@
 //! The arguments and their help.
 use crate::quantity::UnitSystem;
 use crate::sheet::CAUTION_LINE;
+use crate::study::MOST_SAMPLES;
 use clap::{Args, Parser, Subcommand, ValueEnum};
 use std::path::PathBuf;
 
@@ -40,6 +41,9 @@ pub enum Command {
     /// Review files and folders: faults, doubtful inputs, margins, one verdict a file
     #[command(before_help = CAUTION_LINE)]
     Audit(AuditArgs),
+    /// Over the bands of the inputs: worst found, share that falls short, which input matters
+    #[command(before_help = CAUTION_LINE, after_help = EXIT_CODES)]
+    Spread(SpreadArgs),
     /// Run one input across a range: numbers, verdicts, and where a verdict changes
     #[command(before_help = CAUTION_LINE, after_help = VARY_CODES)]
     Vary(VaryArgs),
@@ -135,6 +139,36 @@ pub struct NewArgs {
     /// Write to this file, which must not exist yet
     #[arg(short, long, value_name = "FILE")]
     pub output: Option<PathBuf>,
+}
+
+/// Arguments of `spread`.
+#[derive(Args, Clone, Debug)]
+pub struct SpreadArgs {
+    /// Scenario file; `-` reads standard input
+    pub file: PathBuf,
+    /// Runs of the sample [default: as the file says, else 4096]
+    #[arg(long, value_name = "N", value_parser = sample_count)]
+    pub samples: Option<usize>,
+    /// Which sample is drawn; the same seed gives the same bytes [default: as the file says, else 1]
+    #[arg(long, value_name = "N", value_parser = clap::value_parser!(u64).range(..=LARGEST_SEED))]
+    pub seed: Option<u64>,
+    /// JSON, SI units, with the ranking of every check
+    #[arg(long, conflicts_with = "csv")]
+    pub json: bool,
+    /// CSV, one value a line, SI units
+    #[arg(long)]
+    pub csv: bool,
+    /// Units shown in text
+    #[arg(long, value_enum, default_value_t)]
+    pub units: Units,
+}
+
+/// The largest seed that JSON keeps exactly: 2^53 - 1.
+const LARGEST_SEED: u64 = (1 << 53) - 1;
+
+fn sample_count(text: &str) -> Result<usize, String> {
+    let fits = text.parse().ok().filter(|samples| (1..=MOST_SAMPLES).contains(samples));
+    fits.ok_or_else(|| format!("expected 1 to {MOST_SAMPLES} samples"))
 }
 
 /// Arguments of `compare`.

@@ -2,6 +2,7 @@
 use super::exit::Code;
 use super::interrupt::Interrupt;
 use super::locate::{one_fault, unknown_basis};
+use super::meter::Meter;
 use super::options::RunArgs;
 use super::output::{self, PAINT, Reader};
 use crate::estimate::EstimateError;
@@ -117,7 +118,9 @@ pub fn load_and_report(path: &Path) -> Result<(Loaded, Report), Failure> {
 /// See [`Failure`].
 pub fn load_and_judge(path: &Path, interrupt: &Interrupt) -> Result<(Loaded, Report), Failure> {
     let (loaded, mut report) = load_and_report(path)?;
-    let found = report_bands(&report, &|progress| interrupt.watch(progress));
+    let meter = Meter::new();
+    let found = report_bands(&report, &|progress| interrupt.watch(&meter, progress));
+    meter.clear();
     let put = found.and_then(|bands| bands.map_or(Ok(()), |bands| report.add_bands(bands)));
     let not_computed =
         |error: StudyError| Failure::NotComputed { file: report.file.clone(), reason: error.to_string() };

@@ -1,10 +1,11 @@
 //! Scenario to physics to arrest to numbers.
+use super::calm::Reach;
 use super::setup::{Setup, allowance, body_below_attachment};
 use super::{Event, Numbers, PlaneView, Solved, SpanView, Trace, WorkStep, collect, log, planar, remark};
 use crate::arrest::{ArrestError, Outcome, Settings, solve};
 use crate::physics::Layout;
 use crate::quantity::{Dimension, UnitSystem, format_si};
-use crate::scenario::{Scenario, StretchLaw};
+use crate::scenario::{AnchorKind, Scenario, StretchLaw};
 
 /// Everything that one run says.
 #[derive(Clone, Debug)]
@@ -201,6 +202,38 @@ pub struct Figures {
 /// # Errors
 /// See [`EstimateError`].
 pub fn figures(scenario: &Scenario) -> Result<Figures, EstimateError> {
+    figures_to(scenario, Reach::Settled)
+}
+
+/// As [`figures`], without the numbers that only the settling of a horizontal lifeline tells: such a run ends as soon as
+/// nothing that it has reached can be reached again. Every number that a check asks for is there and the same.
+///
+/// # Errors
+/// See [`EstimateError`].
+pub fn peaks(scenario: &Scenario) -> Result<Figures, EstimateError> {
+    let mut figures = figures_to(scenario, Reach::Peaks)?;
+    if matches!(scenario.anchor.kind, AnchorKind::Span(_)) {
+        figures.numbers.forget(SETTLING);
+    }
+    Ok(figures)
+}
+
+/// Numbers that a run tells only when it is followed until it has settled.
+const SETTLING: &[&str] = &[
+    "time_above_4kn",
+    "time_above_6kn",
+    "time_first_slack",
+    "rebound_rise",
+    "slack_episodes",
+    "settle_time",
+    "envelope_amplitude",
+    "envelope_decay",
+    "envelope_bound_coarse",
+    "envelope_bound_tight",
+    "energy_residual",
+];
+
+fn figures_to(scenario: &Scenario, reach: Reach) -> Result<Figures, EstimateError> {
     let setup = Setup::of(scenario)?;
     let numbers = if let Some(layout) = setup.geometry.layout.filter(|_| setup.is_planar()) {
         let outcome = planar::solve(scenario, &setup, &layout)?;
@@ -208,7 +241,7 @@ pub fn figures(scenario: &Scenario) -> Result<Figures, EstimateError> {
         let strikes = planar::strikes(scenario, &outcome);
         planar::numbers(scenario, &setup, &outcome, elevations.as_ref(), &strikes)
     } else {
-        let outcome = solve_vertical(&setup)?;
+        let outcome = solve_vertical(&setup, reach)?;
         let elevations = Elevations::of(scenario, &setup, &outcome);
         collect::numbers(scenario, &setup, &outcome, elevations.as_ref())
     };
@@ -216,15 +249,15 @@ pub fn figures(scenario: &Scenario) -> Result<Figures, EstimateError> {
     Ok(Figures { numbers, validity })
 }
 
-fn solve_vertical(setup: &Setup) -> Result<Outcome, EstimateError> {
+fn solve_vertical(setup: &Setup, reach: Reach) -> Result<Outcome, EstimateError> {
     match &setup.span {
-        Some(span) => span.solve(&setup.fall),
+        Some(span) => span.solve(&setup.fall, reach),
         None => Ok(solve(&setup.fall, &Settings::default())?),
     }
 }
 
 fn vertical_estimate(scenario: &Scenario, setup: &Setup) -> Result<Estimate, EstimateError> {
-    let outcome = solve_vertical(setup)?;
+    let outcome = solve_vertical(setup, Reach::Settled)?;
     let elevations = Elevations::of(scenario, setup, &outcome);
     let numbers = collect::numbers(scenario, setup, &outcome, elevations.as_ref());
     let validity = validity(scenario, setup, &numbers);

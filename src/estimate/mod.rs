@@ -1,6 +1,7 @@
 //! From a scenario to every number of the arrest, with units, definitions and provenance.
 mod assess;
 mod cables;
+mod calm;
 mod collect;
 mod definition;
 mod event;
@@ -14,7 +15,7 @@ mod solved;
 mod trace;
 mod view;
 
-pub use assess::{Elevations, Envelope, Estimate, EstimateError, Figures, Validity, estimate, figures};
+pub use assess::{Elevations, Envelope, Estimate, EstimateError, Figures, Validity, estimate, figures, peaks};
 pub use cables::typical_cables;
 pub use definition::{DEFINITIONS, Definition, definition};
 pub use event::{Event, EventKind};

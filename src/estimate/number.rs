@@ -57,6 +57,11 @@ impl Numbers {
         }
     }
 
+    /// Leaves some ids out.
+    pub(super) fn forget(&mut self, ids: &[&str]) {
+        self.0.retain(|number| !ids.contains(&number.id.as_str()));
+    }
+
     /// All results in order.
     pub fn iter(&self) -> impl Iterator<Item = &Number> {
         self.0.iter()

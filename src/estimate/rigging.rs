@@ -1,4 +1,5 @@
 //! The horizontal lifeline: its curve as a part of the path, and what it feels at the peak.
+use super::calm::{Reach, calm_settings, first_look, forget_settling, was_calm};
 use super::remark::both;
 use super::{EndLoadView, EstimateError, SpanView};
 use crate::arrest::{Fall, Outcome, Settings, solve, solve_on_span};
@@ -86,35 +87,52 @@ impl Rigging {
 
     /// Solves the fall with the span in its path. The table of the span is fitted to the largest force of the run, which
     /// is known only after the run: it is done again until the table reaches it, and once more with the table ending
-    /// there.
+    /// there. A first look at the peaks saves the settling of all but the last of these runs.
     ///
     /// # Errors
     /// As the solver, and when the span's law does not rise.
-    pub fn solve(&self, fall: &Fall) -> Result<Outcome, EstimateError> {
+    pub fn solve(&self, fall: &Fall, reach: Reach) -> Result<Outcome, EstimateError> {
         let (mass, gravity) = (fall.mass_kg, fall.gravity_m_per_s2);
         let deepest = self.curve.rigid_line_deflection_m(mass, gravity, fall.free_fall_m);
-        let mut largest_n = self.curve.line_force_n(deepest).max(2.0 * fall.weight_n());
-        let mut outcome = self.pass(fall, largest_n)?;
+        let first_n = self.curve.line_force_n(deepest).max(2.0 * fall.weight_n());
+        let Ok((look, largest_n)) = self.fitted(fall, first_n, &first_look()) else {
+            return self.fitted(fall, first_n, &Settings::default()).map(|(outcome, _)| outcome);
+        };
+        // What an absorber in line has given is no part of the path that the bound looks at.
+        let calm = calm_settings(&look).filter(|_| reach == Reach::Peaks && !self.has_absorber);
+        if let Some(settings) = calm {
+            let (mut calm, _) = self.fitted(fall, largest_n, &settings)?;
+            if was_calm(&calm, &settings) {
+                forget_settling(&mut calm);
+                return Ok(calm);
+            }
+        }
+        self.fitted(fall, largest_n, &Settings::default()).map(|(outcome, _)| outcome)
+    }
+
+    /// A run whose table ends at its largest force, and the end of that table, N.
+    fn fitted(&self, fall: &Fall, first_n: f64, settings: &Settings) -> Result<(Outcome, f64), EstimateError> {
+        let mut largest_n = first_n;
+        let mut outcome = self.pass(fall, largest_n, settings)?;
         for _ in 0..PASSES {
             let inside = outcome.peak_force_n <= largest_n;
             if inside && outcome.peak_force_n > 0.9 * largest_n {
-                return Ok(outcome);
+                return Ok((outcome, largest_n));
             }
             largest_n = outcome.peak_force_n * if inside { 1.001 } else { 1.25 };
-            outcome = self.pass(fall, largest_n)?;
+            outcome = self.pass(fall, largest_n, settings)?;
         }
         Err(EstimateError::Numerical { message: "the span's table does not settle on the largest force".to_owned() })
     }
 
-    fn pass(&self, fall: &Fall, largest_n: f64) -> Result<Outcome, EstimateError> {
-        let settings = Settings::default();
+    fn pass(&self, fall: &Fall, largest_n: f64, settings: &Settings) -> Result<Outcome, EstimateError> {
         if self.has_absorber {
             let spring = match fall.path.other.elastic {
                 Elastic::Linear { stiffness_n_per_m } => Some(stiffness_n_per_m),
                 _ => None,
             };
             let law = YieldingSpan::new(self.curve, spring, largest_n, FINE_SHARE).map_err(|e| clash(&e))?;
-            return Ok(solve_on_span(fall, law, &settings)?);
+            return Ok(solve_on_span(fall, law, settings)?);
         }
         let table = self.curve.table(largest_n, SHARE).map_err(|e| clash(&e))?.table;
         let table = match fall.path.other.elastic {
@@ -125,7 +143,7 @@ impl Rigging {
         };
         let mut loaded = fall.clone();
         loaded.path.other.elastic = Elastic::Table(table);
-        Ok(solve(&loaded, &settings)?)
+        Ok(solve(&loaded, settings)?)
     }
 
     /// Stroke of the absorber in line with the cable, m.

@@ -1,5 +1,5 @@
 //! One run of a study: some inputs replaced, every number and every check of it, no words.
-use crate::estimate::{EstimateError, Numbers, Validity, figures};
+use crate::estimate::{EstimateError, Figures, Numbers, Validity, figures, peaks};
 use crate::margin::{Check, CheckKind, Margin, Rules, UnknownBasis, checks, judge, margin_of};
 use crate::quantity::UnitSystem;
 use crate::scenario::{Input, Scenario, inputs, with_values};
@@ -161,6 +161,16 @@ impl Evaluator {
         Ok(self.scenario_at(values)?.map_or_else(|| self.failed(Failure::Clash), |changed| self.run(&changed)))
     }
 
+    /// As [`Self::at`], without the numbers that only the settling of a horizontal lifeline tells, which takes most of
+    /// such a run; the checks are the same.
+    ///
+    /// # Errors
+    /// As [`Self::at`].
+    pub fn peaks_at(&self, values: &[(usize, f64)]) -> Result<Run, StudyError> {
+        let run = |changed: &Scenario| self.judged(changed, peaks(changed));
+        Ok(self.scenario_at(values)?.as_ref().map_or_else(|| self.failed(Failure::Clash), run))
+    }
+
     /// The scenario with some inputs replaced, as [`Self::at`] runs it; none where the values cannot be together.
     ///
     /// # Errors
@@ -191,7 +201,11 @@ impl Evaluator {
     }
 
     fn run(&self, scenario: &Scenario) -> Run {
-        match figures(scenario) {
+        self.judged(scenario, figures(scenario))
+    }
+
+    fn judged(&self, scenario: &Scenario, figures: Result<Figures, EstimateError>) -> Run {
+        match figures {
             Ok(figures) => Run {
                 checks: checks(&self.rules, scenario, &figures.numbers, &figures.validity),
                 numbers: figures.numbers,

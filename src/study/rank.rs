@@ -2,6 +2,7 @@
 use super::band::Quantile;
 use super::evaluate::{Evaluator, Run, StudyError};
 use super::sobol::{MOST_DIMENSIONS, Sobol, SplitMix};
+use super::watch::{Progress, Step, Watch, unwatched};
 use crate::margin::CheckKind;
 use rayon::prelude::*;
 
@@ -61,11 +62,15 @@ impl Bar {
 /// # Errors
 /// None but those of [`Evaluator::at`].
 pub fn bars(evaluator: &Evaluator, target: &Target) -> Result<Vec<Bar>, StudyError> {
-    let typical = target.of(&evaluator.typical());
+    let run = |values: &[(usize, f64)]| match target {
+        Target::Margin(_) => evaluator.peaks_at(values),
+        Target::Number(_) => evaluator.at(values),
+    };
+    let typical = target.of(&run(&[])?);
     let mut bars = Vec::new();
     for input in evaluator.wide() {
         let band = evaluator.inputs()[input].measure.band;
-        let at = |value| evaluator.at(&[(input, value)]).map(|run| target.of(&run));
+        let at = |value| run(&[(input, value)]).map(|run| target.of(&run));
         bars.push(Bar { input, low: at(band.low)?, typical, high: at(band.high)? });
     }
     let reach = |bar: &Bar| bar.reach().unwrap_or(f64::INFINITY);
@@ -100,7 +105,9 @@ pub struct Importance {
 pub struct Ranking {
     /// One entry per input, in file order; empty where the target does not vary.
     pub inputs: Vec<Importance>,
-    /// Base points used.
+    /// Base points asked for.
+    pub asked: usize,
+    /// Base points used; fewer where it was broken off.
     pub points: usize,
     /// Base points left out of the estimate since one of their runs gave no value: they are no part of the shares, and
     /// where there are any, the shares speak of the rest of the bands only.
@@ -113,17 +120,37 @@ pub struct Ranking {
 /// # Errors
 /// [`StudyError::TooManyBands`] beyond half of [`MOST_DIMENSIONS`]; [`StudyError::Samples`] outside of 16 to 2^24.
 pub fn importance(evaluator: &Evaluator, target: &Target, points: usize, seed: u64) -> Result<Ranking, StudyError> {
+    let mut all = importances(evaluator, std::slice::from_ref(target), points, seed, &unwatched)?;
+    Ok(all.pop().unwrap_or(Ranking { inputs: Vec::new(), asked: points, points: 0, without_value: 0 }))
+}
+
+/// [`importance`] of several targets from the same runs. `watch` is told how many base points are done and may break
+/// off: the shares are then of those.
+///
+/// # Errors
+/// See [`importance`].
+pub fn importances(
+    evaluator: &Evaluator,
+    targets: &[Target],
+    points: usize,
+    seed: u64,
+    watch: &Watch<'_>,
+) -> Result<Vec<Ranking>, StudyError> {
     let quantiles: Vec<_> =
         evaluator.wide().into_iter().map(|i| (i, Quantile::new(evaluator.inputs()[i].measure.band))).collect();
+    let peaks_do = targets.iter().all(|target| matches!(target, Target::Margin(_)));
     let value = |point: &[f64]| {
         let values: Vec<_> = quantiles.iter().zip(point).map(|((input, q), u)| (*input, q.at(*u))).collect();
-        evaluator.at(&values).ok().and_then(|run| target.of(&run))
+        let run = if peaks_do { evaluator.peaks_at(&values) } else { evaluator.at(&values) };
+        targets.iter().map(|target| target.of(run.as_ref().ok()?)).collect()
     };
-    let mut ranking = importance_of(quantiles.len(), points, seed, &value)?;
-    for part in &mut ranking.inputs {
+    let tried = tried(quantiles.len(), points, seed, &value, watch)?;
+    let mut rankings: Vec<_> =
+        (0..targets.len()).map(|target| ranking(&tried, target, quantiles.len(), points, seed)).collect();
+    for part in rankings.iter_mut().flat_map(|ranking| &mut ranking.inputs) {
         part.input = quantiles[part.input].0;
     }
-    Ok(ranking)
+    Ok(rankings)
 }
 
 /// The same for any function of a point of the unit cube.
@@ -145,6 +172,31 @@ pub fn importance_of(
     seed: u64,
     value: &(dyn Fn(&[f64]) -> Option<f64> + Sync),
 ) -> Result<Ranking, StudyError> {
+    let tried = tried(dimensions, points, seed, &|point| vec![value(point)], &unwatched)?;
+    Ok(ranking(&tried, 0, dimensions, points, seed))
+}
+
+/// The targets at one point, where there are such.
+type Values = Vec<Option<f64>>;
+
+/// All targets at one base point: at A, at B, and for each coordinate at A with it from B and at B with it from A.
+struct Tried {
+    a: Values,
+    b: Values,
+    mixed: Vec<(Values, Values)>,
+}
+
+/// Base points between two looks at whether to stop.
+const BATCH: usize = 32;
+
+/// Runs every base point and its mixtures.
+fn tried(
+    dimensions: usize,
+    points: usize,
+    seed: u64,
+    values: &(dyn Fn(&[f64]) -> Values + Sync),
+    watch: &Watch<'_>,
+) -> Result<Vec<Tried>, StudyError> {
     if dimensions > MOST_DIMENSIONS / 2 {
         return Err(StudyError::TooManyBands { bands: dimensions, most: MOST_DIMENSIONS / 2 });
     }
@@ -152,33 +204,50 @@ pub fn importance_of(
         return Err(StudyError::Samples { count: points, least: POINTS.0, most: POINTS.1 });
     }
     let sobol = Sobol::scrambled(2 * dimensions, seed);
-    let row = |index| Row::at(&sobol.point(index), dimensions, value);
-    let rows: Vec<Option<Row>> = (0..points).into_par_iter().map(row).collect();
-    let rows: Vec<Row> = rows.into_iter().flatten().collect();
+    let mut tried = Vec::with_capacity(points);
+    while tried.len() < points {
+        if watch(Progress { step: Step::Ranking, done: tried.len(), of: points }).is_break() {
+            break;
+        }
+        let batch = tried.len()..(tried.len() + BATCH).min(points);
+        tried.par_extend(batch.into_par_iter().map(|index| Tried::at(&sobol.point(index), dimensions, values)));
+    }
+    Ok(tried)
+}
+
+/// The shares of one target.
+fn ranking(tried: &[Tried], target: usize, dimensions: usize, asked: usize, seed: u64) -> Ranking {
+    let rows: Vec<Row> = tried.iter().filter_map(|tried| tried.row(target)).collect();
     let all: Vec<usize> = (0..rows.len()).collect();
     let varies = shares(&rows, &all, 0).is_some();
     let one = |input| confident(&rows, &all, input, seed);
     let inputs = if varies { (0..dimensions).into_par_iter().filter_map(one).collect() } else { Vec::new() };
-    Ok(Ranking { inputs, points, without_value: points - rows.len() })
+    Ranking { inputs, asked, points: tried.len(), without_value: tried.len() - rows.len() }
 }
 
-/// The target at one base point: at A, at B, and for each coordinate at A with it from B and at B with it from A.
-struct Row {
-    a: f64,
-    b: f64,
-    mixed: Vec<(f64, f64)>,
-}
-
-impl Row {
-    fn at(point: &[f64], dimensions: usize, value: &(dyn Fn(&[f64]) -> Option<f64> + Sync)) -> Option<Self> {
+impl Tried {
+    fn at(point: &[f64], dimensions: usize, values: &(dyn Fn(&[f64]) -> Values + Sync)) -> Self {
         let (a, b) = point.split_at(dimensions);
         let mixed = |d: usize| {
             let (mut p, mut q) = (a.to_vec(), b.to_vec());
             std::mem::swap(&mut p[d], &mut q[d]);
-            Some((value(&p)?, value(&q)?))
+            (values(&p), values(&q))
         };
-        Some(Self { a: value(a)?, b: value(b)?, mixed: (0..dimensions).map(mixed).collect::<Option<_>>()? })
+        Self { a: values(a), b: values(b), mixed: (0..dimensions).map(mixed).collect() }
     }
+
+    fn row(&self, target: usize) -> Option<Row> {
+        let of = |values: &Values| values.get(target).copied().flatten();
+        let mixed = self.mixed.iter().map(|(p, q)| Some((of(p)?, of(q)?))).collect::<Option<_>>()?;
+        Some(Row { a: of(&self.a)?, b: of(&self.b)?, mixed })
+    }
+}
+
+/// One target at one base point and its mixtures.
+struct Row {
+    a: f64,
+    b: f64,
+    mixed: Vec<(f64, f64)>,
 }
 
 /// First and total share of one input over the chosen rows; none where the target does not vary.

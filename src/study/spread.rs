@@ -28,7 +28,7 @@ pub const QUANTILE_SHARES: [f64; 7] = [0.0, 0.05, 0.25, 0.5, 0.75, 0.95, 1.0];
 /// Bars of a histogram, of equal width from the smallest to the largest value.
 pub const BARS: usize = 32;
 /// Runs between two looks at whether to stop; a part is always a multiple of it, or the whole.
-pub const BATCH: usize = 1024;
+pub const BATCH: usize = 256;
 /// Two-sided 95 % point of the normal distribution.
 const Z_95: f64 = 1.959_963_984_540_054;
 
@@ -159,7 +159,7 @@ pub fn spread(
     let mut gathered = Gathered::default();
     while gathered.samples < samples {
         let batch = gathered.samples..(gathered.samples + BATCH).min(samples);
-        let row = |index| evaluator.at(&sampler.values(index)).map(|run| Row::of(&run));
+        let row = |index| evaluator.peaks_at(&sampler.values(index)).map(|run| Row::of(&run));
         let rows = batch.into_par_iter().map(row).collect::<Result<Vec<_>, _>>()?;
         for row in rows {
             gathered.take(row);

@@ -5,7 +5,6 @@ use super::sobol::{MOST_DIMENSIONS, Sobol};
 use super::watch::Watch;
 use crate::margin::{Check, CheckKind, Verdict};
 use rayon::prelude::*;
-use std::cmp::Ordering;
 use std::sync::Arc;
 
 /// Most bands for which every corner is tried: 2^12 runs.
@@ -18,6 +17,9 @@ const INSIDE_SEED: u64 = 1;
 const STEPS: (f64, f64) = (0.25, 1e-5);
 /// A point this close to an end, as a share of the band, is at the end.
 const AT_END: f64 = 1e-9;
+
+/// Margins that differ by less than this share of demand or limit differ by the rounding of their runs.
+const ROUNDING: f64 = 1e-10;
 
 /// Where an input is at the worst found.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -105,7 +107,7 @@ pub fn worst_found(evaluator: &Evaluator, watch: &Watch<'_>) -> Result<WorstFoun
     let all_corners = wide.len() <= MOST_CORNER_BANDS;
     let search = Search::new(evaluator, wide, watch);
     let starts = search.starts(all_corners)?;
-    let typical = Outcome::of(evaluator.typical());
+    let typical = Outcome::of(evaluator.peaks_at(&[])?);
     let found = kinds(evaluator, &starts);
     search.count.refining(found.len());
     let checks = found.par_iter().map(|&kind| search.check(kind, &typical, &starts)).collect::<Result<Vec<_>, _>>()?;
@@ -149,12 +151,40 @@ struct Found {
 }
 
 impl Found {
-    /// Worse is less: short before the others, then the smaller margin.
-    fn compare(&self, other: &Self) -> Ordering {
-        let rank = |found: &Self| u8::from(found.check.verdict != Verdict::Short);
-        let margin = |found: &Self| found.check.margin.unwrap_or(f64::INFINITY);
-        rank(self).cmp(&rank(other)).then(margin(self).total_cmp(&margin(other)))
+    /// Worse than another: short where the other is not, or a smaller margin beyond rounding.
+    fn is_worse_than(&self, other: &Self) -> bool {
+        let short = |found: &Self| found.check.verdict == Verdict::Short;
+        match (short(self), short(other)) {
+            (true, false) => true,
+            (false, true) => false,
+            _ => self.margin() < other.margin() - other.rounding(),
+        }
     }
+
+    /// The same check but for rounding.
+    fn is_same_as(&self, other: &Self) -> bool {
+        let away = self.margin() - other.margin();
+        let close = self.check.verdict == other.check.verdict && away.abs() <= other.rounding();
+        close || self.check == other.check
+    }
+
+    fn margin(&self) -> f64 {
+        self.check.margin.unwrap_or(f64::INFINITY)
+    }
+
+    fn rounding(&self) -> f64 {
+        let scale = [self.check.limit, self.check.demand].into_iter().flatten().map(f64::abs).fold(0.0, f64::max);
+        ROUNDING * scale
+    }
+}
+
+/// The worst of a list, the first of equals.
+fn worst_of(list: &[Option<Found>]) -> Option<Found> {
+    let worse = |best: Option<Found>, found: &Found| match best {
+        Some(best) if !found.is_worse_than(&best) => Some(best),
+        _ => Some(found.clone()),
+    };
+    list.iter().flatten().fold(None, worse)
 }
 
 struct Search<'e> {
@@ -203,20 +233,19 @@ impl<'e> Search<'e> {
             return Ok(None);
         }
         let values: Vec<_> = point.iter().enumerate().map(|(d, share)| (self.wide[d], self.value(d, *share))).collect();
-        self.memory.outcome(&values, || self.evaluator.at(&values)).map(Some)
+        self.memory.outcome(&values, || self.evaluator.peaks_at(&values)).map(Some)
     }
 
     fn check(&self, kind: CheckKind, typical: &Outcome, starts: &Starts) -> Result<Worst, StudyError> {
         let mut tally = Tally { kind, open: 0 };
         let judged: Vec<_> = starts.points.iter().map(|(point, run)| tally.judge(run, point)).collect();
         let (corners, inside) = judged.split_at(starts.corners);
-        let worst_of = |list: &[Option<Found>]| list.iter().flatten().min_by(|a, b| a.compare(b)).cloned();
         let mut best: Option<Found> = None;
         let varies =
             judged.windows(2).any(|pair| pair[0].as_ref().map(|f| f.check) != pair[1].as_ref().map(|f| f.check));
         for start in [worst_of(corners), worst_of(inside)].into_iter().flatten() {
             let found = if varies { self.refine(start, &mut tally)? } else { start };
-            if best.as_ref().is_none_or(|best| found.compare(best).is_lt()) {
+            if best.as_ref().is_none_or(|best| found.is_worse_than(best)) {
                 best = Some(found);
             }
         }
@@ -242,7 +271,7 @@ impl<'e> Search<'e> {
                         continue;
                     }
                     let Some(run) = self.run(&point)? else { return Ok(best) };
-                    if let Some(found) = tally.judge(&run, &point).filter(|found| found.compare(&best).is_lt()) {
+                    if let Some(found) = tally.judge(&run, &point).filter(|found| found.is_worse_than(&best)) {
                         best = found;
                         moved = true;
                     }
@@ -261,7 +290,7 @@ impl<'e> Search<'e> {
             let mut point = found.point.clone();
             point[d] = self.typical_share(input);
             let other = self.run(&point)?.and_then(|run| tally.judge(&run, &point));
-            let same = other.is_some_and(|other| other.check == found.check);
+            let same = other.is_some_and(|other| other.is_same_as(found));
             let share = found.point[d];
             let place = match share {
                 _ if same && point[d] != share => Place::Anywhere,
