@@ -219,6 +219,23 @@ fn the_working_carries_its_numbers_in_json() {
     }
 }
 
+#[test]
+fn every_step_of_the_geometry_has_its_formula_or_is_stated() {
+    for path in shipped() {
+        let (_, value) = plain(&path, UnitSystem::Metric);
+        let geometry = value.sections.iter().find(|section| section.id == "geometry").unwrap();
+        for block in &geometry.blocks {
+            let Block::Table(table) = block else { continue };
+            for row in table.rows.iter().filter(|_| table.id == "geometry") {
+                let [what, formula] = [1, 2].map(|at| row.cells[at].words.as_str());
+                let given = what.ends_with("as stated") || what == "elevation of the attachment at the start";
+                let none = what.starts_with("free fall: none") || what.starts_with("deflection of the lifeline");
+                assert_eq!(formula.is_empty(), given || none, "{path:?}: {what}: {formula}");
+            }
+        }
+    }
+}
+
 /// Relative luminance of `#rrggbb` (WCAG 2.1, 1.4.3).
 fn luminance(colour: &str) -> f64 {
     let part = |at: usize| {

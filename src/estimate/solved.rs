@@ -90,6 +90,8 @@ pub enum Form {
         /// Where it tends to, m of travel past taut.
         rest_m: f64,
     },
+    /// Fourth order: one step of a power series.
+    Fourth,
 }
 
 /// One mode of the motion.
@@ -175,6 +177,7 @@ fn mode(stretch: &Stretch) -> ModeView {
         }
         Signal::Drift(x) => Form::Constant { acceleration_m_per_s2: 2.0 * x.c[2] },
         Signal::Wave(x) => Form::Third { rest_m: x.rest },
+        Signal::Series(_) => Form::Fourth,
     };
     let start = at(stretch.start_s);
     ModeView { mode: start.mode, start, end: at(stretch.start_s + stretch.length_s), form }

@@ -23,9 +23,11 @@ pub fn read(page: &str) -> (Vec<Table>, Vec<(String, String)>) {
     let (mut section, mut caption, mut inside) = (String::new(), String::new(), false);
     for line in page.lines() {
         if let Some(title) = line.strip_prefix("## ") {
-            section = title.split_once(". ").map_or(title, |(_, words)| words).to_owned();
+            title.split_once(". ").map_or(title, |(_, words)| words).clone_into(&mut section);
         } else if let Some(cells) = line.strip_prefix("| ").and_then(|l| l.strip_suffix('|')) {
-            let cells: Vec<String> = cells.split('|').map(|c| c.trim().trim_matches('`').to_owned()).collect();
+            let cells = cells.replace("\\|", "\u{0}");
+            let cells: Vec<String> =
+                cells.split('|').map(|c| c.trim().trim_matches('`').replace('\u{0}', "|")).collect();
             if !inside {
                 tables.push(Table { section: section.clone(), caption: caption.clone(), head: cells, rows: vec![] });
             } else if !cells.iter().all(|c| c.chars().all(|c| c == '-' || c == ':') && !c.is_empty()) {
@@ -34,7 +36,7 @@ pub fn read(page: &str) -> (Vec<Table>, Vec<(String, String)>) {
             inside = true;
             continue;
         } else if let Some(title) = line.strip_prefix("**").and_then(|l| l.strip_suffix("**")) {
-            caption = title.to_owned();
+            title.clone_into(&mut caption);
         } else if !line.trim().is_empty() {
             words.push((section.clone(), line.to_owned()));
         }

@@ -1,5 +1,6 @@
 //! The geometry step by step, the space that the fall takes, and where things are.
-use super::value::{Block, Cell, Column, Kind, Row, Section, Table, column};
+use super::formula::{Before, formula};
+use super::value::{Block, Cell, Column, Kind, Row, Section, Table, column, digits};
 use crate::quantity::{Dimension, UnitSystem, format_si};
 use crate::sheet::Report;
 use crate::sheet::places::{end_words, span_rows, stations, strike_words};
@@ -8,6 +9,8 @@ use crate::sheet::working::sums;
 const STEPS: &[Column] = &[
     column("number", "step", Kind::Words),
     column("what", "what", Kind::Name),
+    column("formula", "formula", Kind::Formula),
+    column("numbers", "with numbers, SI", Kind::Formula),
     column("value", "value, SI", Kind::Number),
     column("shown", "in units of the sheet", Kind::Number),
 ];
@@ -17,6 +20,9 @@ const PLACES: &[Column] = &[
     column("elevation", "elevation", Kind::Number),
 ];
 const SPAN: &[Column] = &[column("what", "what", Kind::Name), column("value", "value", Kind::Number)];
+
+/// How the last row of a sum begins.
+const SUM: &str = "sum:";
 
 /// The section of the geometry.
 pub fn section(report: &Report, system: UnitSystem) -> Section {
@@ -35,7 +41,7 @@ pub fn section(report: &Report, system: UnitSystem) -> Section {
     }
     for (index, sum) in sums(&report.scenario, estimate.elevations.as_ref()).iter().enumerate() {
         let mut rows = sum.terms.clone();
-        rows.push((format!("sum: clear space wanted below {}", sum.datum), sum.total_m()));
+        rows.push((format!("{SUM} clear space wanted below {}", sum.datum), sum.total_m()));
         let letter = if index == 0 { "A" } else { "B" };
         let caption = format!("space the fall takes, measured below {}", sum.datum);
         blocks.push(table(&format!("space_{}", index + 1), &caption, letter, &rows, system));
@@ -45,17 +51,29 @@ pub fn section(report: &Report, system: UnitSystem) -> Section {
     Section::new("geometry", "Geometry, worked step by step", blocks)
 }
 
-fn table(id: &str, caption: &str, letter: &str, rows: &[(String, f64)], system: UnitSystem) -> Block {
-    let row = |(index, (what, value)): (usize, &(String, f64))| {
-        Row::new(vec![
-            Cell::words(&format!("{letter}{}", index + 1)),
-            Cell::words(what),
-            Cell::si(*value, "m"),
-            Cell::shown(format_si(*value, Dimension::Length, system), *value, "m"),
-        ])
-    };
-    let rows = rows.iter().enumerate().map(row).collect();
+fn table(id: &str, caption: &str, letter: &str, list: &[(String, f64)], system: UnitSystem) -> Block {
+    let names: Vec<String> = (1..=list.len()).map(|n| format!("{letter}{n}")).collect();
+    let all: Vec<Before<'_>> =
+        list.iter().zip(&names).map(|((what, value_m), name)| Before { name, what, value_m: *value_m }).collect();
+    let rows = all.iter().enumerate().map(|(index, step)| row(step, &all[..index], system)).collect();
     Block::Table(Table { id: id.to_owned(), caption: caption.to_owned(), columns: STEPS, rows })
+}
+
+fn row(step: &Before<'_>, before: &[Before<'_>], system: UnitSystem) -> Row {
+    let [formula, numbers] = if step.what.starts_with(SUM) {
+        let list = |show: &dyn Fn(&Before<'_>) -> String| before.iter().map(show).collect::<Vec<_>>().join(" + ");
+        [list(&|step| step.name.to_owned()), list(&|step| digits(step.value_m))]
+    } else {
+        formula(step.what, before)
+    };
+    Row::new(vec![
+        Cell::words(step.name),
+        Cell::words(step.what),
+        Cell::words(&formula),
+        Cell::words(&numbers),
+        Cell::si(step.value_m, "m"),
+        Cell::shown(format_si(step.value_m, Dimension::Length, system), step.value_m, "m"),
+    ])
 }
 
 fn span(report: &Report, system: UnitSystem) -> Option<Block> {

@@ -5,6 +5,7 @@ mod drawing;
 mod elevation;
 mod figure;
 mod figures;
+mod formula;
 mod geometry;
 mod head;
 mod html;

@@ -41,6 +41,10 @@ fn one(solved: &Solved, number: usize, mode: &ModeView, next: Option<&ModeView>,
     match mode.form {
         Form::Oscillation { .. } => oscillation(&mut steps, solved, mode),
         Form::Constant { acceleration_m_per_s2: a } => constant(&mut steps, solved, mode, a),
+        Form::Fourth => {
+            let form = ["a power series in τ of the fourth-order motion, one step of it", ""];
+            steps.word("x(τ)", "travel, τ = t − t_a", form, "");
+        }
         Form::Third { rest_m } => {
             steps.given("x_r", "travel that it tends to", rest_m, "m");
             let form = [

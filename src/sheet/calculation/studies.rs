@@ -153,17 +153,14 @@ pub fn remedies(found: &Remedies) -> Section {
 fn remedy_row(remedy: &Remedy) -> Row {
     let measure = &remedy.input.measure;
     let unit = si_unit(measure.dimension());
-    let (value, change) = match &remedy.way {
-        Some(way) => {
-            let of = if way.of_range { "the range searched" } else { "the value of today" };
-            let ways = if way.ways > 1 { format!("; {} separate stretches hold", way.ways) } else { String::new() };
-            let words = format!("{:.1} % of {of}{ways}", way.relative * 100.0);
-            (Cell::shown(way.written.clone(), way.value, unit), Cell::words(&words))
-        }
-        None => {
-            let [low, high] = [remedy.range.0, remedy.range.1].map(|v| format_unit(v, measure.unit));
-            (Cell::words("none"), Cell::words(&format!("no value from {low} to {high}")))
-        }
+    let (value, change) = if let Some(way) = &remedy.way {
+        let by = way.value - measure.si();
+        let plus = if by > 0.0 { "+" } else { "" };
+        let words = format!("{plus}{}", format_unit(by, measure.unit));
+        (Cell::shown(way.written.clone(), way.value, unit), Cell::shown(words, by, unit))
+    } else {
+        let [low, high] = [remedy.range.0, remedy.range.1].map(|v| format_unit(v, measure.unit));
+        (Cell::words("none"), Cell::words(&format!("no value from {low} to {high}")))
     };
     let today = Cell::shown(format_measure(measure), measure.si(), unit);
     Row::new(vec![Cell::words(&remedy.input.path), today, value, change])

@@ -31,6 +31,7 @@ pub struct Section {
 
 impl Section {
     /// A section.
+    #[must_use]
     pub const fn new(id: &'static str, title: &'static str, blocks: Vec<Block>) -> Self {
         Self { id, title, blocks }
     }
@@ -57,14 +58,17 @@ pub enum Block {
 
 impl Block {
     /// A paragraph, control characters made visible.
+    #[must_use]
     pub fn words(words: &str) -> Self {
         Self::Words(clean(words))
     }
     /// Sentences, control characters made visible.
+    #[must_use]
     pub fn list<S: AsRef<str>>(list: &[S]) -> Self {
         Self::List(list.iter().map(|words| clean(words.as_ref())).collect())
     }
     /// A heading within the section.
+    #[must_use]
     pub fn part(words: &str) -> Self {
         Self::Part(clean(words))
     }
@@ -123,6 +127,7 @@ pub struct Row {
 
 impl Row {
     /// A row without a verdict.
+    #[must_use]
     pub const fn new(cells: Vec<Cell>) -> Self {
         Self { cells, verdict: None }
     }
@@ -139,19 +144,23 @@ pub struct Cell {
 
 impl Cell {
     /// Words, control characters made visible.
+    #[must_use]
     pub fn words(words: &str) -> Self {
         Self { words: clean(words), si: None }
     }
     /// A number to the digits of the working, with its SI unit.
+    #[must_use]
     pub fn si(value: f64, unit: &'static str) -> Self {
         let words = if unit == "1" { digits(value) } else { format!("{} {unit}", digits(value)) };
         Self { words, si: Some((value, unit)) }
     }
     /// A number shown in other words.
+    #[must_use]
     pub fn shown(words: String, value: f64, unit: &'static str) -> Self {
         Self { words, si: Some((value, unit)) }
     }
     /// Nothing.
+    #[must_use]
     pub const fn none() -> Self {
         Self { words: String::new(), si: None }
     }
