@@ -373,6 +373,16 @@ fn modes_are_right(hand: &mut Hand) {
             hand.know(&format!("mode {index} low"), low.t - piece.start.t);
         }
     }
+    let list = hand.table("modes in order of time, each with the state at its start").expect("the modes").clone();
+    assert_eq!(list.rows.len(), shown.len());
+    for (index, row) in list.rows.iter().enumerate() {
+        assert_eq!(list.cell(row, "mode"), (index + 1).to_string());
+        for (head, symbol) in
+            [("from", "t_a"), ("travel past taut", "x_a"), ("speed", "v_a"), ("line force", "T_a"), ("deployed", "s_a")]
+        {
+            hand.expect(head, list.cell(row, head), of_mode(hand, index, symbol));
+        }
+    }
     let left = hand.run.pieces.len() - shown.len();
     let told = hand.words.iter().any(|(_, words)| words.starts_with(&format!("{left} more mode")));
     assert!(left == 0 || told, "{}: {left} modes are not told of", hand.file);
@@ -655,6 +665,7 @@ fn no_table_is_left_out(hand: &Hand) {
         let known = without_numbers.contains(&caption)
             || checked.contains(&caption)
             || caption.starts_with("mode ")
+            || caption.starts_with("modes in order")
             || table.section.starts_with("Geometry")
             || table.head[0] == "to be filled in by hand";
         assert!(known, "{}: the table `{caption}` is not checked", hand.file);

@@ -85,10 +85,19 @@ pub enum Form {
         /// Acceleration, m/s2.
         acceleration_m_per_s2: f64,
     },
-    /// Third order, with the roots of [`CubicView`].
+    /// Third order: `rest + exp(-decay tau) (p cos + q sin/omega) + r exp(real tau)` with `omega^2 = square`, or `cosh`
+    /// and `sinh` where it is negative.
     Third {
         /// Where it tends to, m of travel past taut.
         rest_m: f64,
+        /// The real root farthest from the others, 1/s.
+        real_per_s: f64,
+        /// Decay of the other two, 1/s.
+        decay_per_s: f64,
+        /// Square of their imaginary part, 1/s2; negative where they are real.
+        square_per_s2: f64,
+        /// `p` in m, `q` in m/s, `r` in m; none where the roots nearly meet and the form is another one.
+        coefficients: Option<[f64; 3]>,
     },
     /// Fourth order: one step of a power series.
     Fourth,
@@ -176,7 +185,13 @@ fn mode(stretch: &Stretch) -> ModeView {
             Form::Oscillation { rest_m: x.rest, decay_per_s: x.of.decay, square_per_s2: x.of.q, from_rest_m: x.p }
         }
         Signal::Drift(x) => Form::Constant { acceleration_m_per_s2: 2.0 * x.c[2] },
-        Signal::Wave(x) => Form::Third { rest_m: x.rest },
+        Signal::Wave(x) => Form::Third {
+            rest_m: x.rest,
+            real_per_s: x.of.lambda,
+            decay_per_s: x.of.pair.decay,
+            square_per_s2: x.of.pair.q,
+            coefficients: x.of.far.then_some(x.a),
+        },
         Signal::Series(_) => Form::Fourth,
     };
     let start = at(stretch.start_s);

@@ -1,25 +1,41 @@
 //! The arrest mode by mode: constants of the motion, where it turns, how it ends.
 use super::path::total;
 use super::steps::Steps;
-use super::value::{Block, digits, exact};
-use crate::estimate::{Form, Mode, ModeView, Solved};
+use super::value::{Block, Cell, Column, Kind, Row, Table, column, digits, exact};
+use crate::estimate::{Form, Mode, ModeView, Sample, Solved};
 use crate::sheet::Report;
 
 /// Most modes that are worked; what comes after them stands in the list of events.
 const MOST: usize = 8;
 
-/// Every mode up to the one that holds the lowest point, and the one after it.
+/// Most modes that are listed.
+const LISTED: usize = 60;
+
+const LIST: &[Column] = &[
+    column("number", "mode", Kind::Number),
+    column("word", "the line is", Kind::Name),
+    column("time", "from", Kind::Number),
+    column("travel", "travel past taut", Kind::Number),
+    column("speed", "speed", Kind::Number),
+    column("force", "line force", Kind::Number),
+    column("deployed", "deployed", Kind::Number),
+    column("until", "until", Kind::Words),
+];
+
+/// A list of the modes up to the one that holds the lowest point and the one after it, and the working of each; of a law
+/// in many pieces only of the first piece of each.
 pub fn modes(report: &Report) -> Vec<Block> {
-    let solved = &report.estimate.solved;
+    let all = &report.estimate.solved.modes;
     let lowest = report.estimate.numbers.get("time_lowest").unwrap_or(f64::INFINITY);
-    let wanted = solved.modes.iter().take_while(|mode| mode.start.time_s <= lowest).count() + 1;
-    let count = wanted.min(MOST).min(solved.modes.len());
-    let mut blocks = Vec::with_capacity(count + 1);
-    for (index, mode) in solved.modes.iter().take(count).enumerate() {
-        let next = solved.modes.get(index + 1);
-        blocks.push(one(solved, index + 1, mode, next, lowest));
+    let wanted = all.iter().take_while(|mode| mode.start.time_s <= lowest).count() + 1;
+    let count = wanted.min(LISTED).min(all.len());
+    let mut blocks = vec![list(&all[..count], all)];
+    let begins = |index: usize| index == 0 || all[index - 1].mode != all[index].mode;
+    let worked = (0..count).filter(|&index| count <= MOST || begins(index)).take(MOST);
+    for index in worked {
+        blocks.push(one(&report.estimate.solved, index + 1, &all[index], all.get(index + 1), lowest));
     }
-    let left = solved.modes.len() - count;
+    let left = all.len() - count;
     if left > 0 {
         blocks.push(Block::words(&format!(
             "{left} more mode{} of the same forms until the end of the run: see the events.",
@@ -27,6 +43,28 @@ pub fn modes(report: &Report) -> Vec<Block> {
         )));
     }
     blocks
+}
+
+fn list(shown: &[ModeView], all: &[ModeView]) -> Block {
+    let row = |(index, mode): (usize, &ModeView)| {
+        let Sample { time_s, travel_m, speed_m_per_s, force_n, deployed_m, .. } = mode.start;
+        Row::new(vec![
+            Cell::words(&(index + 1).to_string()),
+            Cell::words(mode.mode.word()),
+            Cell::si(time_s, "s"),
+            Cell::si(travel_m, "m"),
+            Cell::si(speed_m_per_s, "m/s"),
+            Cell::si(force_n, "N"),
+            Cell::si(deployed_m, "m"),
+            Cell::words(why(mode, all.get(index + 1))),
+        ])
+    };
+    Block::Table(Table {
+        id: "modes".to_owned(),
+        caption: "modes in order of time, each with the state at its start".to_owned(),
+        columns: LIST,
+        rows: shown.iter().enumerate().map(row).collect(),
+    })
 }
 
 fn one(solved: &Solved, number: usize, mode: &ModeView, next: Option<&ModeView>, lowest_s: f64) -> Block {
@@ -45,14 +83,7 @@ fn one(solved: &Solved, number: usize, mode: &ModeView, next: Option<&ModeView>,
             let form = ["a power series in τ of the fourth-order motion, one step of it", ""];
             steps.word("x(τ)", "travel, τ = t − t_a", form, "");
         }
-        Form::Third { rest_m } => {
-            steps.given("x_r", "travel that it tends to", rest_m, "m");
-            let form = [
-                "x_r + a e^(r_1 τ) + e^(−α τ)(p cos ωτ + q sin ωτ), roots as above",
-                "a, p, q from x_a, v_a and the force at the start",
-            ];
-            steps.word("x(τ)", "travel, τ = t − t_a", form, "");
-        }
+        Form::Third { .. } => third(&mut steps, mode),
     }
     let inside = lowest_s >= mode.start.time_s && lowest_s < mode.end.time_s;
     if inside {
@@ -127,6 +158,36 @@ fn oscillation(steps: &mut Steps, solved: &Solved, mode: &ModeView) {
         let numbers = format!("atan2({}, {})", digits(b), digits(a));
         steps.step("γ", "phase, x = x_r + C e^(−α τ) cos(ωτ − γ)", ["atan2(B, A)", &numbers], b.atan2(a), "rad");
     }
+}
+
+/// Third order: its roots, and the travel with its constants where the roots are apart.
+fn third(steps: &mut Steps, mode: &ModeView) {
+    let Form::Third { rest_m, real_per_s, decay_per_s, square_per_s2, coefficients } = mode.form else { return };
+    let spread = square_per_s2.abs().sqrt();
+    let waves = square_per_s2 > 0.0;
+    let (w, cos, sin) = if waves { ("ω", "cos", "sin") } else { ("δ", "cosh", "sinh") };
+    steps.given("x_r", "travel that it tends to", rest_m, "m");
+    steps.given("r_1", "real root on this piece", real_per_s, "1/s");
+    steps.given("α", "decay of the other roots", decay_per_s, "1/s");
+    let what = if waves { "frequency of the other roots" } else { "half the distance of the other roots" };
+    steps.given(w, what, spread, "1/s");
+    let Some([p, q, r]) = coefficients.filter(|_| spread > 0.0) else {
+        let words = "three roots so near to each other that the form with one term each says nothing";
+        return steps.word("x(τ)", words, ["", ""], "");
+    };
+    let b = q / spread;
+    let formula = format!("x_r + e^(−α τ) (A {cos} {w}τ + B {sin} {w}τ) + R e^(r_1 τ)");
+    let numbers = format!(
+        "{0} + e^(−{1} τ) ({2} {cos} {3} τ + {4} {sin} {3} τ) + {5} e^({6} τ)",
+        digits(rest_m),
+        digits(decay_per_s),
+        digits(p),
+        digits(spread),
+        signed(b),
+        signed(r),
+        digits(real_per_s)
+    );
+    steps.word("x(τ)", "travel, τ = t − t_a; A, B, R from x, x′, x″ at its start", [&formula, &numbers], "");
 }
 
 /// In brackets where it is negative.
