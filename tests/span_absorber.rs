@@ -175,7 +175,9 @@ fn the_absorber_starts_once_and_stops_where_the_line_force_is_largest() {
     let ours = solved(&fall(90.0, 1.5, Group::damped(6e4, 700.0)), span(2.0), None, 1e-4);
     let of = |what| ours.happenings.iter().filter(|h| h.1 == what).map(|h| h.0).collect::<Vec<_>>();
     assert_eq!(of(Happening::SpanStarts).len(), 1);
-    assert_eq!(of(Happening::SpanStops), [ours.time_peak_force_s]);
+    // Two searches for one instant: times are good to 1e-12.
+    let [stops_s] = of(Happening::SpanStops)[..] else { panic!("stops more or less than once") };
+    assert!((stops_s / ours.time_peak_force_s - 1.0).abs() < 1e-12, "{stops_s} and {}", ours.time_peak_force_s);
     assert!(of(Happening::SpanUsedUp).is_empty());
     let short = solved(&fall(90.0, 1.5, Group::damped(6e4, 700.0)), span(0.06), None, 1e-4);
     assert_eq!(short.happenings.iter().filter(|h| h.1 == Happening::SpanUsedUp).count(), 1);

@@ -86,6 +86,7 @@ impl Run<'_> {
         let after = Elastic::Table(law.table().clone());
         self.work.span_absorber_j += before_j - after.energy_j(stretch_m - shift_m);
         self.fall.to_mut().path.other.elastic = after;
+        self.hang_j = self.fall.hang_j();
         // The turning point is a knot of the new law; what turns back is below it.
         self.state.e[1] = (stretch_m - shift_m).next_down();
         self.state.x -= shift_m;

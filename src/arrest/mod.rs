@@ -9,6 +9,7 @@ mod hang;
 mod ledger;
 mod mode;
 mod motion;
+mod near;
 mod next;
 mod onset;
 pub mod oscillator;

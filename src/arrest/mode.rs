@@ -3,7 +3,7 @@ use super::drift::Drift;
 use super::fourth::{self, Damped};
 use super::oscillator::{Oscillator, Swing};
 use super::outcome::Fall;
-use super::signal::Signal;
+use super::signal::{Moment, Signal};
 use super::third::{Spectrum, Wave};
 use crate::physics::{Group, Piece};
 
@@ -65,8 +65,19 @@ impl Stretch {
     /// State at a time from the start of the stretch.
     #[must_use]
     pub fn state(&self, t: f64) -> State {
-        let pair = if let Signal::Swing(x) = &self.x { Some(x.of.pair(t)) } else { None };
-        let at = |signal: &Signal| signal.value_with(t, pair);
+        self.state_at(&self.moment(t))
+    }
+
+    /// A time from the start of the stretch: all its swings, or waves, are of the same roots.
+    #[must_use]
+    pub fn moment(&self, t: f64) -> Moment {
+        self.x.moment(t)
+    }
+
+    /// State at a moment of the stretch.
+    #[must_use]
+    pub fn state_at(&self, moment: &Moment) -> State {
+        let at = |signal: &Signal| signal.value_at(moment);
         State { x: at(&self.x), v: at(&self.v), e: [at(&self.e[0]), at(&self.e[1])], s: at(&self.s) }
     }
 }
@@ -162,10 +173,11 @@ impl<'a> Path<'a> {
             }
             parts => parts,
         };
-        let compliance: f64 = springs.iter().map(|p| 1.0 / p.slope()).sum();
+        let [k1, k2] = springs.each_ref().map(Part::slope);
+        let k = if k1.is_finite() && k2.is_finite() { 1.0 / (1.0 / k1 + 1.0 / k2) } else { k1.min(k2) };
         let c = springs[0].c + springs[1].c;
         let elastic = springs.iter().find(|p| p.piece.is_some()).map_or(0.0, Part::force);
-        let (x, force) = self.swing(c, 1.0 / compliance, elastic, state);
+        let (x, force) = self.swing(c, k, elastic, state);
         let now = elastic + c * state.v;
         let e = springs.map(|part| {
             if part.piece.is_none() {

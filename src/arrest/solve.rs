@@ -3,13 +3,13 @@ use super::give::SpanState;
 use super::ledger::Work;
 use super::mode::{Mode, Path, Pieces, State, Stretch};
 use super::motion::Motion;
-use super::next::{End, Slider, TOUCH, moving_force};
+use super::next::{End, Ending, Slider, TOUCH, moving_force};
 use super::onset::give_back;
 use super::outcome::{ArrestError, Ended, EnergyAccount, Fall, Happening, Outcome, Settings, WorkCount};
-use super::record::{Record, time_above_s};
+use super::record::{Record, times_above_s};
 use super::roots::take_evaluations;
 use super::settle;
-use super::signal::Signal;
+use super::signal::{Moment, Signal};
 use std::borrow::Cow;
 
 /// More modes than any real arrest has: 120 s of rebounds ten times a second, with knots.
@@ -33,6 +33,21 @@ pub fn solve(fall: &Fall, settings: &Settings) -> Result<Outcome, ArrestError> {
     run.outcome()
 }
 
+/// The end of a stretch.
+pub(super) struct Close {
+    pub at: Moment,
+    pub state: State,
+    /// Kinetic and elastic energy there, J.
+    pub held_j: f64,
+}
+
+impl Close {
+    fn of(fall: &Fall, stretch: &Stretch, at: Moment, pieces: Pieces) -> Self {
+        let state = stretch.state_at(&at);
+        Self { at, state, held_j: fall.held_j(pieces, &state) }
+    }
+}
+
 /// A run in progress.
 pub(super) struct Run<'a> {
     pub fall: Cow<'a, Fall>,
@@ -50,6 +65,8 @@ pub(super) struct Run<'a> {
     account: Option<EnergyAccount>,
     imbalance_j: f64,
     pub record: Record,
+    /// Elastic energy less the weight's at the hang position, J.
+    pub hang_j: f64,
     pub stretches: Vec<Stretch>,
     happenings: Vec<(f64, Happening)>,
     ended: Option<Ended>,
@@ -66,6 +83,7 @@ impl<'a> Run<'a> {
         let speed_m_per_s = fall.speed_at_taut_m_per_s.unwrap_or_else(|| (2.0 * g * h).sqrt());
         let state = State { v: speed_m_per_s, ..State::default() };
         Self {
+            hang_j: fall.hang_j(),
             fall,
             span: None,
             settings,
@@ -80,7 +98,7 @@ impl<'a> Run<'a> {
             account: None,
             imbalance_j: 0.0,
             record: Record::new(),
-            stretches: Vec::with_capacity(16),
+            stretches: Vec::with_capacity(32),
             happenings: Vec::with_capacity(16),
             ended: None,
             settled: None,
@@ -100,51 +118,60 @@ impl<'a> Run<'a> {
             let mut stretch = self.path().stretch(self.mode, pieces, &self.state, self.time_s);
             let left_s = limit_s - self.time_s;
             let horizon = left_s.min(stretch.length_s);
-            let end = self.path().first_end(&stretch, pieces, self.slider, horizon);
-            let end = end.or((horizon < left_s).then_some((horizon, End::StepEnds)));
+            let Ending { at, end } = self.path().first_end(&stretch, pieces, self.slider, horizon);
+            let end = end.map(|end| (at.t, end)).or((horizon < left_s).then_some((horizon, End::StepEnds)));
             let end = self.or_turned(&stretch, end, horizon);
             stretch.length_s = end.map_or(horizon, |(t, _)| t);
-            let reach = stretch.length_s;
+            let at = if stretch.length_s == at.t { at } else { stretch.moment(stretch.length_s) };
+            let mut close = Close::of(&self.fall, &stretch, at, pieces);
+            let reach = close.at;
             // Only a third-order mode can come to a deeper point after its first.
             let deepest_known =
                 self.record.lowest.is_some() && !matches!(stretch.x, Signal::Wave(_) | Signal::Series(_));
-            self.settled = self.settled.or_else(|| settle::time(self, &stretch, end.is_none()));
+            self.settled = self.settled.or_else(|| settle::time(self, &stretch, &close, end.is_none()));
             // What is settled while the slider still moves goes on until the slider stops.
             if let Some((time_s, _)) = self.settled.filter(|_| self.mode != Mode::Sliding) {
                 self.ended = Some(Ended::Settled { time_s });
-                let lowest_s = if deepest_known { None } else { self.record.new_lowest_s(&self.shown(&stretch)) };
+                let lowest_s =
+                    if deepest_known { None } else { self.record.new_lowest_s(&self.shown(&stretch), &reach) };
                 let needed_s = lowest_s.map_or(time_s, |t| time_s.max(t));
-                stretch.length_s = (needed_s - stretch.start_s).clamp(0.0, reach);
+                stretch.length_s = (needed_s - stretch.start_s).clamp(0.0, reach.t);
+                close = Close::of(&self.fall, &stretch, stretch.moment(stretch.length_s), pieces);
             } else if end.is_none() {
                 self.ended = Some(Ended::TimeLimit);
             }
-            self.pass(&stretch, if deepest_known { stretch.length_s } else { reach });
+            let turns_to = if deepest_known { close.at } else { reach };
+            self.pass(&stretch, &close, &turns_to);
             if let (None, Some((_, end))) = (self.ended, end) {
-                self.after(end)?;
+                self.after(end, pieces)?;
             }
         }
         Ok(())
     }
 
     /// Takes in one finished stretch; turning points count up to `reach`.
-    fn pass(&mut self, stretch: &Stretch, reach: f64) {
+    fn pass(&mut self, stretch: &Stretch, close: &Close, reach: &Moment) {
         let shown = self.shown(stretch);
-        self.record.read(&shown, &State { e: [self.before.e[0], self.before.e[1] + self.shift_m()], ..self.before });
+        let before = State { e: [self.before.e[0], self.before.e[1] + self.shift_m()], ..self.before };
+        self.record.read(&shown, &close.at, &before);
         if self.record.lowest.is_some() {
-            self.record.first_highest(&shown, stretch.length_s);
+            self.record.first_highest(&shown, &close.at);
         }
         let mut lowest = None;
         self.record.turnings(&shown, reach, |t| lowest = Some(t));
         if let Some(t) = lowest {
-            let state = stretch.state(t);
-            let account = self.fall.account(&state, self.work + self.fall.work_in(stretch, t));
+            let moment = stretch.moment(t);
+            let state = stretch.state_at(&moment);
+            let account = self.fall.account(&state, self.work + self.fall.work_in(stretch, &moment));
             self.account = Some(self.split(account, state.e[1]));
         }
-        self.work += self.fall.work_in(stretch, stretch.length_s);
+        self.work += self.fall.work_in(stretch, &close.at);
         self.time_s = stretch.start_s + stretch.length_s;
-        self.state = stretch.state(stretch.length_s);
-        self.before = self.state;
-        self.balance();
+        self.state = close.state;
+        self.before = close.state;
+        let put_in = self.fall_energy_j(self.state.x + self.shift_m());
+        let out = close.held_j + self.work.total_j();
+        self.imbalance_j = self.imbalance_j.max((put_in - out).abs());
         self.stretches.push(shown);
     }
 
@@ -156,12 +183,6 @@ impl<'a> Run<'a> {
     /// `m g (h + x)`, J.
     pub fn fall_energy_j(&self, travel_m: f64) -> f64 {
         self.start_j() + self.fall.weight_n() * travel_m
-    }
-
-    fn balance(&mut self) {
-        let put_in = self.fall_energy_j(self.state.x + self.shift_m());
-        let out = self.fall.account(&self.state, self.work).total_j();
-        self.imbalance_j = self.imbalance_j.max((put_in - out).abs());
     }
 
     pub fn happened(&mut self, what: Happening) {
@@ -176,7 +197,7 @@ impl<'a> Run<'a> {
         self.path().pieces(&self.state)
     }
 
-    fn after(&mut self, end: End) -> Result<(), ArrestError> {
+    fn after(&mut self, end: End, pieces: Pieces) -> Result<(), ArrestError> {
         match end {
             End::Slack => {
                 self.go_slack();
@@ -193,22 +214,20 @@ impl<'a> Run<'a> {
             }
             End::StrokeUsedUp => self.lock(),
             End::SliderKnot | End::Knot(..) => {
-                self.snap(end);
+                self.snap(end, pieces);
                 Ok(())
             }
         }
     }
 
-    /// Puts the state exactly on the knot it has reached, on the side it goes to.
-    fn snap(&mut self, end: End) {
+    /// Puts the state exactly on the knot at the end of its piece, on the side it goes to.
+    fn snap(&mut self, end: End, pieces: Pieces) {
         let path = &self.fall.path;
         match end {
             End::Knot(group, up) => {
                 let law = [&path.line.elastic, &path.other.elastic][group];
-                let at = self.state.e[group];
-                let next = law.piece_at(at + 1e-9 * at.abs() * if up { 1.0 } else { -1.0 });
-                if let Some(piece) = law.piece(next) {
-                    self.state.e[group] = if up { piece.x0 } else { piece.x1.next_down() };
+                if let Some(piece) = law.piece(pieces.group[group]) {
+                    self.state.e[group] = if up { piece.x1 } else { piece.x0.next_down() };
                 }
                 if group == 1 && up {
                     self.span_knot();
@@ -216,8 +235,7 @@ impl<'a> Run<'a> {
             }
             End::SliderKnot => {
                 if let Some(absorber) = &path.absorber {
-                    let next = absorber.force.piece_at(self.state.s * (1.0 + 1e-9));
-                    self.state.s = absorber.force.piece(next).x0;
+                    self.state.s = absorber.force.piece(pieces.slider).x1;
                 }
             }
             _ => {}
@@ -325,7 +343,7 @@ impl<'a> Run<'a> {
             span,
             line_elongation_peak_m: self.record.stretch[0].value,
             other_elongation_peak_m: self.record.stretch[1].value,
-            time_above_s: self.settings.levels_n.map(|level| time_above_s(&self.stretches, level, end_s)),
+            time_above_s: times_above_s(&self.stretches, self.settings.levels_n, end_s),
             ended,
             energy,
             energy_residual,
@@ -354,7 +372,7 @@ impl<'a> Run<'a> {
     fn account_at_rest(&self) -> EnergyAccount {
         let rest = State { e: self.fall.hang_elongation_m(), v: 0.0, ..self.state };
         let mut work = self.work;
-        work.damper_j += self.fall.energy_above_j(&self.state);
+        work.damper_j += self.fall.energy_above_j(&self.state, self.hang_j);
         self.split(self.fall.account(&rest, work), rest.e[1])
     }
 
