@@ -156,8 +156,9 @@ fn remedy_row(remedy: &Remedy) -> Row {
     let (value, change) = if let Some(way) = &remedy.way {
         let by = way.value - measure.si();
         let plus = if by > 0.0 { "+" } else { "" };
-        let words = format!("{plus}{}", format_unit(by, measure.unit));
-        (Cell::shown(way.written.clone(), way.value, unit), Cell::shown(words, by, unit))
+        let ways = if way.ways > 1 { format!("; {} separate stretches hold", way.ways) } else { String::new() };
+        let words = format!("{plus}{}{ways}", format_unit(by, measure.unit));
+        (Cell::shown(way.shown.clone(), way.value, unit), Cell::shown(words, by, unit))
     } else {
         let [low, high] = [remedy.range.0, remedy.range.1].map(|v| format_unit(v, measure.unit));
         (Cell::words("none"), Cell::words(&format!("no value from {low} to {high}")))
