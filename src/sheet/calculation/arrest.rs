@@ -27,6 +27,12 @@ pub fn section(report: &Report, system: UnitSystem) -> Section {
         path::constants(&report.scenario, &estimate.solved),
         Block::part("Roots and regime"),
     ];
+    if estimate.plane.is_some() {
+        blocks.push(Block::words(
+            "Of stretch along the line alone, with the pivot above the mass: they tell how the line answers, not how the mass \
+             swings.",
+        ));
+    }
     blocks.extend(path::roots(&estimate.solved));
     blocks.push(Block::part("Motion, mode by mode"));
     if estimate.plane.is_some() {

@@ -83,8 +83,16 @@ fn is_working(table: &Table) -> bool {
     table.columns.iter().any(|column| column.key == "formula")
 }
 
+/// Most rows of a table that is kept on one page.
+const WHOLE: usize = 12;
+
 fn table_class(table: &Table) -> &'static str {
-    if is_working(table) { "steps" } else { "plain" }
+    match (is_working(table), table.rows.len() <= WHOLE) {
+        (true, true) => "steps whole",
+        (true, false) => "steps",
+        (false, true) => "plain whole",
+        (false, false) => "plain",
+    }
 }
 
 fn row(table: &Table, row: &Row) -> Markup {
