@@ -63,6 +63,12 @@ pub enum Command {
     /// Print an annotated scenario to start from
     #[command(before_help = CAUTION_LINE)]
     New(NewArgs),
+    /// Print the JSON Schema of a scenario file, for editors that complete and check keys
+    Schema,
+    /// Print the completions of a shell
+    Completions(CompletionsArgs),
+    /// Print the manual page (roff): commands, options, exit codes and the keys of the screen
+    Manual,
 }
 
 /// Units shown.
@@ -140,6 +146,13 @@ pub struct NewArgs {
     /// Write to this file, which must not exist yet
     #[arg(short, long, value_name = "FILE")]
     pub output: Option<PathBuf>,
+}
+
+/// Arguments of `completions`.
+#[derive(Args, Clone, Debug)]
+pub struct CompletionsArgs {
+    /// The shell
+    pub shell: clap_complete::Shell,
 }
 
 /// Arguments of `spread`.

@@ -27,6 +27,7 @@ pub mod watch;
 pub mod worker;
 
 pub use error::ScreenError;
+pub use panes::help::key_rows;
 
 use crate::quantity::UnitSystem;
 use crate::scenario::Document;

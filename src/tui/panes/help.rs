@@ -1,6 +1,6 @@
 //! The help screen, generated from the table of commands.
 use crate::margin::Verdict;
-use crate::tui::command::{COMMANDS, Group};
+use crate::tui::command::{COMMANDS, Entry, Group};
 use crate::tui::lean::Lean;
 use crate::tui::model::Model;
 use crate::tui::text::wrap;
@@ -51,6 +51,15 @@ fn lines(model: &Model, width: usize) -> Vec<Line<'static>> {
         push(&mut lines, &format!("{} {}", verdict.symbol(), verdict.word()), meaning(verdict), width, model);
     }
     lines
+}
+
+/// Every command of the screen in the order of this list: its heading, its keys, what they do.
+#[must_use]
+pub fn key_rows() -> Vec<(&'static str, String, &'static str)> {
+    let names = |entry: &Entry| entry.keys.iter().map(|key| key.name()).collect::<Vec<_>>().join(", ");
+    let rows = |group: Group| COMMANDS.iter().filter(move |entry| entry.group == group);
+    let row = |group: Group| rows(group).map(move |entry| (group.title(), names(entry), entry.help));
+    Group::ALL.into_iter().flat_map(row).collect()
 }
 
 const fn meaning(verdict: Verdict) -> &'static str {
