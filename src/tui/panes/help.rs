@@ -37,7 +37,7 @@ fn lines(model: &Model, width: usize) -> Vec<Line<'static>> {
     lines.push(Line::from(Span::styled("mouse", model.theme.heading())));
     let mouse = [
         ("click", "choose an input, a check, a tab or an event"),
-        ("drag", "on the play bar or in History: scrub"),
+        ("drag", "on the play bar or in History: scrub; in Map: move the point"),
         ("wheel", "walk a list; over the text below the inputs: nudge; over the view: step in time"),
     ];
     for (name, words) in mouse {
@@ -50,6 +50,7 @@ fn lines(model: &Model, width: usize) -> Vec<Line<'static>> {
     for verdict in [Verdict::Holds, Verdict::Thin, Verdict::Short, Verdict::Open] {
         push(&mut lines, &format!("{} {}", verdict.symbol(), verdict.word()), meaning(verdict), width, model);
     }
+    push(&mut lines, "? bands", "holds at the typical values; the worst in the bands is not known yet", width, model);
     lines
 }
 
