@@ -33,6 +33,13 @@ const EXAMPLES: &[(&str, &[&str])] = &[
         ],
     ),
     ("compare", &["underfoot compare scenarios/low-scaffold-short.toml scenarios/roof-foot-level.toml"]),
+    (
+        "sheet",
+        &[
+            "underfoot sheet scenarios/roof-foot-level.toml -o sheet.html",
+            "underfoot sheet scenarios/low-scaffold-short.toml --remedies --units us -o sheet.md",
+        ],
+    ),
     ("limits", &["underfoot limits --json"]),
     ("new", &["underfoot new -o my-roof.toml"]),
     ("schema", &["underfoot schema > scenario.schema.json"]),
