@@ -105,7 +105,7 @@ fn completions_of_an_unknown_shell_are_refused_with_the_known_ones() {
 #[test]
 fn the_schema_command_prints_the_committed_schema() {
     let (code, printed, _) = underfoot(&["schema"]);
-    let copy = Path::new(env!("CARGO_MANIFEST_DIR")).join("scenarios/scenario.schema.json");
+    let copy = Path::new(env!("CARGO_MANIFEST_DIR")).join("src/scenario/scenario.schema.json");
     assert_eq!(code, 0);
     assert_eq!(printed, std::fs::read_to_string(copy).unwrap());
 }

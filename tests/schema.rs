@@ -35,7 +35,7 @@ fn faults(validator: &Validator, value: &Value) -> Vec<String> {
 
 #[test]
 fn the_committed_schema_is_the_one_that_is_printed() {
-    let copy = root().join("scenarios/scenario.schema.json");
+    let copy = root().join("src/scenario/scenario.schema.json");
     let printed = format!("{}\n", serde_json::to_string_pretty(&schema()).unwrap());
     if std::env::var_os("UNDERFOOT_BLESS").is_some() {
         std::fs::write(&copy, &printed).unwrap();

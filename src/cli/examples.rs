@@ -34,6 +34,13 @@ const EXAMPLES: &[(&str, &[&str])] = &[
     ),
     ("compare", &["underfoot compare scenarios/low-scaffold-short.toml scenarios/roof-foot-level.toml"]),
     (
+        "sheet",
+        &[
+            "underfoot sheet scenarios/roof-foot-level.toml -o sheet.html",
+            "underfoot sheet scenarios/low-scaffold-short.toml --remedies --units us -o sheet.md",
+        ],
+    ),
+    (
         "walk",
         &[
             "underfoot walk scenarios/walks/longer-or-shorter-lanyard.walk.toml",
@@ -63,6 +70,5 @@ pub fn command() -> clap::Command {
 fn with_examples(command: clap::Command, examples: &[&str]) -> clap::Command {
     let before = command.get_after_help().map(|text| format!("{text}\n\n")).unwrap_or_default();
     let head = if examples.len() == 1 { "Example:" } else { "Examples:" };
-    let lines: String = examples.iter().map(|example| format!("\n  {example}")).collect();
-    command.after_help(format!("{before}{head}{lines}"))
+    command.after_help(format!("{before}{head}\n  {}", examples.join("\n  ")))
 }

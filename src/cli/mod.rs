@@ -10,6 +10,7 @@ mod options;
 mod output;
 mod reference;
 mod run;
+mod sheet;
 mod spread;
 mod study;
 mod vary;
@@ -69,6 +70,7 @@ fn dispatch(arguments: Arguments) -> Next {
         (Some(Command::Compare(args)), _) => Next::Exit(study::compare(&args)),
         (Some(Command::Vary(args)), _) => Next::Exit(vary::vary_inputs(&args)),
         (Some(Command::Remedy(args)), _) => Next::Exit(study::remedy(&args)),
+        (Some(Command::Sheet(args)), _) => Next::Exit(sheet::sheet(&args)),
         (Some(Command::Spread(args)), _) => Next::Exit(spread::spread(&args)),
         (Some(Command::Walk(args)), _) => walk::walk(&args),
         (Some(Command::Limits(args)), _) => Next::Exit(new::limits(&args)),

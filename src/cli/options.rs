@@ -57,6 +57,9 @@ pub enum Command {
     /// Tell what differs between two files: inputs, numbers, verdicts
     #[command(before_help = CAUTION_LINE, after_help = COMPARE_CODES)]
     Compare(CompareArgs),
+    /// Write the calculation sheet of a file: every step with its numbers, for whoever reviews and signs
+    #[command(before_help = CAUTION_LINE, after_help = EXIT_CODES)]
+    Sheet(SheetArgs),
     /// Lead a crew through a scenario: play a walk-through file stop by stop
     #[command(before_help = CAUTION_LINE, after_help = WALK_CODES)]
     Walk(WalkArgs),
@@ -303,4 +306,23 @@ pub struct RemedyArgs {
     /// Units shown in text beside those of the file
     #[arg(long, value_enum)]
     pub units: Option<Units>,
+}
+
+/// Arguments of `sheet`.
+#[derive(Args, Clone, Debug)]
+pub struct SheetArgs {
+    /// Scenario file
+    pub file: PathBuf,
+    /// Where the sheet goes: its ending says what it is, `.html`, `.md` or `.json`
+    #[arg(short, long, value_name = "OUT")]
+    pub output: Option<PathBuf>,
+    /// Write over a sheet that exists
+    #[arg(long)]
+    pub replace: bool,
+    /// Add the nearest values at which every check holds
+    #[arg(long)]
+    pub remedies: bool,
+    /// Units of the results; inputs stand as the file states them
+    #[arg(long, value_enum, default_value_t)]
+    pub units: Units,
 }

@@ -26,7 +26,8 @@ pub fn print_completions(shell: Shell) -> Code {
     Code::Holds
 }
 
-/// Prints the manual page.
+/// Prints the manual page; gives the exit code.
+#[must_use]
 pub fn print_manual(keys: &[KeyRow]) -> Code {
     match manual(keys) {
         Ok(text) => {
@@ -114,7 +115,8 @@ pub fn commands_markdown() -> String {
         .map(|command| (usage(command), command.get_about().map(ToString::to_string).unwrap_or_default()))
         .collect();
     let width = rows.iter().map(|(usage, _)| usage.len()).max().unwrap_or(0);
-    rows.iter().map(|(usage, about)| format!("    {usage:width$}  {about}\n")).collect()
+    let lines: Vec<String> = rows.iter().map(|(usage, about)| format!("    {usage:width$}  {about}\n")).collect();
+    lines.concat()
 }
 
 /// `underfoot vary FILE --over PATH`: the command with what it cannot do without.

@@ -2,6 +2,7 @@
 mod audit;
 mod band_words;
 mod bands;
+mod calculation;
 mod caution;
 mod compare;
 mod csv;
@@ -30,6 +31,7 @@ pub use band_words::{
     bands_object, bands_sentence, place_word, place_words, report_margin_object, share_object, share_words, worst_words,
 };
 pub use bands::{InputAt, MarginBand, ReportBands, report_bands};
+pub use calculation::*;
 pub use caution::{CAUTION_LINE, CAUTIONS, EQUIPMENT_CAUTIONS, LEFT_OUT};
 pub use compare::{compare_object, compare_text, comparison};
 pub use csv::csv;
