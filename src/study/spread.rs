@@ -2,12 +2,12 @@
 use super::evaluate::{Evaluator, Run, StudyError};
 use super::sample::Sampler;
 use super::sobol::MOST_POINTS;
-use crate::estimate::{Number, Numbers, Value};
+use crate::estimate::{Number, Value};
 use crate::margin::{CheckKind, Verdict};
 use crate::quantity::Dimension;
 use rayon::prelude::*;
 use std::collections::BTreeMap;
-use std::ops::ControlFlow;
+use std::ops::{ControlFlow, Range};
 
 /// The numbers whose spread is kept, where they apply; clearances are kept beside them.
 pub const KEY_NUMBERS: &[&str] = &[
@@ -29,6 +29,8 @@ pub const QUANTILE_SHARES: [f64; 7] = [0.0, 0.05, 0.25, 0.5, 0.75, 0.95, 1.0];
 pub const BARS: usize = 32;
 /// Runs between two looks at whether to stop; a part is always a multiple of it, or the whole.
 pub const BATCH: usize = 256;
+/// Runs that one thread gathers before they are put together in order.
+const PART: usize = 16;
 /// Two-sided 95 % point of the normal distribution.
 const Z_95: f64 = 1.959_963_984_540_054;
 
@@ -159,34 +161,16 @@ pub fn spread(
     let mut gathered = Gathered::default();
     while gathered.samples < samples {
         let batch = gathered.samples..(gathered.samples + BATCH).min(samples);
-        let row = |index| evaluator.peaks_at(&sampler.values(index)).map(|run| Row::of(&run));
-        let rows = batch.into_par_iter().map(row).collect::<Result<Vec<_>, _>>()?;
-        for row in rows {
-            gathered.take(row);
+        let starts: Vec<usize> = batch.clone().step_by(PART).collect();
+        let part = |start: usize| Gathered::of(evaluator, &sampler, start..(start + PART).min(batch.end));
+        for part in starts.into_par_iter().map(part).collect::<Result<Vec<_>, _>>()? {
+            gathered.append(part);
         }
         if watch(gathered.samples).is_break() {
             break;
         }
     }
     Ok(gathered.spread(samples, seed))
-}
-
-/// What is kept of one run.
-struct Row {
-    failed: bool,
-    verdicts: Vec<(CheckKind, Verdict)>,
-    numbers: Numbers,
-}
-
-impl Row {
-    fn of(run: &Run) -> Self {
-        let is_key = |id: &str| KEY_NUMBERS.contains(&id) || id.starts_with("clearance.");
-        Self {
-            failed: run.failure.is_some(),
-            verdicts: run.checks.iter().map(|check| (check.kind, check.verdict)).collect(),
-            numbers: run.numbers.iter().filter(|number| is_key(&number.id)).cloned().collect(),
-        }
-    }
 }
 
 /// Values of one number in order of the samples.
@@ -207,20 +191,48 @@ struct Gathered {
 }
 
 impl Gathered {
-    fn take(&mut self, row: Row) {
+    /// The runs of some samples, in their order.
+    fn of(evaluator: &Evaluator, sampler: &Sampler, samples: Range<usize>) -> Result<Self, StudyError> {
+        let mut gathered = Self::default();
+        for index in samples {
+            gathered.take(&evaluator.peaks_at(&sampler.values(index))?);
+        }
+        Ok(gathered)
+    }
+
+    fn take(&mut self, run: &Run) {
         self.samples += 1;
-        self.failed += usize::from(row.failed);
-        for (kind, verdict) in row.verdicts {
-            let at = match verdict {
+        self.failed += usize::from(run.failure.is_some());
+        for check in &run.checks {
+            let at = match check.verdict {
                 Verdict::Holds => 0,
                 Verdict::Open => 1,
                 Verdict::Thin | Verdict::Short => 2,
             };
-            self.verdicts.entry(kind).or_default()[at] += 1;
+            self.verdicts.entry(check.kind).or_default()[at] += 1;
         }
-        for (place, number) in row.numbers.iter().enumerate() {
+        let is_key = |id: &str| KEY_NUMBERS.contains(&id) || id.starts_with("clearance.");
+        for (place, number) in run.numbers.iter().filter(|number| is_key(&number.id)).enumerate() {
             if let Value::Number(value) = number.value {
                 self.column(place, number).values.push(value);
+            }
+        }
+    }
+
+    /// The samples that come after these: the same as if each had been taken after the other.
+    fn append(&mut self, later: Self) {
+        self.samples += later.samples;
+        self.failed += later.failed;
+        for (kind, counts) in later.verdicts {
+            let own = self.verdicts.entry(kind).or_default();
+            for (own, more) in own.iter_mut().zip(counts) {
+                *own += more;
+            }
+        }
+        for (id, column) in later.columns {
+            match self.columns.iter_mut().find(|(own, _)| *own == id) {
+                Some((_, own)) => own.values.extend(column.values),
+                None => self.columns.push((id, column)),
             }
         }
     }
