@@ -1,6 +1,7 @@
 //! The command line: arguments in, results to stdout, messages to stderr, one exit code out.
 mod audit;
 mod exit;
+mod gather;
 mod interrupt;
 mod locate;
 mod meter;

@@ -16,7 +16,7 @@ mod watch;
 mod worst;
 
 pub use band::{NORMAL_WIDTH, Quantile};
-pub use bands::{Bands, MOST_SAMPLES, Sampling, USUAL_SAMPLES, USUAL_SEED, bands};
+pub use bands::{Bands, MOST_SAMPLES, Sampling, USUAL_SAMPLES, USUAL_SEED, bands, worst_only};
 pub use compare::{Comparison, InputChange, NumberChange, SAME_SHARE, Side, VerdictChange, compare};
 pub use evaluate::{Evaluator, Failure, Run, StudyError};
 pub use rank::{Bar, Importance, Part, Ranking, Target, bars, importance, importance_of, importances};
