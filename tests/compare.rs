@@ -90,3 +90,30 @@ fn json_carries_the_same_differences_with_units_and_cautions() {
 fn a_faulty_file_ends_with_2() {
     compared(&shipped(), "gravity = 3", 2, &[]);
 }
+
+#[test]
+fn bands_and_their_shapes_are_differences_of_their_own() {
+    let with = |mass: &str| shipped().replace("mass = \"100 kg\"", &format!("mass = {mass}"));
+    assert_ne!(with("\"90..110 kg\""), shipped());
+    let wide = compared(&shipped(), &with("\"90..110 kg\""), 0, &[]);
+    assert!(wide.contains("100 kg -> 90..110 kg"), "{wide}");
+    let shaped = with("{ low = \"90 kg\", typical = \"100 kg\", high = \"110 kg\", shape = \"triangular\" }");
+    let text = compared(&with("\"90..110 kg\""), &shaped, 0, &[]);
+    assert!(text.contains("90..110 kg -> 90..110 kg (triangular)"), "{text}");
+    let json: Value = serde_json::from_str(&compared(&shipped(), &shaped, 0, &["--json"])).unwrap();
+    let change = &json["inputs"][0];
+    assert_eq!((&change["path"], &change["second_band"]["shape"]), (&"subject.mass".into(), &"triangular".into()));
+    assert_eq!((&change["first_band"]["high"], &change["second_band"]["high"]), (&100.0.into(), &110.0.into()));
+    assert_eq!(change["second_band"]["unit"], "kg");
+}
+
+#[test]
+fn a_band_that_makes_a_check_thin_is_a_changed_verdict() {
+    let at = |mass: &str| {
+        higher()
+            .replace("top = \"-3 m\"", "top = \"-1.5 m\"")
+            .replace("mass = \"100 kg\"", &format!("mass = \"{mass}\""))
+    };
+    let run = compared(&at("100 kg"), &at("100..100..180 kg"), 1, &[]);
+    assert!(run.contains("o holds -> ~ thin"), "{run}");
+}

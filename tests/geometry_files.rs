@@ -145,7 +145,7 @@ fn a_span_with_a_damped_harness_is_refused_and_with_a_plain_one_solved() {
     let text = on_a_span() + "[harness]\nstiffness = \"80 kN/m\"\ndamping = \"900 N s/m\"\n";
     refused(
         &text,
-        &["damping of the harness beside a horizontal lifeline", "leave out `harness.damping`"],
+        &["damping of the harness is not solved beside a horizontal lifeline", "leave out `harness.damping`"],
         "damping =",
     );
     solved(&text.replace("damping = \"900 N s/m\"\n", ""));
@@ -154,7 +154,7 @@ fn a_span_with_a_damped_harness_is_refused_and_with_a_plain_one_solved() {
 #[test]
 fn a_span_with_its_line_beside_the_fall_line_is_refused() {
     let text = FILE.to_owned() + SPAN;
-    let pieces = ["a horizontal lifeline with its line beside the fall line", "`place.anchor_offset`"];
+    let pieces = ["a line beside the fall line pulls a horizontal lifeline sideways", "`place.anchor_offset`"];
     refused(&text, &pieces, "kind = \"span\"");
     refused(&(edge("1 m", "11.5 m") + SPAN), &pieces, "kind = \"span\"");
     // Over an edge on the fall line itself the fall is straight, but the line still pulls the span aside.

@@ -433,3 +433,18 @@ fn a_rope_with_a_table_is_judged_by_what_the_table_says_between_its_two_loads() 
     let beyond = one(&scenario(&text, "rope-1891"), &swung(&[]), "static_elongation");
     assert_eq!(beyond.verdict, Verdict::Open);
 }
+
+#[test]
+fn the_stroke_of_an_absorber_in_line_is_judged_and_short_once_it_is_used_up() {
+    let file =
+        scenario(&format!("{SPAN}\n[anchor.span.absorber]\ndeploy_force = \"8 kN\"\nstroke = \"0.8 m\"\n"), "eu-363");
+    let given = |m: f64, used_up: f64| [("span_deployed_length", m), ("span_stroke_used_up", used_up)];
+    let holds = one(&file, &given(0.5, 0.0), "span_stroke");
+    assert_eq!((holds.demand, holds.limit, holds.verdict), (Some(0.5), Some(0.8), Verdict::Holds));
+    assert!(holds.basis.words.contains("`anchor.span.absorber.stroke`"), "{}", holds.basis.words);
+    let short = one(&file, &given(0.8, 1.0), "span_stroke");
+    assert_eq!(short.verdict, Verdict::Short);
+    assert!(short.note.unwrap().contains("stroke is used up"));
+    assert_eq!(one(&file, &[], "span_stroke").verdict, Verdict::Open);
+    assert!(!ids(&scenario(SPAN, "eu-363"), &[]).contains(&"span_stroke".to_owned()));
+}

@@ -212,6 +212,8 @@ fn a_line_stretched_beyond_its_table_is_open_and_not_judged_as_if_the_table_went
         panic!("{:?}", run.validity);
     };
     assert!((elongation_m - 4.0 / 30.0).abs() < 1e-9 && last_m == 0.1);
+    let told = "line elongation of 0.133 m (0.437 ft) is beyond the 0.100 m (0.328 ft) where the line's table ends";
+    assert!(run.warnings[0].contains(told) && run.warnings[0].contains("open"), "{:?}", run.warnings);
     let forces: Vec<_> = margins(&scenario, &run).unwrap().into_iter().filter(|m| m.id == "arrest_force").collect();
     assert_eq!(forces[0].verdict, Verdict::Open);
     assert!(forces[0].note.as_ref().is_some_and(|note| note.contains("0.133 m is beyond the 0.100 m")), "{forces:?}");

@@ -1,5 +1,5 @@
 //! Constant acceleration with relaxing dampers: slack flight, and deployment at a constant force.
-use super::roots::{Passage, first_passage, monotone_zero};
+use super::roots::{Passage, Passing, first_passing, monotone_zero};
 use super::signal::Turn;
 
 /// `w(t) = c0 + c1 t + c2 t^2 + sum of E exp(-r t)` over at most two relaxations with `r > 0`.
@@ -58,6 +58,58 @@ impl Drift {
         Self { c: [a * c0 + b, a * c1, a * c2], relax: self.relax.map(|(e, r)| (a * e, r)) }
     }
 
+    /// Amplitude and rate where it does nothing but relax, in one go; amplitude 0 where it never changes.
+    fn only_relaxation(&self) -> Option<(f64, f64)> {
+        let [first, second] = self.relax;
+        let still = self.c[1] == 0.0 && self.c[2] == 0.0;
+        match (first.0 == 0.0, second.0 == 0.0) {
+            (_, true) if still => Some(first),
+            (true, false) if still => Some(second),
+            _ => None,
+        }
+    }
+
+    /// The values at the start and at `t`, where it is monotone between for a plain reason: it only relaxes, or is a
+    /// parabola whose slope has one sign at both ends.
+    #[must_use]
+    pub fn monotone_ends(&self, t: f64) -> Option<[f64; 2]> {
+        let [_, c1, c2] = self.c;
+        let parabola = self.relax.iter().all(|(e, _)| *e == 0.0) && c1 * (c1 + 2.0 * c2 * t) > 0.0;
+        (parabola || self.only_relaxation().is_some()).then(|| [self.value(0.0), self.value(t)])
+    }
+
+    /// Whether it only relaxes, from and to values that are not above a level.
+    #[must_use]
+    pub fn stays_below(&self, level: f64) -> bool {
+        self.only_relaxation().is_some_and(|(e, _)| self.c[0] + e.max(0.0) <= level)
+    }
+
+    /// First passage of `c0 + E exp(-r t)` in closed form.
+    fn relaxed_passing(
+        &self,
+        (e, r): (f64, f64),
+        level: f64,
+        passage: Passage,
+        (from, to): (f64, f64),
+    ) -> Option<Passing> {
+        let at = |t: f64| self.value(t) - level;
+        let (start, end) = (at(from), at(to));
+        if e == 0.0 || !passage.shows(start, end) {
+            return None;
+        }
+        // exp(-r t) = (level - c0)/E = 1 - (value at 0 - level)/E.
+        let time = -(-(self.c[0] + e - level) / e).ln_1p() / r;
+        Some(Passing { time: time.clamp(from, to), beyond: end.abs() })
+    }
+
+    /// With a single relaxation, where the curvature `2 c2 + E r^2 exp(-r t)` is zero, or not a number where it never
+    /// is.
+    fn only_bend(&self) -> Option<f64> {
+        let [(e1, r1), (e2, r2)] = self.relax;
+        let (e, r) = if e2 == 0.0 { (e1, r1) } else { (e2, r2) };
+        (e1 == 0.0 || e2 == 0.0).then(|| (-e * r * r / (2.0 * self.c[2])).ln() / r)
+    }
+
     /// Where the third derivative is zero: at most once.
     fn third_derivative_zero(&self) -> Option<f64> {
         let [(e1, r1), (e2, r2)] = self.relax;
@@ -80,8 +132,13 @@ impl Drift {
             return turns;
         }
         let curvature = slope.derivative();
-        let bends = crossings(&curvature, from, self.third_derivative_zero().into_iter(), to);
-        let found = crossings(&slope, from, bends.into_iter().flatten().map(|(t, _)| t), to);
+        let bends = match self.only_bend() {
+            Some(bend) => [Some(bend).filter(|&t| t > from && t < to), None, None],
+            None => {
+                crossings(&curvature, from, self.third_derivative_zero().into_iter(), to).map(|b| b.map(|(t, _)| t))
+            }
+        };
+        let found = crossings(&slope, from, bends.into_iter().flatten(), to);
         for (slot, (time, passage)) in turns.iter_mut().zip(found.into_iter().flatten()) {
             *slot = Some(Turn { time, is_maximum: passage == Passage::Down });
         }
@@ -90,9 +147,12 @@ impl Drift {
 
     /// First passage of `level` in `(from, to]`.
     #[must_use]
-    pub fn first_passage(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<f64> {
+    pub fn first_passing(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<Passing> {
+        if let Some(relaxation) = self.only_relaxation() {
+            return self.relaxed_passing(relaxation, level, passage, (from, to));
+        }
         let turns = self.turns(from, to);
-        first_passage(
+        first_passing(
             |t| {
                 let (w, slope) = self.value_slope(t);
                 (w - level, slope)

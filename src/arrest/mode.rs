@@ -1,8 +1,9 @@
 //! The modes of the path and the exact solution of each.
 use super::drift::Drift;
+use super::fourth::{self, Damped};
 use super::oscillator::{Oscillator, Swing};
-use super::outcome::{ArrestError, Fall};
-use super::signal::Signal;
+use super::outcome::Fall;
+use super::signal::{Moment, Signal};
 use super::third::{Spectrum, Wave};
 use crate::physics::{Group, Piece};
 
@@ -64,8 +65,19 @@ impl Stretch {
     /// State at a time from the start of the stretch.
     #[must_use]
     pub fn state(&self, t: f64) -> State {
-        let pair = if let Signal::Swing(x) = &self.x { Some(x.of.pair(t)) } else { None };
-        let at = |signal: &Signal| signal.value_with(t, pair);
+        self.state_at(&self.moment(t))
+    }
+
+    /// A time from the start of the stretch: all its swings, or waves, are of the same roots.
+    #[must_use]
+    pub fn moment(&self, t: f64) -> Moment {
+        self.x.moment(t)
+    }
+
+    /// State at a moment of the stretch.
+    #[must_use]
+    pub fn state_at(&self, moment: &Moment) -> State {
+        let at = |signal: &Signal| signal.value_at(moment);
         State { x: at(&self.x), v: at(&self.v), e: [at(&self.e[0]), at(&self.e[1])], s: at(&self.s) }
     }
 }
@@ -128,15 +140,15 @@ impl<'a> Path<'a> {
     }
 
     /// The exact solution of a mode from a state.
-    pub fn stretch(&self, mode: Mode, pieces: Pieces, state: &State, start_s: f64) -> Result<Stretch, ArrestError> {
+    pub fn stretch(&self, mode: Mode, pieces: Pieces, state: &State, start_s: f64) -> Stretch {
         let parts = self.parts(pieces, state);
         let mut stretch = match mode {
             Mode::Slack => self.slack(&parts, state),
-            Mode::Sliding => self.sliding(&parts, pieces.slider, state)?,
+            Mode::Sliding => self.sliding(&parts, pieces.slider, state),
             Mode::Stuck => self.stuck(&parts, state),
         };
         stretch.start_s = start_s;
-        Ok(stretch)
+        stretch
     }
 
     fn slack(&self, parts: &[Part; 2], state: &State) -> Stretch {
@@ -161,10 +173,11 @@ impl<'a> Path<'a> {
             }
             parts => parts,
         };
-        let compliance: f64 = springs.iter().map(|p| 1.0 / p.slope()).sum();
+        let [k1, k2] = springs.each_ref().map(Part::slope);
+        let k = if k1.is_finite() && k2.is_finite() { 1.0 / (1.0 / k1 + 1.0 / k2) } else { k1.min(k2) };
         let c = springs[0].c + springs[1].c;
         let elastic = springs.iter().find(|p| p.piece.is_some()).map_or(0.0, Part::force);
-        let (x, force) = self.swing(c, 1.0 / compliance, elastic, state);
+        let (x, force) = self.swing(c, k, elastic, state);
         let now = elastic + c * state.v;
         let e = springs.map(|part| {
             if part.piece.is_none() {
@@ -195,18 +208,33 @@ impl<'a> Path<'a> {
         Self::taut(Mode::Stuck, Signal::constant(state.x), zero, Signal::constant(self.weight()), [zero; 2], state)
     }
 
-    fn sliding(&self, parts: &[Part; 2], piece: usize, state: &State) -> Result<Stretch, ArrestError> {
-        let Some(absorber) = &self.fall.path.absorber else { return Ok(self.stuck(parts, state)) };
+    fn sliding(&self, parts: &[Part; 2], piece: usize, state: &State) -> Stretch {
+        let Some(absorber) = &self.fall.path.absorber else { return self.stuck(parts, state) };
         let piece = absorber.force.piece(piece);
         let force = piece.value(state.s);
         if piece.slope == 0.0 {
-            return Ok(self.sliding_at(force, parts, state));
+            return self.sliding_at(force, parts, state);
         }
         match parts.iter().filter(|p| p.c > 0.0).count() {
-            0 => Ok(self.sliding_spring(piece.slope, force, parts, state)),
-            1 => Ok(self.third(Mode::Sliding, parts, state, Some((piece.slope, force)))),
-            _ => Err(ArrestError::FourthOrder),
+            0 => self.sliding_spring(piece.slope, force, parts, state),
+            1 => self.third(Mode::Sliding, parts, state, Some((piece.slope, force))),
+            _ => self.fourth(parts, state, (piece.slope, force)),
         }
+    }
+
+    fn fourth(&self, parts: &[Part; 2], state: &State, (slope, force): (f64, f64)) -> Stretch {
+        let damped = |p: &Part| Damped { force: p.force(), stretch: p.e, stiffness: p.slope(), damping: p.c };
+        fourth::Sliding {
+            mass: self.fall.mass_kg,
+            gravity: self.fall.gravity_m_per_s2,
+            x: state.x,
+            v: state.v,
+            s: state.s,
+            force,
+            slope,
+            parts: [damped(&parts[0]), damped(&parts[1])],
+        }
+        .step()
     }
 
     fn sliding_at(&self, force: f64, parts: &[Part; 2], state: &State) -> Stretch {

@@ -47,14 +47,6 @@ impl Motion {
         self.stretches.last().map_or(0.0, |s| s.start_s + s.length_s)
     }
 
-    /// Drops everything after a time, s.
-    pub fn end_at(&mut self, time_s: f64) {
-        self.stretches.retain(|s| s.start_s < time_s);
-        if let Some(last) = self.stretches.last_mut() {
-            last.length_s = last.length_s.min(time_s - last.start_s);
-        }
-    }
-
     /// The state at a time, clamped to the motion; at a change of mode, just after it.
     #[must_use]
     pub fn at(&self, time_s: f64) -> Instant {

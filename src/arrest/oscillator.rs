@@ -4,7 +4,8 @@
 //! `exp(-alpha t) (P C(t) + Q S(t))`, where `C' = -q S`, `S' = C`, that is `cos` and `sin/omega` for `q > 0`, `cosh`
 //! and `sinh/delta` for `q < 0`. Nothing divides by the difference of the two roots, so no digits are lost near
 //! critical damping.
-use super::roots::{Passage, first_passage};
+use super::roots::{Passage, Passing, first_passing};
+use std::f64::consts::PI;
 
 /// The class of a damped oscillator.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -63,6 +64,9 @@ impl Oscillator {
     /// larger of the two exponentials.
     #[must_use]
     pub fn pair(&self, t: f64) -> (f64, f64) {
+        if t == 0.0 {
+            return (1.0, 0.0);
+        }
         let angle = self.frequency * t;
         if angle < 1e-3 {
             let z = -self.q * t * t;
@@ -135,7 +139,12 @@ impl Swing {
     /// Value and slope at `t`.
     #[must_use]
     pub fn value_slope(&self, t: f64) -> (f64, f64) {
-        let (c, s) = self.of.pair(t);
+        self.value_slope_of_pair(self.of.pair(t))
+    }
+
+    /// Value and slope where [`Oscillator::pair`] is known.
+    #[must_use]
+    pub fn value_slope_of_pair(&self, (c, s): (f64, f64)) -> (f64, f64) {
         let Oscillator { decay, q, .. } = self.of;
         (self.rest + self.p * c + self.q * s, (self.q - decay * self.p) * c - (decay * self.q + q * self.p) * s)
     }
@@ -148,7 +157,7 @@ impl Swing {
             return None;
         }
         if self.of.q > 0.0 {
-            let period = std::f64::consts::PI / frequency;
+            let period = PI / frequency;
             // The angle in (0, pi), from a non-negative sine, so that a zero right at the start keeps its digits.
             let (sine, cosine) = (-self.p * frequency, self.q);
             let angle = if sine < 0.0 { (-sine).atan2(-cosine) } else { sine.atan2(cosine) };
@@ -174,8 +183,15 @@ impl Swing {
     /// First maximum after `from` and before `to`: turning points alternate about the rest value.
     #[must_use]
     pub fn first_maximum(&self, from: f64, to: f64) -> Option<f64> {
-        let (first, period) = self.first_turn(from)?;
-        let time = if self.value(first) > self.rest { first } else { first + period };
+        let rate = self.derivative();
+        let (first, period) = rate.first_zero(from)?;
+        // From the start, the slope there tells it; late in a decay only what is left of the value does.
+        let is_maximum = if from == 0.0 && self.of.decay * first < 1.0 {
+            rate.p > 0.0 || (rate.p == 0.0 && rate.q > 0.0)
+        } else {
+            self.value(first) > self.rest
+        };
+        let time = if is_maximum { first } else { first + period };
         (time < to).then_some(time)
     }
 
@@ -188,16 +204,26 @@ impl Swing {
         })
     }
 
-    /// First passage of `level` in `(from, to]`. Turning points close in on the rest value from both sides, so after
-    /// one of each without passage there is none.
+    /// First passage of `level` in `(from, to]`. See [`super::near`] for what is found or ruled out without a search.
     #[must_use]
-    pub fn first_passage(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<f64> {
+    pub fn first_passing(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<Passing> {
+        if self.stays_off(level) {
+            return None;
+        }
+        let near = if from == 0.0 { self.near_passing(level, passage, to) } else { None };
+        near.or_else(|| self.searched_passing(level, passage, from, to))
+    }
+
+    /// First passage of `level` in `(from, to]`, searched between turning points. They close in on the rest value from
+    /// both sides, so after one of each without passage there is none.
+    #[must_use]
+    pub fn searched_passing(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<Passing> {
         let mut turns = [f64::INFINITY; 3];
         for (slot, turn) in turns.iter_mut().zip(self.turn_times(from, to)) {
             *slot = turn;
         }
         let end = if turns[2] < to { turns[2] } else { to };
-        first_passage(
+        first_passing(
             |t| {
                 let (w, slope) = self.value_slope(t);
                 (w - level, slope)
@@ -209,14 +235,18 @@ impl Swing {
         )
     }
 
-    /// Integral of `w^2` over `0..t` for a swing with rest value 0, relative accuracy about 1e-12.
+    /// Integral of `w^2` over `0..t` for a swing with rest value 0, relative accuracy about 1e-12; `pair` is
+    /// [`Oscillator::pair`] at `t`.
     #[must_use]
-    pub fn square_integral(&self, t: f64) -> f64 {
+    pub fn square_integral(&self, t: f64, pair: (f64, f64)) -> f64 {
         let Oscillator { decay, q, frequency, .. } = self.of;
         if q > 0.0 && frequency > 0.3 * decay {
             let (re, im) = (self.p, -self.q / frequency);
-            let steady = 0.5 * re.hypot(im).powi(2) * decayed_time(2.0 * decay, t);
-            return steady + 0.5 * waving_integral(re * re - im * im, 2.0 * re * im, 2.0 * decay, 2.0 * frequency, t);
+            let steady = 0.5 * (re * re + im * im) * decayed_time(2.0 * decay, t);
+            // The exponential at twice the rate is the square of the one at hand.
+            let (c, s) = (pair.0, pair.1 * frequency);
+            let twice = (c * c - s * s, 2.0 * c * s);
+            return steady + 0.5 * waving(re * re - im * im, 2.0 * re * im, 2.0 * decay, 2.0 * frequency, twice);
         }
         if q < 0.0 && frequency > 0.3 * decay {
             let slow = self.of.stiffness / (decay + frequency);
@@ -240,8 +270,13 @@ pub(super) fn decayed_time(rate: f64, t: f64) -> f64 {
 pub(super) fn waving_integral(re: f64, im: f64, rate: f64, frequency: f64, t: f64) -> f64 {
     let e = (-rate * t).exp();
     let (sin, cos) = (frequency * t).sin_cos();
+    waving(re, im, rate, frequency, (e * cos, e * sin))
+}
+
+/// As [`waving_integral`], where the real and imaginary part of the exponential at `t` are known.
+fn waving(re: f64, im: f64, rate: f64, frequency: f64, (cos, sin): (f64, f64)) -> f64 {
     // (exp(z t) - 1) / z with z = -rate + i frequency.
-    let (nr, ni) = (e * cos - 1.0, e * sin);
+    let (nr, ni) = (cos - 1.0, sin);
     let norm = rate * rate + frequency * frequency;
     let (dr, di) = ((-rate * nr + frequency * ni) / norm, (-rate * ni - frequency * nr) / norm);
     re * dr - im * di

@@ -1,6 +1,6 @@
 //! What goes into a vertical arrest and what comes out.
 use super::motion::Motion;
-use crate::physics::SeriesPath;
+use crate::physics::{SeriesPath, SpanError};
 
 /// A mass falling onto a line.
 #[derive(Clone, Debug, PartialEq)]
@@ -15,6 +15,40 @@ pub struct Fall {
     pub speed_at_taut_m_per_s: Option<f64>,
     /// What the mass hangs on.
     pub path: SeriesPath,
+}
+
+impl Fall {
+    pub(crate) fn check(&self) -> Result<(), ArrestError> {
+        let positive = |what, value: f64| {
+            if value > 0.0 && value.is_finite() { Ok(()) } else { Err(ArrestError::Input { what, value }) }
+        };
+        let not_negative = |what, value: f64| {
+            if value >= 0.0 && value.is_finite() { Ok(()) } else { Err(ArrestError::Input { what, value }) }
+        };
+        positive("mass", self.mass_kg)?;
+        not_negative("free fall", self.free_fall_m)?;
+        not_negative("gravity", self.gravity_m_per_s2)?;
+        if self.free_fall_m > 0.0 {
+            positive("gravity", self.gravity_m_per_s2)?;
+        }
+        if let Some(speed) = self.speed_at_taut_m_per_s {
+            not_negative("speed at taut", speed)?;
+        }
+        for group in [&self.path.line, &self.path.other] {
+            if let Some(piece) = group.elastic.piece(0) {
+                positive("stiffness", piece.slope)?;
+                not_negative("damping", group.damping_n_s_per_m)?;
+            }
+        }
+        if let Some(absorber) = &self.path.absorber {
+            positive("deployment force", absorber.force.value(0.0))?;
+            positive("stroke", absorber.stroke_m)?;
+            if absorber.onset_n.is_nan() || absorber.onset_n < absorber.force.value(0.0) {
+                return Err(ArrestError::Input { what: "onset force", value: absorber.onset_n });
+            }
+        }
+        Ok(())
+    }
 }
 
 /// How far to solve.
@@ -66,6 +100,8 @@ pub struct EnergyAccount {
     pub other_j: f64,
     /// Work taken by the absorber.
     pub absorber_j: f64,
+    /// Work taken by the absorber in line with a lifeline.
+    pub span_absorber_j: f64,
     /// Work taken by the dampers.
     pub damper_j: f64,
 }
@@ -83,6 +119,21 @@ pub enum Happening {
     StrokeUsedUp,
     /// The line goes slack.
     Slack,
+    /// The absorber in line with a lifeline starts.
+    SpanStarts,
+    /// The absorber in line with a lifeline stops: the lifeline turns back.
+    SpanStops,
+    /// The absorber in line with a lifeline is at its stroke for good.
+    SpanUsedUp,
+}
+
+/// What the absorber in line with a lifeline has done.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct SpanGiven {
+    /// Final deployed length, m.
+    pub deployed_m: f64,
+    /// Whether its stroke was used up.
+    pub used_up: bool,
 }
 
 /// How much work a solve took; equal input gives equal counts.
@@ -97,7 +148,7 @@ pub struct WorkCount {
 /// Everything one vertical arrest gives. Times run from the start of the fall.
 #[derive(Clone, Debug)]
 pub struct Outcome {
-    /// What was solved.
+    /// What was solved; with a lifeline that gives, its law at the end of the run.
     pub fall: Fall,
     /// Time when the line first comes taut, s.
     pub time_taut_s: f64,
@@ -125,6 +176,8 @@ pub struct Outcome {
     pub deployed_m: f64,
     /// Whether the stroke was used up.
     pub stroke_used_up: bool,
+    /// The absorber in line with a lifeline, where the run followed one.
+    pub span: Option<SpanGiven>,
     /// Largest stretch of the line, m.
     pub line_elongation_peak_m: f64,
     /// Largest stretch of everything else, m.
@@ -162,9 +215,9 @@ pub enum ArrestError {
         /// When, s.
         time_s: f64,
     },
-    /// Two damped groups on an absorber whose force rises with its length: not solved in closed form.
-    #[error("two damped groups in series with an absorber whose force rises with its length are not solved")]
-    FourthOrder,
+    /// The law of a lifeline that gives has no table.
+    #[error(transparent)]
+    Span(#[from] SpanError),
     /// The account does not balance.
     #[error("the energy account is off by {residual:e} of the fall energy")]
     Energy {

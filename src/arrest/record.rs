@@ -3,7 +3,7 @@ use super::mode::{Mode, State, Stretch};
 use super::oscillator::Swing;
 use super::outcome::Lowest;
 use super::roots::Passage;
-use super::signal::Signal;
+use super::signal::{Moment, Signal};
 
 /// A later peak replaces an earlier one only when larger by more than this share.
 const LARGER: f64 = 1e-9;
@@ -25,6 +25,14 @@ impl Peak {
     pub fn offer(&mut self, value: f64, time_s: f64) {
         if self.value == f64::NEG_INFINITY || value > self.value + LARGER * self.value.abs() {
             *self = Self { value, time_s };
+        }
+    }
+
+    /// Takes in the largest value of a signal from the start of its stretch to a moment.
+    fn offer_largest(&mut self, signal: &Signal, start_s: f64, end: &Moment) {
+        if !signal.stays_below(self.value) {
+            let (largest, at) = signal.largest(end);
+            self.offer(largest, start_s + at);
         }
     }
 }
@@ -50,29 +58,31 @@ impl Record {
         Self { force: Peak::NONE, stretch: [Peak::NONE; 2], lowest: None, highest: None, first_slack_s: None }
     }
 
-    /// Reads the peaks off a stretch of known length.
-    pub fn read(&mut self, stretch: &Stretch, previous: &State) {
-        let length = stretch.length_s;
-        let (largest, at) = stretch.force.largest(length);
-        self.force.offer(largest, stretch.start_s + at);
+    /// Reads the peaks off a stretch up to its end.
+    pub fn read(&mut self, stretch: &Stretch, end: &Moment, previous: &State) {
+        self.force.offer_largest(&stretch.force, stretch.start_s, end);
         for (peak, (signal, before)) in self.stretch.iter_mut().zip(stretch.e.iter().zip(previous.e)) {
             peak.offer(before, stretch.start_s);
-            let (largest, at) = signal.largest(length);
-            peak.offer(largest, stretch.start_s + at);
+            peak.offer_largest(signal, stretch.start_s, end);
         }
     }
 
     /// Time of the deepest point of a stretch that is deeper than all before, s from the start of the fall.
-    pub fn new_lowest_s(&self, stretch: &Stretch) -> Option<f64> {
+    pub fn new_lowest_s(&self, stretch: &Stretch, end: &Moment) -> Option<f64> {
         let mut deepest = None;
-        self.clone().turnings(stretch, stretch.length_s, |t| deepest = Some(stretch.start_s + t));
+        self.clone().turnings(stretch, end, |t| deepest = Some(stretch.start_s + t));
         deepest
     }
 
-    /// Reads turning points off the first `until` s of a stretch and calls `on_lowest` for each new lowest one.
-    pub fn turnings(&mut self, stretch: &Stretch, until: f64, mut on_lowest: impl FnMut(f64)) {
+    /// Reads turning points off a stretch up to a moment and calls `on_lowest` for each new lowest one.
+    pub fn turnings(&mut self, stretch: &Stretch, end: &Moment, mut on_lowest: impl FnMut(f64)) {
+        let until = end.t;
+        let none_new = self.highest.is_some() && self.lowest.is_some_and(|l| stretch.x.stays_below(l.travel_m));
+        if none_new || stretch.x.monotone_ends(end).is_some() {
+            return;
+        }
         if let Signal::Swing(x) = &stretch.x {
-            return self.swing_turnings(stretch, x, until, on_lowest);
+            return self.swing_turnings(stretch, x, end, on_lowest);
         }
         let mut from = 0.0;
         while let Some(t) = stretch.v.first_passage(0.0, Passage::Down, from, until) {
@@ -91,10 +101,11 @@ impl Record {
     }
 
     /// A swing's turning points are in closed form, and its later lowest points are higher.
-    fn swing_turnings(&mut self, stretch: &Stretch, x: &Swing, until: f64, mut on_lowest: impl FnMut(f64)) {
+    fn swing_turnings(&mut self, stretch: &Stretch, x: &Swing, end: &Moment, mut on_lowest: impl FnMut(f64)) {
+        let until = end.t;
         // At the very end a speed of zero is a turn only away from rest: a motion that has died away has no speed either.
-        let end = stretch.v.value(until);
-        let turns_last = end < 0.0 || (end == 0.0 && x.value(until) > x.rest);
+        let speed = stretch.v.value_at(end);
+        let turns_last = speed < 0.0 || (speed == 0.0 && stretch.x.value_at(end) > x.rest);
         let last = (stretch.v.value(0.0) > 0.0 && turns_last).then_some(until);
         let Some(t) = x.first_maximum(0.0, until).or(last) else { return };
         self.turned_down(stretch, t, &mut on_lowest);
@@ -104,9 +115,11 @@ impl Record {
     }
 
     /// Reads the first highest point off a stretch that starts upward.
-    pub fn first_highest(&mut self, stretch: &Stretch, until: f64) {
-        if stretch.v.value(0.0) <= 0.0
-            && let Some(top) = stretch.v.first_passage(0.0, Passage::Up, 0.0, until)
+    pub fn first_highest(&mut self, stretch: &Stretch, end: &Moment) {
+        if self.highest.is_none()
+            && stretch.v.value(0.0) <= 0.0
+            && stretch.x.monotone_ends(end).is_none()
+            && let Some(top) = stretch.v.first_passage(0.0, Passage::Up, 0.0, end.t)
         {
             self.turned_up(stretch, top);
         }
@@ -129,15 +142,21 @@ impl Record {
     }
 }
 
-/// Time from taut to the first slack, or else to `end_s`, that the line force spends strictly above a level.
-pub fn time_above_s(stretches: &[Stretch], level_n: f64, end_s: f64) -> f64 {
-    let level = level_n * (1.0 + LARGER);
-    let taut = stretches.iter().take_while(|s| s.mode != Mode::Slack && s.start_s < end_s);
-    taut.map(|stretch| {
-        let length = stretch.length_s.min(end_s - stretch.start_s);
-        if stretch.force.largest(length).0 > level { time_above(&stretch.force, level, length) } else { 0.0 }
-    })
-    .sum()
+/// Times from taut to the first slack, or else to `end_s`, that the line force spends strictly above each level.
+pub fn times_above_s(stretches: &[Stretch], levels_n: [f64; 2], end_s: f64) -> [f64; 2] {
+    let mut times = [0.0; 2];
+    for stretch in stretches.iter().take_while(|s| s.mode != Mode::Slack && s.start_s < end_s) {
+        let end = stretch.moment(stretch.length_s.min(end_s - stretch.start_s));
+        let (largest, _) = stretch.force.largest(&end);
+        for (time, level) in times.iter_mut().zip(levels_n.map(|level| level * (1.0 + LARGER))) {
+            *time += match stretch.force.monotone_ends(&end) {
+                _ if largest <= level => 0.0,
+                Some([a, b]) if a.min(b) > level => end.t,
+                _ => time_above(&stretch.force, level, end.t),
+            };
+        }
+    }
+    times
 }
 
 /// Time that a signal spends above a level in `0..length`.

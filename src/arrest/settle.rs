@@ -2,35 +2,46 @@
 use super::mode::{Mode, Stretch};
 use super::record::Record;
 use super::signal::Signal;
-use super::solve::Run;
+use super::solve::{Close, Run};
 
 /// When the run settles, s from the start of the fall, if it does so up to the end of `stretch`; `last` says that no
 /// event ends that stretch. Also the travel that the settled level was taken from, m.
 ///
 /// The settled level is a share of `m g (h + x)` at the deepest turning point, so it is known only once the motion has
 /// turned, or is known never to turn: then `x` is the travel at rest. Stretches before that are looked at again.
-pub fn time(run: &Run, stretch: &Stretch, last: bool) -> Option<(f64, f64)> {
-    let deepest = deepest(run, stretch, last)?;
-    let first_look = run.record.lowest.is_none();
-    let earlier = if first_look { run.stretches.as_slice() } else { &[] };
-    Some((first(run, earlier.iter().chain(std::iter::once(stretch)), deepest)?, deepest))
+pub fn time(run: &Run, stretch: &Stretch, close: &Close, last: bool) -> Option<(f64, f64)> {
+    let deepest = deepest(run, stretch, close, last)?;
+    let earlier = run.record.lowest.is_none().then(|| run.hidden()).into_iter().flatten();
+    if let Some(time_s) = first(run, earlier, deepest) {
+        return Some((time_s, deepest));
+    }
+    let above_j = run.fall.held_above_j(close.held_j, &close.state, run.hang_j);
+    let t = within(run, stretch, above_j, level_j(run, deepest));
+    t.map(|t| (stretch.start_s + t, deepest))
+}
+
+fn level_j(run: &Run, travel_m: f64) -> f64 {
+    run.settings.settled_share * run.fall_energy_j(travel_m)
 }
 
 /// When the first of some stretches settles, for a level taken from a travel in m.
-pub fn first<'a>(run: &Run, mut stretches: impl Iterator<Item = &'a Stretch>, travel_m: f64) -> Option<f64> {
-    let level_j = run.settings.settled_share * run.fall_energy_j(travel_m);
-    stretches.find_map(|s| within(run, s, level_j).map(|t| s.start_s + t))
+pub fn first(run: &Run, mut stretches: impl Iterator<Item = Stretch>, travel_m: f64) -> Option<f64> {
+    let level_j = level_j(run, travel_m);
+    stretches.find_map(|s| {
+        let end_j = run.fall.energy_above_j(&s.state(s.length_s), run.hang_j);
+        within(run, &s, end_j, level_j).map(|t| s.start_s + t)
+    })
 }
 
-/// When the energy first is below a level in a stretch, s from its start. It never rises while taut or slack.
-fn within(run: &Run, stretch: &Stretch, level_j: f64) -> Option<f64> {
-    // The energy falls nearly as an exponential: its logarithm is nearly straight.
-    let share = |energy_j: f64| (energy_j / level_j).max(f64::MIN_POSITIVE).ln();
-    let end = share(run.fall.energy_above_j(&stretch.state(stretch.length_s)));
-    if end >= 0.0 {
+/// When the energy first is below a level in a stretch, s from its start, for an energy at its end in J. It never
+/// rises while taut or slack.
+fn within(run: &Run, stretch: &Stretch, end_j: f64, level_j: f64) -> Option<f64> {
+    if end_j >= level_j {
         return None;
     }
-    let start = share(run.fall.energy_above_j(&stretch.state(0.0)));
+    // The energy falls nearly as an exponential: its logarithm is nearly straight.
+    let share = |energy_j: f64| (energy_j / level_j).max(f64::MIN_POSITIVE).ln();
+    let start = share(run.fall.energy_above_j(&stretch.state(0.0), run.hang_j));
     if start < 0.0 {
         return Some(0.0);
     }
@@ -40,20 +51,20 @@ fn within(run: &Run, stretch: &Stretch, level_j: f64) -> Option<f64> {
             let away = travel - x.rest;
             0.5 * run.fall.mass_kg * (speed * speed + x.of.stiffness * away * away)
         };
-        return Some(falling_zero(|t| share(energy(t)), start, stretch.length_s, end));
+        return Some(falling_zero(|t| share(energy(t)), start, stretch.length_s, share(end_j)));
     }
-    let energy = |t: f64| run.fall.energy_above_j(&stretch.state(t));
-    Some(falling_zero(|t| share(energy(t)), start, stretch.length_s, end))
+    let energy = |t: f64| run.fall.energy_above_j(&stretch.state(t), run.hang_j);
+    Some(falling_zero(|t| share(energy(t)), start, stretch.length_s, share(end_j)))
 }
 
-fn deepest(run: &Run, stretch: &Stretch, last: bool) -> Option<f64> {
+fn deepest(run: &Run, stretch: &Stretch, close: &Close, last: bool) -> Option<f64> {
     let mut record = Record { lowest: run.record.lowest, ..Record::new() };
     if record.lowest.is_none() {
-        record.turnings(stretch, stretch.length_s, |_| {});
+        record.turnings(&run.shown(stretch), &close.at, |_| {});
     }
     match record.lowest {
         Some(lowest) => Some(lowest.travel_m),
-        None => last.then(|| run.fall.hang_travel_m(stretch.s.value(stretch.length_s))),
+        None => last.then(|| run.fall.hang_travel_m(close.state.s) + run.shift_m()),
     }
 }
 

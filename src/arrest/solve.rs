@@ -1,14 +1,16 @@
 //! From event to event until settled.
+use super::give::SpanState;
 use super::ledger::Work;
 use super::mode::{Mode, Path, Pieces, State, Stretch};
 use super::motion::Motion;
-use super::next::{End, Slider, TOUCH, moving_force};
+use super::next::{End, Ending, Slider, TOUCH, moving_force};
 use super::onset::give_back;
 use super::outcome::{ArrestError, Ended, EnergyAccount, Fall, Happening, Outcome, Settings, WorkCount};
-use super::record::{Record, time_above_s};
+use super::record::{Record, times_above_s};
 use super::roots::take_evaluations;
 use super::settle;
-use super::signal::Signal;
+use super::signal::{Moment, Signal};
+use std::borrow::Cow;
 
 /// More modes than any real arrest has: 120 s of rebounds ten times a second, with knots.
 const MODES: u32 = 100_000;
@@ -26,18 +28,34 @@ const BALANCE: f64 = 1e-9;
 pub fn solve(fall: &Fall, settings: &Settings) -> Result<Outcome, ArrestError> {
     fall.check()?;
     take_evaluations();
-    let mut run = Run::new(fall, *settings);
+    let mut run = Run::new(Cow::Borrowed(fall), *settings);
     run.all()?;
     run.outcome()
 }
 
+/// The end of a stretch.
+pub(super) struct Close {
+    pub at: Moment,
+    pub state: State,
+    /// Kinetic and elastic energy there, J.
+    pub held_j: f64,
+}
+
+impl Close {
+    fn of(fall: &Fall, stretch: &Stretch, at: Moment, pieces: Pieces) -> Self {
+        let state = stretch.state_at(&at);
+        Self { at, state, held_j: fall.held_j(pieces, &state) }
+    }
+}
+
 /// A run in progress.
 pub(super) struct Run<'a> {
-    pub fall: &'a Fall,
+    pub fall: Cow<'a, Fall>,
+    /// A lifeline that gives, as group 2; its travel and stretch count from where it is just taut.
+    pub span: Option<SpanState>,
     pub settings: Settings,
-    path: Path<'a>,
     pub state: State,
-    before: State,
+    pub before: State,
     pub time_s: f64,
     taut_s: f64,
     speed_m_per_s: f64,
@@ -47,6 +65,8 @@ pub(super) struct Run<'a> {
     account: Option<EnergyAccount>,
     imbalance_j: f64,
     pub record: Record,
+    /// Elastic energy less the weight's at the hang position, J.
+    pub hang_j: f64,
     pub stretches: Vec<Stretch>,
     happenings: Vec<(f64, Happening)>,
     ended: Option<Ended>,
@@ -56,16 +76,17 @@ pub(super) struct Run<'a> {
 }
 
 impl<'a> Run<'a> {
-    fn new(fall: &'a Fall, settings: Settings) -> Self {
+    pub fn new(fall: Cow<'a, Fall>, settings: Settings) -> Self {
         let g = fall.gravity_m_per_s2;
         let h = fall.free_fall_m;
         let taut_s = if h > 0.0 { (2.0 * h / g).sqrt() } else { 0.0 };
         let speed_m_per_s = fall.speed_at_taut_m_per_s.unwrap_or_else(|| (2.0 * g * h).sqrt());
         let state = State { v: speed_m_per_s, ..State::default() };
         Self {
+            hang_j: fall.hang_j(),
             fall,
+            span: None,
             settings,
-            path: Path::new(fall),
             state,
             before: state,
             time_s: taut_s,
@@ -77,7 +98,7 @@ impl<'a> Run<'a> {
             account: None,
             imbalance_j: 0.0,
             record: Record::new(),
-            stretches: Vec::with_capacity(16),
+            stretches: Vec::with_capacity(32),
             happenings: Vec::with_capacity(16),
             ended: None,
             settled: None,
@@ -85,7 +106,7 @@ impl<'a> Run<'a> {
         }
     }
 
-    fn all(&mut self) -> Result<(), ArrestError> {
+    pub fn all(&mut self) -> Result<(), ArrestError> {
         self.taut()?;
         let limit_s = self.taut_s + self.settings.time_limit_s;
         while self.ended.is_none() {
@@ -94,49 +115,64 @@ impl<'a> Run<'a> {
             }
             self.modes += 1;
             let pieces = self.pieces();
-            let mut stretch = self.path.stretch(self.mode, pieces, &self.state, self.time_s)?;
-            let horizon = limit_s - self.time_s;
-            let end = self.path.first_end(&stretch, pieces, self.slider, horizon);
+            let mut stretch = self.path().stretch(self.mode, pieces, &self.state, self.time_s);
+            let left_s = limit_s - self.time_s;
+            let horizon = left_s.min(stretch.length_s);
+            let Ending { at, end } = self.path().first_end(&stretch, pieces, self.slider, horizon);
+            let end = end.map(|end| (at.t, end)).or((horizon < left_s).then_some((horizon, End::StepEnds)));
+            let end = self.or_turned(&stretch, end, horizon);
             stretch.length_s = end.map_or(horizon, |(t, _)| t);
-            let reach = stretch.length_s;
+            let at = if stretch.length_s == at.t { at } else { stretch.moment(stretch.length_s) };
+            let mut close = Close::of(&self.fall, &stretch, at, pieces);
+            let reach = close.at;
             // Only a third-order mode can come to a deeper point after its first.
-            let deepest_known = self.record.lowest.is_some() && !matches!(stretch.x, Signal::Wave(_));
-            self.settled = self.settled.or_else(|| settle::time(self, &stretch, end.is_none()));
+            let deepest_known =
+                self.record.lowest.is_some() && !matches!(stretch.x, Signal::Wave(_) | Signal::Series(_));
+            self.settled = self.settled.or_else(|| settle::time(self, &stretch, &close, end.is_none()));
             // What is settled while the slider still moves goes on until the slider stops.
             if let Some((time_s, _)) = self.settled.filter(|_| self.mode != Mode::Sliding) {
                 self.ended = Some(Ended::Settled { time_s });
-                let lowest_s = if deepest_known { None } else { self.record.new_lowest_s(&stretch) };
+                let lowest_s =
+                    if deepest_known { None } else { self.record.new_lowest_s(&self.shown(&stretch), &reach) };
                 let needed_s = lowest_s.map_or(time_s, |t| time_s.max(t));
-                stretch.length_s = (needed_s - stretch.start_s).clamp(0.0, reach);
+                stretch.length_s = (needed_s - stretch.start_s).clamp(0.0, reach.t);
+                close = Close::of(&self.fall, &stretch, stretch.moment(stretch.length_s), pieces);
             } else if end.is_none() {
                 self.ended = Some(Ended::TimeLimit);
             }
-            self.pass(&stretch, if deepest_known { stretch.length_s } else { reach });
+            let turns_to = if deepest_known { close.at } else { reach };
+            self.pass(&stretch, &close, &turns_to);
             if let (None, Some((_, end))) = (self.ended, end) {
-                self.after(end)?;
+                self.after(end, pieces)?;
             }
         }
         Ok(())
     }
 
     /// Takes in one finished stretch; turning points count up to `reach`.
-    fn pass(&mut self, stretch: &Stretch, reach: f64) {
-        self.record.read(stretch, &self.before);
+    fn pass(&mut self, stretch: &Stretch, close: &Close, reach: &Moment) {
+        let shown = self.shown(stretch);
+        let before = State { e: [self.before.e[0], self.before.e[1] + self.shift_m()], ..self.before };
+        self.record.read(&shown, &close.at, &before);
         if self.record.lowest.is_some() {
-            self.record.first_highest(stretch, stretch.length_s);
+            self.record.first_highest(&shown, &close.at);
         }
-        let (fall, work) = (self.fall, self.work);
-        let mut account = None;
-        self.record.turnings(stretch, reach, |t| {
-            account = Some(fall.account(&stretch.state(t), work + fall.work_in(stretch, t)));
-        });
-        self.account = account.or(self.account);
-        self.work += self.fall.work_in(stretch, stretch.length_s);
+        let mut lowest = None;
+        self.record.turnings(&shown, reach, |t| lowest = Some(t));
+        if let Some(t) = lowest {
+            let moment = stretch.moment(t);
+            let state = stretch.state_at(&moment);
+            let account = self.fall.account(&state, self.work + self.fall.work_in(stretch, &moment));
+            self.account = Some(self.split(account, state.e[1]));
+        }
+        self.work += self.fall.work_in(stretch, &close.at);
         self.time_s = stretch.start_s + stretch.length_s;
-        self.state = stretch.state(stretch.length_s);
-        self.before = self.state;
-        self.balance();
-        self.stretches.push(*stretch);
+        self.state = close.state;
+        self.before = close.state;
+        let put_in = self.fall_energy_j(self.state.x + self.shift_m());
+        let out = close.held_j + self.work.total_j();
+        self.imbalance_j = self.imbalance_j.max((put_in - out).abs());
+        self.stretches.push(shown);
     }
 
     /// Kinetic energy at taut, J.
@@ -149,31 +185,28 @@ impl<'a> Run<'a> {
         self.start_j() + self.fall.weight_n() * travel_m
     }
 
-    fn balance(&mut self) {
-        let put_in = self.fall_energy_j(self.state.x);
-        let out = self.fall.account(&self.state, self.work).total_j();
-        self.imbalance_j = self.imbalance_j.max((put_in - out).abs());
-    }
-
-    fn happened(&mut self, what: Happening) {
+    pub fn happened(&mut self, what: Happening) {
         self.happenings.push((self.time_s, what));
     }
 
-    fn pieces(&self) -> Pieces {
-        self.path.pieces(&self.state)
+    fn path(&self) -> Path<'_> {
+        Path::new(&self.fall)
     }
 
-    fn after(&mut self, end: End) -> Result<(), ArrestError> {
+    fn pieces(&self) -> Pieces {
+        self.path().pieces(&self.state)
+    }
+
+    fn after(&mut self, end: End, pieces: Pieces) -> Result<(), ArrestError> {
         match end {
             End::Slack => {
                 self.go_slack();
                 Ok(())
             }
             End::Taut => self.taut(),
-            End::Onset => {
-                self.slide();
-                Ok(())
-            }
+            End::Onset => self.slide(),
+            End::SpanTurns => self.turn_span(),
+            End::StepEnds => Ok(()),
             End::SliderStops => {
                 self.happened(Happening::DeploymentEnd);
                 self.mode = Mode::Stuck;
@@ -181,28 +214,28 @@ impl<'a> Run<'a> {
             }
             End::StrokeUsedUp => self.lock(),
             End::SliderKnot | End::Knot(..) => {
-                self.snap(end);
+                self.snap(end, pieces);
                 Ok(())
             }
         }
     }
 
-    /// Puts the state exactly on the knot it has reached, on the side it goes to.
-    fn snap(&mut self, end: End) {
+    /// Puts the state exactly on the knot at the end of its piece, on the side it goes to.
+    fn snap(&mut self, end: End, pieces: Pieces) {
         let path = &self.fall.path;
         match end {
             End::Knot(group, up) => {
                 let law = [&path.line.elastic, &path.other.elastic][group];
-                let at = self.state.e[group];
-                let next = law.piece_at(at + 1e-9 * at.abs() * if up { 1.0 } else { -1.0 });
-                if let Some(piece) = law.piece(next) {
-                    self.state.e[group] = if up { piece.x0 } else { piece.x1.next_down() };
+                if let Some(piece) = law.piece(pieces.group[group]) {
+                    self.state.e[group] = if up { piece.x1 } else { piece.x0.next_down() };
+                }
+                if group == 1 && up {
+                    self.span_knot();
                 }
             }
             End::SliderKnot => {
                 if let Some(absorber) = &path.absorber {
-                    let next = absorber.force.piece_at(self.state.s * (1.0 + 1e-9));
-                    self.state.s = absorber.force.piece(next).x0;
+                    self.state.s = absorber.force.piece(pieces.slider).x1;
                 }
             }
             _ => {}
@@ -226,25 +259,28 @@ impl<'a> Run<'a> {
         self.happened(Happening::Taut);
         self.mode = Mode::Stuck;
         let s = self.state.s;
-        let level = moving_force(self.fall, self.slider, s);
+        let level = moving_force(&self.fall, self.slider, s);
         let path = &self.fall.path;
         if path.line.is_rigid() && path.other.is_rigid() && self.state.v > 0.0 {
             let Some(level) = level else { return Err(ArrestError::Rigid { time_s: self.time_s }) };
             self.record.force.offer(level, self.time_s);
-            self.slide();
-            return Ok(());
+            return self.slide();
         }
-        let stuck = self.path.stretch(Mode::Stuck, self.pieces(), &self.state, self.time_s)?;
+        let stuck = self.path().stretch(Mode::Stuck, self.pieces(), &self.state, self.time_s);
         if let Some(level) = level.filter(|l| stuck.force.value(0.0) > l * (1.0 + TOUCH)) {
             self.record.force.offer(level, self.time_s);
-            self.slide();
+            return self.slide();
         }
         Ok(())
     }
 
-    fn slide(&mut self) {
+    fn slide(&mut self) -> Result<(), ArrestError> {
         self.happened(Happening::DeploymentStart);
-        let lost_j = give_back(self.fall, &mut self.state, self.slider);
+        if !self.slider.started && self.span.as_ref().is_some_and(|span| span.gives_at(self.state.e[1])) {
+            // The drop from the onset force takes the span back as well.
+            self.turn_span()?;
+        }
+        let lost_j = give_back(&self.fall, &mut self.state, self.slider);
         self.slider.started = true;
         self.work.absorber_j += lost_j;
         self.mode = Mode::Sliding;
@@ -255,6 +291,7 @@ impl<'a> Run<'a> {
             self.mode = Mode::Stuck;
             self.happened(Happening::StrokeUsedUp);
         }
+        Ok(())
     }
 
     fn lock(&mut self) -> Result<(), ArrestError> {
@@ -271,9 +308,8 @@ impl<'a> Run<'a> {
         Ok(())
     }
 
-    fn outcome(self) -> Result<Outcome, ArrestError> {
-        let fall = self.fall;
-        let hang_travel_m = fall.hang_travel_m(self.state.s);
+    pub fn outcome(self) -> Result<Outcome, ArrestError> {
+        let hang_travel_m = self.hang_travel_m();
         let deepest = self.record.lowest.filter(|l| l.travel_m >= hang_travel_m * (1.0 - 1e-9));
         let arrest_distance_m = deepest.map_or(hang_travel_m, |l| l.travel_m);
         let total_j = self.fall_energy_j(arrest_distance_m);
@@ -289,8 +325,8 @@ impl<'a> Run<'a> {
             (Some(_), Some(account)) => account,
             _ => self.account_at_rest(),
         };
+        let (span, fall) = (self.span_given(), self.fall.into_owned());
         Ok(Outcome {
-            fall: fall.clone(),
             time_taut_s: self.taut_s,
             speed_at_taut_m_per_s: self.speed_m_per_s,
             peak_force_n: self.record.force.value,
@@ -304,9 +340,10 @@ impl<'a> Run<'a> {
             slack_episodes: u32::try_from(slack.count()).unwrap_or(u32::MAX),
             deployed_m: self.state.s,
             stroke_used_up: self.slider.locked,
+            span,
             line_elongation_peak_m: self.record.stretch[0].value,
             other_elongation_peak_m: self.record.stretch[1].value,
-            time_above_s: self.settings.levels_n.map(|level| time_above_s(&self.stretches, level, end_s)),
+            time_above_s: times_above_s(&self.stretches, self.settings.levels_n, end_s),
             ended,
             energy,
             energy_residual,
@@ -317,6 +354,7 @@ impl<'a> Run<'a> {
                 free_fall_m: fall.free_fall_m,
                 stretches: self.stretches,
             },
+            fall,
         })
     }
 
@@ -326,7 +364,7 @@ impl<'a> Run<'a> {
         if (arrest_distance_m - travel_m).abs() <= 1e-12 * arrest_distance_m.abs() {
             return Ended::Settled { time_s };
         }
-        let again = settle::first(self, self.stretches.iter(), arrest_distance_m);
+        let again = settle::first(self, self.hidden(), arrest_distance_m);
         Ended::Settled { time_s: again.unwrap_or(time_s) }
     }
 
@@ -334,41 +372,12 @@ impl<'a> Run<'a> {
     fn account_at_rest(&self) -> EnergyAccount {
         let rest = State { e: self.fall.hang_elongation_m(), v: 0.0, ..self.state };
         let mut work = self.work;
-        work.damper_j += self.fall.energy_above_j(&self.state);
-        self.fall.account(&rest, work)
+        work.damper_j += self.fall.energy_above_j(&self.state, self.hang_j);
+        self.split(self.fall.account(&rest, work), rest.e[1])
     }
-}
 
-impl Fall {
-    pub(crate) fn check(&self) -> Result<(), ArrestError> {
-        let positive = |what, value: f64| {
-            if value > 0.0 && value.is_finite() { Ok(()) } else { Err(ArrestError::Input { what, value }) }
-        };
-        let not_negative = |what, value: f64| {
-            if value >= 0.0 && value.is_finite() { Ok(()) } else { Err(ArrestError::Input { what, value }) }
-        };
-        positive("mass", self.mass_kg)?;
-        not_negative("free fall", self.free_fall_m)?;
-        not_negative("gravity", self.gravity_m_per_s2)?;
-        if self.free_fall_m > 0.0 {
-            positive("gravity", self.gravity_m_per_s2)?;
-        }
-        if let Some(speed) = self.speed_at_taut_m_per_s {
-            not_negative("speed at taut", speed)?;
-        }
-        for group in [&self.path.line, &self.path.other] {
-            if let Some(piece) = group.elastic.piece(0) {
-                positive("stiffness", piece.slope)?;
-                not_negative("damping", group.damping_n_s_per_m)?;
-            }
-        }
-        if let Some(absorber) = &self.path.absorber {
-            positive("deployment force", absorber.force.value(0.0))?;
-            positive("stroke", absorber.stroke_m)?;
-            if absorber.onset_n.is_nan() || absorber.onset_n < absorber.force.value(0.0) {
-                return Err(ArrestError::Input { what: "onset force", value: absorber.onset_n });
-            }
-        }
-        Ok(())
+    /// Travel at rest with all that has been deployed, m.
+    pub fn hang_travel_m(&self) -> f64 {
+        self.fall.hang_travel_m(self.state.s) + self.shift_m()
     }
 }

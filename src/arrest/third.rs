@@ -5,7 +5,7 @@
 //! `r f(t)` with `f` the divided difference of `exp(s t)` over all three roots.
 use super::oscillator::{Oscillator, Swing, decayed_time, waving_integral};
 use super::quadrature::integral_with_waves;
-use super::roots::{Passage, monotone_zero};
+use super::roots::{Passage, Passing, monotone_zero};
 use super::signal::Turn;
 
 /// A real root and a pair (complex or real) of a cubic whose roots have negative real parts.
@@ -62,16 +62,16 @@ impl Spectrum {
     }
 
     /// `exp(mu t) C`, `exp(mu t) S` and the third function at `t`.
-    fn basis(&self, t: f64) -> (f64, f64, f64) {
+    pub(super) fn basis(&self, t: f64) -> [f64; 3] {
         let (c, s) = self.pair.pair(t);
         if self.far {
-            return (c, s, (self.lambda * t).exp());
+            return [c, s, (self.lambda * t).exp()];
         }
         let d = -self.pair.decay - self.lambda;
         if (d.abs() + self.pair.frequency) * t < 0.5 {
-            return (c, s, (self.lambda * t).exp() * self.divided_series(d, t));
+            return [c, s, (self.lambda * t).exp() * self.divided_series(d, t)];
         }
-        (c, s, ((self.lambda * t).exp() - c + d * s) / self.apart)
+        [c, s, ((self.lambda * t).exp() - c + d * s) / self.apart]
     }
 
     /// Divided difference of `exp(s t)` over 0 and the pair `d +- sqrt(-q)`, as a series for small `d t`.
@@ -170,7 +170,12 @@ impl Wave {
     /// Value at `t`.
     #[must_use]
     pub fn value(&self, t: f64) -> f64 {
-        let (c, s, f) = self.of.basis(t);
+        self.value_of_basis(self.of.basis(t))
+    }
+
+    /// Value where the three functions are known.
+    #[must_use]
+    pub(super) fn value_of_basis(&self, [c, s, f]: [f64; 3]) -> f64 {
         self.rest + self.a[0] * c + self.a[1] * s + self.a[2] * f
     }
 
@@ -256,7 +261,7 @@ impl Wave {
 
     /// First passage of `level` in `(from, to]`, on the stretches between turning points.
     #[must_use]
-    pub fn first_passage(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<f64> {
+    pub fn first_passing(&self, level: f64, passage: Passage, from: f64, to: f64) -> Option<Passing> {
         let away = |t: f64| self.value(t) - level;
         let mut turns = Turns::new(self, from, to);
         let (mut a, mut fa) = (from, away(from));
@@ -268,11 +273,12 @@ impl Wave {
             let b = turn.map_or(turns.at, |turn| turn.time);
             let fb = away(b);
             if passage.shows(fa, fb) {
-                return Some(if fb == 0.0 {
-                    b
-                } else {
-                    monotone_zero(|t| (away(t), turns.rate.value(t)), a, fa, b, fb)
-                });
+                let both = |t: f64| {
+                    let basis = self.of.basis(t);
+                    (self.value_of_basis(basis) - level, turns.rate.value_of_basis(basis))
+                };
+                let time = if fb == 0.0 { b } else { monotone_zero(both, a, fa, b, fb) };
+                return Some(Passing { time, beyond: fb.abs() });
             }
             turn?;
             (a, fa) = (b, fb);
@@ -293,6 +299,27 @@ impl Wave {
     #[must_use]
     pub fn first_maximum(&self, from: f64, to: f64) -> Option<f64> {
         Turns::new(self, from, to).find(|turn| turn.is_maximum).map(|turn| turn.time)
+    }
+}
+
+impl Wave {
+    /// The largest value over `0..length` and when it is reached. Maxima are looked at until no later one can be larger.
+    #[must_use]
+    pub fn largest(&self, length: f64) -> (f64, f64) {
+        let larger = |best: (f64, f64), t: f64| {
+            let value = self.value(t);
+            if value > best.0 { (value, t) } else { best }
+        };
+        let mut best = larger((self.value(0.0), 0.0), length);
+        for turn in Turns::new(self, 0.0, length) {
+            if turn.is_maximum {
+                best = larger(best, turn.time);
+            }
+            if self.rest + self.distance_bound(turn.time) <= best.0 {
+                break;
+            }
+        }
+        best
     }
 }
 
@@ -348,7 +375,16 @@ impl Iterator for Turns {
             let passage = [Passage::Up, Passage::Down].into_iter().find(|p| p.shows(fa, fb));
             if let Some(passage) = passage {
                 let bend = self.rate.derivative();
-                let time = monotone_zero(|t| (self.rate.value(t), bend.value(t)), a, fa, b, fb);
+                let time = monotone_zero(
+                    |t| {
+                        let basis = self.rate.of.basis(t);
+                        (self.rate.value_of_basis(basis), bend.value_of_basis(basis))
+                    },
+                    a,
+                    fa,
+                    b,
+                    fb,
+                );
                 return Some(Turn { time, is_maximum: passage == Passage::Down });
             }
         }

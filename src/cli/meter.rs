@@ -75,5 +75,8 @@ const fn words(step: Step) -> &'static str {
         Step::Refining => "refining the worst found",
         Step::Sample => "samples",
         Step::Ranking => "ranking",
+        Step::Cells => "cells of the map",
+        Step::Remedies => "inputs",
+        Step::Pairs => "pairs of inputs",
     }
 }

@@ -11,6 +11,7 @@ mod output;
 mod run;
 mod spread;
 mod study;
+mod vary;
 
 pub use exit::Code;
 
@@ -53,7 +54,7 @@ fn dispatch(arguments: Arguments) -> Next {
         (Some(Command::Run(args)), _) => Next::Exit(run::run(&args)),
         (Some(Command::Audit(args)), _) => Next::Exit(audit::audit(&args)),
         (Some(Command::Compare(args)), _) => Next::Exit(study::compare(&args)),
-        (Some(Command::Vary(args)), _) => Next::Exit(study::vary_one(&args)),
+        (Some(Command::Vary(args)), _) => Next::Exit(vary::vary_inputs(&args)),
         (Some(Command::Remedy(args)), _) => Next::Exit(study::remedy(&args)),
         (Some(Command::Spread(args)), _) => Next::Exit(spread::spread(&args)),
         (Some(Command::Limits(args)), _) => Next::Exit(new::limits(&args)),

@@ -11,10 +11,11 @@ const EXIT_CODES: &str = "Exit codes: 0 every check holds; 1 a check is thin, sh
 const AUDIT_CODES: &str = "Exit codes: 0 every file passes, by default when every check holds; 1 a check is short or open, \
                            or thin unless `--require thin`; 2 the input is wrong; 3 it could not be computed; 130 \
                            interrupted. The largest of all files counts; doubts do not change it.";
-const VARY_CODES: &str = "Exit codes: 0 every check holds in every row; 1 a check is short or open in a row; 2 the \
-                          input is wrong; 3 it could not be computed.";
-const REMEDY_CODES: &str = "Exit codes: 0 every check holds today, at the typical values; 1 a check is short or open \
-                            today; 2 the input is wrong; 3 it could not be computed.";
+const VARY_CODES: &str = "Exit codes: 0 every check holds in every row or cell; 1 a check is short or open in one; 2 \
+                          the input is wrong; 3 it could not be computed; 130 interrupted, with what there was.";
+const REMEDY_CODES: &str = "Exit codes: 0 every check holds today, at the typical values or with --worst at the worst \
+                            found; 1 a check is short, thin or open today; 2 the input is wrong; 3 it could not be \
+                            computed; 130 interrupted, with what there was.";
 const COMPARE_CODES: &str = "Exit codes: 0 no check of the second file is worse than in the first; 1 one is worse, does \
                              not hold where the first has none, or is no longer made; 2 the input is wrong; 3 it could \
                              not be computed.";
@@ -47,7 +48,7 @@ pub enum Command {
     /// Over the bands of the inputs: worst found, share that falls short, which input matters
     #[command(before_help = CAUTION_LINE, after_help = EXIT_CODES)]
     Spread(SpreadArgs),
-    /// Run one input across a range: numbers, verdicts, and where a verdict changes
+    /// Run one input across a range, or two across a map: verdicts, and where they change
     #[command(before_help = CAUTION_LINE, after_help = VARY_CODES)]
     Vary(VaryArgs),
     /// For each input alone, the nearest value at which every check holds: arithmetic, to be confirmed
@@ -216,26 +217,58 @@ const MOST_ROWS: u64 = 10_000;
 /// Arguments of `vary`.
 #[derive(Args, Clone, Debug)]
 pub struct VaryArgs {
-    /// Scenario file
+    /// Scenario file; `-` reads standard input
     pub file: PathBuf,
     /// Path of the input, such as `line.length` or `obstacle.1.top`
     #[arg(long, value_name = "PATH")]
     pub over: String,
+    /// Path of a second input: a map of verdicts over both
+    #[arg(long, value_name = "PATH")]
+    pub and: Option<String>,
     /// Smallest value with its unit [default: low end of its band, half of an exact value]
     #[arg(long, value_name = "VALUE", allow_hyphen_values = true)]
     pub from: Option<String>,
     /// Largest value with its unit [default: high end of its band, double of an exact value]
     #[arg(long, value_name = "VALUE", allow_hyphen_values = true)]
     pub to: Option<String>,
-    /// Rows of the table, both ends included
-    #[arg(long, default_value = "21", value_parser = row_count)]
-    pub steps: usize,
+    /// Smallest value of the second input
+    #[arg(long, value_name = "VALUE", allow_hyphen_values = true, requires = "and")]
+    pub and_from: Option<String>,
+    /// Largest value of the second input
+    #[arg(long, value_name = "VALUE", allow_hyphen_values = true, requires = "and")]
+    pub and_to: Option<String>,
+    /// Values of the input, both ends included [default: 21, in a map 61]
+    #[arg(long, value_name = "N", value_parser = row_count)]
+    pub steps: Option<usize>,
+    /// Values of the second input, both ends included [default: 21]
+    #[arg(long, value_name = "N", value_parser = row_count, requires = "and")]
+    pub and_steps: Option<usize>,
     /// CSV with every number and margin, one a line, SI units
-    #[arg(long)]
+    #[arg(long, group = "form")]
     pub csv: bool,
-    /// Units shown in text
+    /// JSON, SI units
+    #[arg(long, group = "form")]
+    pub json: bool,
+    /// SVG figure that needs nothing beside it
+    #[arg(long, group = "form")]
+    pub svg: bool,
+    /// Where to write
+    #[command(flatten)]
+    pub output: OutputArgs,
+    /// Units shown in text and figure
     #[arg(long, value_enum, default_value_t)]
     pub units: Units,
+}
+
+/// Where results go.
+#[derive(Args, Clone, Debug)]
+pub struct OutputArgs {
+    /// Write to this file, which must not exist yet; its ending csv, json or svg chooses the form where none is asked for
+    #[arg(short, long, value_name = "FILE")]
+    pub output: Option<PathBuf>,
+    /// Write over the file where it exists
+    #[arg(long, requires = "output")]
+    pub replace: bool,
 }
 
 fn row_count(text: &str) -> Result<usize, String> {
@@ -246,9 +279,18 @@ fn row_count(text: &str) -> Result<usize, String> {
 /// Arguments of `remedy`.
 #[derive(Args, Clone, Debug)]
 pub struct RemedyArgs {
-    /// Scenario file
+    /// Scenario file; `-` reads standard input
     pub file: PathBuf,
+    /// Every check holds at the worst found over the bands of all other inputs, not at their typical values alone
+    #[arg(long)]
+    pub worst: bool,
+    /// Pairs of inputs changed together as well
+    #[arg(long)]
+    pub pairs: bool,
     /// JSON, SI units
     #[arg(long)]
     pub json: bool,
+    /// Units shown in text beside those of the file
+    #[arg(long, value_enum)]
+    pub units: Option<Units>,
 }

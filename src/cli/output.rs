@@ -1,6 +1,10 @@
 //! Results to stdout and messages to stderr; a closed pipe ends quietly.
+use super::exit::Code;
+use super::options::OutputArgs;
 use crate::sheet::{Paint, clean};
-use std::io::{self, Write};
+use std::fs::OpenOptions;
+use std::io::{self, ErrorKind, Write};
+use std::path::Path;
 
 /// Whether there is still somebody who reads the results.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -22,6 +26,44 @@ pub fn results(text: &str) -> Reader {
             Reader::Gone
         }
     }
+}
+
+/// Writes results to the file asked for, or to stdout. The code is that of the results, or [`Code::WrongInput`] where the
+/// file cannot be written.
+pub fn deliver(text: &str, to: &OutputArgs, code: Code) -> Code {
+    let Some(path) = &to.output else {
+        results(text);
+        return code;
+    };
+    match write_file(path, text, to.replace) {
+        Ok(()) => {
+            message(&format!("wrote `{}`", path.display()));
+            code
+        }
+        Err(error) if error.kind() == ErrorKind::AlreadyExists => {
+            message(&format!(
+                "`{}` exists and was left as it is; choose another name, or say `--replace`",
+                path.display()
+            ));
+            Code::WrongInput
+        }
+        Err(error) => {
+            message(&format!("cannot write `{}`: {error}; choose another place", path.display()));
+            Code::WrongInput
+        }
+    }
+}
+
+/// Colour codes never go into a file.
+fn write_file(path: &Path, text: &str, replace: bool) -> io::Result<()> {
+    let mut options = OpenOptions::new();
+    options.write(true);
+    if replace {
+        options.create(true).truncate(true)
+    } else {
+        options.create_new(true)
+    };
+    options.open(path)?.write_all(anstream::adapter::strip_str(text).to_string().as_bytes())
 }
 
 /// How results are painted: always with colour, see [`results`].

@@ -57,7 +57,11 @@ impl Validity {
     /// The reason in words with both numbers.
     #[must_use]
     pub fn words(&self, system: UnitSystem) -> String {
-        let length = |m: f64| format_si(m, Dimension::Length, system);
+        self.told(|m| format_si(m, Dimension::Length, system))
+    }
+
+    /// The reason in words with both numbers as `length` writes metres.
+    pub(super) fn told(&self, length: impl Fn(f64) -> String) -> String {
         match self {
             Self::FreeFallBeyondRating { free_fall_m, rated_m } => format!(
                 "free fall of {} is beyond the {} that the absorber is rated for",
@@ -254,12 +258,14 @@ fn vertical_estimate(scenario: &Scenario, setup: &Setup) -> Result<Estimate, Est
     let outcome = solve_vertical(setup, Reach::Settled)?;
     let elevations = Elevations::of(scenario, setup, &outcome);
     let numbers = collect::numbers(scenario, setup, &outcome, elevations.as_ref());
+    let validity = validity(scenario, setup, &numbers);
+    let warnings = remark::warnings(scenario, setup, Some(&outcome), outcome.stroke_used_up);
     Ok(Estimate {
         assumptions: remark::assumptions(scenario, setup),
-        warnings: remark::warnings(scenario, setup, Some(&outcome), outcome.stroke_used_up),
+        warnings: remark::with_open(warnings, &validity),
         events: log::events(setup, &outcome),
         envelope: collect::envelope(&outcome),
-        validity: validity(scenario, setup, &numbers),
+        validity,
         numbers,
         elevations,
         working: working(setup),
@@ -274,12 +280,14 @@ fn planar_estimate(scenario: &Scenario, setup: &Setup, layout: &Layout) -> Resul
     let elevations = planar::elevations(scenario, setup, layout, &outcome);
     let view = planar::view(scenario, layout, &outcome);
     let numbers = planar::numbers(scenario, setup, &outcome, elevations.as_ref(), &view.strikes);
+    let validity = validity(scenario, setup, &numbers);
+    let warnings = remark::warnings(scenario, setup, None, outcome.stroke_used_up);
     Ok(Estimate {
         assumptions: remark::assumptions(scenario, setup),
-        warnings: remark::warnings(scenario, setup, None, outcome.stroke_used_up),
+        warnings: remark::with_open(warnings, &validity),
         events: planar::events(setup, &outcome, &view.strikes),
         envelope: None,
-        validity: validity(scenario, setup, &numbers),
+        validity,
         numbers,
         elevations,
         working: working(setup),

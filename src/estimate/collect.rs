@@ -18,7 +18,7 @@ pub fn numbers(scenario: &Scenario, setup: &Setup, outcome: &Outcome, elevations
     }
     afterwards(&mut n, outcome);
     span(&mut n, setup, outcome);
-    oscillation(&mut n, setup, outcome);
+    oscillation(&mut n, outcome);
     put_energy(&mut n, &outcome.energy, outcome.energy_residual);
     n
 }
@@ -38,6 +38,12 @@ fn span(n: &mut Numbers, setup: &Setup, outcome: &Outcome) {
     n.put("span_tension_peak", peak.tension_n);
     n.put("span_sag_peak", peak.deflection_m);
     n.put("span_end_force", peak.tension_n);
+    if let (Some(given), Some(stroke_m)) = (outcome.span, span.stroke_m()) {
+        n.put("span_deployed_length", given.deployed_m);
+        n.put("span_stroke_left", stroke_m - given.deployed_m);
+        n.put("span_stroke_used_up", f64::from(u8::from(given.used_up)));
+        n.put("span_absorber_work", outcome.energy.span_absorber_j);
+    }
 }
 
 /// What the absorber has done, where there is one.
@@ -104,10 +110,7 @@ fn afterwards(n: &mut Numbers, outcome: &Outcome) {
     }
 }
 
-fn oscillation(n: &mut Numbers, setup: &Setup, outcome: &Outcome) {
-    if setup.span.as_ref().is_some_and(super::rigging::Rigging::has_absorber) {
-        return;
-    }
+fn oscillation(n: &mut Numbers, outcome: &Outcome) {
     let fall = &outcome.fall;
     let Some(hang) = fall.about_hang() else { return };
     let word = match hang.regime {
@@ -151,7 +154,7 @@ pub fn envelope(outcome: &Outcome) -> Option<Envelope> {
         stretches.iter().rev().find(|s| s.mode == Mode::Stuck)
     }?;
     let (swing, amplitude_m) = enveloped(stretch)?;
-    let hang_m = outcome.fall.hang_travel_m(outcome.deployed_m);
+    let hang_m = outcome.hang_travel_m;
     Some(Envelope {
         hang_m,
         amplitude_m,

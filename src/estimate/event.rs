@@ -32,8 +32,12 @@ pub enum EventKind {
     StrikeLevel,
     /// The swing turns back: the end of a planar run.
     TurnsBack,
-    /// The first peak is past and the model does not say what comes after.
-    PeakPassed,
+    /// The absorber in line with a lifeline starts to deploy.
+    SpanStarts,
+    /// The lifeline turns back: its in-line absorber stops.
+    SpanStops,
+    /// The absorber in line with a lifeline is locked at its stroke.
+    SpanUsedUp,
 }
 
 /// One line of the log. Values SI; the words are the same in text, JSON and on the screen.
@@ -51,6 +55,8 @@ pub struct Event {
     pub force_n: f64,
     /// Deployed length then, m.
     pub deployed_m: f64,
+    /// The face or level that is struck, by its name in the file.
+    pub name: Option<String>,
 }
 
 impl Event {
@@ -74,12 +80,18 @@ impl Event {
             }
             EventKind::Highest => format!("highest, {}", beside_taut(self.travel_m, length)),
             EventKind::Settled => format!("settled, {}", beside_taut(self.travel_m, length)),
-            EventKind::StrikeFace => format!("strikes a face at {speed}"),
-            EventKind::StrikeLevel => format!("strikes a level at {speed}"),
+            EventKind::StrikeFace => format!("strikes {} at {speed}", self.struck("a face")),
+            EventKind::StrikeLevel => format!("strikes {} at {speed}", self.struck("a level")),
             EventKind::TurnsBack => "swing turns back".to_owned(),
-            EventKind::PeakPassed => "not followed beyond the first peak".to_owned(),
+            EventKind::SpanStarts => format!("lifeline absorber starts, line force {force}"),
+            EventKind::SpanStops => format!("lifeline absorber stops, {} below taut", length(self.travel_m)),
+            EventKind::SpanUsedUp => format!("lifeline absorber's stroke used up, line force {force}"),
             EventKind::TimeLimit => "still moving at the time limit".to_owned(),
         }
+    }
+
+    fn struck<'a>(&'a self, unnamed: &'a str) -> &'a str {
+        self.name.as_deref().map_or(unnamed, str::trim)
     }
 }
 

@@ -20,9 +20,7 @@ pub fn events(setup: &Setup, outcome: &Outcome) -> Vec<Event> {
     events.push(Event { force_n: outcome.peak_force_n, ..at(EventKind::PeakForce, outcome.time_peak_force_s) });
     events.extend(outcome.lowest.map(|l| at(EventKind::Lowest, l.time_s)));
     events.extend(outcome.time_highest_s.map(|t| at(EventKind::Highest, t)));
-    let followed = !setup.span.as_ref().is_some_and(super::rigging::Rigging::has_absorber);
     let end = match outcome.ended {
-        Ended::TimeLimit if !followed => at(EventKind::PeakPassed, outcome.motion.end_s()),
         Ended::Settled { time_s } => at(EventKind::Settled, time_s),
         Ended::TimeLimit => at(EventKind::TimeLimit, outcome.motion.end_s()),
     };
@@ -61,6 +59,9 @@ const fn kind(what: Happening) -> EventKind {
         Happening::DeploymentEnd => EventKind::DeploymentEnd,
         Happening::StrokeUsedUp => EventKind::StrokeUsedUp,
         Happening::Slack => EventKind::Slack,
+        Happening::SpanStarts => EventKind::SpanStarts,
+        Happening::SpanStops => EventKind::SpanStops,
+        Happening::SpanUsedUp => EventKind::SpanUsedUp,
     }
 }
 
@@ -72,5 +73,6 @@ const fn event(kind: EventKind, instant: &Instant) -> Event {
         speed_m_per_s: instant.speed_m_per_s,
         force_n: instant.force_n,
         deployed_m: instant.deployed_m,
+        name: None,
     }
 }

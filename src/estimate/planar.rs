@@ -190,6 +190,7 @@ pub fn events(setup: &Setup, outcome: &PlaneOutcome, strikes: &[StrikeView]) -> 
             speed_m_per_s: i.velocity_m_per_s[0].hypot(i.velocity_m_per_s[1]),
             force_n: i.force_n,
             deployed_m: i.deployed_m,
+            name: None,
         }
     };
     let mut events = vec![at(EventKind::Start, 0.0)];
@@ -198,7 +199,7 @@ pub fn events(setup: &Setup, outcome: &PlaneOutcome, strikes: &[StrikeView]) -> 
     events.push(at(EventKind::Lowest, outcome.lowest.time_s));
     events.extend(strikes.iter().map(|s| {
         let kind = if s.is_face { EventKind::StrikeFace } else { EventKind::StrikeLevel };
-        Event { speed_m_per_s: s.speed_m_per_s, ..at(kind, s.time_s) }
+        Event { speed_m_per_s: s.speed_m_per_s, name: Some(s.name.clone()), ..at(kind, s.time_s) }
     }));
     let end = match outcome.ended {
         swing::Ended::Reversal | swing::Ended::Rebound => EventKind::TurnsBack,

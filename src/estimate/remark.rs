@@ -1,4 +1,5 @@
 //! Sentences beside the numbers: what is taken for granted, and what the reader must know.
+use super::Validity;
 use super::setup::Setup;
 use crate::arrest::{Ended, Outcome};
 use crate::physics::Group;
@@ -17,7 +18,9 @@ pub fn assumptions(scenario: &Scenario, setup: &Setup) -> Vec<String> {
     let mut list = vec![falls.to_owned(), path_sentence(&path.line, &path.other).to_owned()];
     if !path.is_linear() {
         list.push(
-            "A force-elongation table is straight between its rows, and goes on straight beyond the last.".to_owned(),
+            "A force-elongation table is straight between its rows; beyond the last it goes on straight, and what \
+             depends on that is open."
+                .to_owned(),
         );
     }
     list.extend(setup.span.iter().flat_map(super::rigging::Rigging::assumptions));
@@ -58,8 +61,7 @@ pub fn warnings(scenario: &Scenario, setup: &Setup, vertical: Option<&Outcome>, 
         );
     }
     list.extend(setup.span.iter().flat_map(super::rigging::Rigging::warnings));
-    let followed = !setup.span.as_ref().is_some_and(super::rigging::Rigging::has_absorber);
-    if followed && vertical.is_some_and(|outcome| outcome.ended == Ended::TimeLimit) {
+    if vertical.is_some_and(|outcome| outcome.ended == Ended::TimeLimit) {
         list.push(
             "The motion is not settled at the time limit: settle time and slack episodes are left out. Little or no \
              damping does that."
@@ -68,6 +70,13 @@ pub fn warnings(scenario: &Scenario, setup: &Setup, vertical: Option<&Outcome>, 
     }
     if stroke_used_up {
         list.push("The absorber's stroke is used up: from there on only stretch limits the force.".to_owned());
+    }
+    if vertical.and_then(|outcome| outcome.span).is_some_and(|given| given.used_up) {
+        list.push(
+            "The stroke of the absorber in line with the lifeline is used up: from there on the tension of the cable has \
+             no bound but its stretch."
+                .to_owned(),
+        );
     }
     if scenario.harness.is_some() && scenario.subject.stretch_allowance.is_some_and(|a| a.si() > 0.0) {
         list.push(
@@ -83,6 +92,21 @@ pub fn warnings(scenario: &Scenario, setup: &Setup, vertical: Option<&Outcome>, 
     list
 }
 
+/// The warnings with a sentence for each reason why numbers are open, which comes first.
+pub fn with_open(warnings: Vec<String>, validity: &[Validity]) -> Vec<String> {
+    let open = |reason: &Validity| {
+        let words = reason.told(|m| both(m, Dimension::Length));
+        format!("The model is not valid for this run: {words}. What depends on the motion is open, not judged.")
+    };
+    validity.iter().map(open).chain(warnings).collect()
+}
+
+/// A value in metric and in US units: sentences of an estimate do not know the reader's.
+pub fn both(si: f64, dimension: Dimension) -> String {
+    let text = |system| format_si(si, dimension, system);
+    format!("{} ({})", text(UnitSystem::Metric), text(UnitSystem::Us))
+}
+
 fn contact_jump(setup: &Setup, outcome: &Outcome) -> bool {
     let path = &setup.fall.path;
     let one_damped = path.line.is_damped() && path.other.is_rigid();
@@ -96,9 +120,10 @@ fn heavy(scenario: &Scenario) -> Option<String> {
     let heavy = scenario.subject.kind == SubjectKind::Person && scenario.absorber.is_some() && mass > 100.0;
     heavy.then(|| {
         format!(
-            "The person's mass of {} is above 100 kg: most absorbers tested were not adequate for heavy workers (Goh and \
+            "The person's mass of {} is above {}: most absorbers tested were not adequate for heavy workers (Goh and \
              Love 2010).",
-            format_si(mass, Dimension::Mass, UnitSystem::Metric)
+            both(mass, Dimension::Mass),
+            both(100.0, Dimension::Mass)
         )
     })
 }

@@ -1,13 +1,17 @@
 //! The horizontal lifeline: its curve as a part of the path, and what it feels at the peak.
 use super::calm::{Reach, calm_settings, first_look, forget_settling, was_calm};
+use super::remark::both;
 use super::{EndLoadView, EstimateError, SpanView};
-use crate::arrest::{Ended, Fall, Outcome, Settings, solve};
-use crate::physics::{Elastic, Geometry, InlineAbsorber, SpanCurve, SpanError, Tightness, knots};
-use crate::quantity::{Dimension, UnitSystem, format_si};
+use crate::arrest::{Fall, Outcome, Settings, solve, solve_on_span};
+use crate::physics::{Elastic, Geometry, InlineAbsorber, SpanCurve, SpanError, Tightness, YieldingSpan, knots};
+use crate::quantity::Dimension;
 use crate::scenario::{Span, SpanTension};
 
 /// Largest error of the force table as a share of the largest force.
 const SHARE: f64 = 1e-3;
+
+/// The same where an absorber in line lets the law change from turn to turn: the laws are joined at this error.
+const FINE_SHARE: f64 = 2e-4;
 
 /// Passes that fit the table to the largest force of the run before it counts as out of reach.
 const PASSES: usize = 12;
@@ -38,15 +42,18 @@ impl Rigging {
         // Also where the line runs over an edge on the fall line: the fall is straight, the pull on the span is not.
         if geometry.layout.is_some_and(|layout| layout.anchor.offset_m != 0.0 || layout.pivot.offset_m != 0.0) {
             return Err(refused(
-                "a horizontal lifeline with its line beside the fall line is not solved",
-                "leave out `place.anchor_offset` and `place.edge`, or judge the lifeline on its own",
+                "a line beside the fall line pulls a horizontal lifeline sideways, and its place on the cable is solved \
+                 moving up and down only",
+                "leave out `place.anchor_offset` and `place.edge` for the lifeline; for the swing, put a fixed anchor \
+                 where the cable carries the line under load",
                 "anchor.kind",
             ));
         }
         if fall.path.other.is_damped() {
             return Err(refused(
-                "damping of the harness beside a horizontal lifeline is not solved",
-                "leave out `harness.damping`: without it the estimate is on the far side",
+                "damping of the harness is not solved beside a horizontal lifeline: joining the two to one damper needs \
+                 one stiffness, and that of a lifeline rises with its load",
+                "leave out `harness.damping`: nothing then takes that energy, and the fall goes deeper",
                 "harness.damping",
             ));
         }
@@ -88,13 +95,12 @@ impl Rigging {
         let (mass, gravity) = (fall.mass_kg, fall.gravity_m_per_s2);
         let deepest = self.curve.rigid_line_deflection_m(mass, gravity, fall.free_fall_m);
         let first_n = self.curve.line_force_n(deepest).max(2.0 * fall.weight_n());
-        if self.has_absorber {
-            return self.fitted(fall, first_n, &Settings::default()).map(|(outcome, _)| outcome);
-        }
         let Ok((look, largest_n)) = self.fitted(fall, first_n, &first_look()) else {
             return self.fitted(fall, first_n, &Settings::default()).map(|(outcome, _)| outcome);
         };
-        if let (Reach::Peaks, Some(settings)) = (reach, calm_settings(&look)) {
+        // What an absorber in line has given is no part of the path that the bound looks at.
+        let calm = calm_settings(&look).filter(|_| reach == Reach::Peaks && !self.has_absorber);
+        if let Some(settings) = calm {
             let (mut calm, _) = self.fitted(fall, largest_n, &settings)?;
             if was_calm(&calm, &settings) {
                 forget_settling(&mut calm);
@@ -120,12 +126,15 @@ impl Rigging {
     }
 
     fn pass(&self, fall: &Fall, largest_n: f64, settings: &Settings) -> Result<Outcome, EstimateError> {
-        let fit = if self.has_absorber {
-            self.curve.envelope_table(largest_n, SHARE)
-        } else {
-            self.curve.table(largest_n, SHARE)
-        };
-        let table = fit.map_err(|e| clash(&e))?.table;
+        if self.has_absorber {
+            let spring = match fall.path.other.elastic {
+                Elastic::Linear { stiffness_n_per_m } => Some(stiffness_n_per_m),
+                _ => None,
+            };
+            let law = YieldingSpan::new(self.curve, spring, largest_n, FINE_SHARE).map_err(|e| clash(&e))?;
+            return Ok(solve_on_span(fall, law, settings)?);
+        }
+        let table = self.curve.table(largest_n, SHARE).map_err(|e| clash(&e))?.table;
         let table = match fall.path.other.elastic {
             Elastic::Linear { stiffness_n_per_m } => {
                 knots::with_spring(&table, stiffness_n_per_m).map_err(|e| clash(&SpanError::from(e)))?
@@ -134,32 +143,12 @@ impl Rigging {
         };
         let mut loaded = fall.clone();
         loaded.path.other.elastic = Elastic::Table(table);
-        let mut outcome = solve(&loaded, settings)?;
-        if self.has_absorber {
-            self.only_first_peak(fall, &mut outcome);
-        }
-        Ok(outcome)
+        Ok(solve(&loaded, settings)?)
     }
 
-    /// Leaves out what an envelope table cannot say: everything after the first peak. Rest is that of the cable with the
-    /// length its absorber has given.
-    fn only_first_peak(&self, without_span: &Fall, outcome: &mut Outcome) {
-        outcome.ended = Ended::TimeLimit;
-        outcome.rebound_rise_m = None;
-        outcome.time_highest_s = None;
-        outcome.time_first_slack_s = None;
-        outcome.slack_episodes = 0;
-        let held = self.curve.with_deployed(self.peak(outcome).deployed_m);
-        let sag = held.deflection_m(without_span.weight_n() * f64::from(self.span.workers)) - self.curve.slack_m();
-        outcome.hang_travel_m = without_span.hang_travel_m(outcome.deployed_m) + sag;
-        if let Some(lowest) = outcome.lowest {
-            outcome.motion.end_at(lowest.time_s);
-        }
-    }
-
-    /// Whether an absorber is in line with the cable.
-    pub const fn has_absorber(&self) -> bool {
-        self.has_absorber
+    /// Stroke of the absorber in line with the cable, m.
+    pub fn stroke_m(&self) -> Option<f64> {
+        self.span.absorber.map(|absorber| absorber.stroke_m)
     }
 
     /// Tension and deflection under the largest line force of a run.
@@ -171,7 +160,8 @@ impl Rigging {
         }
         let deflection_m = self.curve.loading_deflection_m(load);
         let loading = self.curve.loading(deflection_m);
-        SpanPeak { tension_n: loading.tension_n, deflection_m, deployed_m: loading.deployed_m }
+        let deployed_m = outcome.span.map_or(loading.deployed_m, |given| given.deployed_m);
+        SpanPeak { tension_n: loading.tension_n, deflection_m, deployed_m }
     }
 
     /// For screens and sheets.
@@ -199,13 +189,6 @@ impl Rigging {
     /// What the reader must know about a run with this span.
     pub fn warnings(&self) -> Vec<String> {
         let mut list = Vec::new();
-        if self.has_absorber {
-            list.push(
-                "The absorber in line with the lifeline is followed to the first peak only: what comes after (rebound, \
-                 slack, settling) is left out."
-                    .to_owned(),
-            );
-        }
         if self.span.workers > 1 {
             list.push(format!(
                 "{} workers fall together as equal masses at the same place of the span.",
@@ -229,10 +212,17 @@ impl Rigging {
                     .to_owned(),
             );
         }
+        if self.has_absorber {
+            list.push(
+                "The absorber in line with the lifeline holds the tension at its force while the cable moves down, takes \
+                 nothing back, and is rigid at its stroke; the cable stays longer by what it has deployed."
+                    .to_owned(),
+            );
+        }
         if self.span.spans > 1 {
             list.push("The cable runs through the intermediate supports without friction.".to_owned());
         }
-        let slack = format_si(self.curve.slack_m(), Dimension::Length, UnitSystem::Metric);
+        let slack = both(self.curve.slack_m(), Dimension::Length);
         list.push(format!(
             "The lifeline hangs {slack} below its chord at the load before it takes any: part of the free fall."
         ));

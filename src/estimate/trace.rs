@@ -206,7 +206,12 @@ impl Trace {
 
 const fn mode_after(what: Happening) -> Mode {
     match what {
-        Happening::Taut | Happening::DeploymentEnd | Happening::StrokeUsedUp => Mode::Taut,
+        Happening::Taut
+        | Happening::DeploymentEnd
+        | Happening::StrokeUsedUp
+        | Happening::SpanStarts
+        | Happening::SpanStops
+        | Happening::SpanUsedUp => Mode::Taut,
         Happening::DeploymentStart => Mode::Deploying,
         Happening::Slack => Mode::Slack,
     }

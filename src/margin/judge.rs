@@ -34,6 +34,8 @@ pub enum CheckKind {
     SpanEndLoad,
     /// Factor times the largest tension of a horizontal lifeline against its strength.
     SpanTension,
+    /// Stroke of the absorber in line with a horizontal lifeline.
+    SpanStroke,
     /// Span of a prescribed horizontal lifeline.
     SpanLength,
     /// Slack of a prescribed horizontal lifeline, as a share of its span.
@@ -74,6 +76,7 @@ impl CheckKind {
             | Self::SpanLength
             | Self::SpanCableDiameter
             | Self::Stroke
+            | Self::SpanStroke
             | Self::FreeFall
             | Self::DecelerationDistance
             | Self::TotalFall
@@ -121,6 +124,7 @@ impl CheckKind {
                 | Self::SpanTension
                 | Self::ArrestForce
                 | Self::Stroke
+                | Self::SpanStroke
                 | Self::DecelerationDistance
                 | Self::TotalFall
                 | Self::AnchorLoad

@@ -65,6 +65,12 @@ impl Run<'_> {
         if let (Some(capacity), Some(ruling)) = (capacity, &rules.own_strength) {
             list.push(judge(CheckKind::AnchorStrength, Some(capacity), Some(ruling.si())));
         }
+        if let Some(absorber) = &span.absorber {
+            let given = self.numbers.get("span_deployed_length");
+            let check = judge(CheckKind::SpanStroke, given, Some(absorber.stroke.si()));
+            let used_up = self.numbers.get("span_stroke_used_up").is_some_and(|flag| flag != 0.0);
+            list.push(if used_up { check.short(Cause::StrokeUsedUp) } else { check });
+        }
         self.rule(list, CheckKind::SpanLength, rules.length.as_ref(), Some(span.length.si()));
         self.rule(list, CheckKind::SpanSlack, rules.slack.as_ref(), Some(slack_over_span(span)));
         let workers = span.workers.map_or(1.0, |n| n.si());

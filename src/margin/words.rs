@@ -75,6 +75,7 @@ impl Words<'_> {
             CheckKind::LevelStrike(_) => must_not_meet(""),
             CheckKind::FaceStrike(_) => must_not_meet(" at the height of the attachment"),
             CheckKind::Stroke => from_file("absorber.stroke"),
+            CheckKind::SpanStroke => from_file("anchor.span.absorber.stroke"),
             CheckKind::RatedMass => from_file("absorber.rated_mass"),
             CheckKind::RatedFreeFall => from_file("absorber.rated_free_fall"),
             CheckKind::AnchorLoad | CheckKind::SpanEndLoad => {
@@ -127,6 +128,7 @@ impl Words<'_> {
             | CheckKind::LevelStrike(_)
             | CheckKind::FaceStrike(_)
             | CheckKind::Stroke
+            | CheckKind::SpanStroke
             | CheckKind::RatedMass
             | CheckKind::RatedFreeFall => None,
         }

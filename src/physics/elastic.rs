@@ -62,6 +62,8 @@ impl Piece {
 #[derive(Clone, Debug, PartialEq)]
 pub struct Table {
     knots: Vec<(f64, f64)>,
+    /// Integral from 0 to each knot.
+    areas: Vec<f64>,
 }
 
 impl Table {
@@ -97,14 +99,24 @@ impl Table {
         }
         match knots.windows(2).position(|w| w[1].0 <= w[0].0 || w[1].1 < w[0].1) {
             Some(at) => Err(TableError::NotRising { row: at + 2 }),
-            None => Ok(Self { knots }),
+            None => Ok(Self::of(knots)),
         }
     }
 
     /// The same force at every length up to `length`.
     #[must_use]
     pub fn constant(force: f64, length: f64) -> Self {
-        Self { knots: vec![(0.0, force), (length, force)] }
+        Self::of(vec![(0.0, force), (length, force)])
+    }
+
+    fn of(knots: Vec<(f64, f64)>) -> Self {
+        let areas = std::iter::once(0.0)
+            .chain(knots.windows(2).scan(0.0, |sum, w| {
+                *sum += 0.5 * (w[0].1 + w[1].1) * (w[1].0 - w[0].0);
+                Some(*sum)
+            }))
+            .collect();
+        Self { knots, areas }
     }
 
     /// The knots.
@@ -150,10 +162,14 @@ impl Table {
     /// Integral from 0 to `x`.
     #[must_use]
     pub fn integral(&self, x: f64) -> f64 {
-        let last = self.piece_at(x);
-        let full: f64 = self.knots[..=last].windows(2).map(|w| 0.5 * (w[0].1 + w[1].1) * (w[1].0 - w[0].0)).sum();
-        let piece = self.piece(last);
-        full + 0.5 * (piece.y0 + piece.value(x)) * (x - piece.x0)
+        self.integral_on(self.piece_at(x), x)
+    }
+
+    /// Integral from 0 to `x`, where the piece that holds `x` is known; past its ends its straight line goes on.
+    #[must_use]
+    pub fn integral_on(&self, index: usize, x: f64) -> f64 {
+        let piece = self.piece(index);
+        self.areas[index] + 0.5 * (piece.y0 + piece.value(x)) * (x - piece.x0)
     }
 }
 
@@ -195,6 +211,15 @@ impl Elastic {
             Self::Rigid => 0.0,
             Self::Linear { stiffness_n_per_m } => 0.5 * stiffness_n_per_m * elongation_m * elongation_m,
             Self::Table(table) => table.integral(elongation_m),
+        }
+    }
+
+    /// Elastic energy in J at an elongation in m on a straight piece of known number.
+    #[must_use]
+    pub fn energy_on_j(&self, index: usize, elongation_m: f64) -> f64 {
+        match self {
+            Self::Table(table) => table.integral_on(index, elongation_m),
+            _ => self.energy_j(elongation_m),
         }
     }
 

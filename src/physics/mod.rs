@@ -14,4 +14,4 @@ pub use geometry::{
     stated, vertical_lifeline,
 };
 pub use path::{Absorber, Group, SeriesPath};
-pub use span::{EndLoad, InlineAbsorber, Loading, Span, SpanCurve, SpanError, Tightness};
+pub use span::{EndLoad, InlineAbsorber, Loading, Span, SpanCurve, SpanError, Tightness, YieldingSpan};

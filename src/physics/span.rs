@@ -7,8 +7,10 @@ use super::TableError;
 
 mod curve;
 mod shape;
+mod yielding;
 
 pub use curve::{EndLoad, Loading, SpanCurve};
+pub use yielding::YieldingSpan;
 
 /// How tight the cable is before the load comes on.
 #[derive(Clone, Copy, Debug, PartialEq)]

@@ -38,7 +38,7 @@ pub use keys::FIELDS;
 pub use line::*;
 pub use load::{LoadError, Loaded, load};
 pub use model::*;
-pub use path::{Input, inputs, with_value, with_values};
+pub use path::{Input, inputs, with_exact_values, with_value, with_values};
 pub use read::{Places, places, read, read_with_places};
 pub use review::{Review, ReviewRow, Reviewed, review};
 pub use template::new_file;

@@ -5,7 +5,7 @@ use super::field::{Field, LISTS, field_for, list_of};
 use super::keys::FIELDS;
 use super::line::{DampingLaw, StretchLaw};
 use super::model::{Face, Obstacle, Place, Scenario};
-use crate::quantity::Measure;
+use crate::quantity::{Band, Measure};
 
 /// One numeric input of a scenario, present in it.
 #[derive(Clone, Debug, PartialEq)]
@@ -61,6 +61,20 @@ pub fn with_value(scenario: &Scenario, path: &str, value_si: f64) -> Option<Scen
 /// together; only all of them together are judged, whatever their order.
 #[must_use]
 pub fn with_values(scenario: &Scenario, values: &[(&str, f64)]) -> Option<Scenario> {
+    replaced(scenario, values, moved)
+}
+
+/// As [`with_values`], with the values exact: the bands of these inputs are left out.
+#[must_use]
+pub fn with_exact_values(scenario: &Scenario, values: &[(&str, f64)]) -> Option<Scenario> {
+    replaced(scenario, values, |measure, value_si| Measure { band: Band::point(value_si), ..*measure })
+}
+
+fn replaced(
+    scenario: &Scenario,
+    values: &[(&str, f64)],
+    replace: impl Fn(&Measure, f64) -> Measure,
+) -> Option<Scenario> {
     let mut changed = scenario.clone();
     for &(path, value_si) in values {
         let field = field_for(path)?;
@@ -68,7 +82,7 @@ pub fn with_values(scenario: &Scenario, values: &[(&str, f64)]) -> Option<Scenar
             return None;
         }
         let measure = measure_mut(&mut changed, path)?;
-        *measure = moved(measure, value_si);
+        *measure = replace(measure, value_si);
     }
     clash::clashes(&changed).is_empty().then_some(changed)
 }

@@ -1,11 +1,12 @@
 //! Two scenarios beside each other, as text and JSON.
 use super::band_words::{report_margin_object, worst_words};
+use super::json::si_unit;
 use super::page::{Page, Paint, Tone, pad};
 use super::words::margin_words;
 use super::{CAUTION_LINE, CAUTIONS, Report};
 use crate::estimate::{Number, Value as NumberValue, definition};
 use crate::margin::Margin;
-use crate::quantity::{UnitSystem, format_si};
+use crate::quantity::{Band, Measure, Shape, UnitSystem, format_si};
 use crate::study::{Comparison, InputChange, NumberChange, Side, VerdictChange, compare};
 use serde_json::{Value, json};
 
@@ -106,7 +107,7 @@ pub fn compare_object(found: &Comparison, a: &Report, b: &Report) -> Value {
         "version": env!("CARGO_PKG_VERSION"),
         "cautions": CAUTIONS,
         "second_is_worse": found.is_worse(),
-        "inputs": found.inputs.iter().map(|c| json!({ "path": c.path, "first": c.before, "second": c.after })).collect::<Vec<_>>(),
+        "inputs": found.inputs.iter().map(input_object).collect::<Vec<_>>(),
         "numbers": found.numbers.iter().map(|c| json!({
             "id": number_id(c),
             "unit": c.before.as_ref().or(c.after.as_ref()).map(|n| n.unit),
@@ -118,5 +119,26 @@ pub fn compare_object(found: &Comparison, a: &Report, b: &Report) -> Value {
             "second": c.after.as_ref().map(|m| report_margin_object(b, m)),
             "worse": c.is_worse(),
         })).collect::<Vec<_>>(),
+    })
+}
+
+/// One input that differs: as both files state it and, where it is a quantity, both bands in SI units.
+fn input_object(change: &InputChange) -> Value {
+    let shape = |shape: Shape| match shape {
+        Shape::Uniform => "uniform",
+        Shape::Triangular => "triangular",
+        Shape::Normal => "normal",
+    };
+    let band = |measure: &Measure| {
+        let Band { low, typical, high, shape: of } = measure.band;
+        json!({ "low": low, "typical": typical, "high": high, "unit": si_unit(measure.dimension()), "shape": shape(of) })
+    };
+    let [first, second] = &change.measures;
+    json!({
+        "path": change.path,
+        "first": change.before,
+        "second": change.after,
+        "first_band": first.as_ref().map(band),
+        "second_band": second.as_ref().map(band),
     })
 }

@@ -1,4 +1,4 @@
-//! Results to bytes: text, JSON and CSV. Pure functions.
+//! Results to bytes: text, JSON, CSV and SVG. Pure functions.
 mod audit;
 mod audit_table;
 mod band_words;
@@ -6,6 +6,8 @@ mod bands;
 mod caution;
 mod compare;
 mod csv;
+mod drawing;
+mod field;
 mod json;
 mod limits;
 mod page;
@@ -18,6 +20,8 @@ mod spread_data;
 mod text;
 pub mod ticks;
 mod vary;
+mod vary_json;
+mod vary_svg;
 mod words;
 mod working;
 
@@ -30,6 +34,7 @@ pub use bands::{InputAt, MarginBand, ReportBands, report_bands, report_worst};
 pub use caution::{CAUTION_LINE, CAUTIONS, EQUIPMENT_CAUTIONS, LEFT_OUT};
 pub use compare::{compare_object, compare_text, comparison};
 pub use csv::csv;
+pub use field::{MAP_CAUTION, MOST_TEXT_STEPS, TODAY, field_csv, field_text};
 pub use json::{Layout, json, margin as margin_object, object, print};
 pub use limits::{limits_json, limits_text};
 pub use page::{Paint, clean};
@@ -40,4 +45,6 @@ pub use spread::{NO_BAND, SpreadSheet, spread_text};
 pub use spread_data::{spread_csv, spread_object};
 pub use text::text;
 pub use vary::{vary_csv, vary_text};
+pub use vary_json::{field_object, vary_object};
+pub use vary_svg::{field_svg, vary_svg};
 pub use words::{governing_words, margin_words};

@@ -99,7 +99,17 @@ const GROUPS: &[(&str, &[&str])] = &[
             "rebound_rise",
         ],
     ),
-    ("horizontal lifeline, largest", &["span_tension_peak", "span_sag_peak", "span_end_force"]),
+    (
+        "horizontal lifeline, largest",
+        &[
+            "span_tension_peak",
+            "span_sag_peak",
+            "span_end_force",
+            "span_deployed_length",
+            "span_stroke_left",
+            "span_stroke_used_up",
+        ],
+    ),
     (
         "swing",
         &[
@@ -127,7 +137,10 @@ const GROUPS: &[(&str, &[&str])] = &[
             "envelope_bound_tight",
         ],
     ),
-    ("energy at the lowest point", &["line_work", "other_work", "absorber_work", "damper_work", "energy_residual"]),
+    (
+        "energy at the lowest point",
+        &["line_work", "other_work", "absorber_work", "span_absorber_work", "damper_work", "energy_residual"],
+    ),
 ];
 
 /// The part of an id before the name of an obstacle.
@@ -164,7 +177,9 @@ fn number_label(id: &str, scenario: &Scenario) -> String {
 fn number_words(number: &Number, system: UnitSystem) -> String {
     match (&number.value, number.id.as_str()) {
         (Value::Text(words), _) => words.clone(),
-        (Value::Number(flag), "stroke_used_up") => if *flag == 0.0 { "no" } else { "yes" }.to_owned(),
+        (Value::Number(flag), "stroke_used_up" | "span_stroke_used_up") => {
+            if *flag == 0.0 { "no" } else { "yes" }.to_owned()
+        }
         (Value::Number(count), "slack_episodes") => format!("{count:.0}"),
         (Value::Number(value), _) => format_si(*value, number.dimension, system),
     }

@@ -61,11 +61,13 @@ fn row_line(page: &mut Page, evaluator: &Evaluator, found: &Variation, row: &Row
         line.push_str(&pad_left(&cell, 14));
     }
     let word = worst(row.run.checks.iter().map(|check| check.verdict));
-    let why = match &row.run.failure {
-        Some(failure) => failure.to_string(),
-        None => governing(evaluator, row, system).map_or_else(|| "nothing to judge".to_owned(), |m| m.label),
-    };
-    page.line(&format!("{line}  {} {}  {why}", word.symbol(), pad(word.word(), 5)), Tone::Verdict(word));
+    let verdict = format!("  {} {}  ", word.symbol(), pad(word.word(), 5));
+    if let Some(failure) = &row.run.failure {
+        let value = pad_left(&shown(evaluator, found, row.value, system), 14);
+        return page.wrapped(&format!("{value}{verdict}"), &failure.to_string(), Tone::Verdict(word));
+    }
+    let why = governing(evaluator, row, system).map_or_else(|| "nothing to judge".to_owned(), |m| m.label);
+    page.wrapped(&format!("{line}{verdict}"), &why, Tone::Verdict(word));
 }
 
 fn governing(evaluator: &Evaluator, row: &Row, system: UnitSystem) -> Option<Margin> {

@@ -1,7 +1,7 @@
 //! Two scenarios beside each other: inputs, numbers and verdicts that differ.
 use crate::estimate::{Number, Numbers, Value};
 use crate::margin::{Margin, Verdict};
-use crate::quantity::{Measure, format_measure};
+use crate::quantity::{Measure, Shape, format_measure};
 use crate::scenario::{Scenario, field_for, inputs};
 
 /// Differences of numbers below this share of the larger one are rounding.
@@ -31,6 +31,8 @@ pub struct InputChange {
     pub before: Option<String>,
     /// As the second file states it.
     pub after: Option<String>,
+    /// The values of both, with their bands, where the key is a quantity.
+    pub measures: [Option<Measure>; 2],
 }
 
 /// One number that differs; none where it does not apply.
@@ -153,8 +155,19 @@ fn changed_inputs(a: &Side<'_>, b: &Side<'_>) -> Vec<InputChange> {
             path: x.or(y).map(|s| s.path.clone()).unwrap_or_default(),
             before: x.map(|s| s.words.clone()),
             after: y.map(|s| s.words.clone()),
+            measures: [x, y].map(|side| side.and_then(|s| s.measure)),
         })
         .collect()
+}
+
+/// A measure with the shape of its band, where that is not the usual one.
+fn measure_words(measure: &Measure) -> String {
+    let words = format_measure(measure);
+    match (measure.band.is_wide(), measure.band.shape) {
+        (true, Shape::Triangular) => format!("{words} (triangular)"),
+        (true, Shape::Normal) => format!("{words} (normal)"),
+        _ => words,
+    }
 }
 
 /// Every key of a file, numbers and words alike, so that no difference goes unsaid.
@@ -166,7 +179,7 @@ fn stated(side: &Side<'_>) -> Vec<Stated> {
     }
     let measured = |(path, words): (String, String)| {
         let measure = known.iter().find(|input| input.path == path).map(|input| input.measure);
-        let words = measure.as_ref().map_or(words, format_measure);
+        let words = measure.as_ref().map_or(words, measure_words);
         Stated { path, words, measure }
     };
     leaves.into_iter().map(measured).collect()

@@ -30,6 +30,16 @@ pub enum StudyError {
         /// The path of the input.
         path: String,
     },
+    /// A range or a number of steps that gives no field.
+    #[error(
+        "the field over `{path}` needs a range from low to high, 2 to `{most}` steps, and another input for the second"
+    )]
+    Axis {
+        /// The path of the input.
+        path: String,
+        /// Most steps along one input.
+        most: usize,
+    },
     /// More wide bands than a sample has dimensions.
     #[error(
         "`{bands}` inputs are bands, `{most}` at most can be sampled together; make the least certain of them narrow"

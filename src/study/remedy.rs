@@ -1,8 +1,14 @@
-//! For each input that can be chosen, alone: the nearest value at which every check holds. Arithmetic, not advice.
-use super::{Evaluator, Run, StudyError};
-use crate::margin::{Verdict, worst};
-use crate::quantity::{Dimension, Unit, format_unit, parse_quantity};
+//! For each input that can be chosen, alone or with a second: the nearest change at which every check holds. Arithmetic,
+//! not advice.
+use super::held::{Held, Judge, Today, Values};
+use super::nearest::Search;
+use super::pair::PairSearch;
+use super::watch::{Pulse, Step, Watch, unwatched};
+use super::{Evaluator, StudyError};
+use crate::margin::Verdict;
+use crate::quantity::Dimension;
 use crate::scenario::Input;
+use rayon::prelude::*;
 
 /// Inputs that somebody chooses when the fall is planned. What is stated of a thing as it is (strengths, capacities,
 /// ratings, the body, obstacles with their reserves, limits) is not among them: writing another value there would not
@@ -32,26 +38,83 @@ pub const MULTIPLE: f64 = 5.0;
 pub const MASS_MULTIPLE: f64 = 2.0;
 /// Elevations and offsets, whose zero is arbitrary, are searched this far up and down, m.
 pub const REACH_M: f64 = 10.0;
-/// Cells of the search on each side of today's value.
-const CELLS: u32 = 400;
-/// Halvings of a bracket.
-const HALVINGS: usize = 60;
-/// Digits to which a value is rounded to the holding side; more where the window is narrower than that.
-const DIGITS: [i32; 3] = [5, 8, 11];
+
+/// What a change is a share of.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Scale {
+    /// Today's value, its amount.
+    Today(f64),
+    /// The length of what falls, m, see [`Yard`]: for elevations and offsets, whose zero is arbitrary, and for lengths
+    /// that are zero today.
+    Fall(f64),
+    /// One: for ratios that are zero today.
+    One,
+    /// Nothing: today's value is zero. Such a change ranks last.
+    Nothing,
+}
+
+impl Scale {
+    /// A change as a share of the scale; infinite for [`Scale::Nothing`].
+    #[must_use]
+    pub fn share(self, change: f64) -> f64 {
+        match self {
+            Self::Today(size) | Self::Fall(size) => change.abs() / size,
+            Self::One => change.abs(),
+            Self::Nothing => f64::INFINITY,
+        }
+    }
+    /// The change of a whole share, SI; none for [`Scale::Nothing`].
+    #[must_use]
+    pub const fn whole(self) -> Option<f64> {
+        match self {
+            Self::Today(size) | Self::Fall(size) => Some(size),
+            Self::One => Some(1.0),
+            Self::Nothing => None,
+        }
+    }
+}
+
+/// The length that changes of elevations and offsets are a share of.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Yard {
+    /// `line.length` as the file states it.
+    Line,
+    /// The total fall distance of the file's own run, where no line length is stated.
+    TotalFall,
+    /// [`REACH_M`], where the file gives neither.
+    Reach,
+}
 
 /// The nearest value of one input at which every check holds.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Way {
     /// The value, SI.
     pub value: f64,
-    /// As it would stand in the file.
+    /// As it would stand in the file; `1.5..1.5 m` where the input's own band has to go, see [`Way::narrowed`].
     pub written: String,
-    /// Change over today's value, its amount; over the range searched where today's zero is arbitrary.
+    /// The value alone: `1.5 m`.
+    pub shown: String,
+    /// True where the input has a band of its own that the search left out.
+    pub narrowed: bool,
+    /// Change over [`Way::scale`], its amount.
     pub relative: f64,
-    /// True where the change is a share of the range searched, not of today's value.
-    pub of_range: bool,
-    /// In how many separate stretches of the range every check holds.
+    /// What the change is a share of.
+    pub scale: Scale,
+    /// In how many separate stretches of the range every check holds; at the worst, at most so many.
     pub ways: usize,
+    /// Where in the bands of the other inputs a check fails a step short of the value; empty for the typical values.
+    pub place: Vec<(usize, f64)>,
+}
+
+/// Why there is no value.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Without {
+    /// No value in the range was found at which every check holds.
+    NoneInRange,
+    /// The search for the worst came to no end within its rounds, or met open runs it could not place.
+    Unsettled,
+    /// It was broken off.
+    Stopped,
 }
 
 /// One input's answer.
@@ -61,8 +124,30 @@ pub struct Remedy {
     pub input: Input,
     /// Range searched, SI.
     pub range: (f64, f64),
-    /// The nearest value; none where no value in the range was found at which every check holds.
+    /// The nearest value.
     pub way: Option<Way>,
+    /// Why there is none.
+    pub without: Option<Without>,
+}
+
+/// The nearest joint change of two inputs.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Pair {
+    /// Both inputs as they are today.
+    pub inputs: [Input; 2],
+    /// Their values.
+    pub ways: [Way; 2],
+    /// The root of the sum of the squares of both changes, each over its scale: what is least.
+    pub relative: f64,
+}
+
+/// What is searched.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub struct Wanted {
+    /// Where every check must hold.
+    pub held: Held,
+    /// Pairs of inputs as well.
+    pub pairs: bool,
 }
 
 /// All inputs' answers.
@@ -70,136 +155,178 @@ pub struct Remedy {
 pub struct Remedies {
     /// The worst verdict today.
     pub today: Verdict,
+    /// What was searched.
+    pub wanted: Wanted,
+    /// The length that changes of elevations and offsets are a share of: which, and how long, m.
+    pub yard: (Yard, f64),
     /// By the change, smallest first; those without a value last. Empty when every check holds today.
     pub list: Vec<Remedy>,
+    /// Pairs that are nearer than each of their inputs alone, the nearest first.
+    pub pairs: Vec<Pair>,
+    /// How many pairs were searched.
+    pub pairs_searched: usize,
+    /// True when it was broken off.
+    pub partial: bool,
 }
 
-/// Searches every adjustable input of a scenario at its typical values, one at a time.
-///
-/// A stretch of holding values narrower than a four-hundredth of a side of the range can be missed.
+/// Searches every adjustable input of a scenario at its typical values, one at a time; see [`remedies_of`].
 ///
 /// # Errors
 /// As [`Evaluator::at`].
 pub fn remedies(evaluator: &Evaluator) -> Result<Remedies, StudyError> {
-    let today = word(&evaluator.typical());
-    let mut list = Vec::new();
-    if today != Verdict::Holds {
-        for (index, input) in evaluator.inputs().iter().enumerate() {
-            if ADJUSTABLE.contains(&input.path.as_str()) {
-                list.push(Search { evaluator, index, input }.remedy()?);
-            }
-        }
+    remedies_of(evaluator, Wanted::default(), &unwatched)
+}
+
+/// Searches every adjustable input of a scenario, one at a time and, where wanted, in pairs; in parallel on the current
+/// rayon pool, with the same result on any number of threads.
+///
+/// At the typical values a stretch of holding values narrower than a four-hundredth of a side of the range can be missed.
+/// At the worst a value is searched that holds at the places of the bands where a check is known to fail, then the worst is
+/// searched anew with that value; while a check fails there, its place joins the others. So the value holds at all that
+/// the search for the worst finds, and a step short of it a check fails at a place that is known. `watch` is told after each
+/// input and pair and may break off.
+///
+/// # Errors
+/// As [`Evaluator::at`] and [`super::worst_found`].
+pub fn remedies_of(evaluator: &Evaluator, wanted: Wanted, watch: &Watch<'_>) -> Result<Remedies, StudyError> {
+    let today = Today::new(evaluator, wanted.held, watch)?;
+    let (yard, partial) = (yard(evaluator), today.partial);
+    let mut found = Remedies {
+        today: today.verdict,
+        wanted,
+        yard,
+        list: Vec::new(),
+        pairs: Vec::new(),
+        pairs_searched: 0,
+        partial,
+    };
+    if today.verdict == Verdict::Holds || partial {
+        return Ok(found);
+    }
+    let all = All { evaluator, wanted, known: &today.places, yard: yard.1 };
+    let inputs = evaluator.inputs().iter().enumerate();
+    let adjustable: Vec<usize> =
+        inputs.filter(|(_, input)| ADJUSTABLE.contains(&input.path.as_str())).map(|(index, _)| index).collect();
+    let pulse = Pulse::new(watch, Step::Remedies, adjustable.len());
+    found.list = each(&pulse, &adjustable, |&input| all.remedy(input, &pulse))?;
+    found.partial = pulse.is_stopped();
+    if wanted.pairs && !found.partial {
+        let pairs: Vec<[usize; 2]> =
+            adjustable.iter().flat_map(|&a| adjustable.iter().filter(move |b| **b > a).map(move |&b| [a, b])).collect();
+        let alone = |input: usize| {
+            let path = evaluator.inputs().get(input).map(|input| input.path.as_str());
+            let known = found.list.iter().find(|remedy| Some(remedy.input.path.as_str()) == path);
+            known.and_then(|remedy| remedy.way.as_ref()).map_or(f64::INFINITY, |way| way.relative)
+        };
+        let pulse = Pulse::new(watch, Step::Pairs, pairs.len());
+        let answers = each(&pulse, &pairs, |&pair| all.pair(pair, pair.map(alone), &pulse))?;
+        found.pairs_searched = pairs.len();
+        found.partial = pulse.is_stopped();
+        found.pairs = answers.into_iter().flatten().collect();
+        found.pairs.sort_by(|a, b| a.relative.total_cmp(&b.relative));
     }
     let change = |r: &Remedy| r.way.as_ref().map_or(f64::INFINITY, |w| w.relative);
-    list.sort_by(|a, b| change(a).total_cmp(&change(b)));
-    Ok(Remedies { today, list })
+    let without = |r: &Remedy| r.way.is_none();
+    found.list.sort_by(|a, b| without(a).cmp(&without(b)).then(change(a).total_cmp(&change(b))));
+    Ok(found)
 }
 
-fn word(run: &Run) -> Verdict {
-    worst(run.checks.iter().map(|check| check.verdict))
+/// The length of what falls.
+fn yard(evaluator: &Evaluator) -> (Yard, f64) {
+    let line = evaluator.scenario().line.length.map(|length| length.si()).filter(|m| *m > 0.0);
+    let fall = || evaluator.typical().numbers.get("total_fall_distance").filter(|m| *m > 0.0);
+    match line {
+        Some(length) => (Yard::Line, length),
+        None => fall().map_or((Yard::Reach, REACH_M), |fall| (Yard::TotalFall, fall)),
+    }
 }
 
-struct Search<'a> {
+/// Answers in the order of the questions.
+fn each<Q: Sync, A: Send>(
+    pulse: &Pulse<'_>,
+    questions: &[Q],
+    answer: impl Fn(&Q) -> Result<A, StudyError> + Sync,
+) -> Result<Vec<A>, StudyError> {
+    pulse.beat();
+    let one = |question: &Q| {
+        let found = answer(question)?;
+        pulse.answered();
+        Ok(found)
+    };
+    questions.par_iter().map(one).collect()
+}
+
+/// What all searches share.
+struct All<'a> {
     evaluator: &'a Evaluator,
-    index: usize,
-    input: &'a Input,
+    wanted: Wanted,
+    known: &'a [Values],
+    yard: f64,
 }
 
-impl Search<'_> {
-    fn remedy(&self) -> Result<Remedy, StudyError> {
-        let range = self.range();
-        let mut nearest: Option<(f64, f64)> = None;
-        let mut ways = 0;
-        for end in [range.0, range.1] {
-            let (first, count) = self.side(end)?;
-            ways += count;
-            let distance = |pair: (f64, f64)| (pair.1 - self.today()).abs();
-            nearest = match (nearest, first) {
-                (Some(a), Some(b)) => Some(if distance(b) < distance(a) { b } else { a }),
-                (a, b) => a.or(b),
-            };
-        }
-        let way = match nearest {
-            Some(bracket) => Some(self.way(bracket, range, ways)?),
-            None => None,
-        };
-        Ok(Remedy { input: self.input.clone(), range, way })
+impl<'a> All<'a> {
+    fn judge(&self, changed: Vec<usize>, pulse: &'a Pulse<'a>) -> Judge<'a> {
+        Judge::new(self.evaluator, self.wanted.held, changed, self.known, pulse)
     }
 
-    fn today(&self) -> f64 {
+    fn span(&self, index: usize) -> Option<Span> {
+        let input = self.evaluator.inputs().get(index)?;
+        Some(Span { index, input: input.clone(), range: range(input), scale: scale(input, self.yard) })
+    }
+
+    fn remedy(&self, index: usize, pulse: &'a Pulse<'a>) -> Result<Remedy, StudyError> {
+        let count = self.evaluator.inputs().len();
+        let span = self.span(index).ok_or(StudyError::NoInput { index, count })?;
+        let way = Search { span: &span, judge: self.judge(vec![index], pulse), held: self.wanted.held }.way()?;
+        let without = way.as_ref().err().copied();
+        Ok(Remedy { range: span.range, input: span.input, way: way.ok(), without })
+    }
+
+    fn pair(&self, pair: [usize; 2], alone: [f64; 2], pulse: &'a Pulse<'a>) -> Result<Option<Pair>, StudyError> {
+        let [Some(a), Some(b)] = pair.map(|index| self.span(index)) else { return Ok(None) };
+        let judge = self.judge(pair.to_vec(), pulse);
+        PairSearch { spans: [&a, &b], judge, held: self.wanted.held, alone: alone[0].min(alone[1]) }.pair()
+    }
+}
+
+/// One input with the range that is searched and the scale of its changes.
+pub(super) struct Span {
+    pub index: usize,
+    pub input: Input,
+    pub range: (f64, f64),
+    pub scale: Scale,
+}
+
+impl Span {
+    pub fn today(&self) -> f64 {
         self.input.measure.si()
     }
-
-    /// Elevations and offsets have no zero of their own.
-    fn is_place(&self) -> bool {
-        self.input.path.starts_with("place.")
-    }
-
-    fn range(&self) -> (f64, f64) {
-        let (today, field) = (self.today(), self.input.field);
-        let around = self.is_place() || today == 0.0;
-        let reach = if self.input.field.dimension == Some(Dimension::Length) { REACH_M } else { 1.0 };
-        let multiple = if self.input.path == "subject.mass" { MASS_MULTIPLE } else { MULTIPLE };
-        let (low, high) = if around { (today - reach, today + reach) } else { (today / multiple, today * multiple) };
-        (low.max(field.least), high.min(field.most))
-    }
-
-    fn holds(&self, value: f64) -> Result<bool, StudyError> {
-        Ok(word(&self.evaluator.at(&[(self.index, value)])?) == Verdict::Holds)
-    }
-
-    /// From today's value to one end: the first bracket (not holding, holding), and how many stretches hold.
-    fn side(&self, end: f64) -> Result<(Option<(f64, f64)>, usize), StudyError> {
-        let (mut first, mut count) = (None, 0);
-        let (mut last, mut held) = (self.today(), false);
-        for i in 1..=CELLS {
-            // Denser near today's value, where the answer is wanted.
-            let share = (f64::from(i) / f64::from(CELLS)).powi(2);
-            let value = self.today() * (1.0 - share) + end * share;
-            let holds = self.holds(value)?;
-            if holds && !held {
-                count += 1;
-                first = first.or(Some((last, value)));
-            }
-            (last, held) = (value, holds);
-        }
-        Ok((first, count))
-    }
-
-    fn way(&self, bracket: (f64, f64), range: (f64, f64), ways: usize) -> Result<Way, StudyError> {
-        let (mut short, mut good) = bracket;
-        for _ in 0..HALVINGS {
-            let middle = f64::midpoint(short, good);
-            if middle == short || middle == good {
-                break;
-            }
-            *(if self.holds(middle)? { &mut good } else { &mut short }) = middle;
-        }
-        let (value, written) = self.rounded(good)?;
-        let of_range = self.is_place() || self.today() == 0.0;
-        let scale = if of_range { range.1 - range.0 } else { self.today().abs() };
-        Ok(Way { value, written, relative: (value - self.today()).abs() / scale, of_range, ways })
-    }
-
-    /// The value as the file would state it: few digits, rounded away from today's value, and checked as it reads.
-    fn rounded(&self, good: f64) -> Result<(f64, String), StudyError> {
-        let unit = self.input.measure.unit;
-        for digits in DIGITS {
-            let step = 10_f64.powf(in_unit(good, unit).abs().max(1e-12).log10().floor() - f64::from(digits));
-            let away = (good - self.today()).signum();
-            let first = (in_unit(good, unit) * away / step).ceil();
-            for more in [0.0, 1.0] {
-                let written = format_unit((first + more) * away * step * unit.factor(), unit);
-                let Ok((value, _)) = parse_quantity(&written, unit.dimension()) else { continue };
-                if self.holds(value)? {
-                    return Ok((value, written));
-                }
-            }
-        }
-        Ok((good, format_unit(good, unit)))
+    pub fn share(&self, value: f64) -> f64 {
+        self.scale.share(value - self.today())
     }
 }
 
-fn in_unit(value: f64, unit: Unit) -> f64 {
-    value / unit.factor()
+/// Elevations and offsets have no zero of their own.
+fn is_place(input: &Input) -> bool {
+    input.path.starts_with("place.")
+}
+
+fn scale(input: &Input, yard: f64) -> Scale {
+    let size = input.measure.si().abs();
+    match input.field.dimension {
+        _ if is_place(input) => Scale::Fall(yard),
+        _ if size > 0.0 => Scale::Today(size),
+        Some(Dimension::Length) => Scale::Fall(yard),
+        Some(Dimension::Ratio) => Scale::One,
+        _ => Scale::Nothing,
+    }
+}
+
+fn range(input: &Input) -> (f64, f64) {
+    let (today, field) = (input.measure.si(), input.field);
+    let around = is_place(input) || today == 0.0;
+    let reach = if field.dimension == Some(Dimension::Length) { REACH_M } else { 1.0 };
+    let multiple = if input.path == "subject.mass" { MASS_MULTIPLE } else { MULTIPLE };
+    let (low, high) = if around { (today - reach, today + reach) } else { (today / multiple, today * multiple) };
+    (low.max(field.least), high.min(field.most))
 }

@@ -1,5 +1,6 @@
 //! How far a long study is, and whether to go on.
 use std::ops::ControlFlow;
+use std::sync::atomic::{AtomicBool, AtomicUsize, Ordering};
 
 /// A part of a study that is counted on its own.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -12,6 +13,12 @@ pub enum Step {
     Sample,
     /// Base points of the ranking.
     Ranking,
+    /// Cells of a map.
+    Cells,
+    /// Inputs whose nearest value is searched.
+    Remedies,
+    /// Pairs of inputs whose nearest joint change is searched.
+    Pairs,
 }
 
 /// How far one step is.
@@ -31,4 +38,39 @@ pub type Watch<'w> = dyn Fn(Progress) -> ControlFlow<()> + Sync + 'w;
 /// Lets a study run to its end.
 pub const fn unwatched(_: Progress) -> ControlFlow<()> {
     ControlFlow::Continue(())
+}
+
+/// A step of several questions that are answered side by side: tells the watch how many are done, also while one takes
+/// long, and keeps that it broke off.
+pub(super) struct Pulse<'w> {
+    watch: &'w Watch<'w>,
+    step: Step,
+    done: AtomicUsize,
+    of: usize,
+    stopped: AtomicBool,
+}
+
+impl<'w> Pulse<'w> {
+    pub fn new(watch: &'w Watch<'w>, step: Step, of: usize) -> Self {
+        Self { watch, step, done: AtomicUsize::new(0), of, stopped: AtomicBool::new(false) }
+    }
+
+    /// One question is answered.
+    pub fn answered(&self) {
+        self.done.fetch_add(1, Ordering::Relaxed);
+        self.beat();
+    }
+
+    /// Tells the watch; true once it broke off.
+    pub fn beat(&self) -> bool {
+        let progress = Progress { step: self.step, done: self.done.load(Ordering::Relaxed), of: self.of };
+        if !self.is_stopped() && (self.watch)(progress).is_break() {
+            self.stopped.store(true, Ordering::Relaxed);
+        }
+        self.is_stopped()
+    }
+
+    pub fn is_stopped(&self) -> bool {
+        self.stopped.load(Ordering::Relaxed)
+    }
 }

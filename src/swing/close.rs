@@ -44,6 +44,7 @@ impl Run<'_> {
             line_j: path.line.elastic.energy_j(state.e[0]),
             other_j: path.other.elastic.energy_j(state.e[1]),
             absorber_j: self.absorber_j + absorbed_j,
+            span_absorber_j: 0.0,
             damper_j: state.damper_j,
         }
     }

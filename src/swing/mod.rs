@@ -10,12 +10,13 @@ mod event;
 mod law;
 mod outcome;
 mod plane;
-mod poly;
 mod reading;
 mod run;
 mod series;
 mod step;
 mod trajectory;
+
+use crate::arrest::poly;
 
 pub use outcome::{Approach, Ended, Impulse, Lowest, Peak, PlaneOutcome, Strike, WorkCount};
 pub use plane::{Face, Level, Plane, Point, Settings, SwingError};

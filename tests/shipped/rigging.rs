@@ -29,6 +29,26 @@ pub const EXACT: &[Expected] = &[
         ],
     ),
     (
+        // Two dampers on a rising force; m g / k of both and the deployed length.
+        "damped-harness-rising-absorber",
+        &[
+            ("free_fall_distance", 2.6),
+            ("arrest_force_peak", 3_710.774_524_08),
+            ("time_peak_force", 0.986_977_518_367),
+            ("line_elongation_peak", 0.052_991_247_5),
+            ("arrest_distance", 1.024_637_463_625),
+            ("deployed_length", 0.849_621_339_587),
+            ("time_lowest", 0.988_380_622_279),
+            ("time_first_slack", 1.104_614_809_734),
+            ("slack_episodes", 1.0),
+            ("rebound_rise", 0.231_142_293_443),
+            ("settle_time", 1.776_642_570_548),
+            ("hang_travel", 0.890_715_872_92),
+            ("damper_work", 163.336_487_884),
+            ("absorber_work", 2_643.039_257_309),
+        ],
+    ),
+    (
         // Forces of the table times 1.3.
         "frozen-absorber",
         &[
@@ -173,6 +193,31 @@ pub const EXACT: &[Expected] = &[
 /// `P = F (sin th1 + sin th2)`, solved by bisection; its instant by integration. Others: integration with the cable's
 /// closed form; tension and sag from that closed form at the largest force.
 pub const SPANS: &[Expected] = &[
+    (
+        // Followed to rest: the cable is longer by what its absorber has given.
+        "lifeline-absorber-rebounds",
+        &[
+            ("free_fall_distance", 1.885_756_255_21),
+            ("arrest_force_peak", 4_306.539_386),
+            ("time_peak_force", 0.925_220_986),
+            ("arrest_distance", 1.297_516_096_5),
+            ("time_lowest", 0.925_796_608_6),
+            ("rebound_rise", 0.340_333_831_4),
+            ("time_first_slack", 1.037_250_986),
+            ("slack_episodes", 6.0),
+            ("settle_time", 5.020_650_986),
+            ("span_deployed_length", 0.324_283_040_28),
+            ("span_stroke_left", 0.475_716_959_72),
+            ("span_stroke_used_up", 0.0),
+            ("span_absorber_work", 2_594.264_322_2),
+            ("span_tension_peak", 8_000.0),
+            ("span_sag_peak", 1.347_351_272_7),
+            ("other_elongation_peak", 1.211_595_017_5),
+            ("line_work", 184.584_948_9),
+            ("other_work", 168.461_491_7),
+            ("hang_travel", 1.168_347_145_1),
+        ],
+    ),
     (
         "lifeline-inline-absorber",
         &[

@@ -1,7 +1,8 @@
 //! The laws of the path: line, absorber, and everything else that gives.
 use crate::estimate::EstimateError;
+use crate::estimate::remark::both;
 use crate::physics::{Absorber, Elastic, Group, Table, TableError};
-use crate::quantity::{Dimension, Measure, UnitSystem, format_si};
+use crate::quantity::{Dimension, Measure};
 use crate::scenario::{AnchorKind, DampingLaw, Scenario, StretchLaw};
 
 /// Elastic law of the line; `elastic_length_m` is what a modulus is divided by.
@@ -24,10 +25,7 @@ fn elastic(scenario: &Scenario, elastic_length_m: Option<f64>) -> Result<Elastic
     match elastic_length_m.map(|l| modulus / l) {
         Some(k) if k > 0.0 && k.is_finite() => Ok(Elastic::Linear { stiffness_n_per_m: k }),
         Some(_) => Err(EstimateError::Geometry {
-            message: format!(
-                "the line's law gives a modulus of `{}`",
-                format_si(modulus, Dimension::Force, UnitSystem::Metric)
-            ),
+            message: format!("the line's law gives a modulus of `{}`", both(modulus, Dimension::Force)),
             hint: "the rated force must exceed twice the weight of the rated mass, and the loads must rise".to_owned(),
             path: "line",
         }),

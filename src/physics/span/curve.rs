@@ -91,6 +91,22 @@ impl SpanCurve {
         Self { deployed_m, ..self }
     }
 
+    /// Length its in-line absorber has deployed for good, m.
+    #[must_use]
+    pub const fn deployed_m(&self) -> f64 {
+        self.deployed_m
+    }
+
+    /// Whether its in-line absorber has no stroke left.
+    pub(super) fn is_used_up(&self) -> bool {
+        self.absorber.is_none_or(|absorber| self.deployed_m >= absorber.stroke_m)
+    }
+
+    /// Work of the in-line absorber for a deployed length in m, shared by the workers, J.
+    pub(super) fn slider_work_j(&self, deployed_m: f64) -> f64 {
+        self.absorber.map_or(0.0, |a| a.force_n * deployed_m / self.workers)
+    }
+
     /// Straight distance between the supports of one span, m.
     #[must_use]
     pub fn chord_m(&self) -> f64 {
@@ -265,7 +281,7 @@ impl SpanCurve {
     }
 
     /// Deflections at which the absorber starts and at which its stroke is used up, m.
-    fn deployment_bounds_m(&self) -> Option<[f64; 2]> {
+    pub(super) fn deployment_bounds_m(&self) -> Option<[f64; 2]> {
         let absorber = self.absorber?;
         let start = self.spare_m + absorber.force_n * self.compliance_m_per_n;
         Some([self.deployed_m, absorber.stroke_m].map(|s| self.deflection_at_excess(start + s)))

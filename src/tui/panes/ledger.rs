@@ -18,7 +18,7 @@ const DEEP: u16 = 4;
 const VALUE: usize = 14;
 
 /// What the line, its fellows and the dampers took, in the order of the account.
-const TAKEN: [&str; 4] = ["line_work", "other_work", "absorber_work", "damper_work"];
+const TAKEN: [&str; 5] = ["line_work", "other_work", "absorber_work", "span_absorber_work", "damper_work"];
 
 fn rows(model: &Model, width: u16) -> Vec<Row> {
     let Some(report) = &model.answer.report else { return Vec::new() };

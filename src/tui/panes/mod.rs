@@ -1,6 +1,7 @@
 //! What the panes show: each draws itself from the model and nothing else.
 pub mod about;
 pub mod elevation;
+pub mod end_loads;
 pub mod foot;
 pub mod header;
 pub mod help;

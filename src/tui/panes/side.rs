@@ -1,7 +1,7 @@
 //! What Elevation shows of places beside the fall line: a swing, an edge, faces, a lifeline. Worked out from a report
 //! and the play head; heights and offsets in m.
 use super::scene::{Scene, lowest_time};
-use crate::estimate::{EventKind, PlacePoint, Sample, SpanView};
+use crate::estimate::{EndLoadView, EventKind, PlacePoint, Sample, SpanView};
 use crate::scenario::{AnchorKind, SpanTension};
 use crate::sheet::Report;
 
@@ -62,6 +62,8 @@ pub struct Cable {
     pub peak_sag_m: f64,
     /// Where it carries the line now.
     pub now: Spot,
+    /// Loads of the left and the right support under the largest load.
+    pub end_loads: [EndLoadView; 2],
 }
 
 /// Everything beside the fall line.
@@ -215,13 +217,16 @@ fn cable(report: &Report, span: &SpanView, chord_m: f64, now: &Sample) -> Cable 
         peak: (0.0, chord_m - span.peak_deflection_m),
         peak_sag_m: span.peak_deflection_m,
         now: (0.0, chord_m - deflection_now(report, span, droop(0.0), now)),
+        end_loads: span.end_loads,
     }
 }
 
 /// Deflection of the cable at the play head: in proportion to what gives beside the line, exact where nothing else does.
 fn deflection_now(report: &Report, span: &SpanView, unloaded_m: f64, now: &Sample) -> f64 {
     let largest = report.estimate.numbers.get("other_elongation_peak").unwrap_or(0.0);
-    if now.force_n <= 0.0 || largest <= 0.0 {
+    // A cable that its absorber has made longer hangs lower, slack or not.
+    let is_longer = now.other_elongation_m > 0.0;
+    if now.force_n <= 0.0 && !is_longer || largest <= 0.0 {
         return unloaded_m;
     }
     span.slack_m + (span.peak_deflection_m - span.slack_m) * (now.other_elongation_m / largest).clamp(0.0, 1.0)

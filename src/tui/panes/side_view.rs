@@ -1,5 +1,6 @@
 //! The view Elevation of a fall with things beside the fall line: one scale both ways, a cell counting twice as high as
 //! wide.
+use super::end_loads;
 use super::scene::{Bar, Scene};
 use super::side::{Mark, MarkKind, Side, Spot, Wall};
 use super::strings::{Label, Rank, Rows, axis_ticks, draw_axis, draw_labels, draw_sum, title};
@@ -124,14 +125,9 @@ pub fn draw(buffer: &mut Buffer, area: Rect, scene: &Scene, side: &Side, theme: 
     draw_body(buffer, &sheet, scene, side, theme);
     let labels = draw_marks(buffer, &sheet, side, theme);
     name_walls(buffer, &sheet, side, theme);
-    draw_labels(
-        buffer,
-        sheet.labels,
-        scene,
-        &sheet.rows,
-        [labels, fixed_labels(&sheet, scene, side, theme)].concat(),
-        theme,
-    );
+    let ends = draw_ends(buffer, &sheet, scene, side, theme);
+    let labels = [labels, ends, fixed_labels(&sheet, scene, side, theme)].concat();
+    draw_labels(buffer, sheet.labels, scene, &sheet.rows, labels, theme);
     draw_foot(buffer, &sheet, scene, theme);
     if let Some(sum) = sheet.sum {
         draw_sum(buffer, sum, scene, theme);
@@ -297,6 +293,14 @@ fn mark_text(mark: &Mark, room: u16) -> String {
     let brief = word.split(' ').next().unwrap_or_default();
     let choices = [format!("{symbol} {word} {time_s:.2} s"), format!("{symbol} {brief} {time_s:.2} s")];
     choices.into_iter().find(|text| cells(text) <= room).unwrap_or_else(|| (*symbol).to_owned())
+}
+
+/// The pull on both ends of a lifeline under its largest load.
+fn draw_ends(buffer: &mut Buffer, sheet: &Sheet, scene: &Scene, side: &Side, theme: Theme) -> Vec<Label> {
+    let Some(cable) = &side.cable else { return Vec::new() };
+    let supports = cable.supports.map(|at| sheet.cell(at));
+    let room = sheet.labels.width.saturating_sub(2);
+    end_loads::draw(buffer, sheet.field, room, supports, (&cable.end_loads, &scene.scale), theme.heading())
 }
 
 /// Writes a word right or left of a cell where all cells and one beyond are blank.

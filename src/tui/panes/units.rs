@@ -48,6 +48,12 @@ impl Scale {
         format_si(si, self.dimension, self.units)
     }
 
+    /// A force in the same system.
+    #[must_use]
+    pub fn force(&self, newton: f64) -> String {
+        format_si(newton, Dimension::Force, self.units)
+    }
+
     /// A number that is already in display units and is to add up with others, with the unit.
     #[must_use]
     pub fn print(&self, shown: f64) -> String {

@@ -81,7 +81,6 @@ pub fn ending(estimate: &Estimate) -> &'static str {
     let last = estimate.events.iter().rev().map(|event| event.kind);
     let mut told = last.filter_map(|kind| match kind {
         EventKind::TurnsBack => Some("turns back"),
-        EventKind::PeakPassed => Some("first peak"),
         _ => None,
     });
     let settled = if estimate.numbers.get("settle_time").is_some() { "settled" } else { "not settled" };

@@ -1,5 +1,5 @@
 //! Polynomials of fixed degree on the unit interval, and where they change sign.
-use crate::arrest::roots::monotone_zero;
+use super::roots::monotone_zero;
 
 /// Degree of every polynomial.
 pub const ORDER: usize = 20;
