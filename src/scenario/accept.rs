@@ -42,7 +42,7 @@ fn known_place(values: &mut Values, path: &str) {
     if is_place(&at) {
         return;
     }
-    let paths = FIELDS.iter().map(|field| field.path);
+    let paths = FIELDS.iter().map(|field| field.path).filter(|path| list_of(path) != Some(ACCEPT));
     let near = nearest(&at, paths).map(|near| format!("did you mean `{near}`? ")).unwrap_or_default();
     let hint = format!("{near}a path is a section or a key, such as `obstacle.1` or `line.strength`");
     values.error(span, format!("there is no input or section {}", quoted(&at)), "expected a path", Some(hint));
