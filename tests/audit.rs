@@ -327,9 +327,9 @@ fn ctrl_c_writes_what_is_finished_marks_it_and_ends_with_130() {
             .spawn()
             .unwrap()
     };
-    for form in ["--brief", "--sarif"] {
+    for form in ["--brief", "--sarif", "--json"] {
         let mut child = spawn(form);
-        // The head is written once Ctrl-C is listened to.
+        // The first bytes are written once Ctrl-C is listened to.
         let mut first = [0_u8; 1];
         std::io::Read::read_exact(child.stdout.as_mut().unwrap(), &mut first).unwrap();
         let pressed = Command::new("kill").args(["-INT", &child.id().to_string()]).status().unwrap();
@@ -341,6 +341,10 @@ fn ctrl_c_writes_what_is_finished_marks_it_and_ends_with_130() {
         assert!(err.contains("of 1000 files were looked at, the results are a part only"), "{err}");
         if form == "--brief" {
             assert!(out.contains("PARTIAL: interrupted after"), "{out}");
+        } else if form == "--json" {
+            let last = object(out.lines().last().unwrap());
+            assert_eq!((&last["interrupted"], &last["of"]), (&true.into(), &1000.into()));
+            assert_eq!(last["files"].as_u64().unwrap() + 1, out.lines().count() as u64);
         } else {
             let invocation = &object(&out)["runs"][0]["invocations"][0];
             assert_eq!((&invocation["executionSuccessful"], &invocation["exitCode"]), (&false.into(), &130.into()));

@@ -289,9 +289,8 @@ fn more_than_two_hundred_acceptances_are_refused_and_take_no_room_from_obstacles
     let entry = "[[accept]]\ndoubt = \"reserve-missing\"\nwhy = \"x\"\n";
     let many = SOUND.to_owned() + &entry.repeat(200);
     assert_eq!(read("t", &many).unwrap().accepted.len(), 200);
-    let obstacles = |n: usize| -> String {
-        (0..n).map(|n| format!("[[obstacle]]\nname = \"o{n}\"\ntop = \"0 m\"\nreserve = \"1 m\"\n")).collect()
-    };
+    let obstacle = |n: usize| format!("[[obstacle]]\nname = \"o{n}\"\ntop = \"0 m\"\nreserve = \"1 m\"\n");
+    let obstacles = |n: usize| (0..n).map(obstacle).collect::<Vec<_>>().concat();
     assert_eq!(read("t", &(many.clone() + &obstacles(199))).unwrap().obstacles.len(), 200);
     let faults = read("t", &(many + entry)).unwrap_err();
     assert_eq!(faults.faults[0].message, "more than 200 accepted doubts");

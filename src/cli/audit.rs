@@ -10,9 +10,10 @@ use crate::margin::{self, Verdict};
 use crate::scenario::{Loaded, review};
 use crate::sheet::{
     Audited, Finding, Report, Summary, Table, audit_head, audit_json, audit_rules, audit_text, explain_text, file_uri,
-    report_worst, sarif_close, sarif_open, sarif_results,
+    interrupted_json, report_worst, sarif_close, sarif_open, sarif_results,
 };
 use rayon::prelude::*;
+use std::panic::{AssertUnwindSafe, catch_unwind};
 use std::path::{Path, PathBuf};
 use std::sync::atomic::{AtomicUsize, Ordering};
 
@@ -135,7 +136,9 @@ impl Gate<'_> {
         if self.interrupt.is_pressed() {
             return None;
         }
-        let (finding, code) = match self.judged(path) {
+        // A fault of the program in one file must not take the others with it.
+        let judged = catch_unwind(AssertUnwindSafe(|| self.judged(path))).unwrap_or_else(|_| Err(broken(path)));
+        let (finding, code) = match judged {
             Ok((loaded, report)) => {
                 let doubts = margin::doubts(&report.scenario, &report.margins).unwrap_or_default();
                 let review = review(&report.file, &loaded.text, &loaded.scenario, Some(doubts));
@@ -182,6 +185,7 @@ impl Gate<'_> {
         match self.form {
             Form::Text | Form::Brief => self.write(&self.table.text(of, PAINT)),
             Form::Sarif => self.write(&sarif_close(complete, self.code.number())),
+            Form::Json if !complete => self.write(&interrupted_json(self.table.files(), of)),
             Form::Json => {}
         }
         if !complete {
@@ -193,6 +197,11 @@ impl Gate<'_> {
         }
         self.code
     }
+}
+
+fn broken(path: &Path) -> Failure {
+    let reason = "the program failed on it, see the report on standard error; please send the file with it".to_owned();
+    Failure::NotComputed { file: path.display().to_string(), reason }
 }
 
 const fn code_of(verdict: Verdict, require: Require) -> Code {

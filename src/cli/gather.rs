@@ -50,6 +50,13 @@ impl Gathered {
         }
     }
 
+    fn add_sorted(&mut self, mut files: Vec<PathBuf>) {
+        files.sort();
+        for file in files {
+            self.add(file);
+        }
+    }
+
     fn named(&mut self, path: &Path) {
         if !path.is_dir() {
             return self.add(path.to_owned());
@@ -59,8 +66,7 @@ impl Gathered {
         if found.is_empty() {
             self.complain(&format!("no `*.toml` below `{}`; name the files themselves", path.display()));
         }
-        found.sort();
-        found.into_iter().for_each(|file| self.add(file));
+        self.add_sorted(found);
     }
 
     fn matched(&mut self, pattern: &str) {
@@ -81,8 +87,7 @@ impl Gathered {
         if found.is_empty() {
             self.complain(&format!("no file matches `{pattern}`; `**` searches the folders below"));
         }
-        found.sort();
-        found.into_iter().for_each(|file| self.add(file));
+        self.add_sorted(found);
     }
 
     /// Takes every `*.toml` below a folder. Links to folders are not followed, so that no folder is searched twice.

@@ -155,3 +155,9 @@ pub fn audit_json(audited: &Audited) -> String {
     }
     print(&Value::Object(object), Layout::OneLine)
 }
+
+/// The last line of JSON after Ctrl-C: the lines before are a part only.
+#[must_use]
+pub fn interrupted_json(files: usize, of: usize) -> String {
+    print(&json!({ "interrupted": true, "files": files, "of": of, "cautions": CAUTIONS }), Layout::OneLine)
+}

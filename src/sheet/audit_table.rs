@@ -7,7 +7,7 @@ use crate::margin::Verdict;
 use crate::quantity::UnitSystem;
 use crate::scenario::{DOUBT_RULES, DoubtRule};
 
-/// Files that are all listed; of more, only those that do not hold.
+/// So many files are all listed; of those after them only what does not hold.
 pub const MOST_LISTED: usize = 1000;
 /// Lines that the table never exceeds.
 pub const MOST_ROWS: usize = 10_000;
@@ -138,8 +138,8 @@ impl Table {
             page.wrapped(
                 "  ",
                 &format!(
-                    "{} more files are counted below and not listed: of more than {MOST_LISTED} files only those that do \
-                     not hold are, and {MOST_ROWS} at most",
+                    "{} more files are counted below and not listed: after the first {MOST_LISTED} files only those that \
+                     do not hold are, in {MOST_ROWS} lines at most",
                     self.left_out
                 ),
                 Tone::Plain,

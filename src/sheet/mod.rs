@@ -25,7 +25,7 @@ mod vary_svg;
 mod words;
 mod working;
 
-pub use audit::{Audited, Finding, audit_head, audit_json, audit_text};
+pub use audit::{Audited, Finding, audit_head, audit_json, audit_text, interrupted_json};
 pub use audit_table::{FINDING_RULES, MOST_LISTED, MOST_ROWS, Summary, Table, audit_rules, explain_text};
 pub use band_words::{
     bands_object, bands_sentence, place_word, place_words, report_margin_object, share_object, share_words, worst_words,
