@@ -67,6 +67,9 @@ fn folders_patterns_and_files_are_looked_at_in_order_and_once() {
     assert_eq!(folder.files(&["*.toml"]), ["a.toml", "b.toml"]);
     assert_eq!(folder.files(&["**/*.toml"]), ["a.toml", "b.toml", "sub/c.toml", "sub/deep/d.toml"]);
     assert_eq!(folder.files(&["s*", "[ab].toml"]), ["sub/c.toml", "sub/deep/d.toml", "a.toml", "b.toml"]);
+    assert_eq!(folder.files(&["sub/*"]), ["sub/c.toml", "sub/deep/d.toml"]);
+    assert_eq!(folder.files(&["./sub/d?ep/"]), ["./sub/deep/d.toml"]);
+    assert_eq!(folder.files(&["**"]), ["a.toml", "b.toml", "notes.txt", "sub/c.toml", "sub/deep/d.toml"]);
     assert_eq!(folder.files(&["a.toml", "./a.toml", "sub/../a.toml", "a.t?ml"]), ["a.toml"]);
     // A file of that very name is no pattern.
     folder.write("x[1].toml", &HOLDS);
@@ -256,6 +259,10 @@ fn links_pipes_and_what_is_not_permitted_do_not_hang_or_end_the_audit() {
     };
     assert_eq!(of("./good.toml").as_deref(), Some("holds"));
     assert_eq!(of("./same.toml"), None);
+    // A pattern that searches below follows no link to a folder, one that names its depth does.
+    assert_eq!(folder.files(&["**/good.toml"]), ["good.toml"]);
+    assert_eq!(folder.files(&["**/g*.toml", "a*/good.toml"]), ["good.toml"]);
+    assert_eq!(folder.files(&["a*n/good.toml"]), ["again/good.toml"]);
     assert_eq!(of("./loop.toml").as_deref(), Some("unreadable"));
     assert_eq!(of("./again.toml").as_deref(), Some("unreadable"));
     // A superuser may read it all the same.

@@ -1,10 +1,10 @@
 //! Which files an audit looks at: files, folders and patterns, in a fixed order, each file once.
 use super::exit::Code;
 use super::output;
-use glob::{MatchOptions, glob_with};
+use glob::{MatchOptions, Pattern};
 use std::collections::HashSet;
 use std::io;
-use std::path::{Path, PathBuf};
+use std::path::{Component, Path, PathBuf};
 
 /// As shells have it: `*` stops at a folder's end and does not find hidden names.
 const AS_SHELLS: MatchOptions =
@@ -69,25 +69,52 @@ impl Gathered {
         self.add_sorted(found);
     }
 
-    fn matched(&mut self, pattern: &str) {
-        let paths = match glob_with(pattern, AS_SHELLS) {
-            Ok(paths) => paths,
+    fn matched(&mut self, text: &str) {
+        let text = text.trim_end_matches('/');
+        let pattern = match Pattern::new(text) {
+            Ok(pattern) => pattern,
             Err(error) => {
-                return self.complain(&format!("`{pattern}` is no pattern: {error}; put it right or name files"));
+                return self.complain(&format!("`{text}` is no pattern: {error}; put it right or name files"));
             }
         };
+        let names: Vec<Component<'_>> = Path::new(text).components().collect();
+        let plain = names.iter().take_while(|name| !has_signs(&name.as_os_str().to_string_lossy())).count();
+        let depth = (!text.contains("**")).then_some(names.len() - plain);
         let mut found = Vec::new();
-        for path in paths {
-            match path {
-                Ok(path) if path.is_dir() => self.search(&path, &mut found),
-                Ok(path) => found.push(path),
-                Err(error) => self.complain(&format!("cannot search `{}`: {}", error.path().display(), error.error())),
-            }
-        }
+        self.walk(&names[..plain].iter().collect::<PathBuf>(), &pattern, depth, &mut found);
         if found.is_empty() {
-            self.complain(&format!("no file matches `{pattern}`; `**` searches the folders below"));
+            self.complain(&format!("no file matches `{text}`; `**` searches the folders below"));
         }
         self.add_sorted(found);
+    }
+
+    /// Takes what matches in a folder; folders that match are searched. Goes down `depth` folders, or without end where
+    /// it follows no links, so that a loop of links ends.
+    fn walk(&mut self, folder: &Path, pattern: &Pattern, depth: Option<usize>, found: &mut Vec<PathBuf>) {
+        if depth == Some(0) {
+            return;
+        }
+        let place = if folder.as_os_str().is_empty() { Path::new(".") } else { folder };
+        let entries = match std::fs::read_dir(place) {
+            Ok(entries) => entries,
+            Err(error) if error.kind() == io::ErrorKind::NotFound => return,
+            Err(error) => return self.complain(&format!("cannot search `{}`: {error}", place.display())),
+        };
+        for entry in entries {
+            let Ok(entry) = entry else {
+                self.complain(&format!("cannot read all names in `{}`", place.display()));
+                continue;
+            };
+            let path = folder.join(entry.file_name());
+            let link = entry.file_type().is_ok_and(|kind| kind.is_symlink());
+            let is_folder = path.is_dir() && (depth.is_some() || !link);
+            match (pattern.matches_path_with(&path, AS_SHELLS), is_folder) {
+                (true, true) => self.search(&path, found),
+                (true, false) if !path.is_dir() => found.push(path),
+                (false, true) => self.walk(&path, pattern, depth.map(|depth| depth - 1), found),
+                _ => {}
+            }
+        }
     }
 
     /// Takes every `*.toml` below a folder. Links to folders are not followed, so that no folder is searched twice.
@@ -121,9 +148,12 @@ fn is_special(path: &Path) -> bool {
     std::fs::metadata(path).is_ok_and(|to| !to.is_file() && !to.is_dir())
 }
 
+fn has_signs(text: &str) -> bool {
+    text.contains(['*', '?', '['])
+}
+
 /// A pattern, where no file has this very name.
 fn pattern_of(path: &Path) -> Option<String> {
     let text = path.to_str()?;
-    let has_signs = text.contains(['*', '?', '[']);
-    (has_signs && path.symlink_metadata().is_err()).then(|| text.to_owned())
+    (has_signs(text) && path.symlink_metadata().is_err()).then(|| text.to_owned())
 }
