@@ -20,6 +20,7 @@ fn start() -> color_eyre::Result<ExitCode> {
     match cli::parse_and_run(std::env::args_os()) {
         Next::Exit(code) => Ok(ExitCode::from(code.number())),
         Next::View { path, units } => screen(&path, units),
+        Next::Manual => Ok(ExitCode::from(cli::print_manual(&tui::key_rows()).number())),
     }
 }
 

@@ -294,14 +294,14 @@ fn a_closed_pipe_ends_quietly_with_the_code_of_the_files() {
 #[test]
 fn of_very_many_files_only_those_that_do_not_hold_are_listed() {
     use underfoot::quantity::UnitSystem;
-    use underfoot::sheet::{Audited, Finding, MOST_LISTED, Paint, Summary, Table, report};
+    use underfoot::sheet::{AuditTable, Audited, Finding, MOST_LISTED, Paint, Summary, report};
     let scenario = underfoot::scenario::read("t", &HOLDS).unwrap();
     let report = report("t", &HOLDS, &scenario).unwrap();
     let review = underfoot::scenario::review("t", &HOLDS, &scenario, None);
     let of = |name: &str, finding: Finding| {
         Summary::of(&Audited { file: name.to_owned(), uri: name.to_owned(), finding }, UnitSystem::Metric)
     };
-    let mut table = Table::default();
+    let mut table = AuditTable::default();
     for _ in 0..MOST_LISTED + 500 {
         table.push(of("holds.toml", Finding::Judged(Box::new(report.clone()), review.clone())));
     }

@@ -226,3 +226,29 @@ fn a_panic_gives_the_terminal_back() {
     session.wait_for("the roof is on fire");
     assert_ne!(session.end().exit_code(), 0);
 }
+
+#[test]
+fn a_running_sample_is_stopped_by_its_key_while_the_screen_answers_a_nudge() {
+    let (_folder, path) = file();
+    let mut session = Session::screen(&path);
+    session.wait_for("quit");
+    session.press("8");
+    for count in ["16,384 samples", "65,536 samples"] {
+        session.wait_for(count);
+        session.press("g");
+    }
+    // A quarter of a million runs take seconds.
+    session.wait_for("sample: ");
+    let asked = Instant::now();
+    session.press("\x1b[C");
+    session.wait_for("edited");
+    assert!(asked.elapsed() < Duration::from_secs(1), "a nudge waited for the sample");
+    let far = |line: &str| line.contains("sample: ") && line.contains("% done");
+    session.wait("the sample to get on", |screen| screen.contents().lines().any(far));
+    session.press("x");
+    session.wait_for("262,144, stopped: a part");
+    session.press("q");
+    session.wait_for("unsaved changes");
+    session.press("q");
+    assert_eq!(session.end().exit_code(), 0);
+}

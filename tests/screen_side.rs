@@ -78,7 +78,7 @@ fn paths(bench: &Bench) -> Vec<String> {
 
 #[test]
 fn a_fixed_anchor_becomes_a_lifeline_on_the_screen_and_back() {
-    let mut bench = Bench::roof();
+    let mut bench = Bench::still(ROOF, 140, 44);
     turn_to(&mut bench, "anchor.kind", "span", &["12 m", "4000 kN", "1 kN"]);
     assert!(bench.model.answer.current().is_some(), "{}", bench.frame());
     for path in ["anchor.span.length", "anchor.span.modulus"] {
@@ -111,7 +111,9 @@ fn a_line_becomes_retractable_and_vertical_on_the_screen() {
 /// Column and row of the first cell that shows a symbol within the view.
 fn cell_of(bench: &Bench, symbol: char) -> (f64, f64) {
     let frame = bench.frame();
-    let found = frame.lines().zip(0_u32..).find_map(|(line, row)| {
+    // Below the row of tabs, which has names of its own.
+    let tabs = frame.lines().position(|line| line.contains("Elev")).unwrap_or(0);
+    let found = frame.lines().zip(0_u32..).skip(tabs + 1).find_map(|(line, row)| {
         let column = line.chars().zip(0_u32..).skip(45).find(|(known, _)| *known == symbol)?.1;
         Some((f64::from(column), f64::from(row)))
     });
@@ -170,7 +172,9 @@ fn the_energy_account_of_the_ledger_comes_out_even() {
     );
     assert!(texts.len() > 8);
     for text in texts {
-        let frame = frame(&text, 140, 60, "5");
+        let mut bench = Bench::still(&text, 140, 60);
+        bench.keys("5");
+        let frame = bench.frame();
         let row = frame.lines().find(|line| line.contains("left over")).unwrap_or_else(|| panic!("{frame}"));
         let left = row.split("miss").nth(1).unwrap().split_whitespace().next().unwrap();
         let joules: f64 = left.parse().unwrap();

@@ -383,8 +383,8 @@ fn an_open_margin_says_why_and_nothing_to_judge_says_what_to_state() {
 
 #[test]
 fn the_count_names_every_verdict_that_occurs() {
-    use underfoot::sheet::{Audited, Finding, Summary, Table};
-    let mut table = Table::default();
+    use underfoot::sheet::{AuditTable, Audited, Finding, Summary};
+    let mut table = AuditTable::default();
     assert_eq!(table.tally(), "0 files: none judged");
     let why = || "why".to_owned();
     for (finding, words) in [

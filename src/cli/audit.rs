@@ -9,8 +9,8 @@ use super::run::{Failure, load_and_report};
 use crate::margin::{self, Verdict};
 use crate::scenario::{Loaded, review};
 use crate::sheet::{
-    Audited, Finding, Report, Summary, Table, audit_head, audit_json, audit_rules, audit_text, explain_text, file_uri,
-    interrupted_json, report_worst, sarif_close, sarif_open, sarif_results,
+    AuditTable, Audited, Finding, Report, Summary, audit_head, audit_json, audit_rules, audit_text, explain_text,
+    file_uri, interrupted_json, report_worst, sarif_close, sarif_open, sarif_results,
 };
 use rayon::prelude::*;
 use std::panic::{AssertUnwindSafe, catch_unwind};
@@ -48,7 +48,7 @@ pub fn audit(args: &AuditArgs) -> Code {
         form: form(args),
         interrupt,
         meter: Meter::new(),
-        table: Table::default(),
+        table: AuditTable::default(),
         code: gathered.code(),
         reader: Reader::Listens,
         first_result: true,
@@ -73,7 +73,7 @@ struct Gate<'a> {
     form: Form,
     interrupt: Interrupt,
     meter: Meter,
-    table: Table,
+    table: AuditTable,
     code: Code,
     reader: Reader,
     first_result: bool,

@@ -1,5 +1,6 @@
 //! The command line: arguments in, results to stdout, messages to stderr, one exit code out.
 mod audit;
+mod examples;
 mod exit;
 mod gather;
 mod interrupt;
@@ -8,15 +9,18 @@ mod meter;
 mod new;
 mod options;
 mod output;
+mod reference;
 mod run;
+mod sheet;
 mod spread;
 mod study;
 mod vary;
 
 pub use exit::Code;
+pub use reference::{KeyRow, commands_markdown, manual, print_manual};
 
 use crate::quantity::UnitSystem;
-use clap::Parser;
+use clap::FromArgMatches;
 use options::{Arguments, Command, ViewArgs};
 use std::ffi::OsString;
 use std::io::IsTerminal;
@@ -34,11 +38,14 @@ pub enum Next {
         /// The units shown.
         units: UnitSystem,
     },
+    /// Print the manual, which lists the keys of the screen too.
+    Manual,
 }
 
 /// Reads the arguments (the first is the program's name) and does what they ask for, except for the screen.
 pub fn parse_and_run(args: impl IntoIterator<Item = impl Into<OsString> + Clone>) -> Next {
-    match Arguments::try_parse_from(args) {
+    let read = examples::command().try_get_matches_from(args);
+    match read.and_then(|matches| Arguments::from_arg_matches(&matches)) {
         Ok(arguments) => dispatch(arguments),
         Err(refusal) => {
             // A closed pipe while help is printed is not worth a message.
@@ -56,9 +63,13 @@ fn dispatch(arguments: Arguments) -> Next {
         (Some(Command::Compare(args)), _) => Next::Exit(study::compare(&args)),
         (Some(Command::Vary(args)), _) => Next::Exit(vary::vary_inputs(&args)),
         (Some(Command::Remedy(args)), _) => Next::Exit(study::remedy(&args)),
+        (Some(Command::Sheet(args)), _) => Next::Exit(sheet::sheet(&args)),
         (Some(Command::Spread(args)), _) => Next::Exit(spread::spread(&args)),
         (Some(Command::Limits(args)), _) => Next::Exit(new::limits(&args)),
         (Some(Command::New(args)), _) => Next::Exit(new::new(&args)),
+        (Some(Command::Schema), _) => Next::Exit(reference::print_schema()),
+        (Some(Command::Completions(args)), _) => Next::Exit(reference::print_completions(args.shell)),
+        (Some(Command::Manual), _) => Next::Manual,
         (None, None) => {
             output::message("no file is given; `underfoot --help` lists what there is");
             Next::Exit(Code::WrongInput)

@@ -42,7 +42,7 @@ pub enum Command {
     /// Print the estimate and its margins
     #[command(before_help = CAUTION_LINE)]
     Run(RunArgs),
-    /// Review files and folders: faults, doubtful inputs, margins, one verdict a file
+    /// Review files, folders and patterns: faults, doubts, margins, one verdict a file; a gate by its exit code
     #[command(before_help = CAUTION_LINE, after_help = AUDIT_CODES)]
     Audit(AuditArgs),
     /// Over the bands of the inputs: worst found, share that falls short, which input matters
@@ -57,12 +57,21 @@ pub enum Command {
     /// Tell what differs between two files: inputs, numbers, verdicts
     #[command(before_help = CAUTION_LINE, after_help = COMPARE_CODES)]
     Compare(CompareArgs),
+    /// Write the calculation sheet of a file: every step with its numbers, for whoever reviews and signs
+    #[command(before_help = CAUTION_LINE, after_help = EXIT_CODES)]
+    Sheet(SheetArgs),
     /// List the built-in published limits with clause, year and how each value was confirmed
     #[command(before_help = CAUTION_LINE)]
     Limits(LimitsArgs),
     /// Print an annotated scenario to start from
     #[command(before_help = CAUTION_LINE)]
     New(NewArgs),
+    /// Print the JSON Schema of a scenario file, for editors that complete and check keys
+    Schema,
+    /// Print the completions of a shell
+    Completions(CompletionsArgs),
+    /// Print the manual page (roff): commands, options, exit codes and the keys of the screen
+    Manual,
 }
 
 /// Units shown.
@@ -162,6 +171,13 @@ pub struct NewArgs {
     /// Write to this file, which must not exist yet
     #[arg(short, long, value_name = "FILE")]
     pub output: Option<PathBuf>,
+}
+
+/// Arguments of `completions`.
+#[derive(Args, Clone, Debug)]
+pub struct CompletionsArgs {
+    /// The shell
+    pub shell: clap_complete::Shell,
 }
 
 /// Arguments of `spread`.
@@ -293,4 +309,23 @@ pub struct RemedyArgs {
     /// Units shown in text beside those of the file
     #[arg(long, value_enum)]
     pub units: Option<Units>,
+}
+
+/// Arguments of `sheet`.
+#[derive(Args, Clone, Debug)]
+pub struct SheetArgs {
+    /// Scenario file
+    pub file: PathBuf,
+    /// Where the sheet goes: its ending says what it is, `.html`, `.md` or `.json`
+    #[arg(short, long, value_name = "OUT")]
+    pub output: Option<PathBuf>,
+    /// Write over a sheet that exists
+    #[arg(long)]
+    pub replace: bool,
+    /// Add the nearest values at which every check holds
+    #[arg(long)]
+    pub remedies: bool,
+    /// Units of the results; inputs stand as the file states them
+    #[arg(long, value_enum, default_value_t)]
+    pub units: Units,
 }

@@ -1,7 +1,7 @@
 //! Scenario to physics to arrest to numbers.
 use super::calm::Reach;
 use super::setup::{Setup, allowance, body_below_attachment};
-use super::{Event, Numbers, PlaneView, SpanView, Trace, WorkStep, collect, log, planar, remark};
+use super::{Event, Numbers, PlaneView, Solved, SpanView, Trace, WorkStep, collect, log, planar, remark};
 use crate::arrest::{ArrestError, Outcome, Settings, solve};
 use crate::physics::Layout;
 use crate::quantity::{Dimension, UnitSystem, format_si};
@@ -32,6 +32,8 @@ pub struct Estimate {
     pub plane: Option<PlaneView>,
     /// The horizontal lifeline under the largest load.
     pub span: Option<SpanView>,
+    /// What was solved, part by part and mode by mode.
+    pub solved: Solved,
 }
 
 /// Why numbers of this run are open rather than judged.
@@ -271,6 +273,7 @@ fn vertical_estimate(scenario: &Scenario, setup: &Setup) -> Result<Estimate, Est
         working: working(setup),
         plane: None,
         span: setup.span.as_ref().map(|span| span.view(&setup.fall, &outcome)),
+        solved: Solved::of(setup, &outcome.fall.path, Some(&outcome.motion)),
         trace: Trace::new(outcome.motion),
     })
 }
@@ -293,6 +296,7 @@ fn planar_estimate(scenario: &Scenario, setup: &Setup, layout: &Layout) -> Resul
         working: working(setup),
         plane: Some(view),
         span: None,
+        solved: Solved::of(setup, &setup.fall.path, None),
         trace: Trace::planar(outcome.trajectory, outcome.taut_at.elevation_m, &outcome.happenings),
     })
 }

@@ -11,6 +11,7 @@ mod planar;
 mod remark;
 mod rigging;
 mod setup;
+mod solved;
 mod trace;
 mod view;
 
@@ -19,5 +20,6 @@ pub use cables::typical_cables;
 pub use definition::{DEFINITIONS, Definition, definition};
 pub use event::{Event, EventKind};
 pub use number::{Number, Numbers, Value};
+pub use solved::{CubicView, Form, ModeView, PartView, SliderView, Solved};
 pub use trace::{Mode, Phase, PlanePoint, Sample, Trace};
 pub use view::{EndLoadView, PlacePoint, PlaneView, SpanView, StrikeView, WorkStep};

@@ -55,6 +55,15 @@ pub struct FaultRow {
     pub hint: Option<String>,
 }
 
+/// The findings without colour, as [`Faults::render`] lays them out.
+impl std::fmt::Display for Faults {
+    fn fmt(&self, formatter: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        formatter.write_str(&self.render(false))
+    }
+}
+
+impl std::error::Error for Faults {}
+
 impl Faults {
     /// Findings of a text, brought into the order of their places.
     #[must_use]

@@ -74,7 +74,7 @@ const COUNTED: [&str; 7] = ["holds", "thin", "open", "short", "refused", "unread
 
 /// The lines of an audit as they come in; its size is bounded however many files there are.
 #[derive(Clone, Debug, Default)]
-pub struct Table {
+pub struct AuditTable {
     rows: Vec<Summary>,
     counts: [usize; COUNTED.len()],
     files: usize,
@@ -83,7 +83,7 @@ pub struct Table {
     accepted: usize,
 }
 
-impl Table {
+impl AuditTable {
     /// Takes a file in.
     pub fn push(&mut self, summary: Summary) {
         self.files += 1;

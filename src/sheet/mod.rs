@@ -3,6 +3,7 @@ mod audit;
 mod audit_table;
 mod band_words;
 mod bands;
+mod calculation;
 mod caution;
 mod compare;
 mod csv;
@@ -26,11 +27,12 @@ mod words;
 mod working;
 
 pub use audit::{Audited, Finding, audit_head, audit_json, audit_text, interrupted_json};
-pub use audit_table::{FINDING_RULES, MOST_LISTED, MOST_ROWS, Summary, Table, audit_rules, explain_text};
+pub use audit_table::{AuditTable, FINDING_RULES, MOST_LISTED, MOST_ROWS, Summary, audit_rules, explain_text};
 pub use band_words::{
     bands_object, bands_sentence, place_word, place_words, report_margin_object, share_object, share_words, worst_words,
 };
 pub use bands::{InputAt, MarginBand, ReportBands, report_bands, report_worst};
+pub use calculation::*;
 pub use caution::{CAUTION_LINE, CAUTIONS, EQUIPMENT_CAUTIONS, LEFT_OUT};
 pub use compare::{compare_object, compare_text, comparison};
 pub use csv::csv;

@@ -20,7 +20,7 @@ pub fn span(page: &mut Page, estimate: &Estimate, system: UnitSystem) {
     }
 }
 
-fn span_rows(view: &SpanView) -> Vec<(&'static str, f64, Dimension)> {
+pub(super) fn span_rows(view: &SpanView) -> Vec<(&'static str, f64, Dimension)> {
     let mut rows = vec![
         ("distance of the supports", view.length_m, Dimension::Length),
         ("load from the left support", view.at_m, Dimension::Length),
@@ -35,7 +35,7 @@ fn span_rows(view: &SpanView) -> Vec<(&'static str, f64, Dimension)> {
     rows
 }
 
-fn end_words(load: &EndLoadView, system: UnitSystem) -> String {
+pub(super) fn end_words(load: &EndLoadView, system: UnitSystem) -> String {
     let force = format_si(load.force_n, Dimension::Force, system);
     format!("{force}, {:.1} deg below level", load.below_horizontal_deg)
 }
@@ -55,7 +55,7 @@ pub fn swing(page: &mut Page, estimate: &Estimate, system: UnitSystem) {
     }
 }
 
-fn stations(view: &PlaneView) -> Vec<(&'static str, PlacePoint)> {
+pub(super) fn stations(view: &PlaneView) -> Vec<(&'static str, PlacePoint)> {
     let mut list = vec![("anchor", view.anchor)];
     list.extend(view.edge.map(|edge| ("edge, about which the line turns", edge)));
     list.extend([
@@ -71,7 +71,7 @@ fn place_words(place: PlacePoint, system: UnitSystem) -> String {
     format!("{}, {}", length(place.offset_m), length(place.elevation_m))
 }
 
-fn strike_words(strike: &StrikeView, system: UnitSystem) -> String {
+pub(super) fn strike_words(strike: &StrikeView, system: UnitSystem) -> String {
     format!(
         "strikes {} {} at {:.3} s: attachment at {}, speed {}, that of a straight fall of {}",
         if strike.is_face { "the face" } else { "the level" },

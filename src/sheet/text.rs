@@ -167,14 +167,14 @@ fn group(page: &mut Page, title: &str, report: &Report, system: UnitSystem, belo
     }
 }
 
-fn number_label(id: &str, scenario: &Scenario) -> String {
+pub(super) fn number_label(id: &str, scenario: &Scenario) -> String {
     let known = DEFINITIONS.iter().find(|d| d.id == stem(id));
     let label = known.map_or_else(|| stem(id).replace('_', " "), |d| d.label.to_owned());
     let Some((_, place)) = id.split_once('.') else { return label };
     format!("{label}, {}", place_name(scenario, place))
 }
 
-fn number_words(number: &Number, system: UnitSystem) -> String {
+pub(super) fn number_words(number: &Number, system: UnitSystem) -> String {
     match (&number.value, number.id.as_str()) {
         (Value::Text(words), _) => words.clone(),
         (Value::Number(flag), "stroke_used_up" | "span_stroke_used_up") => {

@@ -11,15 +11,15 @@ use serde_json::{Value, json};
 const WORDS: usize = 64;
 
 /// A sum of space that the fall takes, from a datum down.
-struct Sum {
+pub(super) struct Sum {
     /// Where it counts from: `the anchor`.
-    datum: &'static str,
+    pub(super) datum: &'static str,
     /// Words and lengths in m, from the datum down.
-    terms: Vec<(String, f64)>,
+    pub(super) terms: Vec<(String, f64)>,
 }
 
 impl Sum {
-    fn total_m(&self) -> f64 {
+    pub(super) fn total_m(&self) -> f64 {
         self.terms.iter().map(|term| term.1).sum()
     }
 }
@@ -53,7 +53,7 @@ fn line(page: &mut Page, words: &str, value_m: f64, system: UnitSystem) {
 
 /// Both sums, where elevations are known. They differ by the height of the anchor above the standing surface, so that
 /// they end at the same elevation.
-fn sums(scenario: &Scenario, elevations: Option<&Elevations>) -> Vec<Sum> {
+pub(super) fn sums(scenario: &Scenario, elevations: Option<&Elevations>) -> Vec<Sum> {
     let Some(e) = elevations else { return Vec::new() };
     let from_anchor = e.anchor_m.map(|anchor| Sum {
         datum: "the anchor",

@@ -1,8 +1,10 @@
 //! One run of a study: some inputs replaced, every number and every check of it, no words.
+use super::meter::Meter;
 use crate::estimate::{EstimateError, Figures, Numbers, Validity, figures, peaks};
 use crate::margin::{Check, CheckKind, Margin, Rules, UnknownBasis, checks, judge, margin_of};
 use crate::quantity::UnitSystem;
 use crate::scenario::{Input, Scenario, inputs, with_values};
+use std::sync::Arc;
 
 /// Why a study could not be made.
 #[derive(Clone, Debug, PartialEq, thiserror::Error)]
@@ -50,6 +52,15 @@ pub enum StudyError {
         /// How many can be sampled.
         most: usize,
     },
+    /// An input without a usual range: an exact zero has no half and no double.
+    #[error("`{path}` is zero and has no range to move in; give it a value or a band")]
+    NoRange {
+        /// The path of the input.
+        path: String,
+    },
+    /// Somebody broke it off, see [`Meter::drop_study`].
+    #[error("stopped before it was done")]
+    Stopped,
     /// A count that gives no answer.
     #[error("`{count}` samples are outside of `{least}` to `{most}`")]
     Samples {
@@ -102,6 +113,8 @@ pub struct Evaluator {
     inputs: Vec<Input>,
     /// Kinds of checks that apply whatever the numbers are, for runs that fail.
     kinds: Vec<CheckKind>,
+    /// Counts its runs and may refuse them.
+    meter: Option<Arc<Meter>>,
 }
 
 impl Evaluator {
@@ -119,7 +132,13 @@ impl Evaluator {
         }
         kinds.sort_unstable();
         kinds.dedup();
-        Ok(Self { scenario: scenario.clone(), rules, inputs: inputs(scenario), kinds })
+        Ok(Self { scenario: scenario.clone(), rules, inputs: inputs(scenario), kinds, meter: None })
+    }
+
+    /// The same with every run of [`Self::at`] counted, and refused once the meter says so.
+    #[must_use]
+    pub fn metered(self, meter: Arc<Meter>) -> Self {
+        Self { meter: Some(meter), ..self }
     }
 
     /// The scenario as it was given.
@@ -166,8 +185,9 @@ impl Evaluator {
     /// Values that are outside of their physical range or clash make a failed run, not an error.
     ///
     /// # Errors
-    /// [`StudyError::NoInput`] and [`StudyError::NotFinite`].
+    /// [`StudyError::NoInput`] and [`StudyError::NotFinite`]; [`StudyError::Stopped`] where a meter refuses the run.
     pub fn at(&self, values: &[(usize, f64)]) -> Result<Run, StudyError> {
+        self.count()?;
         Ok(self.scenario_at(values)?.map_or_else(|| self.failed(Failure::Clash), |changed| self.run(&changed)))
     }
 
@@ -177,8 +197,15 @@ impl Evaluator {
     /// # Errors
     /// As [`Self::at`].
     pub fn peaks_at(&self, values: &[(usize, f64)]) -> Result<Run, StudyError> {
+        self.count()?;
         let run = |changed: &Scenario| self.judged(changed, peaks(changed));
         Ok(self.scenario_at(values)?.as_ref().map_or_else(|| self.failed(Failure::Clash), run))
+    }
+
+    /// One more run for the meter, which may refuse it.
+    fn count(&self) -> Result<(), StudyError> {
+        let refused = self.meter.as_ref().is_some_and(|meter| !meter.count());
+        if refused { Err(StudyError::Stopped) } else { Ok(()) }
     }
 
     /// The scenario with some inputs replaced, as [`Self::at`] runs it; none where the values cannot be together.

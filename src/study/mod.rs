@@ -7,6 +7,7 @@ mod field;
 mod held;
 mod joe_kuo;
 mod memory;
+mod meter;
 mod nearest;
 mod pair;
 mod rank;
@@ -26,6 +27,7 @@ pub use compare::{Comparison, InputChange, NumberChange, SAME_SHARE, Side, Verdi
 pub use evaluate::{Evaluator, Failure, Run, StudyError};
 pub use field::{Axis, Cell, Edge, Field, MOST_STEPS, Of, Piece, field, zero_line};
 pub use held::Held;
+pub use meter::Meter;
 pub use rank::{Bar, Importance, Part, Ranking, Target, bars, importance, importance_of, importances};
 pub use ranked::{CheckRanking, ranked};
 pub use remedy::{

@@ -1,6 +1,7 @@
-//! The table of commands: dispatch, key line and help screen all read it.
+//! Commands of the screen and how the keys find them.
 use super::key::Key;
-use crossterm::event::{KeyCode, KeyEvent};
+pub use super::table::COMMANDS;
+use crossterm::event::KeyEvent;
 
 /// What the user can ask for.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -49,8 +50,32 @@ pub enum Command {
     Notes,
     /// The view Ledger.
     Ledger,
+    /// The view Vary.
+    Vary,
+    /// The view Map.
+    Map,
+    /// The view Spread.
+    Spread,
+    /// The view Remedies.
+    Remedies,
+    /// The view Compare.
+    Compare,
     /// The next view.
     NextView,
+    /// Break off the studies that run.
+    Stop,
+    /// Start the studies of this view again.
+    Again,
+    /// Write the point of Map or the chosen remedy into the inputs.
+    IntoInputs,
+    /// The chosen input goes to the right in Map.
+    AxisAcross,
+    /// The chosen input goes upwards in Map.
+    AxisUp,
+    /// Remedies at the typical values or at the worst found.
+    HeldAt,
+    /// Keep the present state to compare with.
+    Keep,
     /// Play or pause the fall.
     Play,
     /// Slower.
@@ -92,13 +117,15 @@ pub enum Group {
     File,
     /// Views and units.
     View,
+    /// Studies: many runs.
+    Study,
     /// Playing the fall.
     Play,
 }
 
 impl Group {
     /// All groups in the order of the help screen.
-    pub const ALL: [Self; 5] = [Self::Choose, Self::Change, Self::View, Self::Play, Self::File];
+    pub const ALL: [Self; 6] = [Self::Choose, Self::Change, Self::View, Self::Study, Self::Play, Self::File];
 
     /// The heading.
     #[must_use]
@@ -108,6 +135,7 @@ impl Group {
             Self::Change => "change an input",
             Self::File => "file and program",
             Self::View => "views",
+            Self::Study => "studies",
             Self::Play => "play the fall",
         }
     }
@@ -130,170 +158,6 @@ pub struct Entry {
     pub group: Group,
 }
 
-const fn entry(
-    command: Command,
-    id: &'static str,
-    keys: &'static [Key],
-    label: &'static str,
-    help: &'static str,
-    group: Group,
-) -> Entry {
-    Entry { command, id, keys, label, help, group }
-}
-
-/// Every command of the screen.
-pub const COMMANDS: &[Entry] = &[
-    entry(Command::Up, "up", &[Key::plain(KeyCode::Up)], "", "the row above", Group::Choose),
-    entry(Command::Down, "down", &[Key::plain(KeyCode::Down)], "", "the row below", Group::Choose),
-    entry(Command::PageUp, "page-up", &[Key::plain(KeyCode::PageUp)], "", "ten rows up", Group::Choose),
-    entry(Command::PageDown, "page-down", &[Key::plain(KeyCode::PageDown)], "", "ten rows down", Group::Choose),
-    entry(Command::NextPane, "next-pane", &[Key::plain(KeyCode::Tab)], "", "keys go to the next pane", Group::Choose),
-    entry(
-        Command::PreviousPane,
-        "previous-pane",
-        &[Key::plain(KeyCode::BackTab)],
-        "",
-        "keys go to the pane before",
-        Group::Choose,
-    ),
-    entry(
-        Command::Raise,
-        "raise",
-        &[Key::plain(KeyCode::Right), Key::letter('+'), Key::letter('=')],
-        "raise",
-        "raise the chosen input by a small step",
-        Group::Change,
-    ),
-    entry(
-        Command::Lower,
-        "lower",
-        &[Key::plain(KeyCode::Left), Key::letter('-')],
-        "",
-        "lower the chosen input by a small step",
-        Group::Change,
-    ),
-    entry(
-        Command::RaiseMuch,
-        "raise-much",
-        &[Key::shift(KeyCode::Right), Key::letter('}')],
-        "",
-        "raise it by ten small steps",
-        Group::Change,
-    ),
-    entry(
-        Command::LowerMuch,
-        "lower-much",
-        &[Key::shift(KeyCode::Left), Key::letter('{')],
-        "",
-        "lower it by ten small steps",
-        Group::Change,
-    ),
-    entry(
-        Command::Type,
-        "type",
-        &[Key::plain(KeyCode::Enter), Key::letter('t')],
-        "type",
-        "type a value with its unit, or a band such as 80..100..120 kg; enter takes it, esc leaves it",
-        Group::Change,
-    ),
-    entry(
-        Command::Undo,
-        "undo",
-        &[Key::letter('u'), Key::ctrl('z')],
-        "undo",
-        "take back the last change",
-        Group::Change,
-    ),
-    entry(
-        Command::Save,
-        "save",
-        &[Key::letter('s'), Key::ctrl('s')],
-        "save",
-        "write the changed values to the file; comments and order stay",
-        Group::File,
-    ),
-    entry(Command::Redo, "redo", &[Key::letter('y'), Key::ctrl('y')], "", "make it again", Group::Change),
-    entry(Command::Restore, "restore", &[Key::letter('f')], "", "back to the file's value", Group::Change),
-    entry(
-        Command::Elevation,
-        "elevation",
-        &[Key::letter('1')],
-        "",
-        "Elevation: the fall to scale, with its dimensions",
-        Group::View,
-    ),
-    entry(
-        Command::History,
-        "history",
-        &[Key::letter('2')],
-        "",
-        "History: travel and line force over time",
-        Group::View,
-    ),
-    entry(Command::Margins, "margins", &[Key::letter('3')], "", "Margins: every check with its limit", Group::View),
-    entry(
-        Command::Notes,
-        "notes",
-        &[Key::letter('4')],
-        "",
-        "Notes: warnings, limits, assumptions and cautions; page-up and page-down scroll",
-        Group::View,
-    ),
-    entry(
-        Command::Ledger,
-        "ledger",
-        &[Key::letter('5')],
-        "",
-        "Ledger: the energy account, every number with its definition, and the working; page-up and page-down scroll",
-        Group::View,
-    ),
-    entry(Command::NextView, "next-view", &[Key::letter('v')], "view", "the next view", Group::View),
-    entry(
-        Command::Window,
-        "window",
-        &[Key::letter('w')],
-        "",
-        "History shows the first catch or the whole motion",
-        Group::View,
-    ),
-    entry(
-        Command::Curves,
-        "curves",
-        &[Key::letter('c')],
-        "",
-        "History of a swing shows travel and force, or angle and speed, where there is no room for all",
-        Group::View,
-    ),
-    entry(Command::Units, "units", &[Key::letter('m')], "units", "metric or US units", Group::View),
-    entry(Command::Play, "play", &[Key::letter(' ')], "play", "play the fall in slow motion, or pause", Group::Play),
-    entry(Command::Slower, "slower", &[Key::letter('[')], "", "play slower", Group::Play),
-    entry(Command::Faster, "faster", &[Key::letter(']')], "", "play faster", Group::Play),
-    entry(Command::StepBack, "step-back", &[Key::letter(',')], "", "a short time back", Group::Play),
-    entry(Command::StepOn, "step-on", &[Key::letter('.')], "", "a short time on", Group::Play),
-    entry(Command::EventBack, "event-back", &[Key::letter('p')], "", "the event before", Group::Play),
-    entry(Command::EventOn, "event-on", &[Key::letter('n')], "next event", "the next event", Group::Play),
-    entry(Command::ToStart, "to-start", &[Key::plain(KeyCode::Home)], "", "the start of the fall", Group::Play),
-    entry(Command::ToEnd, "to-end", &[Key::plain(KeyCode::End)], "", "the end of the motion", Group::Play),
-    entry(
-        Command::Reload,
-        "reload",
-        &[Key::letter('r')],
-        "",
-        "read the file again; undo brings your changes back",
-        Group::File,
-    ),
-    entry(Command::Help, "help", &[Key::letter('?'), Key::plain(KeyCode::F(1))], "keys", "this list", Group::File),
-    entry(Command::Quit, "quit", &[Key::letter('q')], "quit", "leave; asks once when there are changes", Group::File),
-    entry(
-        Command::Interrupt,
-        "interrupt",
-        &[Key::ctrl('c')],
-        "",
-        "leave with the exit code of an interrupt; asks once when there are changes",
-        Group::File,
-    ),
-];
-
 /// The command a key stands for.
 #[must_use]
 pub fn command_for(event: KeyEvent) -> Option<Command> {
@@ -314,7 +178,7 @@ pub fn key_name(command: Command) -> String {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crossterm::event::KeyModifiers;
+    use crossterm::event::{KeyCode, KeyModifiers};
     use std::collections::HashSet;
 
     #[test]

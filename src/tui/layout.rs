@@ -13,6 +13,19 @@ const LOG_FROM: u16 = 132;
 /// From this height on the margins stand below.
 const MARGINS_FROM: u16 = 32;
 
+/// Views where the margins stand below.
+const BESIDE_MARGINS: [View; 9] = [
+    View::Elevation,
+    View::History,
+    View::Notes,
+    View::Ledger,
+    View::Vary,
+    View::Map,
+    View::Spread,
+    View::Remedies,
+    View::Compare,
+];
+
 /// The panes of the screen. A pane of no height is not shown.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
 pub struct Panes {
@@ -57,7 +70,7 @@ impl Panes {
         if has_margins_below(size) {
             panes.place_margins(&mut rest, model);
         }
-        panes.place_body(rest, matches!(model.view, View::Elevation | View::History));
+        panes.place_body(rest, model.view);
         Some(panes)
     }
 
@@ -68,7 +81,7 @@ impl Panes {
         self.margins = bottom(rest, wanted.min(rest.height / 3));
     }
 
-    fn place_body(&mut self, rest: Rect, has_timeline: bool) {
+    fn place_body(&mut self, rest: Rect, view: View) {
         let inputs_width = match rest.width {
             0..70 => 28,
             70..100 => 34,
@@ -85,7 +98,12 @@ impl Panes {
         self.about = bottom(&mut left, if rest.height < 20 { 3 } else { 5 });
         self.inputs = left;
         self.tabs = top(&mut right, 1);
-        if has_timeline {
+        if view.is_study() {
+            // The log of the one run stands aside; the tabs stay where they are.
+            right.width = rest.right() - right.x;
+            self.log = Rect::default();
+        }
+        if view.has_timeline() {
             self.timeline = bottom(&mut right, 1);
         }
         self.view = right;
@@ -108,7 +126,7 @@ pub const fn has_margins_below(size: Size) -> bool {
 /// Views that have a tab at this size.
 #[must_use]
 pub fn views(size: Size) -> &'static [View] {
-    if has_margins_below(size) { &[View::Elevation, View::History, View::Notes, View::Ledger] } else { &View::ALL }
+    if has_margins_below(size) { &BESIDE_MARGINS } else { &View::ALL }
 }
 
 /// Rows that a text takes when wrapped.

@@ -54,9 +54,12 @@ const NOTHING: f64 = 1e-9;
 /// Phases that may be solved within one frame: some milliseconds.
 const PHASES_PER_FRAME: usize = 4000;
 
-/// True when working out the arrows takes longer than a frame may: long undamped motions with many phases.
+/// True when working out the arrows takes longer than a frame may: lifelines, and long undamped motions with many phases.
 #[must_use]
 pub fn is_slow(inputs: &[Input], report: &Report) -> bool {
+    if matches!(report.scenario.anchor.kind, AnchorKind::Span(_)) {
+        return true;
+    }
     let each = if report.estimate.plane.is_some() || is_coupled(&report.scenario) { COUPLED_PHASE } else { 1 };
     2 * inputs.len() * report.estimate.trace.phases().len() * each > PHASES_PER_FRAME
 }

@@ -2,6 +2,7 @@
 use super::command::Command;
 use super::lean::Lean;
 use super::model::Exit;
+use super::studies::{Findings, Lane, Order};
 use super::worker::Job;
 use crate::scenario::Document;
 use crossterm::event::{KeyEvent, MouseEvent};
@@ -36,6 +37,28 @@ pub enum Message {
         /// In the order of the inputs.
         leans: Vec<Lean>,
     },
+    /// A study ended.
+    Studied {
+        /// Which kind.
+        lane: Lane,
+        /// Number of its order.
+        ticket: u64,
+        /// The answer, none where it was stopped before there was any, or why there is none.
+        result: Result<Option<Findings>, String>,
+    },
+    /// How far a study is.
+    Progress {
+        /// Which kind.
+        lane: Lane,
+        /// Number of its order.
+        ticket: u64,
+        /// Runs made.
+        done: usize,
+        /// Of how many, about.
+        of: Option<usize>,
+        /// Time since the first.
+        passed: Duration,
+    },
 }
 
 /// Something to do outside of `update`.
@@ -47,6 +70,12 @@ pub enum Effect {
     Reload(PathBuf),
     /// Work out the arrows beside this; answer with [`Message::Leaned`].
     Lean(Box<Job>),
+    /// Make this study; answer with [`Message::Studied`].
+    Study(Box<Order>),
+    /// End this kind of study with what it has.
+    EndStudy(Lane),
+    /// Drop this kind of study.
+    DropStudy(Lane),
     /// Leave the screen.
     Quit(Exit),
 }

@@ -8,9 +8,12 @@ pub mod choice;
 pub mod command;
 pub mod edit;
 pub mod error;
+pub mod joint;
+pub mod kept;
 pub mod key;
 pub mod layout;
 pub mod lean;
+pub mod map;
 pub mod message;
 pub mod model;
 pub mod panes;
@@ -18,15 +21,20 @@ pub mod play;
 mod pointer;
 pub mod runtime;
 pub mod signals;
+pub mod studies;
+mod study;
+pub mod table;
 pub mod terminal;
 pub mod text;
 pub mod theme;
 pub mod update;
 pub mod view;
+pub mod views;
 pub mod watch;
 pub mod worker;
 
 pub use error::ScreenError;
+pub use panes::help::key_rows;
 
 use crate::quantity::UnitSystem;
 use crate::scenario::Document;
@@ -51,7 +59,7 @@ pub fn run(path: &Path, units: UnitSystem) -> color_eyre::Result<()> {
     let mut model = model::Model::new(document, units);
     model.theme = theme;
     let (width, height) = crossterm::terminal::size()?;
-    let _ = update::update(&mut model, message::Message::Resize(width, height));
+    model.size = ratatui::layout::Size::new(width, height);
     let mut guard = terminal::Guard::take()?;
     runtime::run_loop(&mut guard, &mut model, &inbox)
 }

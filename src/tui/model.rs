@@ -1,47 +1,18 @@
 //! The state of the screen.
 use super::choice::{Entry, entries};
+use super::kept::Kept;
 use super::lean::{Lean, is_slow, leans};
+use super::map::Point;
 pub use super::play::{Curves, Play, Scrubbing, Window};
+use super::studies::Shelf;
 use super::theme::Theme;
+pub use super::views::View;
 use super::worker::Job;
 use crate::quantity::UnitSystem;
 use crate::scenario::{Document, Input, inputs};
 use crate::sheet::{Report, ReportError, report};
 use ratatui::layout::Size;
 use std::path::PathBuf;
-
-/// The large view.
-#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
-pub enum View {
-    /// The fall to scale.
-    #[default]
-    Elevation,
-    /// Travel and force over time.
-    History,
-    /// Every check; a view of its own only where the margins find no room below.
-    Margins,
-    /// What must be read beside the numbers.
-    Notes,
-    /// The energy account and every number with its definition.
-    Ledger,
-}
-
-impl View {
-    /// All views in the order of the tabs.
-    pub const ALL: [Self; 5] = [Self::Elevation, Self::History, Self::Margins, Self::Notes, Self::Ledger];
-
-    /// The name on the tab.
-    #[must_use]
-    pub const fn title(self) -> &'static str {
-        match self {
-            Self::Elevation => "Elevation",
-            Self::History => "History",
-            Self::Margins => "Margins",
-            Self::Notes => "Notes",
-            Self::Ledger => "Ledger",
-        }
-    }
-}
 
 /// Which pane the keys go to.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
@@ -51,6 +22,8 @@ pub enum Pane {
     Inputs,
     /// The margins.
     Margins,
+    /// The large view.
+    View,
 }
 
 /// What keys mean at present.
@@ -165,6 +138,20 @@ pub struct Model {
     pub notes_row: usize,
     /// First row shown of the ledger.
     pub ledger_row: usize,
+    /// First row shown of Spread.
+    pub spread_row: usize,
+    /// First row shown of Compare.
+    pub compare_row: usize,
+    /// Whether remedies are to hold at the worst found, too.
+    pub remedies_at_worst: bool,
+    /// The chosen remedy.
+    pub remedy: usize,
+    /// Axes and movable point of Map.
+    pub map: Point,
+    /// Studies asked for and their answers.
+    pub shelf: Shelf,
+    /// The state that Compare holds the present one against.
+    pub kept: Kept,
     /// Where the mouse button went down on a time axis and still is.
     pub scrubbing: Option<Scrubbing>,
     /// Stretch of time in History.
@@ -207,6 +194,13 @@ impl Model {
             view: View::default(),
             notes_row: 0,
             ledger_row: 0,
+            spread_row: 0,
+            compare_row: 0,
+            remedies_at_worst: false,
+            remedy: 0,
+            map: Point::default(),
+            shelf: Shelf::default(),
+            kept: Kept::opened(&document),
             scrubbing: None,
             window: Window::default(),
             curves: Curves::default(),
@@ -217,6 +211,7 @@ impl Model {
             document,
         };
         model.recompute();
+        model.kept.report.clone_from(&model.answer.report);
         let is_number = |entry: &Entry| matches!(entry, Entry::Number(_));
         model.input = model.entries.iter().position(is_number).unwrap_or(0);
         model

@@ -5,7 +5,8 @@ use super::layout::{Panes, views};
 use super::message::{Effect, Message};
 use super::model::{Mode, Model, Pane, Scrubbing, View};
 use super::panes::{history, inputs, log, margins, tabs};
-use super::update::{is_text, scroll_text, show_margins, update, walk};
+use super::study;
+use super::update::{scroll_text, show_margins, update, walk};
 use crossterm::event::{MouseButton, MouseEvent, MouseEventKind};
 use ratatui::layout::{Position, Rect};
 
@@ -18,6 +19,7 @@ pub(super) fn point(model: &mut Model, event: MouseEvent) -> Vec<Effect> {
     let at = Position::new(event.column, event.row);
     match event.kind {
         MouseEventKind::Down(MouseButton::Left) => press(model, &panes, at),
+        MouseEventKind::Drag(MouseButton::Left) if model.view == View::Map => study::point(model, panes.view, at),
         MouseEventKind::Drag(MouseButton::Left) => scrub(model, &panes, at.x),
         MouseEventKind::Up(_) => model.scrubbing = None,
         MouseEventKind::ScrollUp => return wheel(model, &panes, at, true),
@@ -36,13 +38,16 @@ fn press(model: &mut Model, panes: &Panes, at: Position) {
         }
     } else if panes.tabs.contains(at) {
         if let Some(view) = tabs::view_at(panes.tabs, views(model.size), model.view, at.x) {
-            model.view = view;
+            model.show(view);
         }
     } else if let Some(area) = margins_area(model, panes).filter(|area| area.contains(at)) {
         show_margins(model);
         if let Some(index) = margins::check_at(model, area, at.y) {
             model.check = index;
         }
+    } else if model.view.takes_keys() && panes.view.contains(at) {
+        model.pane = Pane::View;
+        study::point(model, panes.view, at);
     } else if panes.log.contains(at) {
         if let Some(time) = log::time_at(model, panes.log, at.y) {
             model.play.time_s = time;
@@ -97,7 +102,9 @@ fn wheel(model: &mut Model, panes: &Panes, at: Position, up: bool) -> Vec<Effect
     } else if margins_area(model, panes).is_some_and(|area| area.contains(at)) {
         show_margins(model);
         walk(model, row);
-    } else if is_text(model.view) && panes.view.contains(at) {
+    } else if model.view == View::Remedies && panes.view.contains(at) {
+        study::walk_remedies(model, row);
+    } else if model.view.is_text() && panes.view.contains(at) {
         scroll_text(model, if up { Command::PageUp } else { Command::PageDown }, 1);
     } else if panes.view.contains(at) || panes.timeline.contains(at) {
         return update(model, Message::Command(if up { Command::StepBack } else { Command::StepOn }));

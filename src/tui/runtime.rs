@@ -6,6 +6,7 @@ use super::arrival::{Arrival, Inbox, hung_up, read_events};
 use super::error::ScreenError;
 use super::message::{Effect, Message};
 use super::model::{Exit, Model};
+use super::studies::Desk;
 use super::terminal::Guard;
 use super::update::update;
 use super::view::view;
@@ -26,7 +27,8 @@ const WAITING: Duration = Duration::from_millis(100);
 /// When the terminal fails or goes away, a signal came or the user interrupted.
 pub fn run_loop(guard: &mut Guard, model: &mut Model, inbox: &Inbox) -> color_eyre::Result<()> {
     let mut watch = Watch::of(model.document.path());
-    let worker = Worker::start(inbox.sender())?;
+    let mut hands = Hands { worker: Worker::start(inbox.sender())?, desk: Desk::start(inbox.sender())? };
+    start(model, &mut watch, &mut hands);
     read_events(inbox.sender())?;
     let mut before = Instant::now();
     let mut stale = true;
@@ -46,9 +48,10 @@ pub fn run_loop(guard: &mut Guard, model: &mut Model, inbox: &Inbox) -> color_ey
         if watch.is_due(now) && watch.changed(model.saved.text()) {
             messages.push(Message::ChangedOnDisk);
         }
+        messages.extend(hands.desk.progress(now));
         stale = !messages.is_empty();
         for message in messages {
-            if let Some(exit) = handle(model, message, &mut watch, &worker) {
+            if let Some(exit) = handle(model, message, &mut watch, &mut hands) {
                 return leave(exit);
             }
         }
@@ -92,12 +95,24 @@ fn leave(exit: Exit) -> color_eyre::Result<()> {
     }
 }
 
+/// Whoever works beside the loop.
+struct Hands {
+    worker: Worker,
+    desk: Desk,
+}
+
+/// Hands out what the first state of the screen calls for.
+fn start(model: &mut Model, watch: &mut Watch, hands: &mut Hands) {
+    let (width, height) = (model.size.width, model.size.height);
+    let _ = handle(model, Message::Resize(width, height), watch, hands);
+}
+
 /// One message and all that follows from it.
-fn handle(model: &mut Model, message: Message, watch: &mut Watch, worker: &Worker) -> Option<Exit> {
+fn handle(model: &mut Model, message: Message, watch: &mut Watch, hands: &mut Hands) -> Option<Exit> {
     let mut queue = vec![message];
     while let Some(message) = queue.pop() {
         for effect in update(model, message) {
-            match carry_out(effect, watch, worker) {
+            match carry_out(effect, watch, hands) {
                 Outcome::Message(message) => queue.push(message),
                 Outcome::Exit(exit) => return Some(exit),
                 Outcome::Later => {}
@@ -113,10 +128,22 @@ enum Outcome {
     Exit(Exit),
 }
 
-fn carry_out(effect: Effect, watch: &mut Watch, worker: &Worker) -> Outcome {
+fn carry_out(effect: Effect, watch: &mut Watch, hands: &mut Hands) -> Outcome {
     match effect {
         Effect::Lean(job) => {
-            worker.give(*job);
+            hands.worker.give(*job);
+            Outcome::Later
+        }
+        Effect::Study(order) => {
+            hands.desk.give(*order);
+            Outcome::Later
+        }
+        Effect::EndStudy(lane) => {
+            hands.desk.end_early(lane);
+            Outcome::Later
+        }
+        Effect::DropStudy(lane) => {
+            hands.desk.drop_lane(lane);
             Outcome::Later
         }
         Effect::Quit(exit) => Outcome::Exit(exit),

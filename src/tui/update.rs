@@ -4,9 +4,11 @@ use super::edit::Nudge;
 use super::layout::{Panes, has_margins_below, views};
 use super::message::{Effect, Message};
 use super::model::{Exit, Mode, Model, Pane, Play, View, Window};
-use super::panes::{ledger, notes};
+use super::panes::{compare, ledger, notes, spread, tabs};
 use super::play::Curves;
 use super::pointer;
+use super::studies::{self, Progress};
+use super::study;
 use crate::quantity::UnitSystem;
 use crate::scenario::Document;
 use crossterm::event::{Event, KeyCode, KeyEvent, KeyEventKind, KeyModifiers};
@@ -20,6 +22,7 @@ use tui_input::backend::crossterm::EventHandler;
 pub fn update(model: &mut Model, message: Message) -> Vec<Effect> {
     let mut effects = take(model, message);
     effects.extend(model.job.take().map(Effect::Lean));
+    effects.extend(studies::plan(model));
     effects
 }
 
@@ -44,6 +47,14 @@ fn take(model: &mut Model, message: Message) -> Vec<Effect> {
             if generation == model.generation {
                 model.leans = leans;
             }
+            Vec::new()
+        }
+        Message::Studied { lane, ticket, result } => {
+            study::studied(model, lane, ticket, result);
+            Vec::new()
+        }
+        Message::Progress { lane, ticket, done, of, passed } => {
+            model.shelf.note(lane, ticket, Progress { done, of, passed });
             Vec::new()
         }
         Message::ChangedOnDisk => {
@@ -120,22 +131,34 @@ fn run(model: &mut Model, command: Command) -> Vec<Effect> {
         Command::Quit => return leave(model, Exit::Done),
         Command::Interrupt => return leave(model, Exit::Interrupted),
         Command::Help => model.mode = Mode::Help(0),
+        Command::Raise | Command::Lower | Command::RaiseMuch | Command::LowerMuch | Command::Up | Command::Down
+            if model.pane == Pane::View =>
+        {
+            study::view_key(model, command);
+        }
         Command::Raise | Command::Lower | Command::RaiseMuch | Command::LowerMuch => side_key(model, command),
+        Command::Type if model.pane == Pane::View => study::into_inputs(model),
         Command::Type => model.start_typing(),
+        Command::IntoInputs => study::into_inputs(model),
+        Command::AxisAcross => model.set_axis(0),
+        Command::AxisUp => model.set_axis(1),
+        Command::HeldAt => model.switch_remedies(),
+        Command::Keep => model.keep(),
+        Command::Stop => return studies::stop(model),
+        Command::Again => studies::again(model),
         Command::Restore => model.restore(),
         Command::Undo => model.undo(),
         Command::Redo => model.redo(),
-        Command::PageUp | Command::PageDown if is_text(model.view) => scroll_text(model, command, 10),
+        Command::PageUp | Command::PageDown if model.view.is_text() => scroll_text(model, command, 10),
         Command::Up | Command::Down | Command::PageUp | Command::PageDown => walk(model, command),
-        Command::NextPane | Command::PreviousPane => other_pane(model),
+        Command::NextPane | Command::PreviousPane => other_pane(model, command),
         Command::Units | Command::Window | Command::Curves => switch(model, command),
-        Command::Elevation => model.view = View::Elevation,
-        Command::History => model.view = View::History,
-        Command::Notes => model.view = View::Notes,
-        Command::Ledger => model.view = View::Ledger,
         Command::Margins => show_margins(model),
         Command::NextView => next_view(model),
-        _ => play(model, command),
+        _ => match View::ALL.into_iter().find(|&view| tabs::command(view) == command) {
+            Some(view) => model.show(view),
+            None => play(model, command),
+        },
     }
     Vec::new()
 }
@@ -177,7 +200,7 @@ pub(super) fn walk(model: &mut Model, command: Command) {
     let checks = model.answer.report.as_ref().map_or(0, |report| report.margins.len());
     let (chosen, count) = match model.pane {
         Pane::Inputs => (&mut model.input, model.entries.len()),
-        Pane::Margins => (&mut model.check, checks),
+        Pane::Margins | Pane::View => (&mut model.check, checks),
     };
     let moved = match command {
         Command::Up => chosen.saturating_sub(1),
@@ -188,26 +211,34 @@ pub(super) fn walk(model: &mut Model, command: Command) {
     *chosen = moved.min(count.saturating_sub(1));
 }
 
-/// Whether a view is a text that scrolls.
-pub(super) const fn is_text(view: View) -> bool {
-    matches!(view, View::Notes | View::Ledger)
-}
-
 /// Moves the text on show by some rows, no further than its end.
 pub(super) fn scroll_text(model: &mut Model, command: Command, rows: usize) {
     let Some(area) = Panes::of(model.size, model).map(|panes| panes.view) else { return };
-    let most =
-        if model.view == View::Ledger { ledger::last_first(model, area) } else { notes::last_first(model, area) };
-    let first = if model.view == View::Ledger { &mut model.ledger_row } else { &mut model.notes_row };
-    let moved = if command == Command::PageUp { first.saturating_sub(rows) } else { *first + rows };
+    let most = match model.view {
+        View::Ledger => ledger::last_first(model, area),
+        View::Spread => spread::last_first(model, area),
+        View::Compare => compare::last_first(model, area),
+        _ => notes::last_first(model, area),
+    };
+    let first = match model.view {
+        View::Ledger => &mut model.ledger_row,
+        View::Spread => &mut model.spread_row,
+        View::Compare => &mut model.compare_row,
+        _ => &mut model.notes_row,
+    };
+    let moved = if command == Command::PageUp { first.saturating_sub(rows) } else { (*first).min(most) + rows };
     *first = moved.min(most);
 }
 
-fn other_pane(model: &mut Model) {
-    match model.pane {
-        Pane::Inputs => show_margins(model),
-        Pane::Margins => model.pane = Pane::Inputs,
-    }
+fn other_pane(model: &mut Model, command: Command) {
+    let view = model.view.takes_keys().then_some(Pane::View);
+    let next = match (model.pane, command) {
+        (Pane::Inputs, Command::NextPane) | (Pane::View, Command::PreviousPane) => Pane::Margins,
+        (Pane::Inputs, _) => view.unwrap_or(Pane::Margins),
+        (Pane::Margins, Command::NextPane) => view.unwrap_or(Pane::Inputs),
+        (Pane::Margins | Pane::View, _) => Pane::Inputs,
+    };
+    if next == Pane::Margins { show_margins(model) } else { model.pane = next }
 }
 
 /// Gives the keys to the margins, and the large view where they stand nowhere else.
@@ -221,7 +252,7 @@ pub(super) fn show_margins(model: &mut Model) {
 fn next_view(model: &mut Model) {
     let all = views(model.size);
     let here = all.iter().position(|&view| view == model.view).unwrap_or(0);
-    model.view = all[(here + 1) % all.len()];
+    model.show(all[(here + 1) % all.len()]);
 }
 
 /// Shares of the shown stretch of time for one step of the play head.

@@ -6,8 +6,8 @@ use super::panes::scene::Scene;
 use super::panes::side::Side;
 use super::panes::units::Scale;
 use super::panes::{
-    about, elevation, foot, header, help, history, inputs, ledger, log, margins, notes, side_view, tabs, timeline,
-    verdict,
+    about, compare, elevation, foot, header, help, history, inputs, ledger, log, map, margins, notes, remedies,
+    side_view, spread, tabs, timeline, vary, verdict,
 };
 use super::text::put;
 use crate::quantity::Dimension;
@@ -94,6 +94,11 @@ fn draw_view(model: &Model, frame: &mut Frame, panes: &Panes) {
         View::Margins => {}
         View::Notes => notes::draw(frame.buffer_mut(), area, model),
         View::Ledger => ledger::draw(frame.buffer_mut(), area, model),
+        View::Vary => vary::draw(frame, area, model),
+        View::Map => map::draw(frame, area, model),
+        View::Spread => spread::draw(frame.buffer_mut(), area, model),
+        View::Remedies => remedies::draw(frame.buffer_mut(), area, model),
+        View::Compare => compare::draw(frame.buffer_mut(), area, model),
     }
     timeline::draw(frame.buffer_mut(), panes.timeline, panes.bar(), model);
     if model.answer.is_stale() {

@@ -2,6 +2,7 @@
 use super::arrival::Arrival;
 use super::lean::{Lean, leans};
 use super::message::Message;
+use super::studies::step_back;
 use crate::scenario::{Input, Scenario};
 use crate::sheet::Report;
 use std::panic::{AssertUnwindSafe, catch_unwind};
@@ -51,6 +52,7 @@ impl Worker {
     pub fn start(outbox: Sender<Arrival>) -> std::io::Result<Self> {
         let (jobs, inbox) = channel::<Job>();
         thread::Builder::new().name("arrows".to_owned()).spawn(move || {
+            step_back();
             while let Ok(mut job) = inbox.recv() {
                 while let Ok(newer) = inbox.try_recv() {
                     job = newer;

@@ -6,10 +6,13 @@ use ratatui::Terminal;
 use ratatui::backend::TestBackend;
 use ratatui::buffer::Cell;
 use std::path::PathBuf;
+use std::sync::Arc;
 use underfoot::quantity::UnitSystem;
 use underfoot::scenario::{Document, inputs};
+use underfoot::study::Meter;
 use underfoot::tui::message::{Effect, Message};
 use underfoot::tui::model::Model;
+use underfoot::tui::studies::Order;
 use underfoot::tui::update::update;
 use underfoot::tui::view::view;
 
@@ -80,16 +83,30 @@ pub struct Bench {
     pub folder: tempfile::TempDir,
     pub path: PathBuf,
     pub model: Model,
+    /// Studies are left undone, for tests of what is shown meanwhile.
+    pub hold_studies: bool,
+    /// Studies left undone, the latest last.
+    pub held: Vec<Order>,
 }
 
 impl Bench {
     pub fn of(text: &str, columns: u16, rows: u16) -> Self {
+        Self::with_studies(text, columns, rows, true)
+    }
+
+    /// As [`Bench::of`], with every study left undone.
+    pub fn still(text: &str, columns: u16, rows: u16) -> Self {
+        Self::with_studies(text, columns, rows, false)
+    }
+
+    fn with_studies(text: &str, columns: u16, rows: u16, studies: bool) -> Self {
         let folder = tempfile::tempdir().unwrap();
         let path = folder.path().join("roof-edge.toml");
         std::fs::write(&path, text).unwrap();
         let mut model = Model::new(Document::open(&path).unwrap(), UnitSystem::Metric);
         let effects = update(&mut model, Message::Resize(columns, rows));
-        let mut bench = Self { folder, path, model };
+        let mut bench = Self { folder, path, model, hold_studies: !studies, held: Vec::new() };
+        let effects = bench.study(effects);
         bench.carry_out(effects);
         bench
     }
@@ -106,8 +123,31 @@ impl Bench {
         }
     }
 
+    /// One message; the effects of it but for studies, which are made at once or held.
     pub fn send(&mut self, message: Message) -> Vec<Effect> {
-        update(&mut self.model, message)
+        let effects = update(&mut self.model, message);
+        self.study(effects)
+    }
+
+    fn study(&mut self, effects: Vec<Effect>) -> Vec<Effect> {
+        let mut others = Vec::new();
+        for effect in effects {
+            match effect {
+                Effect::Study(order) if self.hold_studies => self.held.push(*order),
+                Effect::Study(order) => {
+                    let more = self.send(order.answer(&Arc::default()));
+                    assert!(more.is_empty(), "an answer asked for {more:?}");
+                }
+                Effect::EndStudy(_) | Effect::DropStudy(_) => {}
+                other => others.push(other),
+            }
+        }
+        others
+    }
+
+    /// Makes a study that was held; the message of its answer.
+    pub fn answer(order: &Order) -> Message {
+        order.answer(&Arc::<Meter>::default())
     }
 
     /// One key; the effects of it.

@@ -1,6 +1,6 @@
 //! The last rows: a message, a question, or the keys.
-use crate::tui::command::{COMMANDS, Command, Entry};
-use crate::tui::model::{Mode, Model};
+use crate::tui::command::{COMMANDS, Command, Entry, Group};
+use crate::tui::model::{Mode, Model, View};
 use crate::tui::text::{cells, put, put_right, wrap};
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
@@ -49,6 +49,20 @@ fn is_last(entry: &Entry) -> bool {
     matches!(entry.command, Command::Help | Command::Quit)
 }
 
+/// Whether a command of studies does something in the view on show.
+fn is_of_view(model: &Model, entry: &Entry) -> bool {
+    let is_running = model.shelf.running().next().is_some();
+    match entry.command {
+        Command::IntoInputs => model.view.takes_keys(),
+        Command::AxisAcross | Command::AxisUp => model.view == View::Map,
+        Command::HeldAt => model.view == View::Remedies && model.has_bands(),
+        Command::Keep => model.view == View::Compare,
+        Command::Stop => is_running,
+        Command::Again => !is_running && matches!(model.view, View::Spread),
+        _ => false,
+    }
+}
+
 fn text(entry: &Entry) -> (String, &'static str) {
     (entry.keys.first().map_or_else(String::new, |key| key.name()), entry.label)
 }
@@ -67,7 +81,10 @@ fn draw_keys(buffer: &mut Buffer, area: Rect, model: &Model) {
     put_right(buffer, area, 0, &last, model.theme.key());
     let room = area.width.saturating_sub(cells(&last) + 2);
     let mut column = 0;
-    for entry in COMMANDS.iter().filter(|entry| !entry.label.is_empty() && !is_last(entry)) {
+    let named = |entry: &&Entry| !entry.label.is_empty() && !is_last(entry);
+    let own = COMMANDS.iter().filter(named).filter(|entry| entry.group == Group::Study && is_of_view(model, entry));
+    let others = COMMANDS.iter().filter(named).filter(|entry| entry.group != Group::Study);
+    for entry in own.chain(others) {
         let (key, label) = text(entry);
         let wide = cells(&key) + 1 + cells(label);
         if column + wide > room {

@@ -1,6 +1,6 @@
 //! The help screen, generated from the table of commands.
 use crate::margin::Verdict;
-use crate::tui::command::{COMMANDS, Group};
+use crate::tui::command::{COMMANDS, Entry, Group};
 use crate::tui::lean::Lean;
 use crate::tui::model::Model;
 use crate::tui::text::wrap;
@@ -37,7 +37,7 @@ fn lines(model: &Model, width: usize) -> Vec<Line<'static>> {
     lines.push(Line::from(Span::styled("mouse", model.theme.heading())));
     let mouse = [
         ("click", "choose an input, a check, a tab or an event"),
-        ("drag", "on the play bar or in History: scrub"),
+        ("drag", "on the play bar or in History: scrub; in Map: move the point"),
         ("wheel", "walk a list; over the text below the inputs: nudge; over the view: step in time"),
     ];
     for (name, words) in mouse {
@@ -50,7 +50,17 @@ fn lines(model: &Model, width: usize) -> Vec<Line<'static>> {
     for verdict in [Verdict::Holds, Verdict::Thin, Verdict::Short, Verdict::Open] {
         push(&mut lines, &format!("{} {}", verdict.symbol(), verdict.word()), meaning(verdict), width, model);
     }
+    push(&mut lines, "? bands", "holds at the typical values; the worst in the bands is not known yet", width, model);
     lines
+}
+
+/// Every command of the screen in the order of this list: its heading, its keys, what they do.
+#[must_use]
+pub fn key_rows() -> Vec<(&'static str, String, &'static str)> {
+    let names = |entry: &Entry| entry.keys.iter().map(|key| key.name()).collect::<Vec<_>>().join(", ");
+    let rows = |group: Group| COMMANDS.iter().filter(move |entry| entry.group == group);
+    let row = |group: Group| rows(group).map(move |entry| (group.title(), names(entry), entry.help));
+    Group::ALL.into_iter().flat_map(row).collect()
 }
 
 const fn meaning(verdict: Verdict) -> &'static str {

@@ -1,7 +1,8 @@
 //! The checks: demand, limit, a bar about the zero line, margin and verdict.
 use crate::margin::{Margin, Rules, Sense, Verdict, checks, margin_of};
 use crate::quantity::{UnitSystem, format_si};
-use crate::sheet::margin_words;
+use crate::sheet::{Report, margin_words, share_words, worst_words};
+use crate::tui::joint::Word;
 use crate::tui::model::{Model, Pane};
 use crate::tui::text::{cells, fit, put, put_right, put_wrapped};
 use ratatui::buffer::Buffer;
@@ -15,6 +16,8 @@ const LEAST_BAR: u16 = 13;
 /// Widest bar.
 const MOST_BAR: u16 = 61;
 const NUMBER: u16 = 12;
+/// From this width on the worst found has a column of its own.
+const WORST_FROM: u16 = 100;
 const WORD: u16 = 8;
 
 fn listed(model: &Model) -> &[Margin] {
@@ -48,7 +51,7 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
         let row = Rect { y: area.y + 1 + line * each, height: each, ..area };
         let look = Look::of(model, margin, index == model.check);
         if each == 1 {
-            draw_row(buffer, row, margin, &look, &Columns::of(all, area.width));
+            draw_row(buffer, row, margin, &look, &Columns::of(model, area.width));
         } else {
             draw_pair(buffer, row, margin, &look);
         }
@@ -65,11 +68,12 @@ fn draw_title(buffer: &mut Buffer, area: Rect, model: &Model, (above, below): (u
         put(buffer, area, 9, 0, &super::more_words(above, below), model.theme.quiet());
     }
     if rows_each(area) == 1 {
-        let columns = Columns::of(listed(model), area.width);
+        let columns = Columns::of(model, area.width);
         let quiet = model.theme.quiet();
         put_right(buffer, columns.demand(area), 0, "demand", quiet);
         put_right(buffer, columns.limit(area), 0, "limit", quiet);
         put_right(buffer, columns.margin(area), 0, "margin", quiet);
+        put_right(buffer, columns.worst(area), 0, "worst", quiet);
         let bar = columns.bar(area);
         if bar.width >= 25 {
             put(buffer, bar, bar.width / 2 - 8, 0, "short <-|-> room", quiet);
@@ -78,7 +82,10 @@ fn draw_title(buffer: &mut Buffer, area: Rect, model: &Model, (above, below): (u
 }
 
 /// How a check is shown.
-struct Look {
+struct Look<'m> {
+    /// The worst found in the bands.
+    worst: Option<&'m Margin>,
+    word: &'static str,
     mark: &'static str,
     units: UnitSystem,
     verdict: Verdict,
@@ -86,18 +93,22 @@ struct Look {
     verdict_style: Style,
 }
 
-impl Look {
+impl<'m> Look<'m> {
     /// Checks of earlier inputs are open, whatever they were.
-    fn of(model: &Model, margin: &Margin, is_chosen: bool) -> Self {
+    fn of(model: &'m Model, margin: &Margin, is_chosen: bool) -> Self {
         let stale = model.answer.is_stale();
-        let verdict = if stale { Verdict::Open } else { margin.verdict };
+        let word = if stale { Word::Final(Verdict::Open) } else { model.word_of(margin) };
+        let verdict = word.verdict();
+        let band = model.answer.current().and_then(|report| report.band_of(margin));
+        let worst = band.and_then(|band| band.worst.as_ref());
         let base = match (is_chosen, stale) {
             (true, _) => model.theme.chosen(model.pane == Pane::Margins),
             (false, true) => model.theme.quiet(),
             (false, false) => model.theme.plain(),
         };
         let mark = if is_chosen { ">" } else { " " };
-        Self { mark, units: model.units, verdict, style: base, verdict_style: base.patch(model.theme.verdict(verdict)) }
+        let verdict_style = base.patch(model.theme.verdict(verdict));
+        Self { worst, word: word.word(), mark, units: model.units, verdict, style: base, verdict_style }
     }
 }
 
@@ -105,16 +116,20 @@ impl Look {
 struct Columns {
     label: u16,
     bar: u16,
+    /// Width of the worst found; none where there are no bands.
+    worst: u16,
 }
 
 impl Columns {
-    fn of(all: &[Margin], total: u16) -> Self {
+    fn of(model: &Model, total: u16) -> Self {
+        let all = listed(model);
+        let worst = if model.has_bands() && total >= WORST_FROM { NUMBER } else { 0 };
         let label = all.iter().map(|margin| cells(&margin.label)).max().unwrap_or(0).clamp(16, 40);
-        let fixed = 3 + 3 * NUMBER + 3 + WORD;
+        let fixed = 3 + 3 * NUMBER + 3 + WORD + worst;
         let label = label.min(total.saturating_sub(fixed + 1));
         let rest = total.saturating_sub(fixed + label + 2);
         let bar = if rest < LEAST_BAR { 0 } else { rest.min(MOST_BAR) };
-        Self { label, bar: if bar % 2 == 0 { bar.saturating_sub(1) } else { bar } }
+        Self { label, bar: if bar % 2 == 0 { bar.saturating_sub(1) } else { bar }, worst }
     }
 
     fn demand(&self, row: Rect) -> Rect {
@@ -131,6 +146,10 @@ impl Columns {
 
     fn margin(&self, row: Rect) -> Rect {
         Rect { x: self.bar(row).right(), width: NUMBER, ..row }
+    }
+
+    fn worst(&self, row: Rect) -> Rect {
+        Rect { x: self.margin(row).right(), width: self.worst, ..row }
     }
 }
 
@@ -160,9 +179,12 @@ fn draw_row(buffer: &mut Buffer, row: Rect, margin: &Margin, look: &Look, column
     put(buffer, columns.limit(row), 0, 0, side(margin.sense), look.style);
     put_right(buffer, columns.limit(row), 0, &number(margin.limit, margin, look.units), look.style);
     draw_bar(buffer, columns.bar(row), margin, look);
-    let end = columns.margin(row);
-    put_right(buffer, end, 0, &signed(margin, look.units), look.style);
-    let words = format!("{symbol} {}", look.verdict.word());
+    put_right(buffer, columns.margin(row), 0, &signed(margin, look.units), look.style);
+    let end = columns.worst(row);
+    if let Some(worst) = look.worst.filter(|_| end.width > 0) {
+        put_right(buffer, end, 0, &signed(worst, look.units), look.style);
+    }
+    let words = format!("{symbol} {}", look.word);
     put(buffer, Rect { x: end.right() + 1, width: WORD, ..row }, 0, 0, &words, look.verdict_style);
 }
 
@@ -170,7 +192,7 @@ fn draw_row(buffer: &mut Buffer, row: Rect, margin: &Margin, look: &Look, column
 fn draw_pair(buffer: &mut Buffer, row: Rect, margin: &Margin, look: &Look) {
     buffer.set_style(row, look.style);
     put(buffer, row, 0, 0, look.mark, look.style);
-    let words = format!("{} {}", look.verdict.symbol(), look.verdict.word());
+    let words = format!("{} {}", look.verdict.symbol(), look.word);
     let room = usize::from(row.width.saturating_sub(WORD + 2));
     put(buffer, row, 1, 0, &fit(&margin.label, room), look.style);
     put_right(buffer, row, 0, &format!("{words} "), look.verdict_style);
@@ -220,7 +242,8 @@ pub fn draw_basis(buffer: &mut Buffer, area: Rect, model: &Model) {
     let Some(margin) = listed(model).get(model.check) else { return };
     let mut words = match &model.answer.report {
         Some(report) if margin.verdict != Verdict::Open && !model.answer.is_stale() => {
-            format!("{}: {}", margin_words(&report.scenario, margin, model.units), margin.basis.words)
+            let words = margin_words(&report.scenario, margin, model.units);
+            format!("{words}{}: {}", bands_words(model, report, margin), margin.basis.words)
         }
         _ => format!("{}: {}", margin.label, margin.basis.words),
     };
@@ -233,6 +256,13 @@ pub fn draw_basis(buffer: &mut Buffer, area: Rect, model: &Model) {
     let inner = Rect { x: area.x + 1, width: area.width.saturating_sub(2), ..area };
     let style = if margin.basis.from_memory { model.theme.play_head() } else { model.theme.quiet() };
     put_wrapped(buffer, inner, &words, style);
+}
+
+/// The worst found of a check, and the share that falls short once a sample was made.
+fn bands_words(model: &Model, report: &Report, margin: &Margin) -> String {
+    let worst = worst_words(report, margin, model.units).map_or_else(String::new, |words| format!("; {words}"));
+    let share = report.band_of(margin).and_then(|band| band.short.as_ref());
+    share.map_or_else(|| worst.clone(), |share| format!("{worst}; short in {} of the sample", share_words(share)))
 }
 
 /// The note of a check in the units of display.

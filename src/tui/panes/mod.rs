@@ -1,5 +1,6 @@
 //! What the panes show: each draws itself from the model and nothing else.
 pub mod about;
+pub mod compare;
 pub mod elevation;
 pub mod end_loads;
 pub mod foot;
@@ -9,16 +10,21 @@ pub mod history;
 pub mod inputs;
 pub mod ledger;
 pub mod log;
+pub mod map;
 pub mod margins;
 pub mod notes;
 pub mod plot;
+pub mod remedies;
 pub mod scene;
 pub mod side;
 pub mod side_view;
+pub mod spread;
+pub mod state;
 pub mod strings;
 pub mod tabs;
 pub mod timeline;
 pub mod units;
+pub mod vary;
 pub mod verdict;
 
 use crate::tui::text::{cells, put};

@@ -14,21 +14,29 @@ pub const fn command(view: View) -> Command {
         View::Margins => Command::Margins,
         View::Notes => Command::Notes,
         View::Ledger => Command::Ledger,
+        View::Vary => Command::Vary,
+        View::Map => Command::Map,
+        View::Spread => Command::Spread,
+        View::Remedies => Command::Remedies,
+        View::Compare => Command::Compare,
     }
 }
 
-/// The tabs with their first columns; without padding, then without the blank after the key, then with the key alone,
-/// where the row is too short.
+/// The tabs with their first columns; without padding, then without the blank after the key, then with short names, then
+/// with the key alone beside the chosen one, where the row is too short.
 fn placed(area: Rect, views: &[View], chosen: View) -> Vec<(View, String, u16)> {
     let bare: Vec<String> = views.iter().map(|&view| title(view)).collect();
     let padded: Vec<String> = bare.iter().map(|text| format!(" {text} ")).collect();
     let wide = |texts: &[String]| texts.iter().map(|text| cells(text) + 1).sum::<u16>();
     let close: Vec<String> = views.iter().map(|&view| format!("{}{}", key_name(command(view)), view.title())).collect();
+    let brief: Vec<String> =
+        views.iter().map(|&view| format!("{}{}", key_name(command(view)), view.short_title())).collect();
     let short = |&view: &View| if view == chosen { title(view) } else { key_name(command(view)) };
     let texts = match area.width {
         width if wide(&padded) <= width => padded,
         width if wide(&bare) <= width + 1 => bare,
         width if wide(&close) <= width + 1 => close,
+        width if wide(&brief) <= width + 1 => brief,
         _ => views.iter().map(short).collect(),
     };
     let mut column = area.x;

@@ -1,13 +1,17 @@
 //! The verdict in a sentence.
 use crate::estimate::{Estimate, EventKind};
-use crate::margin::Verdict;
+use crate::margin::{Margin, Verdict};
 use crate::quantity::{Dimension, UnitSystem, format_si};
-use crate::sheet::{Report, governing_words};
+use crate::sheet::{Report, governing_words, worst_words};
 use crate::tui::command::{Command, key_name};
+use crate::tui::joint::Word;
 use crate::tui::model::Model;
 use crate::tui::text::{put, put_right, width, wrap};
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
+
+/// From this width on the sentence says where in the bands the worst found is.
+const WORST_PLACE_FROM: u16 = 100;
 
 /// Rows that the sentence and the peak force take.
 #[must_use]
@@ -19,7 +23,7 @@ pub fn rows(model: &Model, columns: u16) -> u16 {
 /// Draws it.
 pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
     let (sentence, peak) = words(model);
-    let verdict = model.answer.current().map_or(Verdict::Open, |report| report.verdict);
+    let verdict = model.word_of_all().verdict();
     let lines = lines(&sentence, &peak, area.width);
     let inner = Rect { x: area.x + 1, width: area.width.saturating_sub(2), ..area };
     for (row, line) in (0..).zip(&lines) {
@@ -43,16 +47,24 @@ fn lines(sentence: &str, peak: &str, columns: u16) -> Vec<String> {
 fn words(model: &Model) -> (String, String) {
     if let Some(fault) = &model.answer.fault {
         let rest = if model.answer.report.is_some() { "; the numbers below are of earlier inputs" } else { "" };
-        return (format!("{}: {fault}{rest}", head(Verdict::Open)), String::new());
+        return (format!("{}: {fault}{rest}", Word::Final(Verdict::Open).head()), String::new());
     }
-    let Some(report) = &model.answer.report else { return (head(Verdict::Open), String::new()) };
-    let sentence = governing_words(&report.scenario, &report.margins, model.units);
-    (format!("{}  {sentence}", head(report.verdict)), peak(report, model.units))
+    let Some(report) = &model.answer.report else { return (Word::Final(Verdict::Open).head(), String::new()) };
+    let mut sentence = governing_words(&report.scenario, &report.margins, model.units);
+    let moved = report.margins.first().filter(|margin| is_moved(report, margin));
+    if let Some(worst) = moved.and_then(|margin| worst_words(report, margin, model.units)) {
+        // Where it is narrow, Margins and Spread say at which ends of the bands that is.
+        let brief = worst.split_once(" (").map_or(worst.as_str(), |(brief, _)| brief);
+        let words = if model.size.width < WORST_PLACE_FROM { brief } else { &worst };
+        sentence = format!("{sentence}; {words}");
+    }
+    (format!("{}  {sentence}", model.word_of_all().head()), peak(report, model.units))
 }
 
-/// `x SHORT`.
-fn head(verdict: Verdict) -> String {
-    format!("{} {}", verdict.symbol(), verdict.word().to_uppercase())
+/// Whether the bands change the margin at all.
+fn is_moved(report: &Report, margin: &Margin) -> bool {
+    let worst = report.band_of(margin).and_then(|band| band.worst.as_ref());
+    worst.is_some_and(|worst| worst.margin != margin.margin)
 }
 
 fn peak(report: &Report, units: UnitSystem) -> String {
