@@ -1,9 +1,7 @@
 //! Picks the command line or the screen.
 use std::io::Write;
-use std::path::Path;
 use std::process::ExitCode;
 use underfoot::cli::{self, Code, Next};
-use underfoot::quantity::UnitSystem;
 use underfoot::scenario::LoadError;
 use underfoot::tui::{self, ScreenError};
 
@@ -19,14 +17,15 @@ const NOT_COMPUTED: u8 = Code::NotComputed.number();
 fn start() -> color_eyre::Result<ExitCode> {
     match cli::parse_and_run(std::env::args_os()) {
         Next::Exit(code) => Ok(ExitCode::from(code.number())),
-        Next::View { path, units } => screen(&path, units),
+        Next::View { path, units } => screen(tui::run(&path, units)),
+        Next::Walk { path, units } => screen(tui::walk(&path, units)),
         Next::Manual => Ok(ExitCode::from(cli::print_manual(&tui::key_rows()).number())),
     }
 }
 
-/// Runs the screen; a reason to end that the user knows, or can act on, is a line and a code and not a report.
-fn screen(path: &Path, units: UnitSystem) -> color_eyre::Result<ExitCode> {
-    let Err(report) = tui::run(path, units) else { return Ok(ExitCode::SUCCESS) };
+/// How the screen ended; a reason that the user knows, or can act on, is a line and a code and not a report.
+fn screen(ended: color_eyre::Result<()>) -> color_eyre::Result<ExitCode> {
+    let Err(report) = ended else { return Ok(ExitCode::SUCCESS) };
     if let Some(error) = report.downcast_ref::<ScreenError>() {
         if !error.is_silent() {
             say(&format!("underfoot: {error}"));

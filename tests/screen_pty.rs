@@ -118,6 +118,26 @@ fn the_program_starts_nudges_undoes_and_leaves() {
 }
 
 #[test]
+fn a_walk_leads_on_and_leaves_its_scenario_as_it_was() {
+    let (folder, path) = file();
+    let walk = folder.path().join("roof.walk.toml");
+    let stop = "[[stop]]\nsay = \"More line.\"\ninput = \"line.length\"\nvalue = \"1.9 m\"\n";
+    std::fs::write(&walk, format!("scenario = \"roof-edge.toml\"\n{stop}")).unwrap();
+    let mut command = CommandBuilder::new(env!("CARGO_BIN_EXE_underfoot"));
+    command.arg("walk");
+    command.arg(&walk);
+    command.env("TERM", "xterm-256color");
+    let mut session = Session::start(command);
+    session.wait_for("start, 1 stop");
+    session.press(">");
+    session.wait_for("More line.");
+    session.wait_for("line.length 1.8 m -> 1.9 m");
+    session.press("q");
+    assert_eq!(session.end().exit_code(), 0);
+    assert_eq!(std::fs::read_to_string(&path).unwrap(), ROOF);
+}
+
+#[test]
 fn a_change_is_saved_to_the_file() {
     let (_folder, path) = file();
     let mut session = Session::screen(&path);

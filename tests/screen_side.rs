@@ -167,9 +167,9 @@ fn no_number_is_cut_at_any_size() {
 fn the_energy_account_of_the_ledger_comes_out_even() {
     let mut texts = vec![SWING.to_owned(), SPAN.to_owned()];
     let folder = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("scenarios");
-    texts.extend(
-        std::fs::read_dir(folder).unwrap().map(|entry| std::fs::read_to_string(entry.unwrap().path()).unwrap()),
-    );
+    let files = std::fs::read_dir(folder).unwrap().map(|entry| entry.unwrap().path());
+    let scenarios = files.filter(|path| path.extension().is_some_and(|ending| ending == "toml"));
+    texts.extend(scenarios.map(|path| std::fs::read_to_string(path).unwrap()));
     assert!(texts.len() > 8);
     for text in texts {
         let mut bench = Bench::still(&text, 140, 60);

@@ -174,7 +174,11 @@ fn every_shipped_scenario_gives_complete_outputs() {
     let folder = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("scenarios");
     let mut count = 0;
     for entry in std::fs::read_dir(folder).unwrap() {
-        let file = std::fs::read_to_string(entry.unwrap().path()).unwrap();
+        let path = entry.unwrap().path();
+        if path.extension().is_none_or(|ending| ending != "toml") {
+            continue;
+        }
+        let file = std::fs::read_to_string(path).unwrap();
         let report = reported(&file);
         for system in [UnitSystem::Metric, UnitSystem::Us] {
             let page = text(&report, system, Paint::Plain);

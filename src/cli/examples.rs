@@ -48,6 +48,13 @@ const EXAMPLES: &[(&str, &[&str])] = &[
             "underfoot sheet scenarios/low-scaffold-short.toml --remedies --units us -o sheet.md",
         ],
     ),
+    (
+        "walk",
+        &[
+            "underfoot walk scenarios/walks/longer-or-shorter-lanyard.walk.toml",
+            "underfoot walk scenarios/walks/stiffer-or-longer-rope.walk.toml --text",
+        ],
+    ),
     ("limits", &["underfoot limits --json"]),
     ("new", &["underfoot new -o my-roof.toml"]),
     ("schema", &["underfoot schema > scenario.schema.json"]),

@@ -1,6 +1,7 @@
 //! Which files an audit looks at: files, folders and patterns, in a fixed order, each file once.
 use super::exit::Code;
 use super::output;
+use crate::scenario::is_walk;
 use glob::{MatchOptions, Pattern};
 use std::collections::HashSet;
 use std::io;
@@ -110,6 +111,7 @@ impl Gathered {
             let is_folder = path.is_dir() && (depth.is_some() || !link);
             match (pattern.matches_path_with(&path, AS_SHELLS), is_folder) {
                 (true, true) => self.search(&path, found),
+                (true, false) if is_walk(&path) => pass_over(&path),
                 (true, false) if !path.is_dir() => found.push(path),
                 (false, true) => self.walk(&path, pattern, depth.map(|depth| depth - 1), found),
                 _ => {}
@@ -130,6 +132,8 @@ impl Gathered {
             let (path, kind) = (entry.path(), entry.file_type()?);
             if kind.is_dir() {
                 self.search(&path, found);
+            } else if is_walk(&path) {
+                pass_over(&path);
             } else if path.extension().is_some_and(|ending| ending == "toml") {
                 // Reading a pipe would wait for whoever writes into it.
                 if kind.is_file() || (kind.is_symlink() && !is_special(&path)) {
@@ -141,6 +145,13 @@ impl Gathered {
         }
         Ok(())
     }
+}
+
+fn pass_over(path: &Path) {
+    output::message(&format!(
+        "`{0}` is a walk-through and was passed over; `underfoot walk {0} --text` checks it",
+        path.display()
+    ));
 }
 
 /// Whether a link leads to something that is there and neither a file nor a folder.

@@ -15,6 +15,7 @@ mod sheet;
 mod spread;
 mod study;
 mod vary;
+mod walk;
 
 pub use exit::Code;
 pub use reference::{KeyRow, commands_markdown, manual, print_manual};
@@ -33,6 +34,13 @@ pub enum Next {
     Exit(Code),
     /// Open the screen on a file that reads without a fault.
     View {
+        /// The file.
+        path: PathBuf,
+        /// The units shown.
+        units: UnitSystem,
+    },
+    /// Open the screen on a walk-through that reads without a fault.
+    Walk {
         /// The file.
         path: PathBuf,
         /// The units shown.
@@ -65,6 +73,7 @@ fn dispatch(arguments: Arguments) -> Next {
         (Some(Command::Remedy(args)), _) => Next::Exit(study::remedy(&args)),
         (Some(Command::Sheet(args)), _) => Next::Exit(sheet::sheet(&args)),
         (Some(Command::Spread(args)), _) => Next::Exit(spread::spread(&args)),
+        (Some(Command::Walk(args)), _) => walk::walk(&args),
         (Some(Command::Limits(args)), _) => Next::Exit(new::limits(&args)),
         (Some(Command::New(args)), _) => Next::Exit(new::new(&args)),
         (Some(Command::Schema), _) => Next::Exit(reference::print_schema()),

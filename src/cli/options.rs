@@ -20,6 +20,9 @@ const COMPARE_CODES: &str = "Exit codes: 0 no check of the second file is worse 
                              not hold where the first has none, or is no longer made; 2 the input is wrong; 3 it could \
                              not be computed.";
 
+const WALK_CODES: &str = "Exit codes of text and JSON: 0 every check holds at every stop; 1 one is thin, short or open at \
+                          one; 2 the input is wrong; 3 a stop could not be computed; 130 interrupted, with what there was.";
+
 /// First-pass estimate of fall arrest and suspended lines: clearance, force and margin.
 #[derive(Debug, Parser)]
 #[command(name = "underfoot", version, about, before_help = CAUTION_LINE, after_help = EXIT_CODES)]
@@ -60,6 +63,9 @@ pub enum Command {
     /// Write the calculation sheet of a file: every step with its numbers, for whoever reviews and signs
     #[command(before_help = CAUTION_LINE, after_help = EXIT_CODES)]
     Sheet(SheetArgs),
+    /// Lead a crew through a scenario: play a walk-through file stop by stop
+    #[command(before_help = CAUTION_LINE, after_help = WALK_CODES)]
+    Walk(WalkArgs),
     /// List the built-in published limits with clause, year and how each value was confirmed
     #[command(before_help = CAUTION_LINE)]
     Limits(LimitsArgs),
@@ -153,6 +159,22 @@ pub struct AuditArgs {
     #[arg(long, value_name = "ID", num_args = 0..=1, default_missing_value = "", conflicts_with = "paths")]
     pub explain: Option<String>,
     /// Units shown in text
+    #[arg(long, value_enum, default_value_t)]
+    pub units: Units,
+}
+
+/// Arguments of `walk`.
+#[derive(Args, Clone, Debug)]
+pub struct WalkArgs {
+    /// Walk-through file, by custom named `NAME.walk.toml`
+    pub file: PathBuf,
+    /// Print every stop as text instead of opening the screen; so it is where there is no terminal
+    #[arg(long, conflicts_with = "json")]
+    pub text: bool,
+    /// JSON, SI units
+    #[arg(long)]
+    pub json: bool,
+    /// Units shown
     #[arg(long, value_enum, default_value_t)]
     pub units: Units,
 }

@@ -1,8 +1,9 @@
 //! The one place that reads files.
 use super::read::MOST_BYTES;
-use super::{Faults, Scenario, read};
+use super::{Faults, Scenario, Walk, is_walk, read, read_walk};
 use std::io::Read;
 use std::path::{Path, PathBuf};
+use toml::de::DeTable;
 
 /// Why a file gave no scenario.
 #[derive(Debug, thiserror::Error)]
@@ -35,8 +36,31 @@ pub struct Loaded {
 /// When it cannot be read, or has faults.
 pub fn load(path: &Path) -> Result<Loaded, LoadError> {
     let text = read_text(path).map_err(|reason| LoadError::Unreadable { path: path.to_owned(), reason })?;
-    let scenario = read(&path.display().to_string(), &text).map_err(LoadError::Refused)?;
-    Ok(Loaded { text, scenario })
+    match read(&path.display().to_string(), &text) {
+        Ok(scenario) => Ok(Loaded { text, scenario }),
+        Err(_) if is_walk(path) || has_stops(&text) => {
+            let reason = "it is a walk-through and no scenario; `underfoot walk` opens it".to_owned();
+            Err(LoadError::Unreadable { path: path.to_owned(), reason })
+        }
+        Err(faults) => Err(LoadError::Refused(faults)),
+    }
+}
+
+/// True for a text with the stops of a walk-through.
+fn has_stops(text: &str) -> bool {
+    let (document, _) = DeTable::parse_recoverable(text);
+    let table = document.get_ref();
+    table.keys().any(|key| key.get_ref() == "stop") && table.keys().any(|key| key.get_ref() == "scenario")
+}
+
+/// Reads a walk-through of at most 1 MiB, and the scenario that it names.
+///
+/// # Errors
+/// When it cannot be read, or has faults; faults of the scenario are told at the place that names it.
+pub fn load_walk(path: &Path) -> Result<Walk, LoadError> {
+    let text = read_text(path).map_err(|reason| LoadError::Unreadable { path: path.to_owned(), reason })?;
+    let folder = path.parent().unwrap_or(Path::new(""));
+    read_walk(&path.display().to_string(), folder, &text).map_err(LoadError::Refused)
 }
 
 /// The text of a file, never more than the limit read into memory.

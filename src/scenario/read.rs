@@ -83,7 +83,7 @@ pub fn read_with_places(file: &str, text: &str) -> Result<(Scenario, Places), Fa
 }
 
 /// Syntax errors, the first of each line, and the other faults of lines without one.
-fn with_syntax(text: &str, errors: &[toml::de::Error], others: Vec<Fault>) -> Vec<Fault> {
+pub(super) fn with_syntax(text: &str, errors: &[toml::de::Error], others: Vec<Fault>) -> Vec<Fault> {
     let line = |at: usize| text.as_bytes()[..at.min(text.len())].split(|byte| *byte == b'\n').count();
     let mut faults: Vec<Fault> = Vec::new();
     for error in errors {

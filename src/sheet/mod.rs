@@ -23,6 +23,8 @@ pub mod ticks;
 mod vary;
 mod vary_json;
 mod vary_svg;
+mod walk;
+mod walk_words;
 mod words;
 mod working;
 
@@ -49,4 +51,6 @@ pub use text::text;
 pub use vary::{vary_csv, vary_text};
 pub use vary_json::{field_object, vary_object};
 pub use vary_svg::{field_svg, vary_svg};
+pub use walk::{WalkRun, Walked, walk_object, walk_text};
+pub use walk_words::{governing_step, peak_step, stop_changes_words, verdict_step};
 pub use words::{governing_words, margin_words};

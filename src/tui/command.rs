@@ -98,6 +98,14 @@ pub enum Command {
     Window,
     /// The other curves of History.
     Curves,
+    /// The next stop of a walk-through.
+    WalkOn,
+    /// The stop before.
+    WalkBack,
+    /// The start of the walk-through.
+    WalkStart,
+    /// Leave the walk-through.
+    WalkLeave,
     /// Help.
     Help,
     /// Leave.
@@ -121,11 +129,14 @@ pub enum Group {
     Study,
     /// Playing the fall.
     Play,
+    /// Leading through a walk.
+    Walk,
 }
 
 impl Group {
     /// All groups in the order of the help screen.
-    pub const ALL: [Self; 6] = [Self::Choose, Self::Change, Self::View, Self::Study, Self::Play, Self::File];
+    pub const ALL: [Self; 7] =
+        [Self::Choose, Self::Change, Self::View, Self::Study, Self::Play, Self::Walk, Self::File];
 
     /// The heading.
     #[must_use]
@@ -137,6 +148,7 @@ impl Group {
             Self::View => "views",
             Self::Study => "studies",
             Self::Play => "play the fall",
+            Self::Walk => "walk-through",
         }
     }
 }

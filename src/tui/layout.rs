@@ -35,6 +35,8 @@ pub struct Panes {
     pub caution: Rect,
     /// The verdict in a sentence.
     pub verdict: Rect,
+    /// The bar of a walk-through.
+    pub walk: Rect,
     /// The list of inputs, below its title row.
     pub inputs: Rect,
     /// What the chosen input is.
@@ -66,6 +68,7 @@ impl Panes {
         let mut panes = Self { header: top(&mut rest, 1), ..Self::default() };
         panes.caution = top(&mut rest, rows(CAUTION_LINE, size.width));
         panes.verdict = top(&mut rest, super::panes::verdict::rows(model, size.width));
+        panes.walk = top(&mut rest, super::panes::walk::rows(model));
         panes.foot = bottom(&mut rest, super::panes::foot::rows(model, size.width));
         if has_margins_below(size) {
             panes.place_margins(&mut rest, model);

@@ -30,6 +30,7 @@ pub mod theme;
 pub mod update;
 pub mod view;
 pub mod views;
+pub mod walking;
 pub mod watch;
 pub mod worker;
 
@@ -37,7 +38,7 @@ pub use error::ScreenError;
 pub use panes::help::key_rows;
 
 use crate::quantity::UnitSystem;
-use crate::scenario::Document;
+use crate::scenario::{Document, load_walk};
 use std::io::IsTerminal;
 use std::path::Path;
 
@@ -50,13 +51,25 @@ use std::path::Path;
 /// terminal, it went away, a signal came or the user interrupted; an I/O error when the terminal fails.
 pub fn run(path: &Path, units: UnitSystem) -> color_eyre::Result<()> {
     let document = Document::open(path)?;
+    show(model::Model::new(document, units))
+}
+
+/// Opens a walk-through and shows it over its scenario until the user leaves.
+///
+/// # Errors
+/// As [`run`].
+pub fn walk(path: &Path, units: UnitSystem) -> color_eyre::Result<()> {
+    let walk = load_walk(path)?;
+    show(model::Model::on_walk(walk, units))
+}
+
+fn show(mut model: model::Model) -> color_eyre::Result<()> {
     need_terminal()?;
     let theme = theme::Theme::for_no_color(std::env::var_os("NO_COLOR").as_deref());
     // With NO_COLOR the terminal library would drop reverse video together with colours; the theme uses none.
     crossterm::style::force_color_output(true);
     let inbox = arrival::Inbox::new();
     let _signals = signals::Signals::listen(inbox.sender())?;
-    let mut model = model::Model::new(document, units);
     model.theme = theme;
     let (width, height) = crossterm::terminal::size()?;
     model.size = ratatui::layout::Size::new(width, height);

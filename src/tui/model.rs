@@ -7,6 +7,7 @@ pub use super::play::{Curves, Play, Scrubbing, Window};
 use super::studies::Shelf;
 use super::theme::Theme;
 pub use super::views::View;
+use super::walking::Walking;
 use super::worker::Job;
 use crate::quantity::UnitSystem;
 use crate::scenario::{Document, Input, inputs};
@@ -152,6 +153,8 @@ pub struct Model {
     pub shelf: Shelf,
     /// The state that Compare holds the present one against.
     pub kept: Kept,
+    /// The walk-through that is open.
+    pub walking: Option<Box<Walking>>,
     /// Where the mouse button went down on a time axis and still is.
     pub scrubbing: Option<Scrubbing>,
     /// Stretch of time in History.
@@ -201,6 +204,7 @@ impl Model {
             map: Point::default(),
             shelf: Shelf::default(),
             kept: Kept::opened(&document),
+            walking: None,
             scrubbing: None,
             window: Window::default(),
             curves: Curves::default(),

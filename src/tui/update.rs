@@ -9,6 +9,7 @@ use super::play::Curves;
 use super::pointer;
 use super::studies::{self, Progress};
 use super::study;
+use super::walking;
 use crate::quantity::UnitSystem;
 use crate::scenario::Document;
 use crossterm::event::{Event, KeyCode, KeyEvent, KeyEventKind, KeyModifiers};
@@ -125,6 +126,7 @@ fn help_key(model: &mut Model, row: u16, command: Option<Command>) -> Vec<Effect
 }
 
 fn run(model: &mut Model, command: Command) -> Vec<Effect> {
+    walking::note(model, command);
     match command {
         Command::Save => return save(model),
         Command::Reload => return vec![Effect::Reload(model.path())],
@@ -154,6 +156,9 @@ fn run(model: &mut Model, command: Command) -> Vec<Effect> {
         Command::NextPane | Command::PreviousPane => other_pane(model, command),
         Command::Units | Command::Window | Command::Curves => switch(model, command),
         Command::Margins => show_margins(model),
+        Command::WalkOn | Command::WalkBack | Command::WalkStart | Command::WalkLeave => {
+            walking::command(model, command);
+        }
         Command::NextView => next_view(model),
         _ => match View::ALL.into_iter().find(|&view| tabs::command(view) == command) {
             Some(view) => model.show(view),
@@ -306,7 +311,8 @@ fn tick(model: &mut Model, passed: Duration) -> Vec<Effect> {
 
 fn save(model: &mut Model) -> Vec<Effect> {
     if model.is_edited() {
-        return vec![Effect::Save(Box::new(model.document.clone()))];
+        let save = model.may_save().then(|| Effect::Save(Box::new(model.document.clone())));
+        return save.into_iter().collect();
     }
     model.say("nothing to save: the file holds these values");
     Vec::new()
@@ -338,6 +344,7 @@ fn reloaded(model: &mut Model, result: Result<Box<Document>, String>) -> Vec<Eff
             }
             let saved = model.saved.clone();
             model.adopt(&saved);
+            model.walk_on_saved();
         }
         Err(words) => model.complain(words),
     }
@@ -345,7 +352,7 @@ fn reloaded(model: &mut Model, result: Result<Box<Document>, String>) -> Vec<Eff
 }
 
 fn leave(model: &mut Model, exit: Exit) -> Vec<Effect> {
-    if model.is_edited() {
+    if model.is_edited() && !model.is_at_stop() {
         model.mode = Mode::Leaving(exit);
         return Vec::new();
     }

@@ -7,7 +7,7 @@ use super::panes::side::Side;
 use super::panes::units::Scale;
 use super::panes::{
     about, compare, elevation, foot, header, help, history, inputs, ledger, log, map, margins, notes, remedies,
-    side_view, spread, tabs, timeline, vary, verdict,
+    side_view, spread, tabs, timeline, vary, verdict, walk,
 };
 use super::text::put;
 use crate::quantity::Dimension;
@@ -27,6 +27,7 @@ pub fn view(model: &Model, frame: &mut Frame) {
         help::draw(frame, Rect { y: top, height: area.height.saturating_sub(top), ..area }, model, row);
         return;
     }
+    walk::draw(frame.buffer_mut(), panes.walk, model);
     draw_lists(model, frame, &panes);
     draw_rules(model, frame, &panes);
     draw_view(model, frame, &panes);

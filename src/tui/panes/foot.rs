@@ -83,8 +83,10 @@ fn draw_keys(buffer: &mut Buffer, area: Rect, model: &Model) {
     let mut column = 0;
     let named = |entry: &&Entry| !entry.label.is_empty() && !is_last(entry);
     let own = COMMANDS.iter().filter(named).filter(|entry| entry.group == Group::Study && is_of_view(model, entry));
-    let others = COMMANDS.iter().filter(named).filter(|entry| entry.group != Group::Study);
-    for entry in own.chain(others) {
+    let walk = COMMANDS.iter().filter(named).filter(|entry| entry.group == Group::Walk && model.walking.is_some());
+    let is_general = |entry: &&Entry| !matches!(entry.group, Group::Study | Group::Walk);
+    let others = COMMANDS.iter().filter(named).filter(is_general);
+    for entry in walk.chain(own).chain(others) {
         let (key, label) = text(entry);
         let wide = cells(&key) + 1 + cells(label);
         if column + wide > room {

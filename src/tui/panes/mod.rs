@@ -26,6 +26,7 @@ pub mod timeline;
 pub mod units;
 pub mod vary;
 pub mod verdict;
+pub mod walk;
 
 use crate::tui::text::{cells, put};
 use crate::tui::theme::Theme;
