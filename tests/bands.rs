@@ -152,7 +152,9 @@ fn run_audit_and_compare_use_the_joint_verdict() {
     let (code, audit) = of(&["audit", "--json"], &[&thin]);
     let object: Value = serde_json::from_str(&audit).unwrap();
     assert_eq!((code, &object["verdict"]), (1, &"thin".into()));
-    assert!(margin(&object, "line_load")["share_short"]["share"].as_f64().unwrap() > 0.0);
+    let line = margin(&object, "line_load");
+    assert!(line["worst"]["margin"].as_f64().unwrap() < 0.0 && line["share_short"].is_null(), "{line}");
+    assert_eq!(object["bands"]["sample"]["asked"], 0);
     let (code, words) = of(&["compare"], &[&exact, &thin]);
     assert_eq!(code, 1);
     assert!(words.contains("o holds -> ~ thin") && words.contains("at the worst found"), "{words}");

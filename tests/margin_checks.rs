@@ -72,6 +72,7 @@ fn scenario(basis: Option<&str>) -> Scenario {
         faces: Vec::new(),
         limits: Limits { basis: basis.map(str::to_owned), own: Vec::new() },
         study: Study::default(),
+        accepted: Vec::new(),
     }
 }
 

@@ -193,6 +193,17 @@ fn the_section_of_studies_is_read_and_changes_no_number() {
 }
 
 #[test]
+fn an_accepted_doubt_is_read_and_changes_no_number() {
+    let keys = ["accept.*.doubt", "accept.*.at", "accept.*.why"].map(|path| path.replace(".*", ""));
+    let text = made(&keys.each_ref().map(String::as_str), &[]);
+    let [accepted] = &scenario(&text).accepted[..] else { panic!("not read\n{text}") };
+    assert_eq!((accepted.doubt.as_str(), accepted.at.as_deref()), ("reserve-missing", Some("obstacle.1")));
+    assert!(accepted.why.contains("plan 4"));
+    assert_eq!(solved(&text).numbers, solved(&new_file()).numbers);
+    assert_eq!(underfoot::scenario::inputs(&scenario(&text)), underfoot::scenario::inputs(&scenario(&new_file())));
+}
+
+#[test]
 fn a_limit_over_a_published_set_asks_for_its_reason() {
     let text = made(&["limits.arrest_force"], &[]);
     assert!(read("new.toml", &text).unwrap_err().faults[0].message.contains("without a reason"));

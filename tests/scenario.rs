@@ -210,7 +210,9 @@ fn doubt_messages(text: &str) -> Vec<String> {
 
 #[test]
 fn a_sound_file_raises_no_doubt() {
-    assert_eq!(doubt_messages(ROOF), Vec::<String>::new());
+    let sound = ROOF.replace("[place]", "stretch_allowance = \"0.3 m\"\n[place]");
+    assert_eq!(doubt_messages(&sound), Vec::<String>::new());
+    assert_eq!(doubt_messages(ROOF), ["nothing is allowed for the stretch of the harness"]);
 }
 
 #[test]

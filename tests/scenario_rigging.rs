@@ -12,6 +12,7 @@ const FULL: &str = r#"datum = "yard"
 kind = "person"
 mass = "100 kg"
 attachment_above_feet = "1.5 m"
+stretch_allowance = "0.3 m"
 half_width = "0.3 m"
 [place]
 standing = "10 m"
@@ -276,7 +277,12 @@ fn obstacles_and_faces_together_are_at_most_two_hundred() {
 #[test]
 fn sound_rigging_raises_no_doubt() {
     assert_eq!(doubt_messages(FULL), Vec::<String>::new());
-    assert_eq!(doubt_messages(RETRACTABLE), Vec::<String>::new());
+    let strong = RETRACTABLE.replace("lock_travel", "strength = \"15 kN\"\nlock_travel").replacen(
+        "[[obstacle]]",
+        "[anchor]\ncapacity = \"15 kN\"\n[[obstacle]]",
+        1,
+    );
+    assert_eq!(doubt_messages(&strong), Vec::<String>::new());
 }
 
 #[test]

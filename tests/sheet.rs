@@ -5,7 +5,7 @@ use serde_json::Value;
 use underfoot::margin::{Basis, Margin, Sense, Verdict};
 use underfoot::quantity::{Dimension, UnitSystem};
 use underfoot::scenario::{Scenario, read};
-use underfoot::sheet::{CAUTIONS, Layout, Paint, Report, governing_words, json, margin_words, report, tally, text};
+use underfoot::sheet::{CAUTIONS, Layout, Paint, Report, governing_words, json, margin_words, report, text};
 use unicode_width::UnicodeWidthStr;
 
 const FILE: &str = r#"
@@ -387,9 +387,18 @@ fn an_open_margin_says_why_and_nothing_to_judge_says_what_to_state() {
 
 #[test]
 fn the_count_names_every_verdict_that_occurs() {
-    assert_eq!(tally(&["holds", "short", "holds", "refused"]), "4 files: 2 holds, 1 short, 1 refused");
-    assert_eq!(tally(&["open"]), "1 file: 1 open");
-    assert_eq!(tally(&[]), "0 files: none judged");
+    use underfoot::sheet::{AuditTable, Audited, Finding, Summary};
+    let mut table = AuditTable::default();
+    assert_eq!(table.tally(), "0 files: none judged");
+    let why = || "why".to_owned();
+    for (finding, words) in [
+        (Finding::NotComputed(why()), "1 file: 1 not computed"),
+        (Finding::Unreadable(why()), "2 files: 1 unreadable, 1 not computed"),
+        (Finding::NotComputed(why()), "3 files: 1 unreadable, 2 not computed"),
+    ] {
+        table.push(Summary::of(&Audited { file: why(), uri: why(), finding }, UnitSystem::Metric));
+        assert_eq!(table.tally(), words);
+    }
 }
 
 #[test]

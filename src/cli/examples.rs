@@ -16,7 +16,15 @@ const EXAMPLES: &[(&str, &[&str])] = &[
             "underfoot run scenarios/elastic-suspension.toml --csv > trace.csv",
         ],
     ),
-    ("audit", &["underfoot audit scenarios", "underfoot audit scenarios --json > audit.jsonl"]),
+    (
+        "audit",
+        &[
+            "underfoot audit scenarios",
+            "underfoot audit 'scenarios/*.toml' --brief --require thin",
+            "underfoot audit scenarios --sarif > audit.sarif",
+            "underfoot audit --explain reserve-missing",
+        ],
+    ),
     ("spread", &["underfoot spread scenarios/step-transfer.toml --samples 10000 --seed 7"]),
     (
         "vary",

@@ -35,6 +35,11 @@ impl Interrupt {
     /// Goes on until Ctrl-C is pressed.
     pub fn watch(&self, meter: &Meter, progress: Progress) -> ControlFlow<()> {
         meter.tell(progress);
+        self.flow()
+    }
+
+    /// Goes on until Ctrl-C is pressed, and shows nothing.
+    pub fn flow(&self) -> ControlFlow<()> {
         if self.is_pressed() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
     }
 }

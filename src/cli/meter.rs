@@ -14,7 +14,7 @@ const LINE: &str = "{msg} [{bar:30}] {pos} of {len}, about {eta} left; Ctrl-C st
 pub struct Meter {
     bar: ProgressBar,
     began: Instant,
-    step: Mutex<Option<Step>>,
+    step: Mutex<Option<&'static str>>,
 }
 
 impl Meter {
@@ -29,28 +29,38 @@ impl Meter {
 
     /// Takes a step in.
     pub fn tell(&self, progress: Progress) {
+        self.count(words(progress.step), progress.done, progress.of);
+    }
+
+    /// Takes in how many of what are done.
+    pub fn count(&self, what: &'static str, done: usize, of: usize) {
         if self.began.elapsed() < PATIENCE {
             return;
         }
-        self.begin(progress);
-        self.bar.set_position(progress.done as u64);
+        self.begin(what, done, of);
+        self.bar.set_position(done as u64);
+    }
+
+    /// Does something on the terminal with the line out of its way.
+    pub fn aside<T>(&self, what: impl FnOnce() -> T) -> T {
+        self.bar.suspend(what)
     }
 
     /// A step that was not shown yet.
-    fn begin(&self, progress: Progress) {
+    fn begin(&self, what: &'static str, done: usize, of: usize) {
         let Ok(mut step) = self.step.try_lock() else { return };
-        if *step == Some(progress.step) {
+        if *step == Some(what) {
             return;
         }
         if step.is_none() {
             // Draws only where stderr is a terminal.
             self.bar.set_draw_target(ProgressDrawTarget::stderr());
         }
-        *step = Some(progress.step);
-        self.bar.set_length(progress.of as u64);
-        self.bar.set_position(progress.done as u64);
+        *step = Some(what);
+        self.bar.set_length(of as u64);
+        self.bar.set_position(done as u64);
         self.bar.reset_eta();
-        self.bar.set_message(words(progress.step));
+        self.bar.set_message(what);
     }
 
     /// Takes the line away.

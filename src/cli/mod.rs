@@ -2,6 +2,7 @@
 mod audit;
 mod examples;
 mod exit;
+mod gather;
 mod interrupt;
 mod locate;
 mod meter;

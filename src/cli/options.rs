@@ -8,6 +8,9 @@ use std::path::PathBuf;
 const EXIT_CODES: &str = "Exit codes: 0 every check holds; 1 a check is thin, short or open; 2 the input is wrong; \
                           3 it could not be computed; 130 interrupted.";
 
+const AUDIT_CODES: &str = "Exit codes: 0 every file passes, by default when every check holds; 1 a check is short or open, \
+                           or thin unless `--require thin`; 2 the input is wrong; 3 it could not be computed; 130 \
+                           interrupted. The largest of all files counts; doubts do not change it.";
 const VARY_CODES: &str = "Exit codes: 0 every check holds in every row or cell; 1 a check is short or open in one; 2 \
                           the input is wrong; 3 it could not be computed; 130 interrupted, with what there was.";
 const REMEDY_CODES: &str = "Exit codes: 0 every check holds today, at the typical values or with --worst at the worst \
@@ -42,8 +45,8 @@ pub enum Command {
     /// Print the estimate and its margins
     #[command(before_help = CAUTION_LINE)]
     Run(RunArgs),
-    /// Review files and folders: faults, doubtful inputs, margins, one verdict a file
-    #[command(before_help = CAUTION_LINE)]
+    /// Review files, folders and patterns: faults, doubts, margins, one verdict a file; a gate by its exit code
+    #[command(before_help = CAUTION_LINE, after_help = AUDIT_CODES)]
     Audit(AuditArgs),
     /// Over the bands of the inputs: worst found, share that falls short, which input matters
     #[command(before_help = CAUTION_LINE, after_help = EXIT_CODES)]
@@ -124,15 +127,37 @@ pub struct RunArgs {
     pub units: Units,
 }
 
+/// The least verdict with which a file passes.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, ValueEnum)]
+pub enum Require {
+    /// Every check holds, also at the worst found in the bands
+    #[default]
+    Holds,
+    /// Every check holds at the typical values
+    Thin,
+}
+
 /// Arguments of `audit`.
 #[derive(Args, Clone, Debug)]
 pub struct AuditArgs {
-    /// Scenario files, and folders that are searched for `*.toml`
-    #[arg(required = true, value_name = "PATH")]
+    /// Scenario files, folders that are searched for `*.toml`, and patterns such as `sites/**/*.toml`
+    #[arg(required_unless_present = "explain", value_name = "PATH")]
     pub paths: Vec<PathBuf>,
+    /// The least verdict with which a file passes
+    #[arg(long, value_enum, default_value_t, value_name = "VERDICT")]
+    pub require: Require,
+    /// The summary table alone, one line a file
+    #[arg(long, conflicts_with_all = ["json", "sarif"])]
+    pub brief: bool,
     /// JSON, one object a line and file
-    #[arg(long)]
+    #[arg(long, conflicts_with = "sarif")]
     pub json: bool,
+    /// SARIF 2.1.0, for code hosts: faults, doubts, and checks that are short, thin or open
+    #[arg(long)]
+    pub sarif: bool,
+    /// Explain a finding or doubt by its id; without an id list them all
+    #[arg(long, value_name = "ID", num_args = 0..=1, default_missing_value = "", conflicts_with = "paths")]
+    pub explain: Option<String>,
     /// Units shown in text
     #[arg(long, value_enum, default_value_t)]
     pub units: Units,

@@ -119,9 +119,9 @@ pub fn commands_markdown() -> String {
     lines.concat()
 }
 
-/// `underfoot vary FILE --over PATH`: the command with what it cannot do without.
+/// `underfoot vary FILE --over PATH`: the command with its files and what it cannot do without.
 fn usage(command: &clap::Command) -> String {
-    let needed = command.get_arguments().filter(|argument| argument.is_required_set());
+    let needed = command.get_arguments().filter(|argument| argument.is_required_set() || argument.is_positional());
     let words = needed.map(|argument| {
         let value = argument.get_value_names().and_then(|names| names.first()).map(ToString::to_string);
         let value = value.unwrap_or_else(|| argument.get_id().as_str().to_uppercase());

@@ -2,6 +2,7 @@
 mod beside;
 mod check;
 mod disagreement;
+mod doubt;
 mod judge;
 mod limit;
 mod name;
@@ -16,6 +17,7 @@ mod words;
 
 pub use check::{Basis, Margin, Sense, UnknownBasis, governing_first, margins, margins_from, margins_in};
 pub use disagreement::{Disagreement, disagreements};
+pub use doubt::doubts;
 pub use judge::{Cause, Check, CheckKind, Impact, judge};
 pub use limit::{Applies, Bound, LimitKind, LimitSet, Mark, PublishedLimit, WrittenFor, limit_set, limit_sets};
 pub use numeric::checks;

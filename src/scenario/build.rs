@@ -1,8 +1,9 @@
 //! From checked values to the scenario.
 use super::anchor::{Anchor, AnchorKind, Compliance, Span, SpanAbsorber, SpanTension};
+use super::field::ACCEPT;
 use super::line::{Absorber, DampingLaw, Line, LineKind, StretchLaw};
 use super::model::{
-    Edge, Face, Fall, LIMIT_KEYS, Limits, Obstacle, OwnLimit, Place, Scenario, Study, Subject, SubjectKind,
+    Acceptance, Edge, Face, Fall, LIMIT_KEYS, Limits, Obstacle, OwnLimit, Place, Scenario, Study, Subject, SubjectKind,
 };
 use super::values::Values;
 use crate::quantity::{Measure, Unit};
@@ -29,6 +30,7 @@ pub(super) fn scenario(values: &mut Values) -> Option<Scenario> {
         faces: (1..=v.count("face")).map(|n| face(v, n)).collect::<Option<Vec<_>>>()?,
         limits: limits(v),
         study: Study { seed: whole(v, "study.seed"), samples: whole(v, "study.samples") },
+        accepted: (1..=v.count(ACCEPT)).map(|n| acceptance(v, n)).collect::<Option<Vec<_>>>()?,
     })
 }
 
@@ -205,6 +207,11 @@ fn obstacle(v: &Values, n: usize) -> Option<Obstacle> {
         extent: m(v, &key("from")).zip(m(v, &key("to"))),
         reserve: m(v, &key("reserve")),
     })
+}
+
+fn acceptance(v: &Values, n: usize) -> Option<Acceptance> {
+    let key = |name: &str| word(v, &format!("{ACCEPT}.{n}.{name}"));
+    Some(Acceptance { doubt: key("doubt")?, at: key("at"), why: key("why")? })
 }
 
 fn limits(v: &Values) -> Limits {

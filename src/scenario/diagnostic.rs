@@ -78,18 +78,20 @@ impl Faults {
     #[must_use]
     pub fn render(&self, color: bool) -> String {
         let renderer = if color { Renderer::styled() } else { Renderer::plain() };
-        let texts: Vec<String> = self.faults.iter().map(|fault| self.render_one(&renderer, fault)).collect();
+        let texts: Vec<String> = self.faults.iter().map(|fault| self.render_one(&renderer, fault, None)).collect();
         texts.join("\n\n") + if texts.is_empty() { "" } else { "\n" }
     }
 
-    fn render_one(&self, renderer: &Renderer, fault: &Fault) -> String {
+    pub(super) fn render_one(&self, renderer: &Renderer, fault: &Fault, id: Option<&str>) -> String {
         let level = match fault.severity {
             Severity::Error => Level::ERROR,
             Severity::Doubt => Level::WARNING.with_name("doubt"),
         };
         let marker = AnnotationKind::Primary.span(self.shown_span(&fault.span)).label(fault.expected.as_str());
         let snippet = Snippet::source(self.text.as_str()).path(self.file.as_str()).annotation(marker);
-        let mut group = level.primary_title(fault.message.as_str()).element(snippet);
+        let title = level.primary_title(fault.message.as_str());
+        let title = if let Some(id) = id { title.id(id) } else { title };
+        let mut group = title.element(snippet);
         if let Some(hint) = &fault.hint {
             group = group.element(Level::HELP.message(hint.as_str()));
         }
@@ -110,6 +112,14 @@ impl Faults {
         start..end.clamp(start, line_end)
     }
 
+    /// Line and column where a finding begins and where it ends (the column after its last character, on its first
+    /// line), all from 1, columns in characters.
+    #[must_use]
+    pub fn region(&self, fault: &Fault) -> ((usize, usize), (usize, usize)) {
+        let span = self.shown_span(&fault.span);
+        (self.line_column(span.start), self.line_column(span.end))
+    }
+
     /// Line and column (both from 1, columns in characters) of a byte offset.
     #[must_use]
     pub fn line_column(&self, offset: usize) -> (usize, usize) {
@@ -121,13 +131,12 @@ impl Faults {
     /// The findings with line and column, for machine-readable output.
     #[must_use]
     pub fn rows(&self) -> Vec<FaultRow> {
-        self.faults
-            .iter()
-            .map(|fault| {
-                let (line, column) = self.line_column(fault.span.start);
-                let Fault { severity, message, expected, hint, .. } = fault.clone();
-                FaultRow { severity, line, column, message, expected, hint }
-            })
-            .collect()
+        self.faults.iter().map(|fault| self.row(fault)).collect()
+    }
+
+    pub(super) fn row(&self, fault: &Fault) -> FaultRow {
+        let (line, column) = self.line_column(fault.span.start);
+        let Fault { severity, message, expected, hint, .. } = fault.clone();
+        FaultRow { severity, line, column, message, expected, hint }
     }
 }

@@ -1,7 +1,7 @@
 //! What a reviewer should look at though the file can be read.
 use super::line::{DampingLaw, StretchLaw};
 use super::model::{Obstacle, Scenario, SubjectKind};
-use super::{Fault, Faults, Places, Severity, doubt_rigging, places};
+use super::{Faults, doubt_rigging, doubt_size};
 use crate::quantity::format_measure;
 
 /// Heaviest person with tools that is not a doubt, kg: above every published rating of a personal absorber.
@@ -18,12 +18,29 @@ const GRAVITY_SPREAD_M_PER_S2: f64 = 0.05;
 const STANDARD_GRAVITY_M_PER_S2: f64 = 9.806_65;
 
 /// One doubt before it has its place.
-pub(super) type Doubt = (String, String, &'static str, &'static str);
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct Doubt {
+    /// Id of its rule, see [`super::DOUBT_RULES`].
+    pub id: &'static str,
+    /// Path of the input or section it is about.
+    pub path: String,
+    /// What is doubtful here: lower case, no full stop, values in back-quotes.
+    pub message: String,
+    /// What stands at the marker.
+    pub expected: &'static str,
+    /// What to do next.
+    pub hint: &'static str,
+}
 
-/// Doubts about a file's own statements, sorted by place; the numbers of a run are not judged here.
+/// Doubts about a file's own statements that the file does not accept, sorted by place; the numbers of a run are not
+/// judged here.
 #[must_use]
 pub fn doubts(file: &str, text: &str, scenario: &Scenario) -> Faults {
-    let places = places(text);
+    super::review(file, text, scenario, None).open()
+}
+
+/// Every doubt about a file's own statements, accepted or not.
+pub(super) fn raised(scenario: &Scenario) -> Vec<Doubt> {
     let mut found = Vec::new();
     found.extend(mass(scenario));
     found.extend(body(scenario));
@@ -37,21 +54,18 @@ pub fn doubts(file: &str, text: &str, scenario: &Scenario) -> Faults {
     found.extend(datum(scenario));
     found.extend(obstacles(scenario));
     found.extend(limits(scenario));
-    Faults::new(file, text, found.into_iter().map(|doubt| placed(doubt, &places)).collect())
+    found.extend(doubt_size::doubts(scenario));
+    found
 }
 
-fn placed((path, message, expected, hint): Doubt, places: &Places) -> Fault {
-    Fault {
-        severity: Severity::Doubt,
-        span: places.of(&path),
-        message,
-        expected: expected.to_owned(),
-        hint: Some(hint.to_owned()),
-    }
-}
-
-pub(super) fn doubt(path: &str, message: String, expected: &'static str, hint: &'static str) -> Doubt {
-    (path.to_owned(), message, expected, hint)
+pub(super) fn doubt(
+    id: &'static str,
+    path: &str,
+    message: String,
+    expected: &'static str,
+    hint: &'static str,
+) -> Doubt {
+    Doubt { id, path: path.to_owned(), message, expected, hint }
 }
 
 fn mass(scenario: &Scenario) -> Option<Doubt> {
@@ -62,11 +76,17 @@ fn mass(scenario: &Scenario) -> Option<Doubt> {
     let shown = format_measure(mass);
     if mass.band.high > HEAVY_PERSON_KG {
         let hint = "check the number and its unit; personal equipment is rated for less";
-        return Some(doubt("subject.mass", format!("a person of `{shown}` is above 200 kg"), "very heavy", hint));
+        return Some(doubt(
+            "mass-above-usual",
+            "subject.mass",
+            format!("a person of `{shown}` is above 200 kg"),
+            "very heavy",
+            hint,
+        ));
     }
     (mass.band.low < LIGHT_PERSON_KG).then(|| {
         let hint = "check the number and its unit; an absorber may hardly deploy for so light a person";
-        doubt("subject.mass", format!("a person of `{shown}` is below 40 kg"), "very light", hint)
+        doubt("mass-below-usual", "subject.mass", format!("a person of `{shown}` is below 40 kg"), "very light", hint)
     })
 }
 
@@ -78,14 +98,14 @@ fn body(scenario: &Scenario) -> Vec<Doubt> {
     {
         let message = format!("the attachment is `{}` above the feet", format_measure(&height));
         let hint = "it is measured from the soles, standing, not from the datum";
-        found.push(doubt("subject.attachment_above_feet", message, "very high on the body", hint));
+        found.push(doubt("attachment-high", "subject.attachment_above_feet", message, "very high on the body", hint));
     }
     if let Some(factor) = subject.body_factor
         && factor.band.high > 1.0
     {
         let message = format!("a body factor of `{}` lowers the arrest force that is judged", format_measure(&factor));
         let hint = "leave it at 1 unless a test of this very equipment supports it";
-        found.push(doubt("subject.body_factor", message, "above 1", hint));
+        found.push(doubt("body-factor-above-one", "subject.body_factor", message, "above 1", hint));
     }
     if subject.kind == SubjectKind::Person
         && scenario.place.standing.is_some()
@@ -93,7 +113,7 @@ fn body(scenario: &Scenario) -> Vec<Doubt> {
     {
         let message = "the height of the attachment above the feet is not stated".to_owned();
         let hint = "add `attachment_above_feet`; without it the attachment has no elevation";
-        found.push(doubt("subject", message, "no `attachment_above_feet`", hint));
+        found.push(doubt("attachment-height-missing", "subject", message, "no `attachment_above_feet`", hint));
     }
     found
 }
@@ -102,7 +122,7 @@ fn gravity(scenario: &Scenario) -> Option<Doubt> {
     let off = (scenario.gravity.si() - STANDARD_GRAVITY_M_PER_S2).abs() > GRAVITY_SPREAD_M_PER_S2;
     off.then(|| {
         let message = format!("gravity is `{}`", format_measure(&scenario.gravity));
-        doubt("gravity", message, "not as on the ground", "take the key out to use 9.80665 m/s2")
+        doubt("gravity-unusual", "gravity", message, "not as on the ground", "take the key out to use 9.80665 m/s2")
     })
 }
 
@@ -120,7 +140,7 @@ fn damping(scenario: &Scenario) -> Option<Doubt> {
         let message = format!("a damping ratio of `{ratio:.2}` is above critical");
         let hint =
             "textile and wire lines are far below 1; the force jump at taut grows with it, see `line.series_stiffness`";
-        doubt(path, message, "overdamped line", hint)
+        doubt("line-overdamped", path, message, "overdamped line", hint)
     })
 }
 
@@ -140,28 +160,34 @@ fn fall(scenario: &Scenario) -> Vec<Doubt> {
     {
         let message = "the anchor lies below the standing surface".to_owned();
         let hint = "check both elevations and the datum; from there the fall is nearly twice the line's length";
-        found.push(doubt("place.anchor", message, "below the feet", hint));
+        found.push(doubt("anchor-below-feet", "place.anchor", message, "below the feet", hint));
     }
     if let (Some(free_fall), Some(length)) = (scenario.fall.free_fall, scenario.line.length)
         && free_fall.si() > 2.0 * length.si()
     {
         let message = format!("the free fall is more than twice the line's length of `{}`", format_measure(&length));
         let hint = "a line on a fixed point allows at most twice its length; check both numbers";
-        found.push(doubt("fall.free_fall", message, "fall factor above 2", hint));
+        found.push(doubt("fall-above-twice-length", "fall.free_fall", message, "fall factor above 2", hint));
     }
     if let StretchLaw::StaticElongation { percent, .. } = &scenario.line.stretch
         && percent.band.low < LEAST_ELONGATION
     {
         let message = format!("a static elongation of `{}` is that of a steel bar", format_measure(percent));
         let hint = "the number is in percent: write `3.4`, not `0.034`, for 3.4 %";
-        found.push(doubt("line.static_elongation.percent", message, "very small", hint));
+        found.push(doubt("elongation-tiny", "line.static_elongation.percent", message, "very small", hint));
     }
     if let StretchLaw::RatedImpact { fall_factor, .. } = &scenario.line.stretch
         && fall_factor.band.high > 2.0
     {
         let message = format!("the rated drop has a fall factor of `{}`", format_measure(fall_factor));
         let hint = "a line on a fixed point allows at most 2; check the data sheet";
-        found.push(doubt("line.rated_impact.fall_factor", message, "fall factor above 2", hint));
+        found.push(doubt(
+            "rated-drop-above-two",
+            "line.rated_impact.fall_factor",
+            message,
+            "fall factor above 2",
+            hint,
+        ));
     }
     found
 }
@@ -175,15 +201,16 @@ fn absorber(scenario: &Scenario) -> Vec<Doubt> {
     {
         let message = format!("a deployment force of `{}` does not exceed the weight", format_measure(&force));
         let hint = "such an absorber cannot stop the fall before its stroke is used up; check force, mass and units";
-        found.push(doubt("absorber.deploy_force", message, "not above the weight", hint));
+        found.push(doubt("absorber-below-weight", "absorber.deploy_force", message, "not above the weight", hint));
     }
-    for (absent, key) in
-        [(absorber.rated_mass.is_none(), "rated_mass"), (absorber.rated_free_fall.is_none(), "rated_free_fall")]
-    {
+    for (absent, id, key) in [
+        (absorber.rated_mass.is_none(), "rated-mass-missing", "rated_mass"),
+        (absorber.rated_free_fall.is_none(), "rated-free-fall-missing", "rated_free_fall"),
+    ] {
         if absent {
             let message = format!("the absorber has no `{key}`");
             let hint = "copy the rating from its label; without it the check cannot be made";
-            found.push(doubt("absorber", message, "no rating", hint));
+            found.push(doubt(id, "absorber", message, "no rating", hint));
         }
     }
     found
@@ -194,7 +221,13 @@ fn line_strength(scenario: &Scenario) -> Option<Doubt> {
     let onset_n = absorber.onset_force.map_or(absorber.first_force_n()[2], |onset| onset.band.high);
     (strength.band.low < onset_n).then(|| {
         let message = format!("the line breaks at `{}`, before the absorber starts", format_measure(&strength));
-        doubt("line.strength", message, "below the onset force", "check both numbers and their units")
+        doubt(
+            "strength-below-onset",
+            "line.strength",
+            message,
+            "below the onset force",
+            "check both numbers and their units",
+        )
     })
 }
 
@@ -202,13 +235,13 @@ fn harness(scenario: &Scenario) -> Option<Doubt> {
     scenario.harness.as_ref()?;
     if scenario.subject.kind == SubjectKind::Load {
         let hint = "a harness belongs to a person; use a sprung anchor or the line's own stiffness for a load";
-        return Some(doubt("harness", "a load has a harness".to_owned(), "for persons", hint));
+        return Some(doubt("harness-on-load", "harness", "a load has a harness".to_owned(), "for persons", hint));
     }
     scenario.subject.stretch_allowance.filter(|allowance| allowance.band.high > 0.0).map(|allowance| {
         let message =
             format!("a stretch allowance of `{}` and a [harness] both count its stretch", format_measure(&allowance));
         let hint = "reduce the allowance to the shift of the attachment alone, or take [harness] out";
-        doubt("subject.stretch_allowance", message, "counted twice", hint)
+        doubt("harness-counted-twice", "subject.stretch_allowance", message, "counted twice", hint)
     })
 }
 
@@ -216,7 +249,7 @@ fn datum(scenario: &Scenario) -> Option<Doubt> {
     let elevations = scenario.place.standing.is_some() || !scenario.obstacles.is_empty();
     (elevations && scenario.datum.as_deref().is_none_or(|datum| datum.trim().is_empty())).then(|| {
         let hint = "add `datum = \"finished floor of level 0\"` at the top";
-        doubt("place.standing", "nothing says what elevation 0 is".to_owned(), "no datum", hint)
+        doubt("datum-missing", "place.standing", "nothing says what elevation 0 is".to_owned(), "no datum", hint)
     })
 }
 
@@ -224,6 +257,7 @@ fn obstacles(scenario: &Scenario) -> Vec<Doubt> {
     if scenario.obstacles.is_empty() {
         let hint = "add an `[[obstacle]]` for every level, ledge and machine that the fall could reach";
         return vec![doubt(
+            "obstacle-missing",
             "obstacle",
             "no obstacle is stated, no clearance is judged".to_owned(),
             "no [[obstacle]]",
@@ -234,7 +268,7 @@ fn obstacles(scenario: &Scenario) -> Vec<Doubt> {
     if scenario.place.standing.is_none() {
         let hint = "add `place.standing` for the elevations";
         let message = "obstacles have elevations, the subject has none".to_owned();
-        found.push(doubt("obstacle.1", message, "cannot be judged", hint));
+        found.push(doubt("obstacle-without-standing", "obstacle.1", message, "cannot be judged", hint));
     }
     for (index, obstacle) in scenario.obstacles.iter().enumerate() {
         found.extend(obstacle_doubts(scenario, index + 1, obstacle));
@@ -244,17 +278,22 @@ fn obstacles(scenario: &Scenario) -> Vec<Doubt> {
 
 fn obstacle_doubts(scenario: &Scenario, number: usize, obstacle: &Obstacle) -> Vec<Doubt> {
     let mut found = Vec::new();
+    if obstacle.reserve.is_some_and(|reserve| reserve.band.low == 0.0) {
+        let message = format!("the reserve of obstacle {number} is 0 m, touching it just so would hold");
+        let hint = "state the clear space wanted above it";
+        found.push(doubt("reserve-none", &format!("obstacle.{number}.reserve"), message, "no reserve", hint));
+    }
     if obstacle.reserve.is_none() {
         let message = format!("obstacle {number} has no reserve, touching it just so would hold");
         let hint = "add `reserve`, the clear space wanted above it";
-        found.push(doubt(&format!("obstacle.{number}"), message, "no reserve", hint));
+        found.push(doubt("reserve-missing", &format!("obstacle.{number}"), message, "no reserve", hint));
     }
     if let Some(standing) = scenario.place.standing
         && obstacle.top.si() > standing.si()
     {
         let message = format!("the top of obstacle {number} lies above the start of the fall");
         let hint = "check both elevations and the datum";
-        found.push(doubt(&format!("obstacle.{number}.top"), message, "above the start", hint));
+        found.push(doubt("obstacle-above-start", &format!("obstacle.{number}.top"), message, "above the start", hint));
     }
     found
 }
@@ -264,15 +303,27 @@ fn limits(scenario: &Scenario) -> Option<Doubt> {
     match limits.basis.as_deref() {
         None if limits.own.is_empty() => {
             let hint = "add `[limits]` with `basis = \"eu-363\"` or another set";
-            Some(doubt("limits", "no limits are stated, no force is judged".to_owned(), "no [limits]", hint))
+            Some(doubt(
+                "limits-missing",
+                "limits",
+                "no limits are stated, no force is judged".to_owned(),
+                "no [limits]",
+                hint,
+            ))
         }
         None => {
             let hint = "add `basis = \"own\"`, or the published set that they belong to";
-            Some(doubt("limits", "single limits stand without a basis".to_owned(), "no basis", hint))
+            Some(doubt("basis-missing", "limits", "single limits stand without a basis".to_owned(), "no basis", hint))
         }
         Some("own") if limits.own.is_empty() => {
             let hint = "state the limits, or name a published set";
-            Some(doubt("limits.basis", "basis `own` states no limit".to_owned(), "no limits", hint))
+            Some(doubt(
+                "own-limits-missing",
+                "limits.basis",
+                "basis `own` states no limit".to_owned(),
+                "no limits",
+                hint,
+            ))
         }
         Some(_) => None,
     }

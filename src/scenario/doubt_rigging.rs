@@ -37,7 +37,7 @@ fn retractable(scenario: &Scenario) -> Vec<Doubt> {
     {
         let message = format!("a lock travel of `{}` is long", format_measure(&travel));
         let hint = "it is the travel until the line locks, without the braking after it";
-        found.push(doubt("line.lock_travel", message, "more than 1 m", hint));
+        found.push(doubt("lock-travel-long", "line.lock_travel", message, "more than 1 m", hint));
     }
     let height = scenario.subject.attachment_above_feet.or(scenario.subject.underside_below_attachment);
     if let (Some(anchor), Some(standing), Some(height)) = (scenario.place.anchor, scenario.place.standing, height)
@@ -46,7 +46,7 @@ fn retractable(scenario: &Scenario) -> Vec<Doubt> {
         let message = "the retractable line is anchored below the attachment".to_owned();
         let hint = "it pays out only once the attachment has passed the anchor: the free fall is larger than the lock \
                     travel; ask its maker";
-        found.push(doubt("place.anchor", message, "below the attachment", hint));
+        found.push(doubt("retractable-below-attachment", "place.anchor", message, "below the attachment", hint));
     }
     found
 }
@@ -54,17 +54,28 @@ fn retractable(scenario: &Scenario) -> Vec<Doubt> {
 fn vertical(scenario: &Scenario) -> Option<Doubt> {
     (scenario.line.kind == LineKind::Vertical && scenario.line.grab_slide.is_none()).then(|| {
         let hint = "add `grab_slide`, the slide of the grab before it holds; it counts as free fall";
-        doubt("line", "the grab has no slide, it would hold at once".to_owned(), "no `grab_slide`", hint)
+        doubt(
+            "grab-slide-missing",
+            "line",
+            "the grab has no slide, it would hold at once".to_owned(),
+            "no `grab_slide`",
+            hint,
+        )
     })
 }
 
 fn edge(scenario: &Scenario) -> Vec<Doubt> {
     let mut found = Vec::new();
     let Some(edge) = &scenario.place.edge else { return found };
+    if scenario.line.kind == LineKind::Retractable {
+        let hint = "use one that its maker has tested over such an edge, and state its lock travel from that test";
+        let message = "a retractable line runs over an edge".to_owned();
+        found.push(doubt("retractable-over-edge", "place.edge", message, "an edge in its way", hint));
+    }
     if edge.strength_factor.is_none() {
         let hint = "add `strength_factor` to the edge where the line was not tested over such an edge";
         let message = "the line's strength is judged as if the edge did it no harm".to_owned();
-        found.push(doubt("place.edge", message, "no `strength_factor`", hint));
+        found.push(doubt("edge-strength-missing", "place.edge", message, "no `strength_factor`", hint));
     }
     if let Some(anchor) = scenario.place.anchor
         && edge.elevation.si() > anchor.si()
@@ -75,7 +86,7 @@ fn edge(scenario: &Scenario) -> Vec<Doubt> {
             format_measure(&anchor)
         );
         let hint = "the line would climb to the edge; check both elevations and the datum";
-        found.push(doubt("place.edge.elevation", message, "above the anchor", hint));
+        found.push(doubt("edge-above-anchor", "place.edge.elevation", message, "above the anchor", hint));
     }
     found
 }
@@ -89,24 +100,36 @@ fn faces(scenario: &Scenario) -> Vec<Doubt> {
     if swings && scenario.faces.is_empty() {
         let hint = "add a `[[face]]` for every wall, column and machine beside the fall line";
         let message = "the subject swings and nothing says what stands beside it".to_owned();
-        found.push(doubt("place", message, "no [[face]]", hint));
+        found.push(doubt("face-missing", "place", message, "no [[face]]", hint));
     }
     if !swings && !scenario.faces.is_empty() {
         let hint = "add `place.anchor_offset` where the anchor is beside the fall line, or take the face out";
         let message = "a fall below the anchor does not swing, no face is judged".to_owned();
-        found.push(doubt("face.1", message, "not reached", hint));
+        found.push(doubt("face-not-reached", "face.1", message, "not reached", hint));
     }
     let half_width = scenario.subject.half_width;
     if swings && !scenario.faces.is_empty() && half_width.is_none() {
         let hint = "add `half_width`, half the width of the body or load";
-        found.push(doubt("subject", "the body has no width, a strike comes late".to_owned(), "no `half_width`", hint));
+        found.push(doubt(
+            "half-width-missing",
+            "subject",
+            "the body has no width, a strike comes late".to_owned(),
+            "no `half_width`",
+            hint,
+        ));
     }
     let reach_m = half_width.map_or(0.0, |width| width.band.high);
     for (index, face) in scenario.faces.iter().enumerate() {
         if face.offset.band.low.abs().min(face.offset.band.high.abs()) <= reach_m {
             let message = format!("face {} at `{}` touches the fall line", index + 1, format_measure(&face.offset));
             let hint = "the offset counts from the fall line to the face; check it against `subject.half_width`";
-            found.push(doubt(&format!("face.{}.offset", index + 1), message, "within the half width", hint));
+            found.push(doubt(
+                "face-in-reach",
+                &format!("face.{}.offset", index + 1),
+                message,
+                "within the half width",
+                hint,
+            ));
         }
     }
     found
@@ -128,7 +151,7 @@ fn tables(scenario: &Scenario) -> Vec<Doubt> {
         if *last_n < least_n {
             let message = format!("the line's table ends at `{}`, this fall takes more", shown(*last_n));
             let hint = "add rows up to the forces of the arrest; beyond the last row nothing can be judged";
-            found.push(doubt("line.curve", message, "ends too low", hint));
+            found.push(doubt("curve-ends-low", "line.curve", message, "ends too low", hint));
         }
     }
     if let Some(rows) = absorber.and_then(|a| a.force_table.as_ref())
@@ -137,14 +160,14 @@ fn tables(scenario: &Scenario) -> Vec<Doubt> {
     {
         let message = format!("the absorber's table ends at `{}`, not above the weight", shown(*last_n));
         let hint = "such an absorber cannot stop the fall before its stroke is used up; check forces, mass and units";
-        found.push(doubt("absorber.force_table", message, "not above the weight", hint));
+        found.push(doubt("absorber-table-below-weight", "absorber.force_table", message, "not above the weight", hint));
     }
     if let Some(factor) = absorber.and_then(|a| a.wet_cold_factor)
         && factor.band.low < 1.0
     {
         let message = format!("a wet and cold factor of `{}` lowers the absorber's forces", format_measure(&factor));
         let hint = "wet and frozen absorbers are known to need more force, not less; check the factor";
-        found.push(doubt("absorber.wet_cold_factor", message, "below 1", hint));
+        found.push(doubt("wet-factor-below-one", "absorber.wet_cold_factor", message, "below 1", hint));
     }
     found
 }
@@ -158,13 +181,13 @@ fn tightness(span: &Span) -> Option<Doubt> {
                 format_measure(&span.length)
             );
             let hint = "so tight a cable multiplies the load on its supports; check the sag and its unit";
-            Some(doubt("anchor.span.sag", message, "very tight", hint))
+            Some(doubt("span-tight", "anchor.span.sag", message, "very tight", hint))
         }
         SpanTension::Pretension(pretension) if pretension.band.high > MOST_STRAIN * span.modulus.si() => {
             let message =
                 format!("a pretension of `{}` stretches the cable by more than 2 %", format_measure(pretension));
             let hint = "check the pretension, the modulus and their units";
-            Some(doubt("anchor.span.pretension", message, "very tight", hint))
+            Some(doubt("span-tight", "anchor.span.pretension", message, "very tight", hint))
         }
         _ => None,
     }
@@ -176,11 +199,17 @@ fn support(scenario: &Scenario, span: &Span) -> Vec<Doubt> {
         let message = "the span has neither `strength` nor `support_stiffness`".to_owned();
         let hint =
             "add what is known of cable and supports; without them the supports are rigid and the cable is not judged";
-        found.push(doubt("anchor.span", message, "cable and supports unknown", hint));
+        found.push(doubt("span-strength-missing", "anchor.span", message, "cable and supports unknown", hint));
     }
     if scenario.anchor.capacity.is_none() {
         let hint = "add `capacity`, what each end support carries; a span multiplies the load on it";
-        found.push(doubt("anchor", "the supports of the span have no capacity".to_owned(), "no `capacity`", hint));
+        found.push(doubt(
+            "span-capacity-missing",
+            "anchor",
+            "the supports of the span have no capacity".to_owned(),
+            "no `capacity`",
+            hint,
+        ));
     }
     found
 }

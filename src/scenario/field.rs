@@ -105,7 +105,9 @@ impl Field {
 }
 
 /// Sections that may stand several times, each numbered from 1.
-pub(super) const LISTS: [&str; 2] = ["obstacle", "face"];
+pub(super) const LISTS: [&str; 3] = ["obstacle", "face", ACCEPT];
+/// The list of doubts that the file accepts: words for a reviewer, no inputs.
+pub(super) const ACCEPT: &str = "accept";
 
 /// The list that a path or a section of the table belongs to.
 pub(super) fn list_of(path: &str) -> Option<&'static str> {

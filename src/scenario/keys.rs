@@ -375,6 +375,12 @@ pub const FIELDS: &[Field] = &[
     quantity("limits.line_strength", "limit on the line", "least strength of the line", FORCE, "\"22 kN\""),
     quantity("limits.line_factor", "line factor", "factor on the line force", (Ratio, 1.0, 100.0), "2"),
     quantity("limits.subject_mass", "limit on the mass", "largest mass of the subject", MASS, "\"140 kg\""),
+    text("accept.*.doubt", "accepted doubt", "id of a doubt of `audit` that was looked at", "\"reserve-missing\"")
+        .needed(InSection),
+    text("accept.*.at", "accepted place", "path of the one input or section it is about", "\"obstacle.1\"")
+        .needed(Default("every place")),
+    text("accept.*.why", "reason", "why it is accepted, for the next reviewer", "\"the roof is netted, see plan 4\"")
+        .needed(InSection),
     count("study.seed", "seed", "which sample of the bands is drawn", (0.0, LARGEST_SEED), "1").needed(Default("1")),
     count("study.samples", "samples", "runs that the sample of the bands has", (1.0, MOST_SAMPLES), "4096")
         .needed(Default("4096")),

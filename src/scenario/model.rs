@@ -36,6 +36,19 @@ pub struct Scenario {
     pub limits: Limits,
     /// How the bands are sampled, where the file says so.
     pub study: Study,
+    /// Doubts that the file accepts, each with its reason.
+    pub accepted: Vec<Acceptance>,
+}
+
+/// A doubt that the file accepts with a reason. It stays visible in every audit.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct Acceptance {
+    /// Id of the doubt.
+    pub doubt: String,
+    /// Path of the one input or section that it is about; every place where absent.
+    pub at: Option<String>,
+    /// Why, not blank.
+    pub why: String,
 }
 
 /// How the bands are sampled; what is absent is at its default.

@@ -1,4 +1,5 @@
 //! Which keys must stand together, and which must not.
+use super::accept;
 use super::field::{Field, LISTS, Need, field_for, list_of};
 use super::keys::FIELDS;
 use super::values::{Values, quoted};
@@ -21,6 +22,7 @@ pub(super) fn check(text: &str, values: &mut Values) {
     span(text, values);
     obstacles(values);
     limits(values);
+    accept::check(values);
 }
 
 /// Where to add a key: at its section's name, else at the end of the file.

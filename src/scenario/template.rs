@@ -25,7 +25,7 @@ const SHOWN: &[&str] = &[
 
 /// Sections that stand in the new file as comments.
 const OPTIONAL_SECTIONS: &[&str] =
-    &["place.edge", "fall", "harness", "anchor.span", "anchor.span.absorber", "face.*", "study"];
+    &["place.edge", "fall", "harness", "anchor.span", "anchor.span.absorber", "face.*", "accept.*", "study"];
 
 /// Sections that stand in the new file as one key with a table in braces.
 const IN_ONE_LINE: &[&str] = &["line.rated_impact", "line.static_elongation"];
@@ -57,6 +57,7 @@ fn header(section: &str) -> String {
     match section {
         "obstacle.*" => "\n[[obstacle]]\n".to_owned(),
         "face.*" => "\n# [[face]]\n".to_owned(),
+        "accept.*" => "\n# [[accept]]\n".to_owned(),
         section if IN_ONE_LINE.contains(&section) => {
             let key = section.trim_start_matches("line.");
             format!("# {key} = {{ {} }}  # instead\n", members(section))

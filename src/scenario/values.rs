@@ -1,5 +1,5 @@
 //! The first pass over a file: every key to its value and place, every fault of a single value.
-use super::field::{Field, LISTS, field_for, list_of, pattern_of};
+use super::field::{ACCEPT, Field, LISTS, field_for, list_of, pattern_of};
 use super::keys::FIELDS;
 use super::{Fault, Severity, leaf, table};
 use crate::quantity::Measure;
@@ -106,10 +106,9 @@ impl Values {
         entries: impl Iterator<Item = &'v Spanned<DeValue<'i>>>,
     ) {
         for (index, entry) in entries.enumerate() {
-            if self.counts.values().sum::<usize>() == MOST_ENTRIES {
-                let hint = Some("keep the obstacles and faces that the subject can reach".to_owned());
-                let message = format!("more than {MOST_ENTRIES} obstacles and faces");
-                return self.error(entry.span(), message, "one too many", hint);
+            if let Some((what, hint)) = self.is_full(list) {
+                let message = format!("more than {MOST_ENTRIES} {what}");
+                return self.error(entry.span(), message, "one too many", Some(hint.to_owned()));
             }
             *self.counts.entry(list).or_default() += 1;
             let path = format!("{list}.{}", index + 1);
@@ -118,6 +117,17 @@ impl Values {
                 self.walk(text, &path, table);
             }
         }
+    }
+
+    /// Whether a list takes no further entry: what there are too many of, and what to do.
+    fn is_full(&self, list: &str) -> Option<(&'static str, &'static str)> {
+        let accepted = self.count(ACCEPT);
+        if list == ACCEPT {
+            return (accepted == MOST_ENTRIES)
+                .then_some(("accepted doubts", "put the inputs right; accept what is left"));
+        }
+        (self.counts.values().sum::<usize>() - accepted == MOST_ENTRIES)
+            .then_some(("obstacles and faces", "keep the obstacles and faces that the subject can reach"))
     }
 
     /// Notes an unknown key; returns the path that was probably meant.
@@ -172,7 +182,7 @@ fn plain(name: &str) -> bool {
 }
 
 /// True when keys stand below the path.
-fn is_section(path: &str) -> bool {
+pub(super) fn is_section(path: &str) -> bool {
     LISTS.contains(&path) || children(path).next().is_some()
 }
 

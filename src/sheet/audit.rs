@@ -6,14 +6,14 @@ use super::text::{margin_table, sentences, verdict_line};
 use super::{CAUTION_LINE, CAUTIONS, Report};
 use crate::margin::Verdict;
 use crate::quantity::UnitSystem;
-use crate::scenario::Faults;
+use crate::scenario::{Faults, Review, inputs};
 use serde_json::{Map, Value, json};
 
 /// What became of one file.
 #[derive(Clone, Debug)]
 pub enum Finding {
     /// Read, computed and judged; the doubts may be none.
-    Judged(Box<Report>, Faults),
+    Judged(Box<Report>, Review),
     /// Read and refused.
     Refused(Faults),
     /// Not readable; why.
@@ -27,6 +27,8 @@ pub enum Finding {
 pub struct Audited {
     /// Name of the file as given.
     pub file: String,
+    /// Its place as a URI reference, see [`super::file_uri`].
+    pub uri: String,
     /// What became of it.
     pub finding: Finding,
 }
@@ -42,7 +44,7 @@ impl Audited {
             Finding::NotComputed(_) => "not computed",
         }
     }
-    const fn symbol(&self) -> char {
+    pub(super) const fn symbol(&self) -> char {
         match &self.finding {
             Finding::Judged(report, _) => report.verdict.symbol(),
             Finding::Refused(_) | Finding::Unreadable(_) | Finding::NotComputed(_) => '!',
@@ -65,7 +67,7 @@ pub fn audit_text(audited: &Audited, system: UnitSystem, paint: Paint) -> String
     page.heading(&audited.file);
     let colour = paint == Paint::Colour;
     match &audited.finding {
-        Finding::Judged(report, doubts) => judged(&mut page, report, doubts, system, colour),
+        Finding::Judged(report, review) => judged(&mut page, report, review, system, colour),
         Finding::Refused(faults) => {
             refusal(&mut page, audited, "the file has faults");
             page.raw(&faults.render(colour));
@@ -80,7 +82,7 @@ fn refusal(page: &mut Page, audited: &Audited, why: &str) {
     page.wrapped(&lead, why, Tone::Verdict(Verdict::Short));
 }
 
-fn judged(page: &mut Page, report: &Report, doubts: &Faults, system: UnitSystem, colour: bool) {
+fn judged(page: &mut Page, report: &Report, review: &Review, system: UnitSystem, colour: bool) {
     let margins = report.margins_in(system);
     verdict_line(page, report, &margins, system);
     margin_table(page, &margins, system);
@@ -93,9 +95,34 @@ fn judged(page: &mut Page, report: &Report, doubts: &Faults, system: UnitSystem,
     band_table(page, report, system);
     sentences(page, "limits", &report.limit_remarks);
     sentences(page, "warnings", &report.estimate.warnings);
-    if !doubts.faults.is_empty() {
-        page.heading(&format!("doubtful inputs: {}", doubts.faults.len()));
-        page.raw(&doubts.render(colour));
+    if is_not_searched(report) {
+        page.heading("within the bands");
+        page.wrapped("  ", "not searched: the typical values do not hold by themselves", Tone::Plain);
+    }
+    let open = review.open_doubts().count();
+    if open > 0 {
+        page.heading(&format!("doubtful inputs: {open}"));
+        page.raw(&review.render(colour));
+    }
+    accepted(page, review);
+}
+
+/// Whether there are bands that were left alone, because nothing in them can better the verdict.
+fn is_not_searched(report: &Report) -> bool {
+    report.bands.is_none() && inputs(&report.scenario).iter().any(|input| input.measure.band.is_wide())
+}
+
+fn accepted(page: &mut Page, review: &Review) {
+    let count = review.accepted().count();
+    if count == 0 {
+        return;
+    }
+    page.heading(&format!("doubts that the file accepts: {count}"));
+    for (doubt, why) in review.accepted() {
+        let ((line, _), _) = review.region(doubt);
+        let words = format!("{} at {} (line {line}): {}", doubt.id, doubt.path, doubt.fault.message);
+        page.wrapped("  ", &words, Tone::Plain);
+        page.wrapped("    why  ", why, Tone::Plain);
     }
 }
 
@@ -108,12 +135,13 @@ pub fn audit_json(audited: &Audited) -> String {
     object.insert("version".into(), json!(env!("CARGO_PKG_VERSION")));
     object.insert("cautions".into(), json!(CAUTIONS));
     match &audited.finding {
-        Finding::Judged(report, doubts) => {
+        Finding::Judged(report, review) => {
             object.insert("scenario_sha256".into(), json!(report.scenario_sha256));
             object.insert("faults".into(), json!([]));
-            object.insert("doubts".into(), json!(doubts.rows()));
+            object.insert("doubts".into(), json!(review.rows()));
             object.insert("margins".into(), report.margins.iter().map(|m| report_margin_object(report, m)).collect());
             object.insert("warnings".into(), json!(report.estimate.warnings));
+            object.insert("bands_searched".into(), json!(!is_not_searched(report)));
             if let Some(bands) = &report.bands {
                 object.insert("bands".into(), bands_object(bands));
             }
@@ -128,22 +156,8 @@ pub fn audit_json(audited: &Audited) -> String {
     print(&Value::Object(object), Layout::OneLine)
 }
 
-/// The verdicts of an audit in the order in which they are counted.
-const COUNTED: &[&str] = &["holds", "thin", "open", "short", "refused", "unreadable", "not computed"];
-
-/// The last line of an audit: `3 files: 1 holds, 1 short, 1 refused`.
+/// The last line of JSON after Ctrl-C: the lines before are a part only.
 #[must_use]
-pub fn tally(verdicts: &[&str]) -> String {
-    let parts: Vec<String> = COUNTED
-        .iter()
-        .map(|word| (word, verdicts.iter().filter(|v| *v == word).count()))
-        .filter(|(_, count)| *count > 0)
-        .map(|(word, count)| format!("{count} {word}"))
-        .collect();
-    let files = if verdicts.len() == 1 { "file" } else { "files" };
-    format!(
-        "{} {files}: {}",
-        verdicts.len(),
-        if parts.is_empty() { "none judged".to_owned() } else { parts.join(", ") }
-    )
+pub fn interrupted_json(files: usize, of: usize) -> String {
+    print(&json!({ "interrupted": true, "files": files, "of": of, "cautions": CAUTIONS }), Layout::OneLine)
 }

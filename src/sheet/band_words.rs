@@ -17,6 +17,13 @@ pub fn bands_sentence(bands: &ReportBands) -> String {
     let failed = if failed > 0 { format!("; {failed} runs failed and count as open") } else { String::new() };
     let partial = if bands.study.is_partial() { "STOPPED EARLY, a part only: " } else { "" };
     let asked = if spread.is_partial() { format!(" of {} asked for", spread.asked) } else { String::new() };
+    if spread.asked == 0 {
+        return format!(
+            "{partial}worst found in {} runs ({corners}, and inside); no sample was drawn, `underfoot spread` tells how \
+             often a check falls short{failed}",
+            found.runs
+        );
+    }
     format!(
         "{partial}worst found in {} runs ({corners}, and inside); share short of {} samples{asked}, seed {}, with the \
          95 % Wilson interval; the inputs are taken as independent{failed}",

@@ -2,7 +2,7 @@
 use super::Report;
 use crate::margin::{Cause, Check, CheckKind, Margin, Verdict, governing_first, worst};
 use crate::quantity::{Measure, UnitSystem};
-use crate::study::{Bands, Evaluator, Place, Sampling, Share, StudyError, Watch, Worst, bands};
+use crate::study::{Bands, Evaluator, Place, Sampling, Share, StudyError, Watch, Worst, bands, worst_only};
 
 /// A wide input at the worst found of a check.
 #[derive(Clone, Debug, PartialEq)]
@@ -56,6 +56,14 @@ pub struct ReportBands {
 /// See [`bands`].
 pub fn report_bands(report: &Report, watch: &Watch<'_>) -> Result<Option<Bands>, StudyError> {
     bands(&Evaluator::new(&report.scenario)?, Sampling::of(&report.scenario), watch)
+}
+
+/// As [`report_bands`], without the sample: the joint verdict and nothing of how often.
+///
+/// # Errors
+/// See [`worst_only`].
+pub fn report_worst(report: &Report, watch: &Watch<'_>) -> Result<Option<Bands>, StudyError> {
+    worst_only(&Evaluator::new(&report.scenario)?, watch)
 }
 
 /// A check with all that is said of it: by what it is ordered, its typical numbers with the joint verdict, its bands.

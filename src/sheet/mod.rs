@@ -1,5 +1,6 @@
 //! Results to bytes: text, JSON, CSV and SVG. Pure functions.
 mod audit;
+mod audit_table;
 mod band_words;
 mod bands;
 mod calculation;
@@ -14,6 +15,7 @@ mod page;
 mod places;
 mod remedy;
 mod report;
+mod sarif;
 mod spread;
 mod spread_data;
 mod text;
@@ -26,11 +28,12 @@ mod walk_words;
 mod words;
 mod working;
 
-pub use audit::{Audited, Finding, audit_head, audit_json, audit_text, tally};
+pub use audit::{Audited, Finding, audit_head, audit_json, audit_text, interrupted_json};
+pub use audit_table::{AuditTable, FINDING_RULES, MOST_LISTED, MOST_ROWS, Summary, audit_rules, explain_text};
 pub use band_words::{
     bands_object, bands_sentence, place_word, place_words, report_margin_object, share_object, share_words, worst_words,
 };
-pub use bands::{InputAt, MarginBand, ReportBands, report_bands};
+pub use bands::{InputAt, MarginBand, ReportBands, report_bands, report_worst};
 pub use calculation::*;
 pub use caution::{CAUTION_LINE, CAUTIONS, EQUIPMENT_CAUTIONS, LEFT_OUT};
 pub use compare::{compare_object, compare_text, comparison};
@@ -41,6 +44,7 @@ pub use limits::{limits_json, limits_text};
 pub use page::{Paint, clean};
 pub use remedy::{REMEDY_CAUTION, remedy_object, remedy_text};
 pub use report::{Report, ReportError, report, sha256_hex};
+pub use sarif::{file_uri, sarif_close, sarif_open, sarif_results};
 pub use spread::{NO_BAND, SpreadSheet, spread_text};
 pub use spread_data::{spread_csv, spread_object};
 pub use text::text;

@@ -66,3 +66,15 @@ pub fn bands(evaluator: &Evaluator, sampling: Sampling, watch: &Watch<'_>) -> Re
     };
     Ok(Some(Bands { found, spread }))
 }
+
+/// Searches all wide bands for the worst found and draws no sample; none where no input is wide. `watch` may break off.
+///
+/// # Errors
+/// See [`worst_found`].
+pub fn worst_only(evaluator: &Evaluator, watch: &Watch<'_>) -> Result<Option<Bands>, StudyError> {
+    if evaluator.wide().is_empty() {
+        return Ok(None);
+    }
+    let found = worst_found(evaluator, watch)?;
+    Ok(Some(Bands { found, spread: Spread::empty(0, USUAL_SEED) }))
+}

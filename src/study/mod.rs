@@ -22,7 +22,7 @@ mod worst;
 mod zero;
 
 pub use band::{NORMAL_WIDTH, Quantile};
-pub use bands::{Bands, MOST_SAMPLES, Sampling, USUAL_SAMPLES, USUAL_SEED, bands};
+pub use bands::{Bands, MOST_SAMPLES, Sampling, USUAL_SAMPLES, USUAL_SEED, bands, worst_only};
 pub use compare::{Comparison, InputChange, NumberChange, SAME_SHARE, Side, VerdictChange, compare};
 pub use evaluate::{Evaluator, Failure, Run, StudyError};
 pub use field::{Axis, Cell, Edge, Field, MOST_STEPS, Of, Piece, field, zero_line};

@@ -30,7 +30,9 @@ pub fn section(report: &Report, text: &str) -> Section {
     let own = report.scenario.limits.own.iter().map(|limit| (format!("limits.{}", limit.key), limit.value));
     let numeric: Vec<(String, Measure)> =
         inputs(&report.scenario).into_iter().map(|input| (input.path, input.measure)).chain(own).collect();
-    let counts = [("obstacle", report.scenario.obstacles.len()), ("face", report.scenario.faces.len())];
+    let scenario = &report.scenario;
+    let counts =
+        [("obstacle", scenario.obstacles.len()), ("face", scenario.faces.len()), ("accept", scenario.accepted.len())];
     let fields: Vec<(String, &Field)> = FIELDS.iter().flat_map(|f| concrete(f, &counts)).collect();
     let source = Source { text, places: &found };
     let stated = fields.iter().filter_map(|(path, field)| source.row(path, field, &numeric)).collect();
