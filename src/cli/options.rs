@@ -45,7 +45,7 @@ pub enum Command {
     /// Print the estimate and its margins
     #[command(before_help = CAUTION_LINE)]
     Run(RunArgs),
-    /// Review files, folders and patterns: faults, doubts, margins, one verdict a file; a gate by its exit code
+    /// Review files, folders and patterns: one verdict a file, a gate by its exit code
     #[command(before_help = CAUTION_LINE, after_help = AUDIT_CODES)]
     Audit(AuditArgs),
     /// Over the bands of the inputs: worst found, share that falls short, which input matters
@@ -54,13 +54,13 @@ pub enum Command {
     /// Run one input across a range, or two across a map: verdicts, and where they change
     #[command(before_help = CAUTION_LINE, after_help = VARY_CODES)]
     Vary(VaryArgs),
-    /// For each input alone, the nearest value at which every check holds: arithmetic, to be confirmed
+    /// For each input alone, the nearest value at which every check holds, to be confirmed
     #[command(before_help = CAUTION_LINE, after_help = REMEDY_CODES)]
     Remedy(RemedyArgs),
     /// Tell what differs between two files: inputs, numbers, verdicts
     #[command(before_help = CAUTION_LINE, after_help = COMPARE_CODES)]
     Compare(CompareArgs),
-    /// Write the calculation sheet of a file: every step with its numbers, for whoever reviews and signs
+    /// Write the calculation sheet: every step with its numbers, for whoever signs
     #[command(before_help = CAUTION_LINE, after_help = EXIT_CODES)]
     Sheet(SheetArgs),
     /// Lead a crew through a scenario: play a walk-through file stop by stop
