@@ -151,7 +151,16 @@ fn the_bands_are_searched_where_the_typical_values_hold_and_no_sample_is_drawn()
     assert_eq!(lines[0]["bands"]["sample"]["samples"], 0);
     assert_eq!((&lines[1]["verdict"], &lines[1]["bands_searched"]), (&"short".into(), &false.into()));
     assert!(lines[1]["bands"].is_null());
-    assert!(folder.audit(&["short.toml"]).out.contains("not searched: the typical values do not hold"));
+    for (line, searched) in lines.iter().zip([true, false]) {
+        let margins = line["margins"].as_array().unwrap();
+        assert!(!margins.is_empty() && margins.iter().all(|margin| margin["bands_searched"] == searched), "{line}");
+    }
+    assert!(
+        folder
+            .audit(&["short.toml"])
+            .out
+            .contains("the bands were not searched: the typical values do not hold, or cannot be judged")
+    );
     assert!(folder.audit(&["thin.toml"]).out.contains("no sample was drawn"));
 }
 

@@ -188,6 +188,14 @@ fn a_search_that_is_broken_off_leaves_open_what_it_has_not_found_short() {
     assert!(words.contains("STOPPED EARLY"), "{words}");
 }
 
+#[test]
+fn where_no_band_changes_a_check_its_row_names_no_place() {
+    let run = assert_cmd::cargo::cargo_bin_cmd!("underfoot").args(["run", "scenarios/roof-foot-level.toml"]).output();
+    let words = String::from_utf8(run.unwrap().stdout).unwrap();
+    assert!(words.contains("\n      no band changes it") && !words.contains("at  no band"), "{words}");
+    assert!(words.contains("\n      at  "), "{words}");
+}
+
 /// Scenarios that are thin on purpose; every other one keeps the verdict of its typical values.
 const THIN: &[&str] = &["step-transfer"];
 

@@ -111,7 +111,7 @@ fn a_collar_falling_on_a_steel_bar_strains_it_as_published() {
     assert_printed("1.25", outcome.arrest_distance_m * 1e3);
 }
 
-// Elastic cord exercise [P], last digits [D].
+// A person on an elastic cord, g 9.8 [P]: 61 kg on 25 m of 160 N/m, 53 kg on 13 m stopped at 35 m; last digits [D].
 #[test]
 fn a_person_on_an_elastic_cord_stops_where_published() {
     let outcome = arrest(&Case { gravity: 9.8, ..Case::on(61.0, 25.0, Part::spring(160.0)) });

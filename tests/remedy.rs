@@ -287,6 +287,22 @@ fn what_already_holds_gets_no_remedy() {
 }
 
 #[test]
+fn a_thin_file_that_holds_typically_is_told_that_its_bands_were_not_searched() {
+    let folder = tempfile::tempdir().unwrap();
+    let file = folder.path().join("thin.toml").display().to_string();
+    fs::write(&file, banded(5.6, 1.7).text()).unwrap();
+    let run = cargo_bin_cmd!("underfoot").args(["remedy", &file]).assert().code(0);
+    let text = one_line(&String::from_utf8_lossy(&run.get_output().stdout));
+    for words in ["o holds", "the bands were not searched, `--worst` does", "their bands play no part"] {
+        assert!(text.contains(words), "{words}: {text}");
+    }
+    let run = cargo_bin_cmd!("underfoot").args(["remedy", &file, "--json"]).assert().code(0);
+    let object: serde_json::Value = serde_json::from_slice(&run.get_output().stdout).unwrap();
+    assert_eq!((&object["held_at"], &object["bands_searched"]), (&"typical".into(), &false.into()));
+    assert!(object["today"].as_str().unwrap().contains("the bands were not searched"), "{object}");
+}
+
+#[test]
 fn an_input_that_cannot_mend_it_is_told_as_none() {
     cargo_bin_cmd!("underfoot").args(["remedy", SHORT]).assert().code(1).stdout(
         predicate::str::contains("none within its range")

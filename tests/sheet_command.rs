@@ -35,6 +35,24 @@ fn the_ending_says_what_is_written_and_the_exit_code_tells_the_verdict() {
 }
 
 #[test]
+fn a_thin_sheet_tells_the_worst_found_and_that_remedies_are_of_typical_values() {
+    let folder = tempfile::tempdir().unwrap();
+    let out = folder.path().join("a.md");
+    let (code, _, stderr) = sheet(&["scenarios/step-transfer.toml", "--remedies", "-o", out.to_str().unwrap()]);
+    assert!(code == Some(1) && stderr.contains("thin"), "{code:?} {stderr}");
+    let text = fs::read_to_string(&out).unwrap();
+    let part = |head: &str| {
+        let after = text.split_once(head).unwrap().1;
+        after.split("\n## ").next().unwrap().to_owned()
+    };
+    assert!(part("Verdict\n").contains("; at the worst found "), "{}", part("Verdict\n"));
+    let remedies = part("Nearest values at which every check holds\n");
+    for words in ["Within the bands that is not so, the verdict is thin", "Spread and ranking", "remedy --worst"] {
+        assert!(remedies.contains(words), "{words}: {remedies}");
+    }
+}
+
+#[test]
 fn a_sheet_goes_to_a_file_with_an_ending_that_is_known() {
     let folder = tempfile::tempdir().unwrap();
     let odd = folder.path().join("a.pdf");

@@ -55,6 +55,7 @@ fn the_table_is_printed_with_caution_and_crossings() {
         .code(1)
         .stdout(
             predicate::str::contains("FIRST-PASS ESTIMATE")
+                .and(predicate::str::contains("bands play no part"))
                 .and(predicate::str::contains("through zero margin"))
                 .and(predicate::str::contains("clearance ground"))
                 .and(predicate::str::is_match(r"(?i)\bsafe\b").unwrap().not()),
@@ -69,6 +70,7 @@ fn csv_holds_every_row_and_the_caution_once() {
         .unwrap();
     let text = String::from_utf8(run.stdout).unwrap();
     assert_eq!(text.matches("FIRST-PASS ESTIMATE").count(), 1);
+    assert_eq!(text.matches("Every row is one run with all other inputs at their typical values").count(), 1);
     // At 1 m the line does not reach from the anchor to the attachment; that row is told and not left out.
     assert_eq!(text.matches(",arrest_force_peak,").count(), 3);
     assert_eq!(text.matches("\nfailed,line.length,1,the line of ").count(), 1, "{text}");
@@ -149,6 +151,8 @@ fn the_json_of_one_input_has_rows_numbers_and_crossings() {
     let value: serde_json::Value = serde_json::from_str(&text).unwrap();
     let rows = value["rows"].as_array().unwrap();
     assert_eq!(rows.len(), 4);
+    let cautions = value["cautions"].as_array().unwrap();
+    assert!(cautions.iter().any(|words| words.as_str().unwrap().starts_with("Every row is one run")));
     assert!(rows[0]["failed"].as_str().unwrap().contains("shorter than"));
     assert_eq!(rows[1]["numbers"]["arrest_force_peak"]["unit"], "N");
     assert!(rows[1]["margins"].as_array().unwrap().iter().all(|margin| margin["id"].is_string()));
@@ -171,6 +175,7 @@ fn figures_are_the_same_bytes_each_time_and_carry_caution_and_alternative() {
         assert_eq!(text, vary_text(more));
         assert!(text.starts_with("<svg ") && text.trim_end().ends_with("</svg>"));
         let desc = text.split_once("<desc").unwrap().1.split_once("</desc>").unwrap().0;
+        assert_eq!(text.matches("bands play no part in it").count(), 2, "in the alternative and to be seen");
         assert!(desc.contains("FIRST-PASS ESTIMATE") && desc.contains(SHORT), "{desc}");
         assert!(text.contains(r#"role="img""#) && text.contains("prefers-color-scheme: dark"));
         assert!(text.matches("FIRST-PASS ESTIMATE").count() >= 2, "also to be seen");

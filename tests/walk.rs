@@ -213,7 +213,11 @@ fn with_bands_the_verdict_is_that_of_the_worst_found_and_numbers_are_called_typi
     let walk = "[[stop]]\nsay = \"Heavier people.\"\n";
     let (code, text, _) = Folder::of(&scenario, walk).run(&["walk", "fall.walk.toml"]);
     assert_eq!(code, 1);
-    assert!(text.contains("o holds at typical values") && text.contains("~ THIN"), "{text}");
+    assert!(!text.contains("  verdict     "), "{text}");
+    let lines: Vec<&str> = text.lines().collect();
+    let typical = lines.iter().rposition(|line| line.starts_with("  typical     o holds")).unwrap();
+    let after: Vec<&&str> = lines[typical + 1..].iter().filter(|line| !line.starts_with("   ")).collect();
+    assert!(after[0].starts_with("~ THIN  "), "the last line is the verdict: {text}");
 }
 
 #[test]

@@ -16,7 +16,7 @@ pub struct Estimate {
     pub assumptions: Vec<String>,
     /// Sentences: what the reader must know about these numbers.
     pub warnings: Vec<String>,
-    /// The event log in order of time: the first dozen and the last; the trace has all.
+    /// The event log in order of time: what counts by itself, the earliest others up to a dozen, how many more, the end.
     pub events: Vec<Event>,
     /// The motion.
     pub trace: Trace,

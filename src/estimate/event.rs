@@ -38,6 +38,9 @@ pub enum EventKind {
     SpanStops,
     /// The absorber in line with a lifeline is locked at its stroke.
     SpanUsedUp,
+    /// So many more times, two or more, the line comes taut or goes slack or an absorber starts or stops, which are not listed one by
+    /// one; at the time of the end.
+    NotListed(usize),
 }
 
 /// One line of the log. Values SI; the words are the same in text, JSON and on the screen.
@@ -86,6 +89,7 @@ impl Event {
             EventKind::SpanStarts => format!("lifeline absorber starts, line force {force}"),
             EventKind::SpanStops => format!("lifeline absorber stops, {} below taut", length(self.travel_m)),
             EventKind::SpanUsedUp => format!("lifeline absorber's stroke used up, line force {force}"),
+            EventKind::NotListed(more) => format!("{more} more times taut, slack or giving, not listed"),
             EventKind::TimeLimit => "still moving at the time limit".to_owned(),
         }
     }

@@ -3,8 +3,8 @@ use super::setup::Setup;
 use super::{Event, EventKind};
 use crate::arrest::{Ended, Happening, Instant, Outcome};
 
-/// Events kept from the start of the log; the end of the motion is always kept.
-const KEPT: usize = 12;
+/// Events listed before the end, where those that are always listed leave room for others.
+const LISTED: usize = 12;
 
 /// What the fall does, in order of time.
 pub fn events(setup: &Setup, outcome: &Outcome) -> Vec<Event> {
@@ -27,12 +27,39 @@ pub fn events(setup: &Setup, outcome: &Outcome) -> Vec<Event> {
     in_order(events, end)
 }
 
-/// The first dozen events in order of time, and the end of the motion.
+/// The events in order of time and the end of the motion: every one that counts by itself, then the earliest others up to
+/// a dozen; how many more there are stands before the end, unless the one that is left would take no more room.
 pub fn in_order(mut events: Vec<Event>, end: Event) -> Vec<Event> {
     events.sort_by(|a, b| a.time_s.total_cmp(&b.time_s));
-    events.truncate(KEPT);
-    events.push(end);
-    events
+    let always: Vec<bool> = (0..events.len()).map(|place| is_always_listed(&events, place)).collect();
+    let others = always.iter().filter(|always| !**always).count();
+    let room = LISTED.saturating_sub(events.len() - others);
+    let left_out = if others > room + 1 { others - room } else { 0 };
+    let mut still = others - left_out;
+    let mut listed = Vec::new();
+    for (event, always) in events.into_iter().zip(always) {
+        if always || still > 0 {
+            still -= usize::from(!always);
+            listed.push(event);
+        }
+    }
+    if left_out > 0 {
+        listed.push(Event { kind: EventKind::NotListed(left_out), ..end.clone() });
+    }
+    listed.push(end);
+    listed
+}
+
+/// Whether the event at `place` stands for itself: all but the repeated changes of mode do.
+fn is_always_listed(events: &[Event], place: usize) -> bool {
+    let Some(event) = events.get(place) else { return false };
+    match event.kind {
+        EventKind::Taut | EventKind::DeploymentStart | EventKind::SpanStarts => {
+            !events.iter().take(place).any(|earlier| earlier.kind == event.kind)
+        }
+        EventKind::Slack | EventKind::DeploymentEnd | EventKind::SpanStops => false,
+        _ => true,
+    }
 }
 
 /// The changes of mode as events; the first deployment starts at the onset force.

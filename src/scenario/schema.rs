@@ -26,7 +26,10 @@ pub fn schema() -> Value {
     object.insert("title".into(), json!("underfoot scenario"));
     object.insert(
         "description".into(),
-        json!("who falls, from where, on what, and what must not be touched; a first-pass estimate, not a design"),
+        json!(
+            "who falls, from where, on what, and what must not be touched; a first-pass estimate, not a design; local code \
+             and a licensed or competent person decide; plan the rescue first"
+        ),
     );
     if let Some(keys) = root.as_object_mut() {
         object.append(keys);

@@ -1,12 +1,12 @@
 //! What a reviewer is told about one file after the other.
-use super::band_words::{band_table, bands_object, report_margin_object};
+use super::band_words::{band_table, bands_object, has_bands, report_margin_object};
 use super::json::{Layout, print};
 use super::page::{Page, Paint, Tone};
 use super::text::{margin_table, sentences, verdict_line};
 use super::{CAUTION_LINE, CAUTIONS, Report};
-use crate::margin::Verdict;
+use crate::margin::{Margin, Verdict};
 use crate::quantity::UnitSystem;
-use crate::scenario::{Faults, Review, inputs};
+use crate::scenario::{Faults, Review};
 use serde_json::{Map, Value, json};
 
 /// What became of one file.
@@ -82,10 +82,16 @@ fn refusal(page: &mut Page, audited: &Audited, why: &str) {
     page.wrapped(&lead, why, Tone::Verdict(Verdict::Short));
 }
 
+/// Why the bands of a file were left alone.
+const NOT_SEARCHED: &str = "the bands were not searched: the typical values do not hold, or cannot be judged";
+
 fn judged(page: &mut Page, report: &Report, review: &Review, system: UnitSystem, colour: bool) {
     let margins = report.margins_in(system);
     verdict_line(page, report, &margins, system);
     margin_table(page, &margins, system);
+    if is_not_searched(report) {
+        page.wrapped("  ", NOT_SEARCHED, Tone::Caution);
+    }
     for margin in &margins {
         page.wrapped("    ", &format!("{}: {}", margin.label, margin.basis.words), Tone::Faint);
         if let Some(note) = &margin.note {
@@ -95,10 +101,6 @@ fn judged(page: &mut Page, report: &Report, review: &Review, system: UnitSystem,
     band_table(page, report, system);
     sentences(page, "limits", &report.limit_remarks);
     sentences(page, "warnings", &report.estimate.warnings);
-    if is_not_searched(report) {
-        page.heading("within the bands");
-        page.wrapped("  ", "not searched: the typical values do not hold by themselves", Tone::Plain);
-    }
     let open = review.open_doubts().count();
     if open > 0 {
         page.heading(&format!("doubtful inputs: {open}"));
@@ -109,7 +111,14 @@ fn judged(page: &mut Page, report: &Report, review: &Review, system: UnitSystem,
 
 /// Whether there are bands that were left alone, because nothing in them can better the verdict.
 fn is_not_searched(report: &Report) -> bool {
-    report.bands.is_none() && inputs(&report.scenario).iter().any(|input| input.measure.band.is_wide())
+    report.bands.is_none() && has_bands(report)
+}
+
+/// A margin, which says for itself whether the bands played a part.
+fn margin_object(report: &Report, margin: &Margin) -> Value {
+    let mut object = report_margin_object(report, margin);
+    object["bands_searched"] = json!(!is_not_searched(report));
+    object
 }
 
 fn accepted(page: &mut Page, review: &Review) {
@@ -139,7 +148,7 @@ pub fn audit_json(audited: &Audited) -> String {
             object.insert("scenario_sha256".into(), json!(report.scenario_sha256));
             object.insert("faults".into(), json!([]));
             object.insert("doubts".into(), json!(review.rows()));
-            object.insert("margins".into(), report.margins.iter().map(|m| report_margin_object(report, m)).collect());
+            object.insert("margins".into(), report.margins.iter().map(|m| margin_object(report, m)).collect());
             object.insert("warnings".into(), json!(report.estimate.warnings));
             object.insert("bands_searched".into(), json!(!is_not_searched(report)));
             if let Some(bands) = &report.bands {

@@ -5,6 +5,7 @@ use super::words::{margin_value, signed};
 use super::{InputAt, MarginBand, Report, ReportBands};
 use crate::margin::{Margin, Verdict};
 use crate::quantity::{UnitSystem, format_si};
+use crate::scenario::inputs;
 use crate::study::{Place, Share};
 use serde_json::{Value, json};
 
@@ -43,12 +44,20 @@ pub fn worst_words(report: &Report, margin: &Margin, system: UnitSystem) -> Opti
     Some(format!("at the worst found {amount} {word} ({})", place_words(band, system)))
 }
 
+/// Stands for the place where no input has a part in it.
+const UNMOVED: &str = "no band changes it";
+
+/// Whether any input of the file is a wide band.
+pub(super) fn has_bands(report: &Report) -> bool {
+    inputs(&report.scenario).iter().any(|input| input.measure.band.is_wide())
+}
+
 /// Which inputs are at which end.
 #[must_use]
 pub fn place_words(band: &MarginBand, system: UnitSystem) -> String {
     let moved: Vec<String> =
         band.inputs.iter().filter(|i| i.place != Place::Anywhere).map(|i| input_words(i, system)).collect();
-    if moved.is_empty() { "no band changes it".to_owned() } else { moved.join(", ") }
+    if moved.is_empty() { UNMOVED.to_owned() } else { moved.join(", ") }
 }
 
 fn input_words(input: &InputAt, system: UnitSystem) -> String {
@@ -90,7 +99,9 @@ pub(super) fn band_table(page: &mut Page, report: &Report, system: UnitSystem) {
         } else {
             String::new()
         };
-        page.wrapped("      at  ", &format!("{}{place}{open}", place_words(band, system)), Tone::Faint);
+        let words = place_words(band, system);
+        let lead = if words == UNMOVED { "      " } else { "      at  " };
+        page.wrapped(lead, &format!("{words}{place}{open}"), Tone::Faint);
     }
 }
 

@@ -48,7 +48,7 @@ pub use sarif::{file_uri, sarif_close, sarif_open, sarif_results};
 pub use spread::{NO_BAND, SpreadSheet, spread_text};
 pub use spread_data::{spread_csv, spread_object};
 pub use text::text;
-pub use vary::{vary_csv, vary_text};
+pub use vary::{ROW_CAUTION, vary_csv, vary_text};
 pub use vary_json::{field_object, vary_object};
 pub use vary_svg::{field_svg, vary_svg};
 pub use walk::{WalkRun, Walked, walk_object, walk_text};

@@ -1,4 +1,5 @@
 //! The nearest changes at which every check holds, as text and JSON.
+use super::band_words::has_bands;
 use super::page::{Page, Paint, Tone, pad};
 use super::{CAUTION_LINE, CAUTIONS, Report};
 use crate::margin::Verdict;
@@ -13,6 +14,11 @@ pub const REMEDY_CAUTION: &str = "This is arithmetic on the inputs of one file, 
 
 /// What stands behind a value at the typical values.
 const TYPICAL_WORDS: &str = "All other inputs at their typical values: their bands play no part; ask for `--worst`.";
+/// What stands behind the verdict of today, where no change is worked out.
+const TODAY_TYPICAL: &str = "All inputs at their typical values: their bands play no part; ask for `--worst`.";
+/// The same at the worst.
+const TODAY_WORST: &str = "All inputs anywhere in their bands: the worst found there, by the search over the bands that \
+     `run` makes.";
 /// What stands behind a value at the worst.
 const WORST_WORDS: &str = "All other inputs anywhere in their bands: every check holds at the worst found there, by the \
      search over the bands that `run` makes, done anew with the changed value. That value counts as exact: a band of its \
@@ -45,13 +51,13 @@ pub fn remedy_text(report: &Report, found: &Remedies, system: Option<UnitSystem>
     page.gap();
     page.wrapped("file   ", &report.file, Tone::Plain);
     let lead = format!("{} {}  ", found.today.symbol(), found.today.word());
-    page.wrapped(&lead, &today_words(found), Tone::Verdict(found.today));
+    page.wrapped(&lead, &today_words(report, found), Tone::Verdict(found.today));
     if found.partial {
         page.wrapped("       ", "PARTIAL: stopped before every input was searched", Tone::Caution);
     }
+    page.gap();
+    page.wrapped("  ", held_words(found), Tone::Plain);
     if found.today != Verdict::Holds {
-        page.gap();
-        page.wrapped("  ", held_words(found), Tone::Plain);
         page.wrapped("  ", &rule(found, system), Tone::Plain);
         page.heading("one input alone");
         found.list.iter().for_each(|remedy| remedy_line(&mut page, remedy, found, system));
@@ -66,21 +72,26 @@ pub fn remedy_text(report: &Report, found: &Remedies, system: Option<UnitSystem>
     page.finish()
 }
 
-fn today_words(found: &Remedies) -> String {
+fn today_words(report: &Report, found: &Remedies) -> String {
     let at = match found.wanted.held {
         Held::Typical => "at today's typical values",
         Held::Worst => "today, at the worst found in the bands",
     };
     match found.today {
+        Verdict::Holds if found.wanted.held == Held::Typical && has_bands(report) => {
+            format!("every check holds {at}: no change is worked out; the bands were not searched, `--worst` does")
+        }
         Verdict::Holds => format!("every check holds {at}: no change is worked out"),
         _ => format!("{at}; each line below is one change after which every check holds"),
     }
 }
 
 const fn held_words(found: &Remedies) -> &'static str {
-    match found.wanted.held {
-        Held::Typical => TYPICAL_WORDS,
-        Held::Worst => WORST_WORDS,
+    match (found.wanted.held, found.today) {
+        (Held::Typical, Verdict::Holds) => TODAY_TYPICAL,
+        (Held::Worst, Verdict::Holds) => TODAY_WORST,
+        (Held::Typical, _) => TYPICAL_WORDS,
+        (Held::Worst, _) => WORST_WORDS,
     }
 }
 
@@ -180,6 +191,8 @@ pub fn remedy_object(report: &Report, found: &Remedies) -> Value {
             Held::Typical => "typical",
             Held::Worst => "worst",
         },
+        "bands_searched": found.wanted.held == Held::Worst,
+        "today": today_words(report, found),
         "meaning": held_words(found),
         "ranking": rule(found, None),
         "partial": found.partial,

@@ -14,6 +14,10 @@ const COLUMNS: [(&str, &str); 4] = [
     ("deployed_length", "deployed"),
 ];
 
+/// What a row of verdicts is and is not.
+pub const ROW_CAUTION: &str = "Every row is one run with all other inputs at their typical values: bands play no part in \
+     it, so no row is `thin`.";
+
 /// The table and the changes of verdict as text.
 #[must_use]
 pub fn vary_text(
@@ -30,6 +34,7 @@ pub fn vary_text(
     page.wrapped("file   ", &report.file, Tone::Plain);
     let today = format_unit(input.measure.si(), input.measure.unit);
     page.wrapped("over   ", &format!("{} ({}), {today} in the file", input.path, input.field.label), Tone::Plain);
+    page.wrapped("       ", ROW_CAUTION, Tone::Plain);
     page.gap();
     let heads: String = COLUMNS.iter().map(|(_, head)| pad_left(head, 14)).collect();
     page.line(&format!("{}{heads}  governing check", pad_left("value", 14)), Tone::Heading);
@@ -102,7 +107,8 @@ pub fn vary_csv(evaluator: &Evaluator, found: &Variation) -> Result<String, csv:
     let mut writer = csv::Writer::from_writer(Vec::new());
     writer.write_record(["row", "input", "value_si", "name", "number_si", "verdict", "caution"])?;
     let path = evaluator.inputs().get(found.input).map_or("", |input| input.path.as_str());
-    let mut caution = CAUTION_LINE;
+    let words = format!("{CAUTION_LINE} {ROW_CAUTION}");
+    let mut caution = words.as_str();
     let mut line = |row: &str, value: f64, name: &str, number: String, verdict: Option<Verdict>| {
         let word = verdict.map_or("", Verdict::word);
         let record = [row, path, &value.to_string(), name, &number, word, std::mem::take(&mut caution)];

@@ -1,6 +1,7 @@
 //! One input across a range, and a map of two, as JSON in SI units.
 use super::field::{MAP_CAUTION, Map};
 use super::json::si_unit;
+use super::vary::ROW_CAUTION;
 use super::{CAUTIONS, Report};
 use crate::estimate::Value as NumberValue;
 use crate::margin::{Check, CheckKind, Verdict, governing_first, worst};
@@ -22,7 +23,7 @@ fn head(report: &Report, more: &[&str]) -> Value {
 /// The values of one input with every number and every check, and where verdicts change.
 #[must_use]
 pub fn vary_object(report: &Report, evaluator: &Evaluator, found: &Variation) -> Value {
-    let mut object = head(report, &[]);
+    let mut object = head(report, &[ROW_CAUTION]);
     object["over"] = input_object(evaluator, found.input);
     object["rows"] = found.rows.iter().map(|row| row_object(evaluator, row)).collect();
     object["crossings"] = found.crossings.iter().map(|at| crossing_object(evaluator, found, at)).collect();

@@ -2,6 +2,7 @@
 use super::Report;
 use super::drawing::{Drawing, FRAME, Scale, With, px};
 use super::field::{MAP_CAUTION, Map};
+use super::vary::ROW_CAUTION;
 use crate::margin::{Check, CheckKind, Verdict, worst};
 use crate::quantity::{UnitSystem, display_unit, format_si};
 use crate::study::{Axis, Evaluator, Field, Variation};
@@ -173,7 +174,8 @@ fn vary_alternative(report: &Report, evaluator: &Evaluator, found: &Variation, s
     let changes = if changes.is_empty() { "nowhere".to_owned() } else { changes.join("; ") };
     let ends = [found.rows.first(), found.rows.last()].map(|row| row.map_or(String::new(), |row| shown(row.value)));
     format!(
-        "Room of every check of {} over {} from {} to {}, {} in the file. Verdicts change: {changes}.",
+        "Room of every check of {} over {} from {} to {}, {} in the file. Verdicts change: {changes}. \
+         {ROW_CAUTION}",
         report.file,
         input.path,
         ends[0],
@@ -256,7 +258,7 @@ fn vary_legend(drawing: &mut Drawing, report: &Report, evaluator: &Evaluator, fo
     drawing.text("small", (FRAME[0] + 302.0, y + 44.0), &format!("the file: {}", report.verdict.word()));
     drawing.path("change", &format!("M{} {}h26", px(FRAME[0] + 400.0), px(y + 40.0)));
     drawing.text("small", (FRAME[0] + 432.0, y + 44.0), "where a verdict changes (refined)");
-    let words = "At the typical values of all other inputs; room beyond the limit itself, either way, is cut.";
-    drawing.text("small faint", (FRAME[0], y + 66.0), words);
-    drawing.text("small faint", (FRAME[0], y + 84.0), &report.file);
+    drawing.text("small faint", (FRAME[0], y + 66.0), ROW_CAUTION);
+    let words = format!("Room beyond the limit itself, either way, is cut. {}", report.file);
+    drawing.text("small faint", (FRAME[0], y + 84.0), &words);
 }

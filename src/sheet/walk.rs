@@ -115,9 +115,11 @@ fn run_lines(page: &mut Page, [before, own]: [Option<&WalkRun>; 2], system: Unit
         Some(WalkRun::Judged { typical, joint }) => {
             page.wrapped("  margin      ", &governing_step(before, typical, system), Tone::Plain);
             page.wrapped("  peak force  ", &peak_step(before, typical, system), Tone::Plain);
-            let at = if joint.bands.is_some() { " at typical values, as margin and force" } else { "" };
-            let words = format!("{}{at}", verdict_step(before, typical));
-            page.wrapped("  verdict     ", &words, Tone::Plain);
+            let (lead, as_well) = match joint.bands {
+                Some(_) => ("  typical     ", "; margin and force above are at typical values too"),
+                None => ("  verdict     ", ""),
+            };
+            page.wrapped(lead, &format!("{}{as_well}", verdict_step(before, typical)), Tone::Plain);
             verdict_line(page, joint, &joint.margins_in(system), system);
         }
         Some(WalkRun::Open(why)) => {

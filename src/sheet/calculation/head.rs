@@ -2,7 +2,7 @@
 use super::value::{Block, Cell, Column, Kind, Row, Section, Table, column};
 use crate::margin::Margin;
 use crate::quantity::UnitSystem;
-use crate::sheet::{CAUTION_LINE, CAUTIONS, LEFT_OUT, Report, governing_words};
+use crate::sheet::{CAUTION_LINE, CAUTIONS, LEFT_OUT, Report, governing_words, worst_words};
 
 const FACTS: &[Column] = &[column("name", "about", Kind::Name), column("words", "this sheet", Kind::Words)];
 
@@ -18,7 +18,10 @@ pub fn cautions(report: &Report) -> Section {
 
 /// The verdict with the check that governs, and what the sheet is about.
 pub fn verdict(report: &Report, margins: &[Margin], system: UnitSystem) -> Section {
-    let words = governing_words(&report.scenario, margins, system);
+    let mut words = governing_words(&report.scenario, margins, system);
+    if let Some(worst) = margins.first().and_then(|margin| worst_words(report, margin, system)) {
+        words = format!("{words}; {worst}");
+    }
     let counts = ["short", "open", "thin", "holds"].map(|word| {
         let count = margins.iter().filter(|margin| margin.verdict.word() == word).count();
         format!("{count} {word}")

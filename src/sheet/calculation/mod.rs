@@ -59,7 +59,7 @@ pub fn sheet(report: &Report, text: &str, options: &SheetOptions) -> Sheet {
         checks::section(report, &margins, system),
         studies::spread(report, options.ranking.as_ref(), system),
     ];
-    sections.extend(options.remedies.as_ref().map(studies::remedies));
+    sections.extend(options.remedies.as_ref().map(|found| studies::remedies(report, found)));
     sections.push(figures::section(report, &margins, system));
     sections.push(ledger::section(report, system));
     sections.push(head::reproduction(report, &options.command, seed));

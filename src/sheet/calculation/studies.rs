@@ -1,6 +1,6 @@
 //! What the bands do, which input matters, and the nearest values at which every check holds.
 use super::value::{Block, Cell, Column, Kind, Row, Section, Table, column};
-use crate::margin::Margin;
+use crate::margin::{Margin, Verdict};
 use crate::quantity::{UnitSystem, format_measure, format_si, format_unit};
 use crate::sheet::json::si_unit;
 use crate::sheet::words::{margin_value, signed};
@@ -139,15 +139,31 @@ fn bar_row(ranking: &Ranking, (path, band, bar): &(String, String, Bar), system:
 }
 
 /// The nearest values at which every check holds.
-pub fn remedies(found: &Remedies) -> Section {
+pub fn remedies(report: &Report, found: &Remedies) -> Section {
     let mut blocks = vec![Block::words(REMEDY_CAUTION)];
     if found.list.is_empty() {
-        blocks.push(Block::words("Every check holds at the typical values of today: no change is worked out."));
+        blocks.push(Block::words(&no_remedy_words(report)));
     } else {
+        blocks.push(Block::words(
+            "All other inputs at their typical values: their bands play no part in these values; `underfoot remedy --worst` \
+             works them out at the worst found in the bands.",
+        ));
         let rows = found.list.iter().map(remedy_row).collect();
         blocks.push(table("remedies", "one input changed alone, at typical values", REMEDIES, rows));
     }
     Section::new("remedies", "Nearest values at which every check holds", blocks)
+}
+
+fn no_remedy_words(report: &Report) -> String {
+    let typical = "Every check holds at the typical values of today: no change is worked out";
+    match report.verdict {
+        Verdict::Holds => format!("{typical}."),
+        word => format!(
+            "{typical}. Within the bands that is not so, the verdict is {}: see the section \"Spread and ranking\", and \
+             `underfoot remedy --worst` for changes at the worst found in the bands.",
+            word.word()
+        ),
+    }
 }
 
 fn remedy_row(remedy: &Remedy) -> Row {
