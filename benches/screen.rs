@@ -12,7 +12,7 @@ use std::time::{Duration, Instant};
 use underfoot::estimate::estimate;
 use underfoot::quantity::UnitSystem;
 use underfoot::scenario::Document;
-use underfoot::study::{MOST_POINTS, MOST_STEPS};
+use underfoot::study::{MOST_POINTS, MOST_STEPS, Sampling, USUAL_SEED};
 use underfoot::tui::arrival::Arrival;
 use underfoot::tui::choice::Entry;
 use underfoot::tui::message::{Effect, Message};
@@ -115,7 +115,8 @@ fn nudges_beside_studies(path: &Path) -> Option<(f64, f64)> {
     let mut model = open(path);
     let scenario = model.document.scenario().clone();
     let map = What::Map { paths: model.map_paths()?, steps: [MOST_STEPS; 2] };
-    let sample = model.has_bands().then_some(What::Spread { samples: MOST_POINTS });
+    let sample =
+        model.has_bands().then_some(What::Spread { sampling: Sampling { samples: MOST_POINTS, seed: USUAL_SEED } });
     let wanted: Vec<What> = sample.into_iter().chain([map]).collect();
     let keep_up = |desk: &mut Desk| {
         let running = desk.progress(Instant::now());

@@ -214,9 +214,9 @@ fn tick_labels_under_a_plot_never_touch() {
 #[test]
 fn levels_and_reserves_show_the_digits_of_sentences_and_parts_add_up_to_the_millimetre() {
     let rows = draw_scene(&roof(0.417, UnitSystem::Metric), 110, 40).join("\n");
-    for text in ["0.417 m clearance of 1.00 m", "13.50 m anchor", "1.800 m free fall"] {
+    for text in ["0.417 m clearance, 1.00 m wanted", "13.50 m anchor", "1.800 m free fall"] {
         assert!(rows.contains(text), "no `{text}` in\n{rows}");
     }
     let rows = draw_scene(&roof(0.80772, UnitSystem::Us), 110, 40).join("\n");
-    assert!(rows.contains("2.65 ft clearance of 3.28 ft"), "{rows}");
+    assert!(rows.contains("2.65 ft clearance, 3.28 ft wanted"), "{rows}");
 }

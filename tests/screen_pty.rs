@@ -253,7 +253,7 @@ fn a_running_sample_is_stopped_by_its_key_while_the_screen_answers_a_nudge() {
     let mut session = Session::screen(&path);
     session.wait_for("quit");
     session.press("8");
-    for count in ["16,384 samples", "65,536 samples"] {
+    for count in ["4,096 samples", "16,384 samples", "65,536 samples"] {
         session.wait_for(count);
         session.press("g");
     }

@@ -6,7 +6,7 @@ use crossterm::event::{KeyCode, KeyModifiers, MouseButton, MouseEventKind};
 use screen_support::{Bench, LOAD, ROOF};
 use std::time::Duration;
 use underfoot::margin::Verdict;
-use underfoot::study::Held;
+use underfoot::study::{Evaluator, Held, Sampling, bands, ranked, unwatched};
 use underfoot::tui::joint::Word;
 use underfoot::tui::layout::Panes;
 use underfoot::tui::message::{Effect, Message};
@@ -131,7 +131,7 @@ fn a_stopped_sample_answers_with_its_part() {
     key.join().unwrap();
     assert!(bench.model.shelf.spread().unwrap().spread.is_partial());
     let frame = bench.frame();
-    assert!(frame.contains(" of 16,384, stopped: a part"), "{frame}");
+    assert!(frame.contains(" of 4,096, stopped: a part"), "{frame}");
 }
 
 fn key(symbol: char) -> Message {
@@ -247,6 +247,68 @@ fn the_chosen_inputs_go_on_the_axes() {
     assert_ne!(up, "line.stiffness", "one input never stands on both axes");
     let mapped = bench.model.shelf.map().unwrap();
     assert_eq!(mapped.inputs[0].path, "line.stiffness", "the map follows the axes");
+}
+
+/// What the file states about its sample.
+const STATED: &str = "\n[study]\nsamples = 300\nseed = 7\n";
+
+#[test]
+fn the_sample_is_the_one_that_the_file_states_and_agrees_with_the_report() {
+    let text = format!("{BANDS}{STATED}");
+    let mut bench = Bench::of(&text, 140, 44);
+    assert_eq!(bench.model.bands().unwrap().study.spread.seed, 7, "before there is a sample");
+    bench.keys("8");
+    assert!(bench.frame().contains("300 samples, seed 7"), "{}", bench.frame());
+    let scenario = bench.model.document.scenario();
+    let evaluator = Evaluator::new(scenario).unwrap();
+    let report = bands(&evaluator, Sampling::of(scenario), &unwatched).unwrap().unwrap();
+    assert_eq!(bench.model.bands().unwrap().study, report);
+    let ranked = ranked(&evaluator, Sampling::of(scenario), &unwatched).unwrap();
+    let shown = &bench.model.shelf.ranking().unwrap().ranking;
+    assert!(shown.shares.is_some() && ranked.contains(shown), "{shown:?}");
+    bench.keys("g");
+    assert!(bench.frame().contains("1,200 samples, seed 7"), "{}", bench.frame());
+}
+
+#[test]
+fn a_key_that_would_do_nothing_is_not_offered() {
+    let line = |bench: &Bench| bench.frame().lines().last().unwrap_or_default().to_owned();
+    let mut without = Bench::of(LOAD, 140, 44);
+    without.keys("8");
+    assert!(!line(&without).contains("g go on"), "{}", line(&without));
+    without.keys("9");
+    assert!(!line(&without).contains("i into inputs") && !line(&without).contains("h at"), "{}", line(&without));
+    let mut short = Bench::of(ROOF, 140, 44);
+    short.keys("8");
+    assert!(line(&short).contains("g go on"), "{}", line(&short));
+    short.keys("9");
+    assert!(line(&short).contains("i into inputs  h at the worst"), "{}", line(&short));
+    short.keys("h");
+    assert!(line(&short).contains("h at typical"), "{}", line(&short));
+    let mut thin = Bench::of(BANDS, 140, 44);
+    thin.keys("9");
+    assert!(!line(&thin).contains("h at"), "every check holds at the typical values: {}", line(&thin));
+}
+
+#[test]
+fn two_running_studies_stand_two_columns_apart() {
+    let mut bench = held();
+    bench.keys("8");
+    for lane in [Lane::Spread, Lane::Ranking] {
+        let order = bench.held.iter().find(|order| order.what.lane() == lane).unwrap().clone();
+        let passed = Duration::from_secs(150);
+        bench.send(Message::Progress { lane, ticket: order.ticket, done: 1638, of: Some(4096), passed });
+    }
+    let frame = bench.frame();
+    let row = frame.lines().find(|row| row.contains("ranking: 40 % done")).unwrap_or_else(|| panic!("{frame}"));
+    assert!(row.contains("  ranking: ") && row.contains("sample: 40 % done"), "{row}");
+}
+
+#[test]
+fn a_narrow_list_of_margins_shows_the_worst_found() {
+    let mut bench = Bench::of(BANDS, 80, 24);
+    bench.keys("3");
+    assert!(bench.frame().contains("+0.307 m, worst -0.221 m"), "{}", bench.frame());
 }
 
 #[test]

@@ -1,6 +1,6 @@
 //! The word of a check while the bands are being searched: none is called final before the worst is found.
 use super::model::Model;
-use super::studies::{Lane, SEED, State};
+use super::studies::{Lane, State};
 use crate::margin::{Margin, Verdict};
 use crate::sheet::ReportBands;
 use crate::study::{Bands, Spread};
@@ -84,7 +84,8 @@ impl Model {
     /// Puts what is known of the bands into the present report; the chosen check stays chosen.
     pub fn add_bands(&mut self) {
         let Some(found) = self.shelf.bands().cloned() else { return };
-        let spread = self.shelf.spread().map_or_else(|| Spread::empty(0, SEED), |found| found.spread.clone());
+        let seed = self.sampling().seed;
+        let spread = self.shelf.spread().map_or_else(|| Spread::empty(0, seed), |found| found.spread.clone());
         let Some(report) = self.answer.report.as_mut().filter(|_| self.answer.fault.is_none()) else { return };
         let chosen = report.margins.get(self.check).map(|margin| margin.id.clone());
         let is_governing = self.check == 0;

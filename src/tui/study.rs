@@ -5,8 +5,9 @@ use super::model::{Model, Pane, View};
 use super::panes::{map, remedies};
 use super::studies::{Findings, Lane};
 use crate::margin::{Verdict, worst};
+use crate::scenario::Input;
 use crate::sheet::Report;
-use crate::study::{Held, Remedy};
+use crate::study::{Held, Remedy, Sampling, Way};
 use ratatui::layout::{Position, Rect};
 
 /// Cells that the point of Map moves with shift.
@@ -27,9 +28,26 @@ impl Model {
     /// user asks for it.
     #[must_use]
     pub fn remedies_held(&self) -> Held {
-        let typical = self.answer.current().map_or(Verdict::Open, typical_verdict);
-        let is_worst = self.has_bands() && (self.remedies_at_worst || typical == Verdict::Holds);
+        let is_worst = self.has_bands() && (self.remedies_at_worst || self.holds_at_typical());
         if is_worst { Held::Worst } else { Held::Typical }
+    }
+
+    /// Where remedies may be asked for instead: nowhere without bands, and where nothing falls short at the typical values.
+    #[must_use]
+    pub fn remedies_elsewhere(&self) -> Option<Held> {
+        let other = if self.remedies_held() == Held::Worst { Held::Typical } else { Held::Worst };
+        (self.has_bands() && (other == Held::Worst || !self.holds_at_typical())).then_some(other)
+    }
+
+    fn holds_at_typical(&self) -> bool {
+        self.answer.current().map_or(Verdict::Open, typical_verdict) == Verdict::Holds
+    }
+
+    /// The chosen remedy, where it has a value to write.
+    #[must_use]
+    pub fn chosen_way(&self) -> Option<(&Input, &Way)> {
+        let remedy = self.shelf.remedies()?.list.get(self.remedy)?;
+        Some((&remedy.input, remedy.way.as_ref()?))
     }
 
     /// Remedies at the typical values or at the worst found.
@@ -42,6 +60,12 @@ impl Model {
         if self.remedies_held() == before {
             self.say("every check holds at the typical values: remedies are for the worst found");
         }
+    }
+
+    /// The sample that Spread draws: as the file states it, or a multiple where the user asked for more.
+    #[must_use]
+    pub fn sampling(&self) -> Sampling {
+        self.shelf.sampling(Sampling::of(self.document.scenario()))
     }
 
     /// The input that Vary moves: the chosen one.

@@ -13,7 +13,7 @@ const GUTTER: u16 = 5;
 /// Least columns of one station: its name and a blank.
 const STATION: u16 = 6;
 /// Columns of the names beside the dimension string, with and without what is wanted.
-const LABELS: u16 = 34;
+const LABELS: u16 = 36;
 const LEAST_LABELS: u16 = 21;
 
 /// Where the parts of the pane stand.

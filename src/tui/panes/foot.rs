@@ -1,4 +1,5 @@
 //! The last rows: a message, a question, or the keys.
+use crate::study::Held;
 use crate::tui::command::{COMMANDS, Command, Entry, Group};
 use crate::tui::model::{Mode, Model, View};
 use crate::tui::text::{cells, put, put_right, wrap};
@@ -53,18 +54,23 @@ fn is_last(entry: &Entry) -> bool {
 fn is_of_view(model: &Model, entry: &Entry) -> bool {
     let is_running = model.shelf.running().next().is_some();
     match entry.command {
-        Command::IntoInputs => model.view.takes_keys(),
+        Command::IntoInputs => model.view == View::Map || model.view == View::Remedies && model.chosen_way().is_some(),
         Command::AxisAcross | Command::AxisUp => model.view == View::Map,
-        Command::HeldAt => model.view == View::Remedies && model.has_bands(),
+        Command::HeldAt => model.view == View::Remedies && model.remedies_elsewhere().is_some(),
         Command::Keep => model.view == View::Compare,
         Command::Stop => is_running,
-        Command::Again => !is_running && matches!(model.view, View::Spread),
+        Command::Again => !is_running && model.view == View::Spread && model.has_bands(),
         _ => false,
     }
 }
 
 fn text(entry: &Entry) -> (String, &'static str) {
     (entry.keys.first().map_or_else(String::new, |key| key.name()), entry.label)
+}
+
+/// Where the key of Remedies leads.
+fn led_to(model: &Model) -> &'static str {
+    if model.remedies_elsewhere() == Some(Held::Typical) { "at typical" } else { "at the worst" }
 }
 
 /// Help and quit stand at the right, always; the others as far as there is room.
@@ -88,6 +94,7 @@ fn draw_keys(buffer: &mut Buffer, area: Rect, model: &Model) {
     let others = COMMANDS.iter().filter(named).filter(is_general);
     for entry in walk.chain(own).chain(others) {
         let (key, label) = text(entry);
+        let label = if entry.command == Command::HeldAt { led_to(model) } else { label };
         let wide = cells(&key) + 1 + cells(label);
         if column + wide > room {
             break;

@@ -202,9 +202,13 @@ fn draw_pair(buffer: &mut Buffer, row: Rect, margin: &Margin, look: &Look) {
         side(margin.sense),
         number(margin.limit, margin, look.units)
     );
-    let room = format!("{} ", signed(margin, look.units));
-    if cells(&sides) + cells(&room) + 3 <= row.width {
-        put(buffer, row, 2, 1, &sides, look.style);
+    let own = signed(margin, look.units);
+    let room = look.worst.map_or(own.clone(), |worst| format!("{own}, worst {}", signed(worst, look.units)));
+    // The blanks at both ends give way to the worst found, then the sides.
+    let room = if 2 + cells(&sides) + 2 + cells(&room) <= row.width { format!("{room} ") } else { room };
+    let indent = row.width.saturating_sub(cells(&sides) + 1 + cells(&room)).min(2);
+    if indent > 0 {
+        put(buffer, row, indent, 1, &sides, look.style);
     }
     put_right(buffer, row, 1, &room, look.style);
 }

@@ -59,25 +59,34 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
             state::draw(buffer, Rect { height: list.height + 1, ..area }, model, Lane::Remedies, "nothing to work out");
         }
         Some(found) if found.today == Verdict::Holds => {
-            let words = match found.wanted.held {
-                Held::Typical => "every check holds at the typical values: no change is worked out",
-                Held::Worst => "every check holds at the worst found in the bands: no change is worked out",
-            };
-            put_wrapped(
-                buffer,
-                Rect { y: list.y + 1, height: list.height.saturating_sub(1), ..list },
-                words,
-                theme.plain(),
-            );
+            let below = Rect { y: list.y + 1, height: list.height.saturating_sub(1), ..list };
+            put_wrapped(buffer, below, &holding_words(model, found.wanted.held), theme.plain());
         }
         Some(found) => draw_list(buffer, list, model, found),
     }
 }
 
+/// Why there is no list: nothing falls short there.
+fn holding_words(model: &Model, held: Held) -> String {
+    match held {
+        Held::Typical if model.has_bands() => {
+            let key = key_name(Command::HeldAt);
+            format!("every check holds at the typical values; `{key}` asks at the worst found")
+        }
+        Held::Typical => "every check holds at the typical values: no change is worked out".to_owned(),
+        Held::Worst => "every check holds at the worst found in the bands: no change is worked out".to_owned(),
+    }
+}
+
+/// The key that writes the chosen remedy, where there is one to write, and the caution.
 fn draw_caution(buffer: &mut Buffer, area: Rect, model: &Model) {
-    let key = key_name(Command::IntoInputs);
-    let keys = format!("{key} writes the chosen one into the inputs, {} undoes", key_name(Command::Undo));
-    put(buffer, area, 0, 0, &fit(&keys, usize::from(area.width)), model.theme.key());
+    if model.chosen_way().is_some() {
+        let [key, undo] = [Command::IntoInputs, Command::Undo].map(key_name);
+        let long = format!("{key} writes the chosen one into the inputs, {undo} undoes");
+        let short = format!("{key} writes it into the inputs, {undo} undoes");
+        let keys = if cells(&long) <= area.width { long } else { short };
+        put(buffer, area, 0, 0, &fit(&keys, usize::from(area.width)), model.theme.key());
+    }
     let rest =
         Rect { y: area.y + 1, height: area.height.saturating_sub(1), width: area.width.saturating_sub(1), ..area };
     put_wrapped(buffer, rest, REMEDY_CAUTION, model.theme.quiet());

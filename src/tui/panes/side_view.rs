@@ -16,7 +16,7 @@ use ratatui::widgets::Widget;
 use ratatui::widgets::canvas::{Canvas, Line, Points};
 
 /// Columns of the words beside the drawing.
-const LABELS: u16 = 34;
+const LABELS: u16 = 36;
 const LEAST_LABELS: u16 = 21;
 /// Columns of the drawing below which nothing is drawn.
 const LEAST_FIELD: u16 = 10;

@@ -3,7 +3,7 @@ use super::state::{self, grouped};
 use crate::margin::{Margin, Verdict};
 use crate::quantity::{Dimension, UnitSystem, format_si};
 use crate::sheet::place_words;
-use crate::study::{CheckSpread, Importance, NumberSpread, QUANTILE_SHARES, Share};
+use crate::study::{CheckSpread, Importance, NumberSpread, Place, QUANTILE_SHARES, Share};
 use crate::tui::model::Model;
 use crate::tui::studies::{Lane, Ranked, Spreading};
 use crate::tui::text::{cells, wrap};
@@ -33,7 +33,8 @@ fn columns(model: &Model, width: u16) -> (Vec<Row>, Vec<Row>) {
         return (rows, Vec::new());
     }
     let half = width / 2;
-    (left(model, half), right(model, width - half))
+    // Two blank columns stand between them.
+    (left(model, half - 1), right(model, width - half))
 }
 
 fn left(model: &Model, width: u16) -> Vec<Row> {
@@ -76,7 +77,20 @@ fn heading(words: &str, width: u16, style: Style) -> Vec<Row> {
 
 fn percent(share: f64) -> String {
     let percent = share * 100.0;
-    if percent == 0.0 || percent >= 10.0 { format!("{percent:.0}") } else { format!("{percent:.2}") }
+    let rest = 100.0 - percent;
+    if percent > 0.0 && percent < 10.0 {
+        format!("{percent:.*}", decimals(percent).max(2))
+    } else if rest > 1e-9 && rest < 1.0 {
+        format!("{percent:.*}", decimals(rest))
+    } else {
+        format!("{percent:.0}")
+    }
+}
+
+/// Decimals that show the first digit of something small; at most nine.
+#[expect(clippy::cast_possible_truncation, clippy::cast_sign_loss, reason = "clamped to 0 to 9")]
+fn decimals(small: f64) -> usize {
+    (-small.log10()).ceil().clamp(0.0, 9.0) as usize
 }
 
 /// `3.1 % (2.8 to 3.4 %)`.
@@ -160,7 +174,8 @@ fn worst_rows(model: &Model, width: u16) -> Vec<Row> {
         rows.extend(pair(&head, &rooms, width, theme.verdict(margin.verdict)));
         let open = if band.open_runs > 0 { format!("; {} runs open", grouped(band.open_runs)) } else { String::new() };
         let inside = if band.corner { "" } else { ", inside the bands" };
-        let place = format!("at {}{inside}{open}", place_words(band, model.units));
+        let at = if band.inputs.iter().all(|input| input.place == Place::Anywhere) { "" } else { "at " };
+        let place = format!("{at}{}{inside}{open}", place_words(band, model.units));
         let room = usize::from(width.saturating_sub(INDENT + 3));
         rows.extend(wrap(&place, room).into_iter().map(|line| (INDENT + 2, line, theme.quiet())));
     }
@@ -249,8 +264,8 @@ fn ranking_rows(model: &Model, found: &Ranked, width: u16) -> Vec<Row> {
     let mut rows = heading(&title, width, theme.heading());
     plain(&mut rows, "one band at a time, low to high:", width, theme.quiet());
     let reach = |bar: &crate::study::Bar| bar.reach();
-    let longest = found.bars.iter().filter_map(reach).fold(0.0, f64::max);
-    for bar in &found.bars {
+    let longest = found.ranking.bars.iter().filter_map(reach).fold(0.0, f64::max);
+    for bar in &found.ranking.bars {
         let Some(input) = found.inputs.get(bar.input) else { continue };
         let end =
             |si: Option<f64>| si.map_or_else(|| "open".to_owned(), |si| signed(si, margin.dimension, model.units));
@@ -259,12 +274,16 @@ fn ranking_rows(model: &Model, found: &Ranked, width: u16) -> Vec<Row> {
         let words = format!("{} to {} {:<8}", end(bar.low), end(bar.high), "#".repeat(usize::from(length)));
         rows.extend(pair(&input.path, &words, width, theme.plain()));
     }
-    if found.ranking.inputs.is_empty() {
+    let Some(shares) = &found.ranking.shares else {
+        plain(&mut rows, "one band alone: there are no shares to compare", width, theme.quiet());
+        return rows;
+    };
+    if shares.inputs.is_empty() {
         plain(&mut rows, "the margin does not vary over the bands", width, theme.plain());
         return rows;
     }
     plain(&mut rows, "share of the variance, alone | with others (95 %):", width, theme.quiet());
-    let mut listed: Vec<&Importance> = found.ranking.inputs.iter().collect();
+    let mut listed: Vec<&Importance> = shares.inputs.iter().collect();
     listed.sort_by(|a, b| b.total.value.total_cmp(&a.total.value));
     for importance in listed {
         let Some(input) = found.inputs.get(importance.input) else { continue };
@@ -272,9 +291,8 @@ fn ranking_rows(model: &Model, found: &Ranked, width: u16) -> Vec<Row> {
         let words = format!("{} | {}", part(importance.first), part(importance.total));
         rows.extend(pair(&input.path, &words, width, theme.plain()));
     }
-    if found.ranking.without_value > 0 {
-        let words =
-            format!("{} of {} points left out: no margin there", found.ranking.without_value, found.ranking.points);
+    if shares.without_value > 0 {
+        let words = format!("{} of {} points left out: no margin there", shares.without_value, shares.points);
         plain(&mut rows, &words, width, theme.fault());
     }
     rows
@@ -300,5 +318,16 @@ pub fn draw(buffer: &mut Buffer, area: Rect, model: &Model) {
     let area = Rect { x: area.x + half, width: area.width - half, ..area };
     for (line, (indent, text, style)) in (1..area.height).zip(right.iter().skip(first)) {
         crate::tui::text::put(buffer, area, *indent, line, text, *style);
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn shares_near_all_and_near_none_show_what_is_left() {
+        let shares = [0.0, 0.000_03, 0.0312, 0.632, 0.995, 0.999_77, 0.999_996, 1.0];
+        assert_eq!(shares.map(percent), ["0", "0.003", "3.12", "63", "99.5", "99.98", "99.9996", "100"]);
     }
 }

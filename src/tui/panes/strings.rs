@@ -83,8 +83,10 @@ pub enum Rank {
     First,
     /// A dimension of the string.
     Dimension,
-    /// The name of a level, which gives way to all others.
+    /// The name of a level, which gives way to those.
     Level,
+    /// What a clearance should be, in a row of its own: only where rows are plenty.
+    Wanted,
 }
 
 /// One text beside the drawing.
@@ -106,6 +108,9 @@ pub fn draw_labels(buffer: &mut Buffer, area: Rect, scene: &Scene, rows: &Rows, 
     draw_string(buffer, area, &string, rows, theme);
     labels.extend(level_labels(scene, rows, theme));
     labels.extend(part_labels(scene, &string, rows, area.width.saturating_sub(2), theme));
+    if 3 * labels.len() > 2 * usize::from(rows.count) {
+        labels.retain(|label| label.rank != Rank::Wanted);
+    }
     while labels.len() > usize::from(rows.count) {
         let worst = labels.iter().map(|label| label.rank).max();
         let Some(index) = labels.iter().position(|label| Some(label.rank) == worst) else { break };
@@ -197,25 +202,26 @@ fn part_labels(scene: &Scene, marks: &[f64], rows: &Rows, room: u16, theme: Them
     let mut labels = Vec::new();
     for ((part, number), pair) in scene.parts.iter().zip(numbers).zip(marks.windows(2)) {
         let (from, to) = (rows.below(pair[0].max(pair[1])), rows.below(pair[0].min(pair[1])));
-        let long = format!("{} {}{}", scene.scale.print(number), part.name, wanted(scene, part));
+        let wanted = wanted(scene, part);
+        let whole = wanted.as_ref().map(|wanted| format!("{} {}, {wanted}", scene.scale.print(number), part.name));
+        let whole = whole.filter(|text| cells(text) <= room);
         let short = format!("{} {}", scene.scale.print(number), part.name);
         let brief = format!("{} {}", scene.scale.print(number), part.name.rsplit(' ').next().unwrap_or_default());
-        let text = [long, short].into_iter().find(|text| cells(text) <= room).unwrap_or(brief);
+        let is_apart = whole.is_none();
+        let text = whole.into_iter().chain([short]).find(|text| cells(text) <= room).unwrap_or(brief);
         let style = part.verdict.map_or(theme.plain(), |verdict| theme.verdict(verdict));
-        labels.push(Label {
-            row: ((from + to.max(from + 1) - 1) / 2).min(rows.count - 1),
-            text,
-            style,
-            rank: if part.verdict.is_some() { Rank::First } else { Rank::Dimension },
-        });
+        let row = ((from + to.max(from + 1) - 1) / 2).min(rows.count - 1);
+        let rank = if part.verdict.is_some() { Rank::First } else { Rank::Dimension };
+        labels.push(Label { row, text, style, rank });
+        labels.extend(wanted.filter(|_| is_apart).map(|text| Label { row, text, style, rank: Rank::Wanted }));
     }
     labels
 }
 
-/// What a clearance should be.
-fn wanted(scene: &Scene, part: &Part) -> String {
+/// What a clearance should be: beside it, or in a row of its own where that is too wide.
+fn wanted(scene: &Scene, part: &Part) -> Option<String> {
     let bar = scene.bars.iter().find(|bar| part.verdict.is_some() && scene.string_end.as_deref() == Some(&bar.name));
-    bar.map_or_else(String::new, |bar| format!(" of {}", scene.scale.text(bar.reserve_m)))
+    bar.map(|bar| format!("{} wanted", scene.scale.text(bar.reserve_m)))
 }
 
 /// Draws the sum of the string in the one row of `area`.

@@ -2,8 +2,8 @@
 use super::name::{Name, names};
 use crate::scenario::{Input, Scenario};
 use crate::study::{
-    self, Axis, Bar, Evaluator, Field, Held, Meter, Ranking, Remedies, Spread, Step, StudyError, Target, Variation,
-    Wanted, WorstFound, bars, field, importances, remedies_of, spread, usual_range, vary, worst_found,
+    self, Axis, CheckRanking, Evaluator, Field, Held, Meter, Remedies, Sampling, Spread, Step, StudyError, Variation,
+    Wanted, WorstFound, field, remedies_of, spread, usual_range, vary, worst_found,
 };
 use crate::tui::message::Message;
 use std::ops::{ControlFlow, RangeInclusive};
@@ -12,10 +12,6 @@ use std::sync::Arc;
 
 /// Rows of Vary: as many as are searched for crossings, so that no run is made twice.
 pub const VARY_ROWS: usize = 401;
-/// Base points of the ranking.
-pub const RANKING_POINTS: usize = 512;
-/// Seed of sample and ranking: the same file shows the same numbers.
-pub const SEED: u64 = 1;
 
 /// One kind of study; the newest of each kind is the one that counts.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -83,8 +79,8 @@ pub enum What {
     },
     /// A sample of the bands.
     Spread {
-        /// How many.
-        samples: usize,
+        /// How many, and which.
+        sampling: Sampling,
     },
     /// Which band moves the margin of a check.
     Ranking {
@@ -153,10 +149,8 @@ pub struct Ranked {
     pub name: Name,
     /// The inputs.
     pub inputs: Vec<Input>,
-    /// One at a time.
-    pub bars: Vec<Bar>,
-    /// Shares of the variance.
-    pub ranking: Ranking,
+    /// One at a time, and shares of the variance.
+    pub ranking: CheckRanking,
 }
 
 /// An answer.
@@ -191,16 +185,11 @@ impl Order {
     /// About how many runs it takes, where that can be told.
     #[must_use]
     pub fn expected(&self) -> Option<usize> {
-        let inputs = crate::scenario::inputs(&self.scenario);
         match &self.what {
-            What::Bands | What::Remedies { .. } => None,
+            What::Bands | What::Ranking { .. } | What::Remedies { .. } => None,
             What::Vary { .. } => Some(VARY_ROWS),
             What::Map { steps, .. } => Some(steps[0] * steps[1]),
-            What::Spread { samples } => Some(*samples),
-            What::Ranking { .. } => {
-                let wide = inputs.iter().filter(|input| input.measure.band.is_wide()).count();
-                Some(RANKING_POINTS * (2 * wide + 2) + 2 * wide)
-            }
+            What::Spread { sampling } => Some(sampling.samples),
         }
     }
 
@@ -230,12 +219,14 @@ impl Order {
                 let field = field(&evaluator, across, up, &mut watch)?;
                 Findings::Map(Arc::new(Mapped { inputs, evaluator: Evaluator::new(&self.scenario)?, field }))
             }
-            What::Spread { samples } => {
-                let spread = spread(&evaluator, *samples, SEED, &mut watch)?;
+            What::Spread { sampling } => {
+                let spread = spread(&evaluator, sampling.samples, sampling.seed, &mut watch)?;
                 let kinds = spread.checks.iter().map(|check| check.kind);
                 Findings::Spread(Arc::new(Spreading { names: names(&evaluator, kinds), spread }))
             }
-            What::Ranking { check } => Findings::Ranking(Arc::new(ranked(&evaluator, check, meter)?)),
+            What::Ranking { check } => {
+                Findings::Ranking(Arc::new(ranked(&evaluator, check, Sampling::of(&self.scenario), meter)?))
+            }
             What::Remedies { held } => {
                 let wanted = Wanted { held: *held, pairs: false };
                 Findings::Remedies(Arc::new(remedies_of(&evaluator, wanted, &|at| goes_on(at, meter))?))
@@ -264,7 +255,7 @@ fn goes_on(at: study::Progress, meter: &Meter) -> ControlFlow<()> {
     match at.step {
         Step::Corners => meter.tell_share(FIRST_SHARE * share),
         Step::Refining => meter.tell_share(FIRST_SHARE + (1.0 - FIRST_SHARE) * share),
-        Step::Remedies => meter.tell_share(share),
+        Step::Ranking | Step::Remedies => meter.tell_share(share),
         _ => {}
     }
     if meter.is_dropped() { ControlFlow::Break(()) } else { ControlFlow::Continue(()) }
@@ -286,16 +277,14 @@ fn varied(evaluator: &Evaluator, path: &str) -> Result<Varied, StudyError> {
     Ok(Varied { names: names(evaluator, []), input: evaluator.inputs()[input].clone(), range, variation })
 }
 
-fn ranked(evaluator: &Evaluator, check: &str, meter: &Meter) -> Result<Ranked, StudyError> {
+/// The ranking that the command line gives, for one check.
+fn ranked(evaluator: &Evaluator, check: &str, sampling: Sampling, meter: &Meter) -> Result<Ranked, StudyError> {
     let names = names(evaluator, []);
     let found = names.iter().find(|name| name.margin.id == check).or_else(|| names.first()).cloned();
     let name = found.ok_or_else(|| StudyError::NoPath { path: check.to_owned() })?;
-    let target = Target::Margin(name.kind);
-    let bars = bars(evaluator, &target)?;
-    let targets = [target];
-    let mut rankings = importances(evaluator, &targets, RANKING_POINTS, SEED, &|at| goes_on(at, meter))?;
-    let ranking = rankings.pop().filter(|_| !meter.is_dropped()).ok_or(StudyError::Stopped)?;
-    Ok(Ranked { bars, ranking, inputs: evaluator.inputs().to_vec(), name })
+    let all = study::ranked(evaluator, sampling, &|at| goes_on(at, meter))?;
+    let ranking = all.into_iter().find(|ranking| ranking.kind == name.kind && !meter.is_dropped());
+    Ok(Ranked { ranking: ranking.ok_or(StudyError::Stopped)?, inputs: evaluator.inputs().to_vec(), name })
 }
 
 #[cfg(test)]

@@ -6,7 +6,7 @@ mod plan;
 mod shelf;
 
 pub use desk::{Desk, step_back};
-pub use job::{Findings, Lane, Mapped, Order, RANKING_POINTS, Ranked, SEED, Spreading, VARY_ROWS, Varied, What};
+pub use job::{Findings, Lane, Mapped, Order, Ranked, Spreading, VARY_ROWS, Varied, What};
 pub use name::{Name, names};
 pub use plan::{again, plan, stop};
 pub use shelf::{Progress, Shelf, Slot, State};

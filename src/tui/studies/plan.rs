@@ -53,7 +53,7 @@ fn wanted(model: &Model) -> Vec<What> {
         View::Vary => wanted.extend(model.varied_path().map(|path| What::Vary { path: path.to_owned() })),
         View::Map => wanted.extend(model.map_question()),
         View::Spread if has_bands => {
-            wanted.push(What::Spread { samples: model.shelf.samples });
+            wanted.push(What::Spread { sampling: model.sampling() });
             let check = report.margins.get(model.check).map(|margin| margin.id.clone());
             wanted.extend(check.map(|check| What::Ranking { check }));
         }

@@ -1,6 +1,6 @@
 //! The answers of studies, each with what it was asked for; an answer to anything else is never shown.
 use super::job::{Findings, Lane, Mapped, Ranked, Spreading, Varied, What};
-use crate::study::{Remedies, WorstFound};
+use crate::study::{Remedies, Sampling, WorstFound};
 use std::time::Duration;
 
 /// How far a study is.
@@ -62,18 +62,16 @@ pub struct Slot {
 pub struct Shelf {
     slots: [Slot; Lane::ALL.len()],
     tickets: u64,
-    /// Samples that Spread asks for.
-    pub samples: usize,
+    /// How many times as many samples as the file states Spread asks for.
+    times: usize,
 }
 
-/// Samples that Spread starts with: a share of 1 % is then known to a fifth of a percent.
-const FIRST_SAMPLES: usize = 16_384;
 /// Most samples of the screen; the command line takes more.
 const MOST_SAMPLES: usize = 1 << 20;
 
 impl Default for Shelf {
     fn default() -> Self {
-        Self { slots: Default::default(), tickets: 0, samples: FIRST_SAMPLES }
+        Self { slots: Default::default(), tickets: 0, times: 1 }
     }
 }
 
@@ -96,7 +94,14 @@ impl Shelf {
 
     /// Four times as many samples from now on, as far as that goes.
     pub fn more_samples(&mut self) {
-        self.samples = (4 * self.samples).min(MOST_SAMPLES);
+        self.times = (4 * self.times).min(MOST_SAMPLES);
+    }
+
+    /// The sample that Spread asks for, from the one that the file states.
+    #[must_use]
+    pub fn sampling(&self, stated: Sampling) -> Sampling {
+        let most = MOST_SAMPLES.max(stated.samples);
+        Sampling { samples: stated.samples.saturating_mul(self.times).min(most), ..stated }
     }
 
     /// Takes an answer, unless it is not to the last question; true when it was taken.
