@@ -1,6 +1,7 @@
 //! Commands of the screen and how the keys find them.
 use super::key::Key;
 pub use super::table::COMMANDS;
+use super::views::View;
 use crossterm::event::KeyEvent;
 
 /// What the user can ask for.
@@ -40,26 +41,8 @@ pub enum Command {
     Reload,
     /// Metric or US.
     Units,
-    /// The view Elevation.
-    Elevation,
-    /// The view History.
-    History,
-    /// The margins.
-    Margins,
-    /// The view Notes.
-    Notes,
-    /// The view Ledger.
-    Ledger,
-    /// The view Vary.
-    Vary,
-    /// The view Map.
-    Map,
-    /// The view Spread.
-    Spread,
-    /// The view Remedies.
-    Remedies,
-    /// The view Compare.
-    Compare,
+    /// One view.
+    Show(View),
     /// The next view.
     NextView,
     /// Break off the studies that run.

@@ -1,6 +1,7 @@
 //! The table of commands: dispatch, key line and help screen all read it.
 use super::command::{Command, Entry, Group};
 use super::key::Key;
+use super::views::View;
 use crossterm::event::KeyCode;
 
 const fn entry(
@@ -88,7 +89,7 @@ pub const COMMANDS: &[Entry] = &[
     entry(Command::Redo, "redo", &[Key::letter('y'), Key::ctrl('y')], "", "make it again", Group::Change),
     entry(Command::Restore, "restore", &[Key::letter('f')], "", "back to the file's value", Group::Change),
     entry(
-        Command::Elevation,
+        Command::Show(View::Elevation),
         "elevation",
         &[Key::letter('1')],
         "",
@@ -96,16 +97,23 @@ pub const COMMANDS: &[Entry] = &[
         Group::View,
     ),
     entry(
-        Command::History,
+        Command::Show(View::History),
         "history",
         &[Key::letter('2')],
         "",
         "History: travel and line force over time",
         Group::View,
     ),
-    entry(Command::Margins, "margins", &[Key::letter('3')], "", "Margins: every check with its limit", Group::View),
     entry(
-        Command::Notes,
+        Command::Show(View::Margins),
+        "margins",
+        &[Key::letter('3')],
+        "",
+        "Margins: every check with its limit",
+        Group::View,
+    ),
+    entry(
+        Command::Show(View::Notes),
         "notes",
         &[Key::letter('4')],
         "",
@@ -113,7 +121,7 @@ pub const COMMANDS: &[Entry] = &[
         Group::View,
     ),
     entry(
-        Command::Ledger,
+        Command::Show(View::Ledger),
         "ledger",
         &[Key::letter('5')],
         "",
@@ -121,7 +129,7 @@ pub const COMMANDS: &[Entry] = &[
         Group::View,
     ),
     entry(
-        Command::Vary,
+        Command::Show(View::Vary),
         "vary",
         &[Key::letter('6')],
         "",
@@ -129,7 +137,7 @@ pub const COMMANDS: &[Entry] = &[
         Group::View,
     ),
     entry(
-        Command::Map,
+        Command::Show(View::Map),
         "map",
         &[Key::letter('7')],
         "",
@@ -137,7 +145,7 @@ pub const COMMANDS: &[Entry] = &[
         Group::View,
     ),
     entry(
-        Command::Spread,
+        Command::Show(View::Spread),
         "spread",
         &[Key::letter('8')],
         "",
@@ -145,7 +153,7 @@ pub const COMMANDS: &[Entry] = &[
         Group::View,
     ),
     entry(
-        Command::Remedies,
+        Command::Show(View::Remedies),
         "remedies",
         &[Key::letter('9')],
         "",
@@ -153,7 +161,7 @@ pub const COMMANDS: &[Entry] = &[
         Group::View,
     ),
     entry(
-        Command::Compare,
+        Command::Show(View::Compare),
         "compare",
         &[Key::letter('0')],
         "",

@@ -4,7 +4,7 @@ use super::edit::Nudge;
 use super::layout::{Panes, has_margins_below, views};
 use super::message::{Effect, Message};
 use super::model::{Exit, Mode, Model, Pane, Play, View, Window};
-use super::panes::{compare, ledger, notes, spread, tabs};
+use super::panes::{compare, ledger, notes, spread};
 use super::play::Curves;
 use super::pointer;
 use super::studies::{self, Progress};
@@ -155,15 +155,13 @@ fn run(model: &mut Model, command: Command) -> Vec<Effect> {
         Command::Up | Command::Down | Command::PageUp | Command::PageDown => walk(model, command),
         Command::NextPane | Command::PreviousPane => other_pane(model, command),
         Command::Units | Command::Window | Command::Curves => switch(model, command),
-        Command::Margins => show_margins(model),
+        Command::Show(View::Margins) => show_margins(model),
+        Command::Show(view) => model.show(view),
         Command::WalkOn | Command::WalkBack | Command::WalkStart | Command::WalkLeave => {
             walking::command(model, command);
         }
         Command::NextView => next_view(model),
-        _ => match View::ALL.into_iter().find(|&view| tabs::command(view) == command) {
-            Some(view) => model.show(view),
-            None => play(model, command),
-        },
+        _ => play(model, command),
     }
     Vec::new()
 }

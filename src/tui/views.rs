@@ -1,7 +1,7 @@
 //! The large views.
 
 /// The large view.
-#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Hash)]
 pub enum View {
     /// The fall to scale.
     #[default]

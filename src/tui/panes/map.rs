@@ -1,5 +1,5 @@
 //! The view Map: the verdict over two inputs, the line along which it changes, the present values and a movable point.
-use super::plot::{GUTTER, draw_foot, place};
+use super::plot::{self, GUTTER, draw_foot, place};
 use super::state;
 use crate::margin::{Margin, Verdict};
 use crate::quantity::{UnitSystem, format_si};
@@ -25,12 +25,8 @@ const LINE: &str = "#";
 /// The cells of the field.
 #[must_use]
 pub fn field(area: Rect) -> Rect {
-    Rect {
-        x: area.x + GUTTER.min(area.width),
-        y: area.y + 1.min(area.height),
-        width: area.width.saturating_sub(GUTTER),
-        height: area.height.saturating_sub(1 + BELOW),
-    }
+    let field = plot::field(area);
+    Rect { height: field.height.saturating_sub(BELOW), ..field }
 }
 
 /// The cell under the mouse, counted from the lower left.

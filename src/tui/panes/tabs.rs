@@ -5,33 +5,17 @@ use crate::tui::text::{cells, put};
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 
-/// The command that shows a view.
-#[must_use]
-pub const fn command(view: View) -> Command {
-    match view {
-        View::Elevation => Command::Elevation,
-        View::History => Command::History,
-        View::Margins => Command::Margins,
-        View::Notes => Command::Notes,
-        View::Ledger => Command::Ledger,
-        View::Vary => Command::Vary,
-        View::Map => Command::Map,
-        View::Spread => Command::Spread,
-        View::Remedies => Command::Remedies,
-        View::Compare => Command::Compare,
-    }
-}
-
 /// The tabs with their first columns; without padding, then without the blank after the key, then with short names, then
 /// with the key alone beside the chosen one, where the row is too short.
 fn placed(area: Rect, views: &[View], chosen: View) -> Vec<(View, String, u16)> {
     let bare: Vec<String> = views.iter().map(|&view| title(view)).collect();
     let padded: Vec<String> = bare.iter().map(|text| format!(" {text} ")).collect();
     let wide = |texts: &[String]| texts.iter().map(|text| cells(text) + 1).sum::<u16>();
-    let close: Vec<String> = views.iter().map(|&view| format!("{}{}", key_name(command(view)), view.title())).collect();
+    let close: Vec<String> =
+        views.iter().map(|&view| format!("{}{}", key_name(Command::Show(view)), view.title())).collect();
     let brief: Vec<String> =
-        views.iter().map(|&view| format!("{}{}", key_name(command(view)), view.short_title())).collect();
-    let short = |&view: &View| if view == chosen { title(view) } else { key_name(command(view)) };
+        views.iter().map(|&view| format!("{}{}", key_name(Command::Show(view)), view.short_title())).collect();
+    let short = |&view: &View| if view == chosen { title(view) } else { key_name(Command::Show(view)) };
     let texts = match area.width {
         width if wide(&padded) <= width => padded,
         width if wide(&bare) <= width + 1 => bare,
@@ -50,7 +34,7 @@ fn placed(area: Rect, views: &[View], chosen: View) -> Vec<(View, String, u16)> 
 }
 
 fn title(view: View) -> String {
-    format!("{} {}", key_name(command(view)), view.title())
+    format!("{} {}", key_name(Command::Show(view)), view.title())
 }
 
 /// Draws the tabs.

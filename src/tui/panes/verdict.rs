@@ -5,7 +5,7 @@ use crate::quantity::{Dimension, UnitSystem, format_si};
 use crate::sheet::{Report, governing_words, worst_words};
 use crate::tui::command::{Command, key_name};
 use crate::tui::joint::Word;
-use crate::tui::model::Model;
+use crate::tui::model::{Model, View};
 use crate::tui::text::{put, put_right, width, wrap};
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
@@ -72,8 +72,8 @@ fn peak(report: &Report, units: UnitSystem) -> String {
     let Some(peak) = report.estimate.numbers.get("arrest_force_peak") else { return String::new() };
     let warnings = match report.estimate.warnings.len() {
         0 => String::new(),
-        1 => format!(" (1 warning: key {})", key_name(Command::Notes)),
-        count => format!(" ({count} warnings: key {})", key_name(Command::Notes)),
+        1 => format!(" (1 warning: key {})", key_name(Command::Show(View::Notes))),
+        count => format!(" ({count} warnings: key {})", key_name(Command::Show(View::Notes))),
     };
     match force_limit(report) {
         Some(limit) => format!("peak {} of {}{warnings}", force(peak), force(limit)),
